@@ -1,0 +1,141 @@
+import { z } from "zod";
+import { TURNS, type Evidence, type Estimate, type Turn } from "@/core/types";
+import { PERIOD_KEYS } from "./settings";
+
+export const DAY_TYPES = ["weekdays", "saturday", "sunday", "every"] as const;
+export type DayType = (typeof DAY_TYPES)[number];
+
+export const DAY_TYPE_NAMES: Record<DayType, string> = {
+  weekdays: "weekdays",
+  saturday: "Saturdays",
+  sunday: "Sundays",
+  every: "all days",
+};
+
+export const SORT_KEYS = ["rank", "name", "delay", "p95", "hours", "stops", "reach", "storage", "spill", "vehicles", "evidence"] as const;
+export type SortKey = (typeof SORT_KEYS)[number];
+
+/** Weakest evidence that is still listed. */
+export const EVIDENCE_FLOORS = ["none", "thin", "fair", "strong"] as const satisfies readonly Evidence[];
+
+const Quarter = z.coerce.number().int().min(0).max(1440).multipleOf(15);
+const IsoDate = z.iso.date();
+
+/** What a screen shows: page address, list, map, export and published report all hold this one object. */
+export const ScreenQuery = z.object({
+  period: z.enum(PERIOD_KEYS).default("pm"),
+  /** A window of its own replaces the period: minutes after local midnight. */
+  from: Quarter.optional(),
+  to: Quarter.optional(),
+  days: z.enum(DAY_TYPES).default("weekdays"),
+  since: IsoDate.optional(),
+  until: IsoDate.optional(),
+  turn: z.enum(["any", ...TURNS]).default("any"),
+  /** Seconds per vehicle. */
+  minDelay: z.coerce.number().min(0).max(600).default(0),
+  /** Only junctions with a leg that spills back at least this share of the time, in per cent. */
+  minSpill: z.coerce.number().min(0).max(100).default(0),
+  evidence: z.enum(EVIDENCE_FLOORS).default("thin"),
+  corridor: z.coerce.number().int().positive().optional(),
+  q: z.string().trim().max(80).default(""),
+  sort: z.enum(SORT_KEYS).default("rank"),
+  dir: z.enum(["asc", "desc"]).optional(),
+});
+export type ScreenQuery = z.infer<typeof ScreenQuery>;
+
+export type RawParams = Record<string, string | string[] | undefined>;
+
+/** A hand-edited address never breaks the page: fields that fail fall back to their default. */
+export function screenQueryFromParams(params: RawParams): ScreenQuery {
+  const first: Record<string, string | undefined> = {};
+  for (const [key, value] of Object.entries(params)) first[key] = Array.isArray(value) ? value[0] : value;
+  const strict = ScreenQuery.safeParse(first);
+  const query = strict.success ? strict.data : lenient(first, strict.error);
+  const hasWindow = query.from !== undefined && query.to !== undefined && query.from < query.to;
+  return hasWindow ? query : { ...query, from: undefined, to: undefined };
+}
+
+function lenient(first: Record<string, string | undefined>, error: z.ZodError): ScreenQuery {
+  for (const issue of error.issues) delete first[String(issue.path[0])];
+  return ScreenQuery.parse(first);
+}
+
+/** Leaves defaults out, so that two people who look at the same thing have the same address. */
+export function screenQueryToParams(query: ScreenQuery): URLSearchParams {
+  const defaults: Record<string, unknown> = ScreenQuery.parse({});
+  const params = new URLSearchParams();
+  for (const [key, value] of Object.entries(query)) {
+    if (value !== undefined && value !== defaults[key]) params.set(key, String(value));
+  }
+  return params;
+}
+
+/** `null` stands for "the sample cannot say". */
+export interface EstimateView {
+  value: number;
+  low: number;
+  high: number;
+}
+
+export function estimateView(e: Estimate): EstimateView | null {
+  return Number.isFinite(e.value) ? { value: e.value, low: e.low, high: e.high } : null;
+}
+
+export interface NeedleView {
+  legId: number;
+  /** Direction in which the leg lies, seen from the junction: its bearing plus 180. */
+  lieDeg: number;
+  reachM: number | null;
+  delayS: number | null;
+}
+
+export interface RankedJunction {
+  junctionId: number;
+  code: string;
+  name: string;
+  lat: number;
+  lon: number;
+  corridor: string | null;
+  /** Null for junctions whose evidence is "none": they are listed last and never ranked. */
+  rank: number | null;
+  /** 95 % interval of the rank. */
+  rankLow: number | null;
+  rankHigh: number | null;
+  worst: { turn: Turn; from: string; legId: number; delayS: number } | null;
+  delay: EstimateView | null;
+  /** Mean delay after empirical Bayes shrinkage: what the rank goes by. */
+  shrunkDelayS: number | null;
+  medianS: number | null;
+  p95S: number | null;
+  /** Level-of-service letters at the ends of the interval and at the mean. */
+  los: { at: string; low: string; high: string } | null;
+  /** Hours of delay of the vehicles seen. */
+  hoursSeen: number | null;
+  stopsPerVehicle: number | null;
+  /** 95th percentile of observed reach on the worst leg, and its storage. */
+  reachM: number | null;
+  storageM: number | null;
+  spill: EstimateView | null;
+  vehicles: number;
+  days: number;
+  evidence: Evidence;
+  needles: NeedleView[];
+}
+
+export interface ScreenResult {
+  rows: RankedJunction[];
+  /** Junctions of the city, filters aside. */
+  total: number;
+  /** What the figures rest on. */
+  basis: {
+    firstDate: string | null;
+    lastDate: string | null;
+    days: number;
+    traversals: number;
+    medianIntervalS: number | null;
+    methodVersion: number;
+    /** Start and end of the window in minutes after local midnight. */
+    fromMin: number;
+    toMin: number;
+  };
+}

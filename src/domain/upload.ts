@@ -1,0 +1,102 @@
+import { z } from "zod";
+
+export const UPLOAD_KINDS = ["pings", "junctions"] as const;
+export type UploadKind = (typeof UPLOAD_KINDS)[number];
+
+export const UPLOAD_STATES = ["waiting", "reading", "done", "failed"] as const;
+export type UploadState = (typeof UPLOAD_STATES)[number];
+
+export const DELIMITERS = [",", ";", "\t"] as const;
+export const SPEED_UNITS = ["kmh", "mph", "ms", "kn"] as const;
+export type SpeedUnit = (typeof SPEED_UNITS)[number];
+export const TIME_FORMATS = ["iso", "epoch_s", "epoch_ms", "local"] as const;
+export type TimeFormat = (typeof TIME_FORMATS)[number];
+
+export const PING_FIELDS = ["vehicle_id", "timestamp", "lat", "lon", "speed", "heading", "trip_id"] as const;
+export const JUNCTION_FIELDS = [
+  "junction_id",
+  "name",
+  "lat",
+  "lon",
+  "corridor",
+  "corridor_order",
+  "district",
+  "cycle_s",
+  "last_retimed",
+  "notes",
+] as const;
+export type PingField = (typeof PING_FIELDS)[number];
+export type JunctionField = (typeof JUNCTION_FIELDS)[number];
+
+/** How to read a file: what detection proposes, the person corrects, and a supplier's next file starts from. */
+export const FileMapping = z.object({
+  format: z.enum(["csv", "geojson"]),
+  delimiter: z.enum(DELIMITERS),
+  decimal: z.enum([".", ","]),
+  hasHeader: z.boolean(),
+  /** Field to column number from 0; for GeoJSON field to property name. */
+  columns: z.record(z.string(), z.union([z.number().int().min(0).max(199), z.string().max(100)])),
+  timeFormat: z.enum(TIME_FORMATS),
+  /** Zone of local times; ignored where the file says its own. */
+  timeZone: z.string(),
+  speedUnit: z.enum(SPEED_UNITS),
+});
+export type FileMapping = z.infer<typeof FileMapping>;
+
+export const INGEST_STEPS = ["read", "learn legs", "match", "score", "store"] as const;
+export type IngestStep = (typeof INGEST_STEPS)[number];
+
+export interface IngestProgress {
+  step: IngestStep;
+  /** 0 to 1 over the whole ingest. */
+  share: number;
+  rowsRead: number;
+}
+
+export const REJECT_REASONS = ["columns", "vehicle", "time", "position", "speed", "heading", "duplicate", "name"] as const;
+export type RejectReason = (typeof REJECT_REASONS)[number];
+
+export const REJECT_SENTENCES: Record<RejectReason, string> = {
+  columns: "The row has too few columns.",
+  vehicle: "The vehicle identifier is empty.",
+  time: "The time cannot be read.",
+  position: "Latitude or longitude is missing or out of range.",
+  speed: "The speed cannot be read or is negative.",
+  heading: "The heading cannot be read.",
+  duplicate: "The identifier stands in the file more than once.",
+  name: "The identifier or the name is empty.",
+};
+
+export interface RejectedRow {
+  /** From 1, the header included. */
+  line: number;
+  reason: RejectReason;
+  /** The row as it stands, cut at 200 characters. */
+  text: string;
+}
+
+export interface IngestReport {
+  rowsRead: number;
+  accepted: number;
+  rejected: Partial<Record<RejectReason, number>>;
+  /** The first few, for the page; all of them are in the download. */
+  samples: RejectedRow[];
+  /** Of a pings file. */
+  vehicles?: number;
+  trips?: number;
+  traversals?: number;
+  incompleteTraversals?: number;
+  duplicatePings?: number;
+  jumps?: number;
+  junctionsCovered?: number;
+  junctionsTotal?: number;
+  legsFound?: number;
+  firstAt?: string;
+  lastAt?: string;
+  medianIntervalS?: number;
+  hasSpeed?: boolean;
+  hasHeading?: boolean;
+  /** Of a junctions file. */
+  created?: number;
+  updated?: number;
+}
