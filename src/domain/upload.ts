@@ -100,3 +100,38 @@ export interface IngestReport {
   created?: number;
   updated?: number;
 }
+
+/** What the first bytes of a file tell: a mapping to start from and rows to look at. */
+export interface Detection {
+  mapping: FileMapping;
+  /** Names of the columns, or of the properties of the first feature. */
+  header: string[];
+  preview: string[][];
+  gzip: boolean;
+  /** Sentences about what could not be settled. */
+  remarks: string[];
+}
+
+export interface UploadView {
+  id: string;
+  kind: UploadKind;
+  fileName: string;
+  bytes: number;
+  state: UploadState;
+  supplier: string | null;
+  progress: IngestProgress | null;
+  report: IngestReport | null;
+  failure: string | null;
+  hasRejects: boolean;
+  by: string | null;
+  createdAt: string;
+  finishedAt: string | null;
+}
+
+export interface CoverageView {
+  junctions: number;
+  covered: number;
+  /** Newest last. */
+  days: { date: string; traversals: number; junctions: number; medianIntervalS: number | null }[];
+  uncovered: { id: number; code: string; name: string }[];
+}
