@@ -19,6 +19,7 @@ export const PERMISSIONS = {
   "coverage.view": ["engineer", "admin"],
   "method.view": ["engineer", "technician", "admin"],
   "hotspots.view": ["engineer", "technician", "reader", "admin"],
+  "hotspots.publish": ["engineer"],
   "user.manage": ["admin"],
   "setting.manage": ["admin"],
   "audit.view": ["admin"],

@@ -1,0 +1,49 @@
+import { sql } from "drizzle-orm";
+import { screenDays } from "@/db/schema";
+import { isoFromDay } from "@/domain/local-time";
+import type { CoverageView } from "@/domain/upload";
+import { cityCatalogue } from "../catalogue/catalogue";
+import { requirePermission, type Context } from "../context";
+import { loadScreenDays } from "../screens/screen-data";
+
+const MOST_UNCOVERED = 500;
+
+export async function getCoverage(ctx: Context): Promise<CoverageView> {
+  requirePermission(ctx, "coverage.view");
+  const catalogue = await cityCatalogue(ctx.db);
+  const slices = await ctx.db
+    .select({
+      day: screenDays.day,
+      traversals: sql<number>`sum(${screenDays.traversals})`.mapWith(Number),
+      medianIntervalS: sql<number | null>`max(${screenDays.medianIntervalS})`,
+    })
+    .from(screenDays)
+    .groupBy(screenDays.day)
+    .orderBy(screenDays.day);
+  const { days } = await loadScreenDays(ctx.db, { days: "every" });
+
+  const everSeen = new Set<number>();
+  const seenOn = new Map<number, number>();
+  for (const day of days) {
+    const seen = new Set<number>();
+    for (let c = 0; c < day.cells; c++) {
+      const leg = catalogue.movements.get(day.movement[c])?.legId;
+      const junction = leg === undefined ? undefined : catalogue.legs.get(leg)?.junctionId;
+      if (junction !== undefined) seen.add(junction);
+    }
+    seenOn.set(day.day, seen.size);
+    for (const id of seen) everSeen.add(id);
+  }
+  const uncovered = [...catalogue.junctions.values()].filter((junction) => !everSeen.has(junction.id));
+  return {
+    junctions: catalogue.junctions.size,
+    covered: everSeen.size,
+    days: slices.map((slice) => ({
+      date: isoFromDay(slice.day),
+      traversals: slice.traversals,
+      junctions: seenOn.get(slice.day) ?? 0,
+      medianIntervalS: slice.medianIntervalS,
+    })),
+    uncovered: uncovered.slice(0, MOST_UNCOVERED).map(({ id, code, name }) => ({ id, code, name })),
+  };
+}

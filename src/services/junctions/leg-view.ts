@@ -1,0 +1,63 @@
+import type { Evidence } from "@/core/types";
+import type { LegScore, MovementScore } from "@/core/scores/types";
+import type { ExitView, LegView, MovementView } from "@/domain/junction";
+import { estimateView } from "@/domain/screen";
+import { finite, losView } from "../screens/ranked-row";
+import type { LegRow, MovementRow } from "./junction-rows";
+
+export function pairsOf(line: readonly number[]): [number, number][] {
+  const pairs: [number, number][] = [];
+  for (let i = 0; i + 1 < line.length; i += 2) pairs.push([line[i], line[i + 1]]);
+  return pairs;
+}
+
+function lengthOf(line: readonly number[]): number {
+  let length = 0;
+  for (let i = 2; i + 1 < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
+  return length;
+}
+
+const NO_EVIDENCE: Evidence = "none";
+
+export function legView(row: LegRow, score: LegScore | undefined): LegView {
+  return {
+    id: row.id,
+    name: row.name,
+    bearingDeg: row.bearingDeg,
+    line: pairsOf(row.line),
+    lengthM: lengthOf(row.line),
+    storageM: row.storageM,
+    upstream: row.upstreamJunctionId === null ? null : { junctionId: row.upstreamJunctionId, name: row.upstreamName ?? "" },
+    freeSpeedMs: row.freeSpeedMs,
+    origin: row.origin,
+    stopLineOrigin: row.stopLineOrigin,
+    doubts: row.doubts,
+    vehicles: score?.vehicles ?? 0,
+    delay: score ? estimateView(score.delay) : null,
+    reachP50M: score ? finite(score.reachP50M) : null,
+    reachP95M: score ? finite(score.reachP95M) : null,
+    reachEstimateP95M: score ? estimateView(score.reachEstimateP95M) : null,
+    spill: score ? estimateView(score.spill) : null,
+    evidence: score?.evidence ?? NO_EVIDENCE,
+  };
+}
+
+export function exitView(row: { id: number; bearingDeg: number; line: number[] }): ExitView {
+  return { id: row.id, bearingDeg: row.bearingDeg, line: pairsOf(row.line) };
+}
+
+export function movementView(row: MovementRow, score: MovementScore | undefined): MovementView {
+  const delay = score ? estimateView(score.delay) : null;
+  return {
+    ...row,
+    vehicles: score?.vehicles ?? 0,
+    days: score?.days ?? 0,
+    delay,
+    medianS: score ? finite(score.medianS) : null,
+    p95S: score ? finite(score.p95S) : null,
+    los: losView(delay),
+    stopShare: score ? estimateView(score.stopShare) : null,
+    stopsPerVehicle: score ? finite(score.stopsPerVehicle) : null,
+    evidence: score?.evidence ?? NO_EVIDENCE,
+  };
+}

@@ -1,0 +1,82 @@
+import { levelOfService } from "@/core/stats";
+import type { JunctionScore } from "@/core/scores/types";
+import { estimateView, type EstimateView, type NeedleView, type RankedJunction } from "@/domain/screen";
+import type { CatalogueJunction } from "../catalogue/catalogue";
+import type { ScoredCity } from "./score-city";
+
+export const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
+
+export function losView(delay: EstimateView | null): { at: string; low: string; high: string } | null {
+  if (!delay) return null;
+  return { at: levelOfService(delay.value), low: levelOfService(delay.low), high: levelOfService(delay.high) };
+}
+
+export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJunction {
+  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: junction.lat, lon: junction.lon, corridor: junction.corridor };
+  const score = scored.junctionScores.get(junction.id);
+  const needles = needlesOf(junction.id, scored);
+  if (!score || score.vehicles === 0) return { ...base, ...UNSEEN, needles };
+  const delay = estimateView(score.delay);
+  const worstLeg = scored.legScores.get(score.worstLeg);
+  return {
+    ...base,
+    rank: finite(score.rank),
+    rankLow: finite(score.rankLow),
+    rankHigh: finite(score.rankHigh),
+    worst: worstOf(score, scored),
+    delay,
+    shrunkDelayS: finite(score.shrunk.value),
+    medianS: finite(score.medianS),
+    p95S: finite(score.p95S),
+    los: losView(delay),
+    hoursSeen: finite(score.hoursSeen),
+    stopsPerVehicle: finite(score.stopsPerVehicle),
+    reachM: worstLeg ? finite(worstLeg.reachP95M) : null,
+    storageM: scored.catalogue.legs.get(score.worstLeg)?.storageM ?? null,
+    spill: estimateView(score.spill),
+    vehicles: score.vehicles,
+    days: score.days,
+    evidence: score.evidence,
+    needles,
+  };
+}
+
+const UNSEEN = {
+  rank: null,
+  rankLow: null,
+  rankHigh: null,
+  worst: null,
+  delay: null,
+  shrunkDelayS: null,
+  medianS: null,
+  p95S: null,
+  los: null,
+  hoursSeen: null,
+  stopsPerVehicle: null,
+  reachM: null,
+  storageM: null,
+  spill: null,
+  vehicles: 0,
+  days: 0,
+  evidence: "none" as const,
+};
+
+function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["worst"] {
+  const movement = scored.catalogue.movements.get(score.worstMovement);
+  const figures = scored.movementScores.get(score.worstMovement);
+  const leg = movement && scored.catalogue.legs.get(movement.legId);
+  if (!movement || !figures || !leg) return null;
+  return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: figures.delay.value };
+}
+
+function needlesOf(junctionId: number, scored: ScoredCity): NeedleView[] {
+  return (scored.catalogue.legsOfJunction.get(junctionId) ?? []).map((leg) => {
+    const score = scored.legScores.get(leg.id);
+    return {
+      legId: leg.id,
+      lieDeg: (leg.bearingDeg + 180) % 360,
+      reachM: score ? finite(score.reachP95M) : null,
+      delayS: score ? finite(score.delay.value) : null,
+    };
+  });
+}

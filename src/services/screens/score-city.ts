@@ -1,0 +1,76 @@
+import { METHOD_VERSION } from "@/core/method-version";
+import { scoreScreen } from "@/core/scores";
+import type { JunctionScore, LegScore, MovementScore, ScreenScores } from "@/core/scores/types";
+import { isoFromDay } from "@/domain/local-time";
+import type { ScreenQuery, ScreenResult } from "@/domain/screen";
+import { periodWindow, type CitySettings, type TimeWindow } from "@/domain/settings";
+import { cityCatalogue, type CityCatalogue } from "../catalogue/catalogue";
+import type { Context } from "../context";
+import { readSettings } from "../settings/read-settings";
+import { loadScreenDays, type ScreenDays } from "./screen-data";
+
+export interface ScoredCity {
+  catalogue: CityCatalogue;
+  scores: ScreenScores;
+  data: ScreenDays;
+  window: TimeWindow;
+  settings: CitySettings;
+  movementScores: Map<number, MovementScore>;
+  legScores: Map<number, LegScore>;
+  junctionScores: Map<number, JunctionScore>;
+}
+
+const MAX_REMEMBERED = 24;
+const remembered = new WeakMap<object, Map<string, ScoredCity>>();
+
+export type WhenAndTurn = Pick<ScreenQuery, "period" | "from" | "to" | "days" | "since" | "until" | "turn">;
+
+export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<ScoredCity> {
+  const settings = await readSettings(ctx.db);
+  const catalogue = await cityCatalogue(ctx.db);
+  const window = windowOf(settings, query);
+  const key = [catalogue.version, window.fromMin, window.toMin, query.days, query.since, query.until, query.turn].join("|");
+  let known = remembered.get(ctx.db);
+  if (!known) remembered.set(ctx.db, (known = new Map()));
+  const hit = known.get(key);
+  if (hit) return hit;
+
+  const data = await loadScreenDays(ctx.db, query);
+  const scores = scoreScreen(data.days, catalogue.keys, {
+    fromQuarter: window.fromMin / 15,
+    toQuarter: window.toMin / 15,
+    turn: query.turn === "any" ? null : query.turn,
+  });
+  const scored: ScoredCity = {
+    catalogue,
+    scores,
+    data,
+    window,
+    settings,
+    movementScores: new Map(scores.movements.map((score) => [score.movement, score])),
+    legScores: new Map(scores.legs.map((score) => [score.leg, score])),
+    junctionScores: new Map(scores.junctions.map((score) => [score.junction, score])),
+  };
+  if (known.size >= MAX_REMEMBERED) known.delete(known.keys().next().value as string);
+  known.set(key, scored);
+  return scored;
+}
+
+export function windowOf(settings: CitySettings, query: WhenAndTurn): TimeWindow {
+  if (query.from !== undefined && query.to !== undefined) return { fromMin: query.from, toMin: query.to };
+  return periodWindow(settings, query.period);
+}
+
+export function basisOf(scored: ScoredCity): ScreenResult["basis"] {
+  const { data, scores, window } = scored;
+  return {
+    firstDate: data.firstDay === null ? null : isoFromDay(data.firstDay),
+    lastDate: data.lastDay === null ? null : isoFromDay(data.lastDay),
+    days: data.days.length,
+    traversals: scores.traversals,
+    medianIntervalS: data.medianIntervalS,
+    methodVersion: METHOD_VERSION,
+    fromMin: window.fromMin,
+    toMin: window.toMin,
+  };
+}

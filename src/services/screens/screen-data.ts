@@ -1,0 +1,86 @@
+import { inArray } from "drizzle-orm";
+import { decodeScreenDay, mergeScreenDays } from "@/core/scores";
+import type { ScreenDay } from "@/core/scores/types";
+import type { Db } from "@/db/client";
+import { screenDays } from "@/db/schema";
+import { dayFromIso, weekdayOf } from "@/domain/local-time";
+import type { DayType } from "@/domain/screen";
+
+interface Slice {
+  id: number;
+  day: number;
+  medianIntervalS: number | null;
+  traversals: number;
+}
+
+export interface ScreenDays {
+  days: ScreenDay[];
+  firstDay: number | null;
+  lastDay: number | null;
+  medianIntervalS: number | null;
+}
+
+export interface DateChoice {
+  days: DayType;
+  since?: string;
+  until?: string;
+}
+
+/** Decoded slices stay in memory: a city's months are a few hundred megabytes, and every filter reads them. */
+const decoded = new WeakMap<object, Map<number, ScreenDay>>();
+
+export async function listSlices(db: Db): Promise<Slice[]> {
+  return db
+    .select({
+      id: screenDays.id,
+      day: screenDays.day,
+      medianIntervalS: screenDays.medianIntervalS,
+      traversals: screenDays.traversals,
+    })
+    .from(screenDays)
+    .orderBy(screenDays.day, screenDays.id);
+}
+
+export function isChosenDay(day: number, choice: DateChoice): boolean {
+  if (choice.since && day < dayFromIso(choice.since)) return false;
+  if (choice.until && day > dayFromIso(choice.until)) return false;
+  const weekday = weekdayOf(day);
+  if (choice.days === "weekdays") return weekday >= 1 && weekday <= 5;
+  if (choice.days === "saturday") return weekday === 6;
+  if (choice.days === "sunday") return weekday === 0;
+  return true;
+}
+
+export async function loadScreenDays(db: Db, choice: DateChoice): Promise<ScreenDays> {
+  const chosen = (await listSlices(db)).filter((slice) => isChosenDay(slice.day, choice));
+  const bySlice = await decodeSlices(db, chosen);
+  const byDay = new Map<number, ScreenDay[]>();
+  for (const slice of chosen) {
+    const list = byDay.get(slice.day) ?? [];
+    list.push(bySlice.get(slice.id) as ScreenDay);
+    byDay.set(slice.day, list);
+  }
+  const days = [...byDay.values()].map((slices) => (slices.length === 1 ? slices[0] : mergeScreenDays(slices)));
+  const intervals = chosen.flatMap((slice) => (slice.medianIntervalS === null ? [] : [slice.medianIntervalS])).sort((a, b) => a - b);
+  return {
+    days,
+    firstDay: days.length > 0 ? days[0].day : null,
+    lastDay: days.length > 0 ? days[days.length - 1].day : null,
+    medianIntervalS: intervals.length > 0 ? intervals[Math.floor(intervals.length / 2)] : null,
+  };
+}
+
+async function decodeSlices(db: Db, slices: Slice[]): Promise<Map<number, ScreenDay>> {
+  let known = decoded.get(db);
+  if (!known) decoded.set(db, (known = new Map()));
+  const missing = slices.filter((slice) => !known.has(slice.id)).map((slice) => slice.id);
+  if (missing.length > 0) {
+    const rows = await db
+      .select({ id: screenDays.id, payload: screenDays.payload })
+      .from(screenDays)
+      .where(inArray(screenDays.id, missing));
+    // The driver's buffer may sit at an odd offset of a pool; typed views need their own.
+    for (const row of rows) known.set(row.id, decodeScreenDay(row.payload.slice().buffer as ArrayBuffer));
+  }
+  return known;
+}
