@@ -51,6 +51,8 @@ export async function readMovements(db: Db, legIds: number[]) {
       referenceS: movements.referenceS,
       referenceSource: movements.referenceSource,
       referenceN: movements.referenceN,
+      cordonUpM: movements.cordonUpM,
+      cordonDownM: movements.cordonDownM,
     })
     .from(movements)
     .where(inArray(movements.legId, legIds))
