@@ -1,0 +1,27 @@
+import { redirect } from "next/navigation";
+import type { ReactNode } from "react";
+import { HOME_OF_ROLE } from "@/domain/actor";
+import { currentContext } from "@/server/current-context";
+import { getSettings } from "@/services/settings/get-settings";
+import { CityProvider, LOCALE } from "@/ui/shell/city";
+import { DeskHeader } from "@/ui/shell/desk-header";
+import { placesFor } from "@/ui/shell/navigation";
+
+export default async function DeskLayout({ children }: { children: ReactNode }) {
+  const ctx = await currentContext();
+  const { actor } = ctx;
+  if (actor.type !== "user") redirect("/sign-in");
+  const settings = await getSettings(ctx);
+  const places = placesFor(actor).map(({ href, label }) => ({ href, label }));
+  const person = { name: actor.name, email: actor.email, role: actor.role };
+  return (
+    <CityProvider city={{ settings, locale: LOCALE, role: actor.role }}>
+      <div className="flex min-h-dvh flex-col">
+        <DeskHeader places={places} person={person} cityName={settings.cityName} home={HOME_OF_ROLE[actor.role]} />
+        <main id="content" tabIndex={-1} className="flex flex-1 flex-col bg-sheet outline-none">
+          {children}
+        </main>
+      </div>
+    </CityProvider>
+  );
+}

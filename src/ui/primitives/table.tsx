@@ -1,0 +1,43 @@
+import type { ReactNode, TdHTMLAttributes, ThHTMLAttributes } from "react";
+import { classNames } from "./class-names";
+
+/** A ruled table that scrolls sideways inside itself where the window is narrow. `caption` is read out, and shown on request. */
+export function RuledTable({ caption, showCaption = false, children, className }: { caption: string; showCaption?: boolean; children: ReactNode; className?: string }) {
+  return (
+    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label={caption}>
+      <table className={classNames("w-full border-collapse text-[0.97rem] leading-snug", className)}>
+        <caption className={showCaption ? "pb-2 text-left font-semibold" : "sr-only"}>{caption}</caption>
+        {children}
+      </table>
+    </div>
+  );
+}
+
+export function Th({ numeric, className, scope = "col", ...rest }: ThHTMLAttributes<HTMLTableCellElement> & { numeric?: boolean }) {
+  return <th scope={scope} className={classNames("border-b border-ink px-2 pb-1.5 align-bottom text-sm font-normal leading-tight text-ink-soft", numeric ? "text-right" : "text-left", className)} {...rest} />;
+}
+
+export function Td({ numeric, className, ...rest }: TdHTMLAttributes<HTMLTableCellElement> & { numeric?: boolean }) {
+  return <td className={classNames("border-b border-rule px-2 py-2 align-top", numeric ? "text-right tabular-nums" : "text-left", className)} {...rest} />;
+}
+
+/** Head of a column that sorts. `dir` is null where another column sorts. */
+export function SortTh(props: { label: ReactNode; dir: "asc" | "desc" | null; onSort: () => void; numeric?: boolean; className?: string }) {
+  const aria = props.dir === null ? "none" : props.dir === "asc" ? "ascending" : "descending";
+  return (
+    <Th numeric={props.numeric} aria-sort={aria} className={props.className}>
+      <button type="button" onClick={props.onSort} className={classNames("inline-flex min-h-6 items-end gap-1 hover:text-ink", props.numeric ? "flex-row-reverse text-right" : "text-left", props.dir && "font-semibold text-ink")}>
+        <span>{props.label}</span>
+        <SortMark dir={props.dir} />
+      </button>
+    </Th>
+  );
+}
+
+function SortMark({ dir }: { dir: "asc" | "desc" | null }) {
+  return (
+    <svg aria-hidden="true" width="7" height="12" viewBox="0 0 7 12" className={dir ? "" : "invisible"}>
+      <path d={dir === "asc" ? "M3.5 1v10M.8 4 3.5 1l2.7 3" : "M3.5 1v10M.8 8l2.7 3 2.7-3"} fill="none" stroke="#C43E1C" strokeWidth="1.5" />
+    </svg>
+  );
+}
