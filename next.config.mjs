@@ -8,7 +8,9 @@ export default {
   // Tests build beside the developer's own build.
   distDir: process.env.NEXT_DIST_DIR ?? ".next",
   poweredByHeader: false,
+  // A page that a role may not see answers 403 and shows the nearest forbidden.tsx.
+  experimental: { authInterrupts: true },
   turbopack: { root: here },
   outputFileTracingRoot: here,
-  serverExternalPackages: ["pg", "pg-copy-streams", "pg-boss", "@node-rs/argon2", "nodemailer", "smtp-server"],
+  serverExternalPackages: ["pg", "pg-copy-streams", "pg-boss", "@node-rs/argon2", "nodemailer", "smtp-server", "mailparser"],
 };

@@ -1,0 +1,90 @@
+import { resolve } from "node:path";
+import { z } from "zod";
+
+/** How the installation runs: `demo` shows the invented city with known accounts, `production` accepts no defaults. */
+export const MODES = ["production", "demo", "development", "test"] as const;
+export type Mode = (typeof MODES)[number];
+
+/** Known to everyone who reads this file, hence refused in production. */
+const DEFAULT_SECRET = "tailmark-development-secret-known-to-all";
+
+const positive = (fallback: number, max: number) => z.coerce.number().int().min(1).max(max).default(fallback);
+
+const Env = z.object({
+  /** Unset: `production` for a production build, else `development`. */
+  TAILMARK_MODE: z.enum(MODES),
+  /** PostgreSQL 15 or later. */
+  DATABASE_URL: z.url({ protocol: /^postgres(ql)?$/ }),
+  /** Signs the session cookies; 32 characters or more. */
+  NEXTAUTH_SECRET: z.string().min(32),
+  /** Address under which people reach the application; links in mail start with it. */
+  BASE_URL: z.url({ protocol: /^https?$/ }).transform((url) => url.replace(/\/+$/, "")),
+  /** Folder of uploads and, in demo and tests, of kept mail. */
+  DATA_DIR: z.string().default(".data").transform((path) => resolve(path)),
+  /** Mail server. Unset outside production: mail is kept in a folder by a local stand-in. */
+  SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
+  /** Port on loopback of that stand-in. */
+  KEPT_MAIL_PORT: positive(2525, 65_535),
+  MAIL_FROM: z.string().default("Tailmark <tailmark@localhost>"),
+  /** Hours until a session ends and the person signs in again. */
+  SESSION_HOURS: positive(12, 24 * 30),
+  /** Jobs that one worker process runs at the same time. */
+  WORKER_CONCURRENCY: positive(1, 16),
+  /** First administrator of an empty production database; receives an invitation. */
+  ADMIN_EMAIL: z.email().optional(),
+});
+
+export type Env = z.infer<typeof Env>;
+
+type RawEnv = Record<string, string | undefined>;
+
+/** Throws one sentence that names every offending variable. */
+export function readEnv(raw: RawEnv): Env {
+  const given = Object.fromEntries(Object.entries(raw).filter(([, value]) => value !== ""));
+  const mode = given.TAILMARK_MODE ?? (given.NODE_ENV === "production" ? "production" : "development");
+  const parsed = Env.safeParse({ ...(mode === "production" ? {} : developmentDefaults()), ...given, TAILMARK_MODE: mode });
+  if (!parsed.success) {
+    const faults = parsed.error.issues.map((issue) => `${issue.path.join(".")}: ${issue.message}`);
+    throw new Error(`The environment is not usable. ${faults.join("; ")}`);
+  }
+  refuseDefaults(parsed.data);
+  return parsed.data;
+}
+
+function developmentDefaults(): RawEnv {
+  return {
+    DATABASE_URL: "postgres://tailmark@127.0.0.1:5432/tailmark",
+    NEXTAUTH_SECRET: DEFAULT_SECRET,
+    BASE_URL: "http://127.0.0.1:3000",
+  };
+}
+
+function refuseDefaults(env: Env): void {
+  if (env.TAILMARK_MODE !== "production") return;
+  if (env.NEXTAUTH_SECRET === DEFAULT_SECRET) {
+    throw new Error("NEXTAUTH_SECRET is the development default; production needs a secret of its own.");
+  }
+  if (!env.SMTP_URL) throw new Error("SMTP_URL is missing; production needs a mail server.");
+}
+
+let current: Env | undefined;
+
+/** Parsed once, on first use, so that a build needs no database. */
+export function env(): Env {
+  if (!current) {
+    current = readEnv(process.env);
+    // The sign-in library reads its own variable; it must name the same address.
+    process.env.NEXTAUTH_URL ??= current.BASE_URL;
+  }
+  return current;
+}
+
+/** Address of the mail server or of its local stand-in. */
+export function smtpUrl(settings: Env): string {
+  return settings.SMTP_URL ?? `smtp://127.0.0.1:${settings.KEPT_MAIL_PORT}`;
+}
+
+/** Mail is kept for an administrator to read where no mail server is named. */
+export function keepsMail(settings: Env): boolean {
+  return settings.SMTP_URL === undefined;
+}

@@ -1,0 +1,72 @@
+import { sql } from "drizzle-orm";
+import PgBoss from "pg-boss";
+import type { Db } from "@/db/client";
+import type { JobDefinition } from "./job";
+
+export interface Queue {
+  /**
+   * Queues a job; given a transaction, only if that commits. False when one of the same key waits already.
+   * Throws a ZodError for a payload of the wrong shape.
+   */
+  enqueue<P extends object>(job: JobDefinition<P>, payload: NoInfer<P>, options?: { db?: Db }): Promise<boolean>;
+  stop(): Promise<void>;
+}
+
+/** A queue that can only be filled. Its tables are made by `prepareQueues`. */
+export function openQueue(db: Db): Queue {
+  const boss = new PgBoss({ db: executorOf(db), migrate: false, supervise: false, schedule: false });
+  boss.on("error", (error) => console.error("Job queue:", error.message));
+  let started: Promise<unknown> | undefined;
+
+  return {
+    async enqueue(job, payload, options = {}) {
+      started ??= boss.start();
+      await started;
+      const id = await boss.send(job.name, job.payload.parse(payload), {
+        ...sendOptions(job, payload),
+        ...(options.db && { db: executorOf(options.db) }),
+      });
+      return id !== null;
+    },
+    async stop() {
+      if (started) await boss.stop({ graceful: false, close: false });
+    },
+  };
+}
+
+function sendOptions<P extends object>(job: JobDefinition<P>, payload: P): PgBoss.SendOptions {
+  return {
+    retryLimit: job.retries,
+    retryDelay: 5,
+    retryBackoff: true,
+    expireInSeconds: job.timeoutS,
+    ...(job.key && { singletonKey: job.key(payload) }),
+  };
+}
+
+/** Makes or updates the queue's tables and one queue for each job. Safe to run twice. */
+export async function prepareQueues(databaseUrl: string, jobs: readonly Pick<JobDefinition<never>, "name" | "key">[]): Promise<void> {
+  const boss = new PgBoss({ connectionString: databaseUrl, max: 2, supervise: false, schedule: false });
+  boss.on("error", (error) => console.error("Job queue:", error.message));
+  await boss.start();
+  try {
+    // "short" keeps one waiting job for each key; without keys it would keep one waiting job at all.
+    for (const job of jobs) await boss.createQueue(job.name, { name: job.name, policy: job.key ? "short" : "standard" });
+  } finally {
+    await boss.stop({ graceful: false });
+  }
+}
+
+/** Lets the queue speak through a pool or a transaction that is already open. */
+export function executorOf(db: Db): PgBoss.Db {
+  return {
+    async executeSql(text, values: unknown[] = []) {
+      const parts = text.split(/(\$\d+)/).map((part) => {
+        const place = /^\$(\d+)$/.exec(part);
+        return place ? sql`${sql.param(values[Number(place[1]) - 1])}` : sql.raw(part);
+      });
+      const result = await db.execute(sql.join(parts));
+      return { rows: result.rows };
+    },
+  };
+}
