@@ -1,0 +1,8 @@
+import { gridScenario } from "./grid";
+import type { Scenario } from "./types";
+
+/** Scenarios to tune on. */
+export const TUNING: Scenario[] = [gridScenario()];
+
+/** Kept aside while the core was tuned. */
+export const HOLD_OUT: Scenario[] = [];

@@ -1,0 +1,76 @@
+import { readFileSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+
+import type { EdgeSpec, Scenario } from "../scenarios/types";
+import { runProgram } from "./programs";
+
+/** Writes the scenario's streets as plain XML and has netconvert build the network; returns its path. */
+export function writeNetwork(scenario: Scenario, folder: string): string {
+  const nodes = scenario.nodes.map(({ id, x, y, kind }) => {
+    const type = kind === "signal" ? "traffic_light" : kind === "end" ? "dead_end" : "priority";
+    return `<node id="${id}" x="${x.toFixed(2)}" y="${y.toFixed(2)}" type="${type}"/>`;
+  });
+  const edges = scenario.edges.map((edge) => edgeXml(scenario, edge));
+  const connections = (scenario.connections ?? []).map(
+    (link) => `<connection from="${link.from}" to="${link.to}" fromLane="${link.fromLane}" toLane="${link.toLane}"/>`,
+  );
+  const files = {
+    nodes: write(folder, "plain.nod.xml", "nodes", nodes),
+    edges: write(folder, "plain.edg.xml", "edges", edges),
+    connections: write(folder, "plain.con.xml", "connections", connections),
+  };
+  const network = join(folder, "net.xml");
+  runProgram("netconvert", [
+    "-n", files.nodes, "-e", files.edges, "-x", files.connections, "-o", network,
+    "--offset.disable-normalization", "--no-turnarounds", String(!scenario.turnarounds),
+    "--tls.cycle.time", String(scenario.cycleS), "--tls.left-green.time", String(scenario.leftGreenS),
+    "--tls.yellow.time", "3", "--tls.allred.time", "1", "--tls.default-type", "static",
+    "--junctions.corner-detail", "5", "--lefthand", String(scenario.driveSide === "left"), "--no-warnings",
+  ]);
+  return network;
+}
+
+function edgeXml(scenario: Scenario, edge: EdgeSpec): string {
+  const ends = [edge.from, edge.to].map((id) => {
+    const node = scenario.nodes.find((candidate) => candidate.id === id);
+    if (!node) throw new RangeError(`Edge ${edge.id} of ${scenario.id} names the unknown node ${id}.`);
+    return node;
+  });
+  const points = [[ends[0].x, ends[0].y], ...(edge.shape ?? []), [ends[1].x, ends[1].y]];
+  const shape = edge.shape ? ` shape="${points.map((point) => point.map((v) => v.toFixed(2)).join(",")).join(" ")}"` : "";
+  return (
+    `<edge id="${edge.id}" from="${edge.from}" to="${edge.to}" numLanes="${edge.lanes}"` +
+    ` speed="${edge.speedMs}" priority="${edge.priority ?? 5}"${shape}/>`
+  );
+}
+
+function write(folder: string, name: string, root: string, lines: string[]): string {
+  const path = join(folder, name);
+  writeFileSync(path, `<${root}>\n${lines.join("\n")}\n</${root}>\n`);
+  return path;
+}
+
+/**
+ * Copies the programs that netconvert chose, with the scenario's offsets and green factors, or with
+ * green for everybody (`allGreen`: what a vehicle needs when no signal delays it).
+ */
+export function writeSignals(scenario: Scenario, networkPath: string, folder: string, allGreen: boolean): string {
+  const xml = readFileSync(networkPath, "utf8");
+  const programs = [...xml.matchAll(/<tlLogic id="([^"]+)"[^>]*>([\s\S]*?)<\/tlLogic>/g)].map(([, id, body]) => {
+    const phases = [...body.matchAll(/<phase duration="([^"]+)"\s+state="([^"]+)"/g)];
+    const signal = scenario.signals?.[id] ?? {};
+    if (allGreen) return program(id, 0, [`<phase duration="90" state="${"G".repeat(phases[0][2].length)}"/>`]);
+    let green = 0;
+    const lines = phases.map(([, duration, state]) => {
+      const isGreen = /[Gg]/.test(state) && !/y/.test(state);
+      const factor = isGreen ? (signal.greenFactors?.[green++] ?? 1) : 1;
+      return `<phase duration="${Math.max(3, Math.round(Number(duration) * factor))}" state="${state}"/>`;
+    });
+    return program(id, signal.offsetS ?? 0, lines);
+  });
+  return write(folder, allGreen ? "green.add.xml" : "signals.add.xml", "additional", programs);
+}
+
+function program(id: string, offsetS: number, phases: string[]): string {
+  return `<tlLogic id="${id}" type="static" programID="reference" offset="${offsetS}">${phases.join("")}</tlLogic>`;
+}
