@@ -95,6 +95,7 @@ export interface RankedJunction {
   name: string;
   lat: number;
   lon: number;
+  corridorId: number | null;
   corridor: string | null;
   /** Null for junctions whose evidence is "none": they are listed last and never ranked. */
   rank: number | null;

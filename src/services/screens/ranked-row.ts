@@ -12,7 +12,7 @@ export function losView(delay: EstimateView | null): { at: string; low: string; 
 }
 
 export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJunction {
-  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: junction.lat, lon: junction.lon, corridor: junction.corridor };
+  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: junction.lat, lon: junction.lon, corridorId: junction.corridorId, corridor: junction.corridor };
   const score = scored.junctionScores.get(junction.id);
   const needles = needlesOf(junction.id, scored);
   if (!score || score.vehicles === 0) return { ...base, ...UNSEEN, needles };
