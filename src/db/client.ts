@@ -7,7 +7,7 @@ type Schema = typeof schema;
 export type Db = NodePgDatabase<Schema> | Parameters<Parameters<NodePgDatabase<Schema>["transaction"]>[0]>[0];
 
 export interface Database {
-  db: NodePgDatabase<Schema>;
+  db: NodePgDatabase<Schema> & { $client: Pool };
   pool: Pool;
   close(): Promise<void>;
 }

@@ -3,7 +3,8 @@ import { z } from "zod";
 export const UPLOAD_KINDS = ["pings", "junctions"] as const;
 export type UploadKind = (typeof UPLOAD_KINDS)[number];
 
-export const UPLOAD_STATES = ["waiting", "reading", "done", "failed"] as const;
+/** Received files wait for a person to settle their mapping; waiting ones for a worker. */
+export const UPLOAD_STATES = ["received", "waiting", "reading", "done", "failed"] as const;
 export type UploadState = (typeof UPLOAD_STATES)[number];
 
 export const DELIMITERS = [",", ";", "\t"] as const;
@@ -26,6 +27,9 @@ export const JUNCTION_FIELDS = [
   "notes",
 ] as const;
 export type PingField = (typeof PING_FIELDS)[number];
+/** Fields without which a file cannot be read. */
+export const PING_NEEDS = ["vehicle_id", "timestamp", "lat", "lon"] as const satisfies readonly PingField[];
+export const JUNCTION_NEEDS = ["junction_id", "name", "lat", "lon"] as const satisfies readonly JunctionField[];
 export type JunctionField = (typeof JUNCTION_FIELDS)[number];
 
 /** How to read a file: what detection proposes, the person corrects, and a supplier's next file starts from. */

@@ -12,9 +12,8 @@ import { exitView, legView, movementView } from "./leg-view";
 import { readExits, readLegs, readMovements } from "./junction-rows";
 
 export const GetJunction = z.object({ junctionId: z.coerce.number().int().positive(), when: WhenQuery });
-export type GetJunction = z.infer<typeof GetJunction>;
 
-export async function getJunction(ctx: Context, input: GetJunction): Promise<JunctionView> {
+export async function getJunction(ctx: Context, input: z.input<typeof GetJunction>): Promise<JunctionView> {
   requirePermission(ctx, "junction.view");
   const parsed = GetJunction.safeParse(input);
   if (!parsed.success) throw notFound("Junction", String(input.junctionId));

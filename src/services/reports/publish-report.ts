@@ -29,7 +29,7 @@ export async function publishReport(ctx: Context, input: PublishReport): Promise
       .insert(hotspotReports)
       .values({ title, query, result: { ...result, rows }, publishedBy, publishedAt: ctx.now })
       .returning({ id: hotspotReports.id });
-    await recordAudit({ ...ctx, db: tx }, "report.publish", row.id, { title });
+    await recordAudit(tx, ctx, { action: "published report", subject: title, detail: { reportId: row.id } });
     return row;
   });
 }

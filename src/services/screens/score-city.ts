@@ -6,7 +6,7 @@ import type { ScreenQuery, ScreenResult } from "@/domain/screen";
 import { periodWindow, type CitySettings, type TimeWindow } from "@/domain/settings";
 import { cityCatalogue, type CityCatalogue } from "../catalogue/catalogue";
 import type { Context } from "../context";
-import { readSettings } from "../settings/read-settings";
+import { getSettings } from "../settings/get-settings";
 import { loadScreenDays, type ScreenDays } from "./screen-data";
 
 export interface ScoredCity {
@@ -26,7 +26,7 @@ const remembered = new WeakMap<object, Map<string, ScoredCity>>();
 export type WhenAndTurn = Pick<ScreenQuery, "period" | "from" | "to" | "days" | "since" | "until" | "turn">;
 
 export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<ScoredCity> {
-  const settings = await readSettings(ctx.db);
+  const settings = await getSettings(ctx);
   const catalogue = await cityCatalogue(ctx.db);
   const window = windowOf(settings, query);
   const key = [catalogue.version, window.fromMin, window.toMin, query.days, query.since, query.until, query.turn].join("|");

@@ -12,10 +12,9 @@ import { basisOf, scoreCity } from "../screens/score-city";
 import { chosenDates } from "./chosen-dates";
 
 export const GetLegStrip = z.object({ legId: z.coerce.number().int().positive(), query: StripQuery });
-export type GetLegStrip = z.infer<typeof GetLegStrip>;
 
 /** All that a strip page says in words and figures; the tracks themselves come from getTracks. */
-export async function getLegStrip(ctx: Context, input: GetLegStrip): Promise<LegStripView> {
+export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStrip>): Promise<LegStripView> {
   requirePermission(ctx, "strip.view");
   const parsed = GetLegStrip.safeParse(input);
   if (!parsed.success) throw notFound("Leg", String(input.legId));

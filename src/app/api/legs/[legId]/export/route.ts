@@ -1,0 +1,9 @@
+import { stripQueryFromParams } from "@/domain/junction";
+import { csvResponse } from "@/server/csv-response";
+import { route } from "@/server/route";
+import { exportStrip } from "@/services/strips/export-strip";
+
+export const GET = route<{ legId: string }>(async (ctx, { legId }, request) => {
+  const query = stripQueryFromParams(Object.fromEntries(new URL(request.url).searchParams));
+  return csvResponse(await exportStrip(ctx, { legId, query }), `leg-${legId}-strip.csv`);
+});

@@ -1,0 +1,45 @@
+import { drizzle } from "drizzle-orm/node-postgres";
+import type { Pool, PoolClient } from "pg";
+import type { Db } from "./client";
+import * as schema from "./schema";
+
+function poolOf(db: Db): Pool {
+  if ("$client" in db) return db.$client as Pool;
+  throw new TypeError("Bulk work needs the pool, not a transaction.");
+}
+
+/** One transaction in which COPY and ordinary verbs share a connection. */
+export async function bulkTransaction<T>(db: Db, work: (tx: Db, client: PoolClient) => Promise<T>): Promise<T> {
+  const client = await poolOf(db).connect();
+  let broken: Error | undefined;
+  // A connection that dies in the middle would else be an unhandled event.
+  const onError = (error: Error) => (broken = error);
+  client.on("error", onError);
+  try {
+    await client.query("begin");
+    const result = await work(drizzle(client, { schema }), client);
+    await client.query("commit");
+    return result;
+  } catch (error) {
+    await client.query("rollback").catch((lost: Error) => (broken = lost));
+    throw error;
+  } finally {
+    client.off("error", onError);
+    client.release(broken);
+  }
+}
+
+/** Holds an advisory lock for as long as the work takes; a process that dies lets go of it. */
+export async function withAdvisoryLock<T>(db: Db, key: number, work: () => Promise<T>): Promise<T> {
+  const client = await poolOf(db).connect();
+  const onError = () => undefined;
+  client.on("error", onError);
+  try {
+    await client.query("select pg_advisory_lock($1)", [key]);
+    return await work();
+  } finally {
+    client.off("error", onError);
+    // Closing the connection releases the lock, whatever state it is in.
+    client.release(true);
+  }
+}

@@ -1,0 +1,210 @@
+import { inArray, sql, type SQL } from "drizzle-orm";
+import type { AnyPgColumn } from "drizzle-orm/pg-core";
+import { METHOD_VERSION } from "@/core/method-version";
+import type { DriveSide, JunctionPoint, Network } from "@/core/types";
+import type { Db } from "@/db/client";
+import { exits, legs, movements } from "@/db/schema";
+
+const ROWS_PER_STATEMENT = 400;
+
+/** Database keys by index into the network's lists. */
+export interface NetworkKeys {
+  legs: Int32Array;
+  exits: Int32Array;
+  movements: Int32Array;
+}
+
+const nullable = (value: number): number | null => (Number.isFinite(value) ? value : null);
+const orNaN = (value: number | null): number => value ?? NaN;
+
+/** The network that earlier uploads taught, in the core's shape. `junctions` carry their database keys. */
+export async function readNetwork(db: Db, points: (JunctionPoint & { key: number })[], driveSide: DriveSide): Promise<Network | undefined> {
+  const indexOf = new Map(points.map((point, index) => [point.key, index]));
+  const exitRows = await db.select().from(exits).orderBy(exits.id);
+  const legRows = await db.select().from(legs).orderBy(legs.id);
+  if (legRows.length === 0) return undefined;
+  const movementRows = await db.select().from(movements).orderBy(movements.id);
+  const exitIndex = new Map(exitRows.map((row, index) => [row.id, index]));
+  const legIndex = new Map(legRows.map((row, index) => [row.id, index]));
+  return {
+    junctions: points.map(({ id, lat, lon }) => ({ id, lat, lon })),
+    driveSide,
+    exits: exitRows.map((row) => ({
+      id: row.code,
+      junction: indexOf.get(row.junctionId) as number,
+      bearingDeg: row.bearingDeg,
+      line: Float64Array.from(row.line),
+      lengthM: lengthOf(row.line),
+      support: row.support,
+    })),
+    legs: legRows.map((row) => ({
+      id: row.code,
+      junction: indexOf.get(row.junctionId) as number,
+      name: row.name,
+      bearingDeg: row.bearingDeg,
+      line: Float64Array.from(row.line),
+      lengthM: lengthOf(row.line),
+      upstreamExit: row.upstreamExitId === null ? -1 : (exitIndex.get(row.upstreamExitId) ?? -1),
+      storageM: orNaN(row.storageM),
+      freeSpeedMs: orNaN(row.freeSpeedMs),
+      speedLimitMs: orNaN(row.speedLimitMs),
+      origin: row.origin,
+      stopLineOrigin: row.stopLineOrigin,
+      locked: row.locked,
+      support: row.support,
+      doubts: row.doubts,
+    })),
+    movements: movementRows.map((row) => ({
+      id: row.code,
+      leg: legIndex.get(row.legId) as number,
+      exit: exitIndex.get(row.exitId) as number,
+      turnDeg: row.turnDeg,
+      turn: row.turn,
+      referenceS: orNaN(row.referenceS),
+      referenceSource: row.referenceSource,
+      referenceN: row.referenceN,
+      cordonUpM: row.cordonUpM,
+      cordonDownM: row.cordonDownM,
+    })),
+  };
+}
+
+function lengthOf(line: readonly number[]): number {
+  let length = 0;
+  for (let i = 2; i < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
+  return length;
+}
+
+/** Writes what the pings taught; rows keep their keys by the identity that the core carries on. */
+export async function storeNetwork(db: Db, network: Network, junctionKeys: readonly number[]): Promise<NetworkKeys> {
+  const exitKeys = await upsert(network.exits, async (some) =>
+    db
+      .insert(exits)
+      .values(
+        some.map((exit) => ({
+          code: exit.id,
+          junctionId: junctionKeys[exit.junction],
+          bearingDeg: exit.bearingDeg,
+          line: Array.from(exit.line),
+          support: exit.support,
+          methodVersion: METHOD_VERSION,
+        })),
+      )
+      .onConflictDoUpdate({ target: exits.code, set: incoming(exits, ["bearingDeg", "line", "support", "methodVersion"]) })
+      .returning({ id: exits.id, code: exits.code }),
+  );
+  const legKeys = await upsert(network.legs, async (some) =>
+    db
+      .insert(legs)
+      .values(
+        some.map((leg) => ({
+          code: leg.id,
+          junctionId: junctionKeys[leg.junction],
+          name: leg.name,
+          bearingDeg: leg.bearingDeg,
+          line: Array.from(leg.line),
+          upstreamExitId: leg.upstreamExit < 0 ? null : exitKeys[leg.upstreamExit],
+          storageM: nullable(leg.storageM),
+          freeSpeedMs: nullable(leg.freeSpeedMs),
+          speedLimitMs: nullable(leg.speedLimitMs),
+          origin: leg.origin,
+          stopLineOrigin: leg.stopLineOrigin,
+          locked: leg.locked,
+          support: leg.support,
+          doubts: leg.doubts,
+          methodVersion: METHOD_VERSION,
+        })),
+      )
+      .onConflictDoUpdate({
+        target: legs.code,
+        set: incoming(legs, [
+          "name",
+          "bearingDeg",
+          "line",
+          "upstreamExitId",
+          "storageM",
+          "freeSpeedMs",
+          "speedLimitMs",
+          "origin",
+          "stopLineOrigin",
+          "support",
+          "doubts",
+          "methodVersion",
+        ]),
+      })
+      .returning({ id: legs.id, code: legs.code }),
+  );
+  const movementKeys = await upsert(network.movements, async (some) =>
+    db
+      .insert(movements)
+      .values(
+        some.map((movement) => ({
+          code: movement.id,
+          legId: legKeys[movement.leg],
+          exitId: exitKeys[movement.exit],
+          turnDeg: movement.turnDeg,
+          turn: movement.turn,
+          referenceS: nullable(movement.referenceS),
+          referenceSource: movement.referenceSource,
+          referenceN: movement.referenceN,
+          cordonUpM: movement.cordonUpM,
+          cordonDownM: movement.cordonDownM,
+          methodVersion: METHOD_VERSION,
+        })),
+      )
+      .onConflictDoUpdate({
+        target: movements.code,
+        set: incoming(movements, [
+          "turnDeg",
+          "turn",
+          "referenceS",
+          "referenceSource",
+          "referenceN",
+          "cordonUpM",
+          "cordonDownM",
+          "methodVersion",
+        ]),
+      })
+      .returning({ id: movements.id, code: movements.code }),
+  );
+  await dropUnused(db, network);
+  return { legs: legKeys, exits: exitKeys, movements: movementKeys };
+}
+
+/** Rows that the core no longer knows and that no traversal rests on would only haunt the plan of a junction. */
+async function dropUnused(db: Db, network: Network): Promise<void> {
+  const gone = async (table: typeof legs | typeof movements | typeof exits, codes: string[]) => {
+    const known = await db.select({ id: table.id, code: table.code }).from(table);
+    const keep = new Set(codes);
+    return known.filter((row) => !keep.has(row.code)).map((row) => row.id);
+  };
+  const goneMovements = await gone(movements, network.movements.map((movement) => movement.id));
+  if (goneMovements.length > 0) {
+    await db.delete(movements).where(
+      sql`${inArray(movements.id, goneMovements)} and not exists (select 1 from traversals where traversals.movement_id = ${movements.id})`,
+    );
+  }
+  const goneLegs = await gone(legs, network.legs.map((leg) => leg.id));
+  if (goneLegs.length > 0) {
+    await db.delete(legs).where(
+      sql`${inArray(legs.id, goneLegs)} and not exists (select 1 from movements where movements.leg_id = ${legs.id})`,
+    );
+  }
+}
+
+async function upsert<T extends { id: string }>(
+  list: readonly T[],
+  write: (some: T[]) => Promise<{ id: number; code: string }[]>,
+): Promise<Int32Array> {
+  const keyOf = new Map<string, number>();
+  for (let i = 0; i < list.length; i += ROWS_PER_STATEMENT) {
+    for (const row of await write(list.slice(i, i + ROWS_PER_STATEMENT))) keyOf.set(row.code, row.id);
+  }
+  return Int32Array.from(list, (item) => keyOf.get(item.id) as number);
+}
+
+/** `excluded.<column>` for each of the named columns. */
+function incoming<T extends object>(table: T, names: (keyof T & string)[]): Record<string, SQL> {
+  const columns = table as Record<string, AnyPgColumn>;
+  return Object.fromEntries(names.map((name) => [name, sql.raw(`excluded.${columns[name].name}`)]));
+}

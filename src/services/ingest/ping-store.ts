@@ -1,0 +1,163 @@
+import { mkdtemp, open, readFile, rm, type FileHandle } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import type { PingColumns } from "@/core/types";
+
+/** Pings of a file on their way to the core: in memory while they are few, else on disk in buckets of whole vehicles. */
+export interface PingStore {
+  add(batch: PingColumns): Promise<void>;
+  readonly length: number;
+  /** After the last `add`. Each bucket holds all pings of its vehicles. */
+  buckets(): AsyncGenerator<PingColumns>;
+  close(): Promise<void>;
+}
+
+const BYTES_PER_PING = 36;
+const BUCKETS = 48;
+const BUFFER_PINGS = 4096;
+
+export interface PingStoreOptions {
+  /** Pings held in memory before the store turns to the disk. */
+  memoryPings: number;
+}
+
+/** 5 million pings are 180 MB of columns: several such stores fit into a worker's gigabyte. */
+const DEFAULTS: PingStoreOptions = { memoryPings: 5_000_000 };
+
+export function openPingStore(options: PingStoreOptions = DEFAULTS): PingStore {
+  let columns = emptyColumns(1 << 16);
+  let spill: Spill | null = null;
+  let length = 0;
+
+  return {
+    get length() {
+      return length;
+    },
+    async add(batch) {
+      length += batch.length;
+      if (spill) return spill.add(batch);
+      columns = append(columns, batch);
+      if (columns.length <= options.memoryPings) return;
+      spill = await openSpill();
+      await spill.add(columns);
+      columns = emptyColumns(0);
+    },
+    async *buckets() {
+      if (!spill) {
+        if (columns.length > 0) yield columns;
+        return;
+      }
+      for (let i = 0; i < BUCKETS; i++) {
+        const bucket = await spill.read(i);
+        if (bucket.length > 0) yield bucket;
+      }
+    },
+    async close() {
+      columns = emptyColumns(0);
+      await spill?.close();
+    },
+  };
+}
+
+export function emptyColumns(capacity: number): PingColumns {
+  return {
+    length: 0,
+    vehicle: new Uint32Array(capacity),
+    tMs: new Float64Array(capacity),
+    lat: new Float64Array(capacity),
+    lon: new Float64Array(capacity),
+    speedMs: new Float32Array(capacity),
+    headingDeg: new Float32Array(capacity),
+  };
+}
+
+function append(to: PingColumns, batch: PingColumns): PingColumns {
+  const needed = to.length + batch.length;
+  let grown = to;
+  if (needed > to.vehicle.length) {
+    grown = emptyColumns(Math.max(needed, Math.ceil(to.vehicle.length * 1.6)));
+    copyInto(grown, 0, to);
+  }
+  copyInto(grown, to.length, batch);
+  grown.length = needed;
+  return grown;
+}
+
+function copyInto(to: PingColumns, at: number, from: PingColumns): void {
+  to.vehicle.set(from.vehicle.subarray(0, from.length), at);
+  to.tMs.set(from.tMs.subarray(0, from.length), at);
+  to.lat.set(from.lat.subarray(0, from.length), at);
+  to.lon.set(from.lon.subarray(0, from.length), at);
+  to.speedMs.set(from.speedMs.subarray(0, from.length), at);
+  to.headingDeg.set(from.headingDeg.subarray(0, from.length), at);
+}
+
+interface Spill {
+  add(batch: PingColumns): Promise<void>;
+  read(bucket: number): Promise<PingColumns>;
+  close(): Promise<void>;
+}
+
+interface BucketFile {
+  file: FileHandle;
+  path: string;
+  view: DataView;
+  filled: number;
+}
+
+async function openSpill(): Promise<Spill> {
+  const folder = await mkdtemp(join(tmpdir(), "tailmark-pings-"));
+  const files: BucketFile[] = [];
+  for (let i = 0; i < BUCKETS; i++) {
+    const path = join(folder, `${i}.pings`);
+    files.push({ file: await open(path, "w"), path, view: new DataView(new ArrayBuffer(BUFFER_PINGS * BYTES_PER_PING)), filled: 0 });
+  }
+  return {
+    async add(batch) {
+      for (let i = 0; i < batch.length; i++) {
+        const bucket = files[batch.vehicle[i] % BUCKETS];
+        writePing(bucket.view, bucket.filled++ * BYTES_PER_PING, batch, i);
+        if (bucket.filled === BUFFER_PINGS) await flush(bucket);
+      }
+    },
+    async read(index) {
+      await flush(files[index]);
+      const bytes = await readFile(files[index].path);
+      return readPings(new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength));
+    },
+    async close() {
+      for (const { file } of files) await file.close();
+      await rm(folder, { recursive: true, force: true });
+    },
+  };
+}
+
+async function flush(bucket: BucketFile): Promise<void> {
+  if (bucket.filled === 0) return;
+  await bucket.file.write(new Uint8Array(bucket.view.buffer, 0, bucket.filled * BYTES_PER_PING));
+  bucket.filled = 0;
+}
+
+function writePing(view: DataView, at: number, batch: PingColumns, i: number): void {
+  view.setUint32(at, batch.vehicle[i], true);
+  view.setFloat64(at + 4, batch.tMs[i], true);
+  view.setFloat64(at + 12, batch.lat[i], true);
+  view.setFloat64(at + 20, batch.lon[i], true);
+  view.setFloat32(at + 28, batch.speedMs[i], true);
+  view.setFloat32(at + 32, batch.headingDeg[i], true);
+}
+
+function readPings(view: DataView): PingColumns {
+  const columns = emptyColumns(view.byteLength / BYTES_PER_PING);
+  columns.length = columns.vehicle.length;
+  for (let i = 0; i < columns.length; i++) {
+    const at = i * BYTES_PER_PING;
+    columns.vehicle[i] = view.getUint32(at, true);
+    columns.tMs[i] = view.getFloat64(at + 4, true);
+    columns.lat[i] = view.getFloat64(at + 12, true);
+    columns.lon[i] = view.getFloat64(at + 20, true);
+    columns.speedMs[i] = view.getFloat32(at + 28, true);
+    columns.headingDeg[i] = view.getFloat32(at + 32, true);
+  }
+  return columns;
+}
