@@ -1,4 +1,4 @@
-import type { Estimate, Evidence, Turn } from "../types";
+import type { Estimate, Evidence, Turn } from "@/core/types";
 
 /**
  * Everything that ranking needs of one local day, as columns: small enough to keep a city's months in memory.

@@ -1,0 +1,40 @@
+/** How standing vehicles become a queue. Seconds, metres, metres a second. */
+export interface QueueOptions {
+  /** A stop begins below this speed (5 km/h) ... */
+  stopSpeedMs: number;
+  /** ... and ends above this one (10 km/h). */
+  goSpeedMs: number;
+  minStopS: number;
+  /** The first standing vehicle is at most this far from the stop line, */
+  headM: number;
+  /** each next one at most this far behind, */
+  gapM: number;
+  /** and all were standing within this time. */
+  memoryS: number;
+  /** Positions this far past the stop line still count as standing at it. */
+  pastLineM: number;
+  /** A leg whose storage is filled to this share spills back. */
+  spillShare: number;
+  /** A vehicle on the leg speaks for this long before it came and after it left. */
+  sightS: number;
+  /** Step in which the column is looked at. */
+  stepS: number;
+  /** Road that one standing vehicle takes, gap included: 25 ft, Highway Capacity Manual Eq. 31-155. */
+  jamSpacingM: number;
+}
+
+export const DEFAULT_QUEUE_OPTIONS: Readonly<QueueOptions> = Object.freeze({
+  stopSpeedMs: 5 / 3.6,
+  goSpeedMs: 10 / 3.6,
+  minStopS: 2,
+  headM: 60,
+  gapM: 80,
+  memoryS: 40,
+  pastLineM: 8,
+  spillShare: 0.9,
+  sightS: 30,
+  stepS: 5,
+  jamSpacingM: 7.62,
+});
+
+export const QUARTER_MS = 900_000;

@@ -1,0 +1,83 @@
+import type { Network, Traversals } from "@/core/types";
+import type { QueueOptions } from "./options";
+
+/** Where and when vehicles stood on legs, as columns in order of leg, then of time. */
+export interface Standings {
+  length: number;
+  leg: Uint32Array;
+  /** Index of the traversal. */
+  traversal: Uint32Array;
+  /** Distance from the stop line, metres. */
+  s: Float32Array;
+  fromMs: Float64Array;
+  toMs: Float64Array;
+}
+
+interface Standing {
+  leg: number;
+  traversal: number;
+  s: number;
+  fromMs: number;
+  toMs: number;
+}
+
+/**
+ * Stops on the leg, read off the tracks with hysteresis: below 5 km/h until above 10 km/h. Vehicles that stand past
+ * the stop line (waiting to turn) or at the upstream junction's box (waiting there to turn) are not this leg's queue
+ * and are left out. O(track points + standings × log).
+ */
+export function findStandings(network: Network, traversals: Traversals, options: QueueOptions): Standings {
+  const found: Standing[] = [];
+  for (let i = 0; i < traversals.length; i++) {
+    const leg = network.movements[traversals.movement[i]].leg;
+    const { storageM } = network.legs[leg];
+    const farthest = storageM > 0 ? storageM : Infinity;
+    for (const stop of stopsOfTrack(traversals, i, options)) {
+      if (stop.s < -options.pastLineM || stop.s > farthest) continue;
+      found.push({ leg, traversal: i, ...stop });
+    }
+  }
+  found.sort((a, b) => a.leg - b.leg || a.fromMs - b.fromMs || a.s - b.s);
+  return columnsOf(found);
+}
+
+/** Stops along one track: median position, first and last moment. */
+function stopsOfTrack(t: Traversals, i: number, options: QueueOptions): { s: number; fromMs: number; toMs: number }[] {
+  const stops: { s: number; fromMs: number; toMs: number }[] = [];
+  const end = t.trackOffset[i + 1];
+  let first = -1;
+  for (let p = t.trackOffset[i]; p + 1 < end; p++) {
+    const seconds = t.trackT[p + 1] - t.trackT[p];
+    if (!(seconds > 0)) continue;
+    const speed = (t.trackS[p] - t.trackS[p + 1]) / seconds;
+    if (first < 0 && speed < options.stopSpeedMs) first = p;
+    const goes = speed > options.goSpeedMs;
+    const closes = first >= 0 && (goes || p + 2 === end);
+    if (!closes) continue;
+    const last = goes ? p : p + 1;
+    const fromS = t.trackT[first];
+    const toS = t.trackT[last];
+    if (toS - fromS >= options.minStopS) {
+      stops.push({ s: medianOf(t.trackS, first, last), fromMs: t.enterMs[i] + fromS * 1000, toMs: t.enterMs[i] + toS * 1000 });
+    }
+    first = -1;
+  }
+  return stops;
+}
+
+function medianOf(values: Float32Array, first: number, last: number): number {
+  const sorted = values.slice(first, last + 1).sort();
+  const middle = (sorted.length - 1) / 2;
+  return (sorted[Math.floor(middle)] + sorted[Math.ceil(middle)]) / 2;
+}
+
+function columnsOf(found: Standing[]): Standings {
+  return {
+    length: found.length,
+    leg: Uint32Array.from(found, (f) => f.leg),
+    traversal: Uint32Array.from(found, (f) => f.traversal),
+    s: Float32Array.from(found, (f) => f.s),
+    fromMs: Float64Array.from(found, (f) => f.fromMs),
+    toMs: Float64Array.from(found, (f) => f.toMs),
+  };
+}

@@ -1,0 +1,58 @@
+import { quantile } from "@/core/stats/quantile";
+import type { Estimate } from "@/core/types";
+import { addCell, createLevel, figuresOf, sumCell } from "./delay-level";
+import { addLegQuarter, createReachLevel, spillEstimate } from "./leg-level";
+import { closeDay } from "./ratio-tally";
+import type { ScreenDay } from "./types";
+
+const QUARTERS = 96;
+
+/** One quarter of the local day. */
+export interface ProfileQuarter {
+  /** 0 to 95. */
+  quarter: number;
+  vehicles: number;
+  days: number;
+  delay: Estimate;
+  /** 95th percentile over days and legs; NaN where nothing was seen. */
+  reachP95M: number;
+  spill: Estimate;
+}
+
+/** What a profile is of, by the caller's keys: delays of movements, queues of legs. */
+export interface ProfileOf {
+  movements: readonly number[];
+  legs: readonly number[];
+}
+
+/** Day profile of some movements and legs: always 96 quarters. O(cells of the days). */
+export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): ProfileQuarter[] {
+  const movements = new Set(of.movements);
+  const legs = new Set(of.legs);
+  const level = createLevel(QUARTERS);
+  const queues = createReachLevel(QUARTERS);
+  for (const day of [...days].sort((a, b) => a.day - b.day)) {
+    for (let c = 0; c < day.cells; c++) {
+      if (movements.has(day.movement[c])) addCell(level, day.quarter[c], sumCell(day, c));
+    }
+    for (let k = 0; k < day.legQuarters; k++) {
+      if (!legs.has(day.leg[k])) continue;
+      addLegQuarter(queues, day.legQuarter[k], {
+        reachM: day.reachM[k],
+        reachEstimateM: day.reachEstimateM[k],
+        spilledS: day.spilledS[k],
+        observedS: day.observedS[k],
+      });
+    }
+    for (const tally of [level.delay, queues.spill]) closeDay(tally);
+  }
+  const figures = figuresOf(level, new Uint8Array(QUARTERS));
+  return Array.from({ length: QUARTERS }, (_, quarter) => ({
+    quarter,
+    vehicles: figures.vehicles(quarter),
+    days: figures.days(quarter),
+    delay: figures.delay(quarter),
+    reachP95M: quantile(queues.reachM[quarter], 0.95),
+    spill: spillEstimate(queues, quarter),
+  }));
+}
