@@ -1,0 +1,22 @@
+/** Run before web and worker: tables, queues, first accounts, demo city. Lines that begin with "> " are for the person who started it. */
+import { openDatabase } from "@/db/client";
+import { env } from "@/env";
+import { inviteFirstAdmin, seedDemoAccounts } from "./accounts";
+import { migrateDatabase } from "./migrate-database";
+import { seedCity } from "./seed";
+
+const settings = env();
+await migrateDatabase(settings.DATABASE_URL, "drizzle");
+const database = openDatabase(settings.DATABASE_URL, { max: 4 });
+try {
+  const say = (line: string) => console.log(line);
+  if (settings.TAILMARK_MODE === "production") {
+    for (const line of await inviteFirstAdmin(database.db, settings)) say(`> ${line}`);
+  } else {
+    const accounts = await seedDemoAccounts(database.db);
+    await seedCity({ database, settings, say });
+    for (const account of accounts) say(`> ${account.role.padEnd(10)}  ${account.email}  ${account.password}`);
+  }
+} finally {
+  await database.close();
+}

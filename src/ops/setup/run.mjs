@@ -1,0 +1,40 @@
+import { spawn } from "node:child_process";
+import { createInterface } from "node:readline";
+
+const KEPT_LINES = 40;
+
+/** A failure that a person can read as it stands: no stack is printed for it. */
+export class SetupError extends Error {}
+
+/**
+ * Runs a command to its end, quietly; its last lines are in the error when it fails.
+ * `onLine` sees every line of its output as it comes.
+ */
+export function run(command, args, { env, cwd, uid, gid, input, onLine } = {}) {
+  return new Promise((resolve, reject) => {
+    const child = spawn(command, args, {
+      cwd,
+      uid,
+      gid,
+      env: { ...process.env, ...env },
+      stdio: [input === undefined ? "ignore" : "pipe", "pipe", "pipe"],
+    });
+    const lines = [];
+    const keep = (line) => {
+      lines.push(line);
+      if (lines.length > KEPT_LINES) lines.shift();
+      onLine?.(line);
+    };
+    createInterface({ input: child.stdout }).on("line", keep);
+    createInterface({ input: child.stderr }).on("line", keep);
+    if (input !== undefined) {
+      child.stdin.on("error", () => undefined);
+      child.stdin.end(input);
+    }
+    child.on("error", (error) => reject(new SetupError(`${command} cannot be run: ${error.message}`)));
+    child.on("close", (code, signal) => {
+      if (code === 0) resolve(lines);
+      else reject(new SetupError(`${command} ${args[0] ?? ""} failed (${signal ?? `code ${code}`}).\n${lines.join("\n")}`));
+    });
+  });
+}

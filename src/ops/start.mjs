@@ -1,0 +1,156 @@
+/**
+ * `npm start`, and with --dev `npm run dev`: from a fresh clone to a running city.
+ * Plain Node: it runs before any package is installed.
+ */
+import { join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { bundlePrograms, ensureWebBuild, placeMapWorker } from "./setup/build.mjs";
+import { ensurePackages } from "./setup/packages.mjs";
+import { anyFreePort, freePortFrom } from "./setup/ports.mjs";
+import { startPostgres } from "./setup/postgres-server.mjs";
+import { startProcess, waitForAnswer } from "./setup/processes.mjs";
+import { step } from "./setup/progress.mjs";
+import { run, SetupError } from "./setup/run.mjs";
+import { takeRun } from "./setup/run-record.mjs";
+import { cloneSecrets } from "./setup/secrets.mjs";
+
+const root = fileURLToPath(new URL("../..", import.meta.url)).replace(/\/$/, "");
+const isDev = process.argv.includes("--dev");
+const dataDir = process.env.DATA_DIR || join(root, ".data");
+const host = process.env.HOST || "127.0.0.1";
+const WORKER_RESTARTS = 5;
+
+/** What is to be undone at the end, last first. */
+const undo = [];
+let isStopping = false;
+
+async function stop(code) {
+  if (isStopping) return;
+  isStopping = true;
+  process.stdout.write("\nStopping.\n");
+  for (const action of undo.reverse()) {
+    await Promise.resolve(action()).catch((error) => console.error(error.message));
+  }
+  process.exit(code);
+}
+
+for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"]) process.on(signal, () => void stop(0));
+
+function modeOf() {
+  if (process.env.TAILMARK_MODE) return process.env.TAILMARK_MODE;
+  return process.env.NODE_ENV === "production" ? "production" : "demo";
+}
+
+async function settingsFor(mode, secrets, databaseUrl) {
+  const port = await freePortFrom(Number(process.env.PORT) || 3000, host);
+  const shownHost = host === "0.0.0.0" || host === "::" ? "127.0.0.1" : host;
+  const baseUrl = process.env.BASE_URL || `http://${shownHost}:${port}`;
+  const env = {
+    TAILMARK_MODE: mode,
+    DATABASE_URL: databaseUrl,
+    DATA_DIR: dataDir,
+    BASE_URL: baseUrl,
+    NEXTAUTH_URL: baseUrl,
+    NEXT_TELEMETRY_DISABLED: "1",
+    KEPT_MAIL_PORT: process.env.KEPT_MAIL_PORT || String(await anyFreePort()),
+    // Production names its own secret or is refused; elsewhere each clone has one.
+    ...(mode !== "production" && { NEXTAUTH_SECRET: process.env.NEXTAUTH_SECRET || secrets.session }),
+  };
+  return { port, baseUrl, env, readyUrl: `http://${shownHost}:${port}/sign-in` };
+}
+
+function startWorker(record, programs, env) {
+  let restarts = 0;
+  let child;
+  const start = () => {
+    const args = isDev ? ["--import", "tsx", "--watch-path=src", "--watch-preserve-output", "src/worker/main.ts"] : ["--enable-source-maps", programs.worker];
+    child = startProcess(process.execPath, args, { cwd: root, env, print: printFrom("worker") });
+    record.noteChild(child.pid, isDev ? "src/worker/main.ts" : programs.worker);
+    void child.ended.then((how) => {
+      if (isStopping) return;
+      restarts += 1;
+      if (restarts > WORKER_RESTARTS) {
+        console.error(`The worker ended ${restarts} times, the last time with ${how}.`);
+        void stop(1);
+      } else {
+        console.error(`The worker ended (${how}); starting it again.`);
+        setTimeout(() => isStopping || start(), 1000 * restarts);
+      }
+    });
+  };
+  start();
+  undo.push(() => child.stop());
+}
+
+async function startWeb(record, { env, port, readyUrl }) {
+  const next = join(root, "node_modules/next/dist/bin/next");
+  const args = [next, isDev ? "dev" : "start", "-H", host, "-p", String(port)];
+  const child = startProcess(process.execPath, args, { cwd: root, env: isDev ? env : { ...env, NODE_ENV: "production" }, print: printFrom("web") });
+  record.noteChild(child.pid, next);
+  undo.push(() => child.stop());
+  await step("Starting the pages", () => waitForAnswer(readyUrl, child));
+  void child.ended.then((how) => {
+    if (isStopping) return;
+    console.error(`The web server ended (${how}).`);
+    void stop(1);
+  });
+}
+
+/** Start-up chatter is dropped; what comes later, and anything that speaks of an error, is shown. */
+function printFrom(name) {
+  return (text) => {
+    for (const line of text.split("\n")) {
+      const isChatter = /^\s*($|▲|✓|- (Local|Network):|Worker ready)/u.test(line);
+      if (!isChatter) process.stdout.write(`${name}: ${line}\n`);
+    }
+  };
+}
+
+async function prepare(programs, env) {
+  const lines = [];
+  await step("Preparing the data", (say) =>
+    run(process.execPath, ["--enable-source-maps", programs.prepare], {
+      cwd: root,
+      env,
+      onLine(line) {
+        if (line.startsWith("> ")) lines.push(line.slice(2));
+        else say(line);
+      },
+    }),
+  );
+  return lines;
+}
+
+async function main() {
+  const mode = modeOf();
+  await ensurePackages(root);
+  const secrets = cloneSecrets(dataDir);
+  const record = await takeRun(dataDir);
+  undo.push(() => record.end());
+
+  let databaseUrl = process.env.DATABASE_URL;
+  if (!databaseUrl) {
+    const server = await startPostgres({ wanted: join(dataDir, "postgres"), password: secrets.database });
+    undo.push(() => server.stop());
+    databaseUrl = server.url;
+  }
+
+  const settings = await settingsFor(mode, secrets, databaseUrl);
+  const programs = await bundlePrograms(root);
+  const closingLines = await prepare(programs, settings.env);
+  if (isDev) placeMapWorker(root);
+  else await ensureWebBuild(root);
+  await startWeb(record, settings);
+  startWorker(record, programs, settings.env);
+  record.noteAddress(settings.baseUrl);
+
+  console.log(`\nTailmark runs at ${settings.baseUrl}`);
+  for (const line of closingLines) console.log(line);
+  console.log("Ctrl-C stops it.");
+}
+
+main().catch((error) => {
+  if (isStopping) return;
+  console.error(error instanceof SetupError ? error.message : error);
+  void stop(1);
+});
