@@ -1,0 +1,46 @@
+const DEG = 180 / Math.PI;
+
+/** Any angle in degrees brought into [0, 360). */
+export function normaliseDeg(deg: number): number {
+  return ((deg % 360) + 360) % 360;
+}
+
+/** Signed change of bearing from `fromDeg` to `toDeg`, positive to the right, in (-180, 180]. */
+export function signedTurnDeg(fromDeg: number, toDeg: number): number {
+  const turn = normaliseDeg(toDeg - fromDeg + 180) - 180;
+  return turn === -180 ? 180 : turn;
+}
+
+/** Unsigned angle between two bearings, 0 to 180 degrees. */
+export function angleBetweenDeg(aDeg: number, bDeg: number): number {
+  const d = Math.abs(aDeg - bDeg) % 360;
+  return d > 180 ? 360 - d : d;
+}
+
+/** Bearing of a step east and north, degrees clockwise from north in [0, 360); NaN for no step at all. */
+export function bearingDeg(eastM: number, northM: number): number {
+  if (eastM === 0 && northM === 0) return NaN;
+  const deg = Math.atan2(eastM, northM) * DEG;
+  return deg < 0 ? deg + 360 : deg;
+}
+
+/** Mean direction of weighted bearings by the resultant vector; NaN where they cancel out (length below 1e-9). */
+export function meanBearingDeg(bearings: ArrayLike<number>, weights?: ArrayLike<number>): number {
+  let east = 0;
+  let north = 0;
+  let total = 0;
+  for (let i = 0; i < bearings.length; i++) {
+    const weight = weights ? weights[i] : 1;
+    east += weight * Math.sin(bearings[i] / DEG);
+    north += weight * Math.cos(bearings[i] / DEG);
+    total += weight;
+  }
+  return Math.hypot(east, north) > 1e-9 * total ? bearingDeg(east, north) : NaN;
+}
+
+const POINTS = ["north", "north-east", "east", "south-east", "south", "south-west", "west", "north-west"] as const;
+
+/** The compass word, of eight, nearest to a bearing. */
+export function compassWord(deg: number): (typeof POINTS)[number] {
+  return POINTS[Math.round(normaliseDeg(deg) / 45) % 8];
+}

@@ -1,0 +1,33 @@
+/** Settings of stage 4. Lengths in metres, angles in degrees. */
+export const LEARNING = Object.freeze({
+  /** Seeds: moving pings in this ring around the junction. */
+  ringInnerM: 22,
+  ringOuterM: 100,
+  /** The ring ends at this share of the way to the nearest junction, but not below ringLeastM. */
+  ringShare: 0.62,
+  ringLeastM: 45,
+  /** Slowest ping that counts as moving, m/s. */
+  movingMs: 2.5,
+  headingToRayDeg: 37,
+  /** The line of travel must pass the junction within this distance; spread of its weight. */
+  passWithinM: 30,
+  passSpreadM: 16,
+  kernelDeg: 7,
+  apartDeg: 22,
+  /** Distinct trips that a seed needs, and as a share of the junction's trips. */
+  seedTrips: 2,
+  seedShare: 0.003,
+  /** Default distance from the junction's point to a stop line. */
+  boxM: 14,
+  /** Tracing outwards. */
+  stepM: 10,
+  sideM: 13,
+  traceHeadingDeg: 35,
+  gapM: 70,
+  sparseGapM: 120,
+  traceMostM: 800,
+  /** A trace ends at another junction whose point it passes within this distance. */
+  meetsWithinM: 25,
+  /** Pings at longer intervals than this count as sparse, s. */
+  sparseIntervalS: 8,
+});

@@ -1,0 +1,214 @@
+import { eastM, northM, planeAt } from "@/core/geometry/plane";
+import { createCandidates, findCandidates, type Candidates } from "@/core/match/candidates";
+import type { StreetGraph } from "@/core/match/graph";
+import { MATCHING } from "@/core/match/matching";
+import { createRouter, linksBetween, type Routes } from "@/core/match/routes";
+import type { Trips } from "@/core/pings/trips";
+
+/**
+ * A stretch of a trip that stayed on the network: the links passed, in order, and the pings with the place of each
+ * in the list of links and their position on that link.
+ */
+export interface Chain {
+  trip: number;
+  links: number[];
+  pings: number[];
+  /** Index into `links` for each ping. */
+  step: number[];
+  position: number[];
+}
+
+/**
+ * Most likely path of every trip by a hidden Markov model: states are places on links and one state off the network;
+ * Viterbi's algorithm (after Newson and Krumm, Hidden Markov map matching through noise and sparseness, 2009).
+ * Calls `visit` for each stretch on the network. O(pings x candidates squared).
+ */
+export function matchTrips(trips: Trips, graph: StreetGraph, visit: (chain: Chain) => void): void {
+  const router = createRouter(graph);
+  const work = createWork(trips);
+  for (let k = 0; k < trips.count; k++) {
+    const states = thinTrip(trips, k, work);
+    if (states < 2) continue;
+    if (!placePings(trips, graph, work, states)) continue;
+    decode(trips, graph, router, work, states);
+    collectChains(trips, graph, router, work, states, k, visit);
+  }
+}
+
+const WIDTH: number = MATCHING.candidates + 1;
+const OFF: number = MATCHING.candidates;
+
+interface Work {
+  ping: Uint32Array;
+  x: Float64Array;
+  y: Float64Array;
+  near: Candidates;
+  cost: Float64Array;
+  back: Int8Array;
+  chosen: Int8Array;
+}
+
+function createWork(trips: Trips): Work {
+  let longest = 0;
+  for (let k = 0; k < trips.count; k++) longest = Math.max(longest, trips.tripOffset[k + 1] - trips.tripOffset[k]);
+  return {
+    ping: new Uint32Array(longest),
+    x: new Float64Array(longest),
+    y: new Float64Array(longest),
+    near: createCandidates(longest),
+    cost: new Float64Array(longest * WIDTH),
+    back: new Int8Array(longest * WIDTH),
+    chosen: new Int8Array(longest),
+  };
+}
+
+/** Keeps pings at least MATCHING.thinS apart; the first and the last always stay. */
+function thinTrip(trips: Trips, k: number, work: Work): number {
+  const from = trips.tripOffset[k];
+  const to = trips.tripOffset[k + 1];
+  const plane = planeAt(trips.lat[from], trips.lon[from]);
+  let n = 0;
+  for (let i = from; i < to; i++) {
+    const x = eastM(plane, trips.lon[i]);
+    const y = northM(plane, trips.lat[i]);
+    if (n > 0 && i < to - 1) {
+      if (trips.tMs[i] - trips.tMs[work.ping[n - 1]] < MATCHING.thinS * 1000) continue;
+    }
+    work.ping[n] = i;
+    work.x[n] = x;
+    work.y[n] = y;
+    n += 1;
+  }
+  return n;
+}
+
+function placePings(trips: Trips, graph: StreetGraph, work: Work, states: number): boolean {
+  let any = false;
+  for (let n = 0; n < states; n++) {
+    const i = work.ping[n];
+    any = findCandidates(graph, trips.lat[i], trips.lon[i], trips.headingDeg[i], trips.speedMs[i], work.near, n) > 0 || any;
+  }
+  return any;
+}
+
+function decode(trips: Trips, graph: StreetGraph, router: (link: number) => Routes, work: Work, states: number): void {
+  const { near, cost, back } = work;
+  for (let c = 0; c < near.count[0]; c++) cost[c] = near.cost[c];
+  cost[OFF] = MATCHING.offCost;
+  for (let n = 1; n < states; n++) {
+    const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[n - 1]]) / 1000;
+    const chord = Math.hypot(work.x[n] - work.x[n - 1], work.y[n] - work.y[n - 1]);
+    const row = n * WIDTH;
+    const before = row - WIDTH;
+    for (let c = 0; c < near.count[n]; c++) {
+      const to = n * MATCHING.candidates + c;
+      let best = cost[before + OFF] + MATCHING.joinCost;
+      let from = OFF;
+      for (let p = 0; p < near.count[n - 1]; p++) {
+        const reached = cost[before + p];
+        if (reached >= best) continue;
+        const step = stepCost(graph, router, near, (n - 1) * MATCHING.candidates + p, to, chord, seconds);
+        if (reached + step < best) {
+          best = reached + step;
+          from = p;
+        }
+      }
+      cost[row + c] = best + near.cost[to];
+      back[row + c] = from;
+    }
+    let best = cost[before + OFF];
+    let from = OFF;
+    for (let p = 0; p < near.count[n - 1]; p++) {
+      if (cost[before + p] + MATCHING.leaveCost < best) {
+        best = cost[before + p] + MATCHING.leaveCost;
+        from = p;
+      }
+    }
+    cost[row + OFF] = best + MATCHING.offCost;
+    back[row + OFF] = from;
+  }
+  trackBack(work, states);
+}
+
+function trackBack(work: Work, states: number): void {
+  const last = (states - 1) * WIDTH;
+  let state = OFF;
+  for (let c = 0; c < work.near.count[states - 1]; c++) if (work.cost[last + c] < work.cost[last + state]) state = c;
+  for (let n = states - 1; n >= 0; n--) {
+    work.chosen[n] = state;
+    if (n > 0) state = work.back[n * WIDTH + state];
+  }
+}
+
+/** Cost of going from one place to another in the given time; Infinity where there is no way. */
+function stepCost(
+  graph: StreetGraph, router: (link: number) => Routes, near: Candidates,
+  a: number, b: number, chord: number, seconds: number,
+): number {
+  const from = near.link[a];
+  const to = near.link[b];
+  let cost = 0;
+  let way = near.position[b] - near.position[a];
+  if (from !== to || way < -60) {
+    const routes = router(from);
+    const row = routes.row.get(to);
+    if (row === undefined) return Infinity;
+    way = graph.stopAt[from] - near.position[a] + routes.wayM[row] + near.position[b];
+    cost = routes.cost[row];
+  }
+  if (way < 0) cost += Math.max(0, -way - MATCHING.backFreeM) / MATCHING.backSpreadM;
+  const reach = MATCHING.fastestMs * seconds + 30;
+  if (way > reach) cost += (way - reach) / 10;
+  const detour = Math.abs(Math.max(0, way) - chord);
+  return cost + detour / (MATCHING.detourM + MATCHING.detourShare * chord);
+}
+
+function collectChains(
+  trips: Trips, graph: StreetGraph, router: (link: number) => Routes, work: Work, states: number, trip: number,
+  visit: (chain: Chain) => void,
+): void {
+  let chain: Chain | null = null;
+  let strays = 0;
+  let last = -1;
+  for (let n = 0; n < states; n++) {
+    const c = work.chosen[n];
+    if (c === OFF) {
+      strays += 1;
+      continue;
+    }
+    const at = n * MATCHING.candidates + c;
+    const joined: boolean = chain !== null && strays <= MATCHING.bridgePings && append(chain, graph, router, trips, work, last, n, at, strays);
+    if (!joined) {
+      if (chain && chain.pings.length > 1) visit(chain);
+      chain = { trip, links: [work.near.link[at]], pings: [work.ping[n]], step: [0], position: [work.near.position[at]] };
+    }
+    strays = 0;
+    last = n;
+  }
+  if (chain && chain.pings.length > 1) visit(chain);
+}
+
+/** Adds a place to a chain; after stray pings only where the way fits the time and the chord. */
+function append(
+  chain: Chain, graph: StreetGraph, router: (link: number) => Routes, trips: Trips, work: Work,
+  before: number, n: number, at: number, strays: number,
+): boolean {
+  const from = chain.links[chain.links.length - 1];
+  const link = work.near.link[at];
+  const position = work.near.position[at];
+  const previous = before * MATCHING.candidates + work.chosen[before];
+  if (strays > 0) {
+    const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[before]]) / 1000;
+    const chord = Math.hypot(work.x[n] - work.x[before], work.y[n] - work.y[before]);
+    if (stepCost(graph, router, work.near, previous, at, chord, seconds) > MATCHING.leaveCost + MATCHING.joinCost) return false;
+  }
+  if (link !== from || position - work.near.position[previous] < -60) {
+    const routes = router(from);
+    if (!routes.row.has(link)) return false;
+    chain.links.push(...linksBetween(routes, link), link);
+  }
+  chain.pings.push(work.ping[n]);
+  chain.step.push(chain.links.length - 1);
+  chain.position.push(position);
+  return true;
+}

@@ -1,0 +1,22 @@
+/** Cleaned pings, grouped into trips; trips are in the order of their first ping's time and place. */
+export interface Trips {
+  /** Pings. */
+  length: number;
+  tMs: Float64Array;
+  lat: Float64Array;
+  lon: Float64Array;
+  /** Reported, else from displacement; NaN only for a trip of one ping without a reported speed. */
+  speedMs: Float32Array;
+  /** Direction of travel: reported while moving, else from displacement, for a standstill that across it; NaN where neither tells. */
+  headingDeg: Float32Array;
+  /** Trips. */
+  count: number;
+  /** Pings of trip k are tripOffset[k] to tripOffset[k + 1] - 1. */
+  tripOffset: Uint32Array;
+  tripVehicle: Uint32Array;
+  /** True where most pings carry a reported speed. */
+  hasSpeed: boolean;
+  hasHeading: boolean;
+  /** Median seconds between successive pings of a trip; NaN without any pair. */
+  medianIntervalS: number;
+}

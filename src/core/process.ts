@@ -1,0 +1,95 @@
+import type { JunctionIndex } from "@/core/index/junction-index";
+import { learnFromTrips } from "@/core/legs/learn-network";
+import { createGraph } from "@/core/match/graph";
+import { matchTrips } from "@/core/match/match-trips";
+import type { CoreOptions } from "@/core/options";
+import { cleanPings } from "@/core/pings/clean";
+import type { Trips } from "@/core/pings/trips";
+import { createTraversalBuilder } from "@/core/traversals/columns";
+import { createExtractor } from "@/core/traversals/extract";
+import { setReferences } from "@/core/traversals/references";
+import type { CleanReport, JunctionPoint, Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
+
+export type { CoreOptions, GivenLeg } from "@/core/options";
+export type { JunctionIndex } from "@/core/index/junction-index";
+export { setReferences };
+
+export interface Matched {
+  /** `delayS` is NaN until setReferences has run over all traversals. */
+  traversals: Traversals;
+  report: CleanReport;
+  facts: SampleFacts;
+}
+
+export interface CityResult {
+  network: Network;
+  traversals: Traversals;
+  clean: CleanReport;
+  facts: SampleFacts;
+}
+
+/**
+ * Stage 4: legs, exits, links and movements from a sample of the pings or all of them. Whole vehicles must be in
+ * the batch. `prior` is an earlier network whose legs keep their ids. O(pings).
+ */
+export function learnNetwork(
+  pings: PingColumns, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
+): Network {
+  return learnFromTrips(cleanPings(pings).trips, junctions, index, options, prior);
+}
+
+/** Matches batches of whole vehicles over one network: build it once, call it for each batch. */
+export function createMatcher(network: Network, index: JunctionIndex): (pings: PingColumns) => Matched {
+  const graph = createGraph(network, index);
+  return (pings) => {
+    const cleaned = cleanPings(pings);
+    return matchCleaned(cleaned.trips, cleaned.report, graph, pings);
+  };
+}
+
+/** Stage 5 on one batch of whole vehicles. Each vehicle's result is independent of all others. O(pings). */
+export function matchTraversals(network: Network, pings: PingColumns, index: JunctionIndex): Matched {
+  return createMatcher(network, index)(pings);
+}
+
+/** Stages 2 to 6 on one batch in memory. */
+export function processCity(
+  pings: PingColumns, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
+): CityResult {
+  const cleaned = cleanPings(pings);
+  const network = learnFromTrips(cleaned.trips, junctions, index, options, prior);
+  const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network, index), pings);
+  setReferences(network, matched.traversals);
+  return { network, traversals: matched.traversals, clean: matched.report, facts: matched.facts };
+}
+
+function matchCleaned(
+  trips: Trips, report: Pick<CleanReport, "pings" | "duplicates" | "jumps" | "trips">,
+  graph: ReturnType<typeof createGraph>, pings: PingColumns,
+): Matched {
+  const builder = createTraversalBuilder();
+  const extractor = createExtractor(trips, graph, builder);
+  let incompleteTraversals = 0;
+  matchTrips(trips, graph, (chain) => {
+    incompleteTraversals += extractor.addChain(chain);
+  });
+  let farFromJunctions = 0;
+  for (let i = 0; i < trips.length; i++) if (graph.claims.find(trips.lat[i], trips.lon[i]) < 0) farFromJunctions += 1;
+  return {
+    traversals: builder.finish(),
+    report: { ...report, farFromJunctions, incompleteTraversals },
+    facts: sampleFacts(trips, pings),
+  };
+}
+
+function sampleFacts(trips: Trips, pings: PingColumns): SampleFacts {
+  const vehicles = new Set<number>();
+  for (let i = 0; i < pings.length; i++) vehicles.add(pings.vehicle[i]);
+  return {
+    medianIntervalS: trips.medianIntervalS,
+    hasSpeed: trips.hasSpeed,
+    hasHeading: trips.hasHeading,
+    vehicles: vehicles.size,
+    penetration: NaN,
+  };
+}

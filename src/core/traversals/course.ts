@@ -1,0 +1,88 @@
+/** A vehicle's way over time: distance along its path, growing, with speeds where they were reported. */
+export interface Course {
+  length: number;
+  tMs: Float64Array;
+  /** Metres along the path; never falls (see smoothForward). */
+  distanceM: Float64Array;
+  /** NaN where not reported. */
+  speedMs: Float64Array;
+}
+
+export function createCourse(size: number): Course {
+  return {
+    length: 0,
+    tMs: new Float64Array(size),
+    distanceM: new Float64Array(size),
+    speedMs: new Float64Array(size),
+  };
+}
+
+/**
+ * Makes distances never fall by the least-squares monotone fit (pool adjacent violators; Barlow et al., Statistical
+ * Inference under Order Restrictions, 1972), so that a standing vehicle's noise becomes one place. In place, O(n).
+ */
+export function smoothForward(course: Course): void {
+  const { distanceM, length } = course;
+  const mean = new Float64Array(length);
+  const size = new Uint32Array(length);
+  let blocks = 0;
+  for (let i = 0; i < length; i++) {
+    mean[blocks] = distanceM[i];
+    size[blocks] = 1;
+    blocks += 1;
+    while (blocks > 1 && mean[blocks - 2] > mean[blocks - 1]) {
+      const total = size[blocks - 2] + size[blocks - 1];
+      mean[blocks - 2] = (mean[blocks - 2] * size[blocks - 2] + mean[blocks - 1] * size[blocks - 1]) / total;
+      size[blocks - 2] = total;
+      blocks -= 1;
+    }
+  }
+  let i = 0;
+  for (let b = 0; b < blocks; b++) for (let n = 0; n < size[b]; n++) distanceM[i++] = mean[b];
+}
+
+/**
+ * Time at which the course passes a distance, by the monotone cubic Hermite curve between the two pings around it
+ * (Fritsch and Carlson, Monotone Piecewise Cubic Interpolation, 1980) with the reported speeds, linear where there
+ * are none. NaN outside the course. Where the vehicle stands exactly there, the end of its wait.
+ */
+export function timeAt(course: Course, distanceM: number): number {
+  const { length } = course;
+  if (length === 0 || distanceM < course.distanceM[0] || distanceM > course.distanceM[length - 1]) return NaN;
+  let low = 0;
+  let high = length - 1;
+  // Invariant: distance[low] <= wanted; distance[high + 1] > wanted or high is the last.
+  while (low < high) {
+    const mid = (low + high + 1) >> 1;
+    if (course.distanceM[mid] <= distanceM) low = mid;
+    else high = mid - 1;
+  }
+  if (low === length - 1 || course.distanceM[low] === distanceM) return course.tMs[low];
+  return timeWithin(course, low, distanceM);
+}
+
+function timeWithin(course: Course, i: number, distanceM: number): number {
+  const span = (course.tMs[i + 1] - course.tMs[i]) / 1000;
+  const step = course.distanceM[i + 1] - course.distanceM[i];
+  const secant = step / span;
+  let v0 = course.speedMs[i];
+  let v1 = course.speedMs[i + 1];
+  const wanted = (distanceM - course.distanceM[i]) / step;
+  if (!(v0 >= 0 && v1 >= 0)) return course.tMs[i] + wanted * span * 1000;
+  const norm = Math.hypot(v0, v1) / secant;
+  if (norm > 3) {
+    v0 *= 3 / norm;
+    v1 *= 3 / norm;
+  }
+  const a = v0 / secant;
+  const b = v1 / secant;
+  let low = 0;
+  let high = 1;
+  for (let n = 0; n < 24; n++) {
+    const u = (low + high) / 2;
+    const value = u * (a + u * (3 - 2 * a - b + u * (a + b - 2)));
+    if (value < wanted) low = u;
+    else high = u;
+  }
+  return course.tMs[i] + ((low + high) / 2) * span * 1000;
+}

@@ -1,0 +1,186 @@
+import { eastM, northM } from "@/core/geometry/plane";
+import { lengthOf, projectPoint } from "@/core/geometry/polyline";
+import { boxLine, type StreetGraph } from "@/core/match/graph";
+import type { Chain } from "@/core/match/match-trips";
+import type { Trips } from "@/core/pings/trips";
+import type { TraversalBuilder } from "@/core/traversals/columns";
+import { createCourse, smoothForward, timeAt, type Course } from "@/core/traversals/course";
+import { summariseStops } from "@/core/traversals/stops";
+import { TRAVERSAL_FLAGS } from "@/core/types";
+
+/** Settings of stage 5's crossings. */
+export const CROSSING = Object.freeze({
+  cordonUpM: 250,
+  cordonDownM: 60,
+  /** Crossing is judged on a line this far past the stop line, where nobody stands. */
+  virtualLineM: 15,
+  /** A course must begin this far before the stop line and end this far past it. */
+  seenBeforeM: 5,
+  seenAfterM: 8,
+  /** Longest part of a window that may be filled in at free speed where a trip begins or ends inside it, m. */
+  fillUpM: 140,
+  fillDownM: 60,
+  /** A trip's first ping must be at least this share of free speed for the part before it to be filled in. */
+  fillSpeedShare: 0.5,
+});
+
+export interface Extractor {
+  /** Adds the traversals of one chain; returns how many passages were left out because they were cut off. */
+  addChain(chain: Chain): number;
+}
+
+/** Turns matched stretches into traversals with crossing times, stops and tracks. */
+export function createExtractor(trips: Trips, graph: StreetGraph, builder: TraversalBuilder): Extractor {
+  const { network } = graph;
+  const movementOf = new Map<number, number>();
+  network.movements.forEach((m, i) => movementOf.set(m.leg * network.exits.length + m.exit, i));
+  const boxes = new Map<number, { line: Float64Array; lengthM: number }>();
+  const box = (leg: number, exit: number): { line: Float64Array; lengthM: number } => {
+    const key = leg * network.exits.length + exit;
+    let found = boxes.get(key);
+    if (!found) {
+      const line = boxLine(network, leg, exit);
+      found = { line, lengthM: lengthOf(line) };
+      boxes.set(key, found);
+    }
+    return found;
+  };
+  let course: Course = createCourse(256);
+  let trackMs = new Float64Array(256);
+  let trackS = new Float64Array(256);
+
+  return {
+    addChain(chain) {
+      if (chain.links.length < 2) return 0;
+      const base = basesOf(chain, graph, box);
+      const first = chain.pings[0];
+      const last = chain.pings[chain.pings.length - 1];
+      const size = last - first + 1;
+      if (size > course.tMs.length) {
+        course = createCourse(size * 2);
+        trackMs = new Float64Array(size * 2 + 8);
+        trackS = new Float64Array(size * 2 + 8);
+      }
+      fillCourse(course, chain, base, trips, graph, box);
+      let cut = 0;
+      for (let k = 0; k + 1 < chain.links.length; k++) {
+        const leg = graph.leg[chain.links[k]];
+        const exit = graph.exit[chain.links[k + 1]];
+        const movement = movementOf.get(leg * network.exits.length + exit);
+        if (movement === undefined) continue;
+        if (!addTraversal(k, movement, chain, base)) cut += 1;
+      }
+      return cut;
+    },
+  };
+
+  function addTraversal(k: number, movement: number, chain: Chain, base: Float64Array): boolean {
+    const link = chain.links[k];
+    const next = chain.links[k + 1];
+    const { cordonUpM, cordonDownM } = network.movements[movement];
+    const stopAt = base[k] + graph.stopAt[link];
+    const enterAt = stopAt - cordonUpM;
+    const exitAt = base[k + 1] + cordonDownM;
+    const begin = course.distanceM[0];
+    const end = course.distanceM[course.length - 1];
+    if (begin > stopAt - CROSSING.seenBeforeM || end < stopAt + CROSSING.seenAfterM) return true;
+    const free = graph.freeSpeedMs[link];
+    let flags = 0;
+    let enterMs = timeAt(course, enterAt);
+    if (begin > enterAt) {
+      const speed = course.speedMs[0];
+      const isSlow = speed < CROSSING.fillSpeedShare * free;
+      if (begin - enterAt > CROSSING.fillUpM || isSlow) return false;
+      enterMs = course.tMs[0] - ((begin - enterAt) / free) * 1000;
+      flags |= TRAVERSAL_FLAGS.truncated;
+    }
+    let exitMs = timeAt(course, exitAt);
+    if (end < exitAt) {
+      const speed = course.speedMs[course.length - 1];
+      if (exitAt - end > CROSSING.fillDownM || speed < CROSSING.fillSpeedShare * free) return false;
+      exitMs = course.tMs[course.length - 1] + ((exitAt - end) / Math.max(speed || free, 0.6 * free)) * 1000;
+      flags |= TRAVERSAL_FLAGS.truncated;
+    }
+    let stopLineMs = timeAt(course, Math.min(stopAt + CROSSING.virtualLineM, exitAt));
+    if (!(stopLineMs >= 0)) stopLineMs = exitMs;
+    const stops = summariseStops(course, enterMs, exitMs, free, base[k], stopAt + 6);
+    if (stops.inferred) flags |= TRAVERSAL_FLAGS.stopInferred;
+    if (stops.hasLongSteps) flags |= TRAVERSAL_FLAGS.stopsLowerBound;
+    const points = fillTrack(base[k], exitAt, stopAt);
+    builder.add(
+      {
+        movement, vehicle: trips.tripVehicle[chain.trip], enterMs, stopLineMs, exitMs,
+        stops: stops.stops, stoppedS: stops.stoppedS,
+        farthestStopM: Number.isNaN(stops.firstStopAtM) ? NaN : Math.max(0, stopAt - stops.firstStopAtM), flags,
+      },
+      trackMs, trackS, points,
+    );
+    return next >= 0;
+  }
+
+  /** The pings between the leg's upstream end and the exit cordon, with one point on each end where it was passed. */
+  function fillTrack(from: number, to: number, stopAt: number): number {
+    let n = 0;
+    const put = (tMs: number, distance: number): void => {
+      if (!(tMs >= 0) || (n > 0 && tMs <= trackMs[n - 1])) return;
+      trackMs[n] = tMs;
+      trackS[n] = stopAt - distance;
+      n += 1;
+    };
+    put(timeAt(course, from), from);
+    for (let i = 0; i < course.length; i++) {
+      const d = course.distanceM[i];
+      if (d >= from && d <= to) put(course.tMs[i], d);
+    }
+    put(timeAt(course, to), to);
+    return n;
+  }
+}
+
+/** Path distance at position 0 of each link of a chain. */
+function basesOf(chain: Chain, graph: StreetGraph, box: (leg: number, exit: number) => { lengthM: number }): Float64Array {
+  const base = new Float64Array(chain.links.length);
+  for (let k = 1; k < base.length; k++) {
+    const link = chain.links[k - 1];
+    base[k] = base[k - 1] + graph.stopAt[link] + box(graph.leg[link], graph.exit[chain.links[k]]).lengthM;
+  }
+  return base;
+}
+
+/** The pings of the stretch on the path: by the links' lines, inside boxes by the way through. */
+function fillCourse(
+  course: Course, chain: Chain, base: Float64Array, trips: Trips, graph: StreetGraph,
+  box: (leg: number, exit: number) => { line: Float64Array; lengthM: number },
+): void {
+  let n = 0;
+  for (let c = 0; c < chain.pings.length; c++) {
+    const i = chain.pings[c];
+    const k = chain.step[c];
+    const link = chain.links[k];
+    const p = chain.position[c];
+    let distance = base[k] + p;
+    if (p > graph.stopAt[link] - 4 && k + 1 < chain.links.length) {
+      distance = base[k] + graph.stopAt[link] + inBox(graph, trips, i, box(graph.leg[link], graph.exit[chain.links[k + 1]]).line, graph.leg[link], p - graph.stopAt[link]);
+    } else if (p < 4 && k > 0) {
+      const before = chain.links[k - 1];
+      const way = box(graph.leg[before], graph.exit[link]);
+      distance = base[k] - way.lengthM + inBox(graph, trips, i, way.line, graph.leg[before], p + way.lengthM);
+    }
+    course.tMs[n] = trips.tMs[i];
+    course.distanceM[n] = distance;
+    course.speedMs[n] = trips.hasSpeed ? trips.speedMs[i] : NaN;
+    n += 1;
+  }
+  course.length = n;
+  smoothForward(course);
+}
+
+/** Distance along the way through a box; outside its ends the given straight distance holds. */
+function inBox(graph: StreetGraph, trips: Trips, i: number, line: Float64Array, leg: number, straight: number): number {
+  const plane = graph.planes[graph.network.legs[leg].junction];
+  const foot = projectPoint(line, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]));
+  const length = lengthOf(line);
+  if (foot.at <= 0) return Math.min(0, straight);
+  if (foot.at >= length) return Math.max(length, straight);
+  return foot.at;
+}
