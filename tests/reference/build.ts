@@ -39,7 +39,7 @@ async function measure(scenario: Scenario): Promise<Measured> {
     const index = indexLegs(legs);
     const courses = await simulate(scenario, networkPath, folder);
     const passages = [...courses.values()].flatMap((course) => findPassages(course, index));
-    const referenceS = await findReferenceTimes(scenario, networkPath, folder, passages, index);
+    const referenceS = await findReferenceTimes(scenario, networkPath, network, folder, passages, index);
     const known = passages.filter((passage) => referenceS.has(`${passage.leg.chain[0].id}>${passage.exit.edge.id}`));
     return { scenario, network, legs, courses, passages: known, referenceS, startMs: START_MS };
   } finally {
@@ -79,8 +79,9 @@ async function main(args: string[]) {
     const recorded = recordTruth(measured);
     if (!args.includes("--no-record")) writeRecording(measured, recorded);
     if (files) writeWorkingFiles(measured, recorded, HOLD_OUT.includes(scenario) ? `${files}-holdout` : files);
+    const moved = [...measured.courses.values()].reduce((sum, course) => sum + toSampledCourses(course).length - 1, 0);
     const seconds = ((performance.now() - started) / 1000).toFixed(0);
-    console.log(`${scenario.id}: ${measured.courses.size} vehicles, ${measured.passages.length} passages, ${seconds} s`);
+    console.log(`${scenario.id}: ${measured.courses.size} vehicles, ${measured.passages.length} passages, ${moved} moved by hand, ${seconds} s`);
   }
 }
 

@@ -91,7 +91,7 @@ export function gridScenario(): Scenario {
   const signals = strayOffsets(streets.nodes, 90, 12);
   // J11 gives its main street too little green: the queue fills the 170 m block behind it.
   signals.J11.greenFactors = [1.35, 1, 0.55, 1];
-  const perLane = (axis: "column" | "row", index: number) => (axis === "row" && index === 1 ? 950 : index === 3 ? 170 : 430);
+  const perLane = (axis: "column" | "row", index: number) => (axis === "row" && index === 1 ? 860 : index === 3 ? 160 : 385);
   return {
     id: "grid",
     title: "4 x 4 grid, right-hand driving, stray offsets, one street oversaturated with spillback",

@@ -2,6 +2,7 @@ import { writeFileSync } from "node:fs";
 import { join } from "node:path";
 
 import type { Scenario } from "../scenarios/types";
+import type { SimulatedNetwork } from "../simulator/read-network";
 import { readTrajectories } from "../simulator/read-trajectories";
 import { runSimulator } from "../simulator/simulate";
 import { writeSignals } from "../simulator/write-network";
@@ -22,9 +23,9 @@ export const movementKey = (passage: RawPassage) => `${passage.leg.chain[0].id}>
  * traffic does; averaged with the traffic's weights.
  */
 export async function findReferenceTimes(
-  scenario: Scenario, network: string, folder: string, passages: RawPassage[], index: LegIndex,
+  scenario: Scenario, networkPath: string, network: SimulatedNetwork, folder: string, passages: RawPassage[], index: LegIndex,
 ): Promise<Map<string, number>> {
-  const runs = commonContexts(passages);
+  const runs = commonContexts(passages, network);
   const routes = runs.map(({ context }, i) => {
     const type = 'type="lone" departLane="best" departPos="base" departSpeed="max" arrivalPos="max"';
     return `<vehicle id="${i}" depart="${i * HEADWAY_S}" ${type}><route edges="${context.join(" ")}"/></vehicle>`;
@@ -32,7 +33,7 @@ export async function findReferenceTimes(
   const path = join(folder, "lone.rou.xml");
   writeFileSync(path, `<routes>\n${loneVehicleType(scenario)}\n${routes.join("\n")}\n</routes>\n`);
   const output = join(folder, "lone.fcd.xml");
-  runSimulator(network, path, writeSignals(scenario, network, folder, true), output, []);
+  runSimulator(networkPath, path, writeSignals(scenario, networkPath, folder, true), output, []);
   const courses = await readTrajectories(output, 0);
   const sums = new Map<string, { time: number; weight: number }>();
   for (const course of courses.values()) {
@@ -47,9 +48,11 @@ export async function findReferenceTimes(
   return new Map([...sums].map(([movement, { time, weight }]) => [movement, time / weight]));
 }
 
-function commonContexts(passages: RawPassage[]): { movement: string; context: string[]; weight: number }[] {
+function commonContexts(passages: RawPassage[], network: SimulatedNetwork): { movement: string; context: string[]; weight: number }[] {
   const counts = new Map<string, Map<string, number>>();
+  const isDrivable = (context: string[]) => context.every((edge, i) => i === 0 || network.connections.has(`${context[i - 1]}>${edge}`));
   for (const passage of passages) {
+    if (!isDrivable(passage.context)) continue;
     const movement = movementKey(passage);
     const contexts = counts.get(movement) ?? new Map<string, number>();
     const key = passage.context.join(" ");
