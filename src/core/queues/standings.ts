@@ -41,8 +41,11 @@ export function findStandings(network: Network, traversals: Traversals, options:
   return columnsOf(found);
 }
 
-/** Stops along one track: median position, first and last moment. */
-function stopsOfTrack(t: Traversals, i: number, options: QueueOptions): { s: number; fromMs: number; toMs: number }[] {
+/** The part of traversals that stops are read off. */
+export type TrackColumns = Pick<Traversals, "enterMs" | "trackOffset" | "trackT" | "trackS">;
+
+/** Stops along one track: median position, first and last moment. O(points of the track). */
+export function stopsOfTrack(t: TrackColumns, i: number, options: QueueOptions): { s: number; fromMs: number; toMs: number }[] {
   const stops: { s: number; fromMs: number; toMs: number }[] = [];
   const end = t.trackOffset[i + 1];
   let first = -1;
