@@ -63,3 +63,9 @@ function pointOf(nodes: Map<string, NodeSpec>, id: string): [number, number] {
   if (!node) throw new RangeError(`An edge names the unknown node ${id}.`);
   return [node.x, node.y];
 }
+
+/** Edges with no street end at either end: where trips may start and end part-way. */
+export function innerEdges(nodes: NodeSpec[], edges: EdgeSpec[]): string[] {
+  const ends = new Set(nodes.filter((node) => node.kind === "end").map((node) => node.id));
+  return edges.filter((edge) => !ends.has(edge.from) && !ends.has(edge.to)).map((edge) => edge.id);
+}

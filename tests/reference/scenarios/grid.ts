@@ -1,5 +1,5 @@
 import { createRandom } from "../random";
-import { markLanes } from "./connections";
+import { innerEdges, markLanes } from "./connections";
 import type { EdgeSpec, NodeSpec, Scenario, SignalSpec } from "./types";
 
 export interface GridOptions {
@@ -68,7 +68,7 @@ function addStreet(streets: GridStreets, options: GridOptions, axis: "column" | 
 }
 
 /** Offsets without any plan: what an unattended grid ends up with. */
-function strayOffsets(nodes: NodeSpec[], cycleS: number, seed: number): Record<string, SignalSpec> {
+export function strayOffsets(nodes: NodeSpec[], cycleS: number, seed: number): Record<string, SignalSpec> {
   const random = createRandom(seed);
   const signals: Record<string, SignalSpec> = {};
   for (const node of nodes) {
@@ -89,8 +89,8 @@ export function gridScenario(): Scenario {
     speedMs: 13.89,
   });
   const signals = strayOffsets(streets.nodes, 90, 12);
-  // J11 gives its main street too little green: the queue fills the 170 m block behind it.
-  signals.J11.greenFactors = [1.35, 1, 0.55, 1];
+  // J11 gives its cross street too little green: queues fill the short blocks behind it.
+  signals.J11.greens = [{ from: "J10_J11", dir: "s", factor: 0.55 }];
   const perLane = (axis: "column" | "row", index: number) => (axis === "row" && index === 1 ? 860 : index === 3 ? 160 : 385);
   return {
     id: "grid",
@@ -106,8 +106,13 @@ export function gridScenario(): Scenario {
     leftGreenS: 8,
     turnarounds: false,
     signals,
-    entries: Object.fromEntries(streets.entries.map(({ id, axis, index }) => [id, perLane(axis, index)])),
-    exits: Object.fromEntries(streets.exits.map(({ id, axis, index }) => [id, perLane(axis, index)])),
+    demand: [
+      {
+        entries: Object.fromEntries(streets.entries.map(({ id, axis, index }) => [id, perLane(axis, index)])),
+        exits: Object.fromEntries(streets.exits.map(({ id, axis, index }) => [id, perLane(axis, index)])),
+        inner: innerEdges(streets.nodes, streets.edges),
+      },
+    ],
     innerShare: 0.12,
     profile: [0.85, 1.1, 0.9],
     routeSpread: 1.5,

@@ -16,8 +16,9 @@ export interface EdgeSpec {
   to: string;
   lanes: number;
   speedMs: number;
-  /** Inner vertices, metres. */
+  /** Inner vertices, metres; with `ownEnds` the whole line, which need not meet the nodes' points. */
   shape?: [number, number][];
+  ownEnds?: boolean;
   /** Higher goes first where no signal stands. */
   priority?: number;
 }
@@ -32,8 +33,18 @@ export interface ConnectionSpec {
 
 export interface SignalSpec {
   offsetS?: number;
-  /** Multiplies the green phases in order; missing factors are 1. */
-  greenFactors?: number[];
+  /** Stretch or shorten the phase that gives protected green to a movement of one edge (SUMO's l, s, r). */
+  greens?: { from: string; dir: "l" | "s" | "r"; factor: number }[];
+}
+
+/** Trips between the entries and exits of one connected part of the network. */
+export interface Demand {
+  /** Vehicles per hour that start at the upstream end of an edge. */
+  entries: Record<string, number>;
+  /** Weight with which trips end on an edge. */
+  exits: Record<string, number>;
+  /** Edges on which trips may also start and end part-way. */
+  inner: string[];
 }
 
 export interface Scenario {
@@ -50,10 +61,7 @@ export interface Scenario {
   leftGreenS: number;
   turnarounds: boolean;
   signals?: Record<string, SignalSpec>;
-  /** Vehicles per hour that start at the upstream end of an edge. */
-  entries: Record<string, number>;
-  /** Weight with which trips end on an edge. */
-  exits: Record<string, number>;
+  demand: Demand[];
   /** Fixed relations, vehicles per hour, beside entries and exits. */
   relations?: { from: string; to: string; perHour: number }[];
   /** Share of trips that start, and share that end, somewhere along an inner edge. */

@@ -36,7 +36,8 @@ function edgeXml(scenario: Scenario, edge: EdgeSpec): string {
     if (!node) throw new RangeError(`Edge ${edge.id} of ${scenario.id} names the unknown node ${id}.`);
     return node;
   });
-  const points = [[ends[0].x, ends[0].y], ...(edge.shape ?? []), [ends[1].x, ends[1].y]];
+  const inner = edge.shape ?? [];
+  const points = edge.ownEnds ? inner : [[ends[0].x, ends[0].y], ...inner, [ends[1].x, ends[1].y]];
   const shape = edge.shape ? ` shape="${points.map((point) => point.map((v) => v.toFixed(2)).join(",")).join(" ")}"` : "";
   return (
     `<edge id="${edge.id}" from="${edge.from}" to="${edge.to}" numLanes="${edge.lanes}"` +
@@ -51,19 +52,19 @@ function write(folder: string, name: string, root: string, lines: string[]): str
 }
 
 /**
- * Copies the programs that netconvert chose, with the scenario's offsets and green factors, or with
+ * Copies the programs that netconvert chose, with the scenario's offsets and greens, or with
  * green for everybody (`allGreen`: what a vehicle needs when no signal delays it).
  */
 export function writeSignals(scenario: Scenario, networkPath: string, folder: string, allGreen: boolean): string {
   const xml = readFileSync(networkPath, "utf8");
+  const links = readSignalLinks(xml);
   const programs = [...xml.matchAll(/<tlLogic id="([^"]+)"[^>]*>([\s\S]*?)<\/tlLogic>/g)].map(([, id, body]) => {
     const phases = [...body.matchAll(/<phase duration="([^"]+)"\s+state="([^"]+)"/g)];
     const signal = scenario.signals?.[id] ?? {};
     if (allGreen) return program(id, 0, [`<phase duration="90" state="${"G".repeat(phases[0][2].length)}"/>`]);
-    let green = 0;
     const lines = phases.map(([, duration, state]) => {
-      const isGreen = /[Gg]/.test(state) && !/y/.test(state);
-      const factor = isGreen ? (signal.greenFactors?.[green++] ?? 1) : 1;
+      const stretched = (signal.greens ?? []).filter(({ from, dir }) => isProtected(links.get(id) ?? [], state, from, dir));
+      const factor = stretched.reduce((product, green) => product * green.factor, 1);
       return `<phase duration="${Math.max(3, Math.round(Number(duration) * factor))}" state="${state}"/>`;
     });
     return program(id, signal.offsetS ?? 0, lines);
@@ -73,4 +74,27 @@ export function writeSignals(scenario: Scenario, networkPath: string, folder: st
 
 function program(id: string, offsetS: number, phases: string[]): string {
   return `<tlLogic id="${id}" type="static" programID="reference" offset="${offsetS}">${phases.join("")}</tlLogic>`;
+}
+
+interface SignalLink {
+  from: string;
+  dir: string;
+  index: number;
+}
+
+function readSignalLinks(xml: string): Map<string, SignalLink[]> {
+  const links = new Map<string, SignalLink[]>();
+  for (const [, head] of xml.matchAll(/<connection ([^>]*)\/>/g)) {
+    const found = /from="([^"]+)".* tl="([^"]+)" linkIndex="(\d+)" dir="(\w+)"/.exec(head);
+    if (!found) continue;
+    const [, from, signal, index, dir] = found;
+    links.set(signal, [...(links.get(signal) ?? []), { from, dir: dir.toLowerCase(), index: Number(index) }]);
+  }
+  return links;
+}
+
+/** Protected means green without giving way ("G"), and no yellow anywhere. */
+function isProtected(links: SignalLink[], state: string, from: string, dir: string): boolean {
+  if (/y/.test(state)) return false;
+  return links.some((link) => link.from === from && link.dir === dir && state[link.index] === "G");
 }

@@ -3,7 +3,7 @@ import { join } from "node:path";
 
 import { createRandom } from "../random";
 import type { Random } from "../random";
-import type { Scenario } from "../scenarios/types";
+import type { Demand, Scenario } from "../scenarios/types";
 
 const VEHICLES = {
   // Moderate drivers; rates near those seen at urban signals.
@@ -31,17 +31,8 @@ interface Trip {
 /** Draws every trip of the scenario (Poisson departures) and writes them in order of departure; returns the path. */
 export function writeTrips(scenario: Scenario, folder: string): string {
   const random = createRandom(scenario.seed);
-  const inner = innerEdges(scenario);
   const trips: Trip[] = [];
-  for (const [from, perHour] of Object.entries(scenario.entries)) {
-    forEachDeparture(scenario, perHour, random, (departS) => {
-      const startsInside = random.next() < scenario.innerShare && inner.length > 0;
-      const endsInside = random.next() < scenario.innerShare && inner.length > 0;
-      const start = startsInside ? inner[Math.floor(random.next() * inner.length)] : from;
-      const to = endsInside ? inner[Math.floor(random.next() * inner.length)] : pickExit(scenario, from, random);
-      if (start !== to) trips.push({ departS, from: start, to, startsInside, endsInside, heavy: random.next() < HEAVY_SHARE });
-    });
-  }
+  for (const demand of scenario.demand) drawTrips(scenario, demand, random, trips);
   for (const { from, to, perHour } of scenario.relations ?? []) {
     forEachDeparture(scenario, perHour, random, (departS) =>
       trips.push({ departS, from, to, startsInside: false, endsInside: false, heavy: random.next() < HEAVY_SHARE }),
@@ -63,9 +54,17 @@ export function loneVehicleType(scenario: Scenario): string {
   return `<vType id="lone" ${car}/>`;
 }
 
-function innerEdges(scenario: Scenario): string[] {
-  const ends = new Set(scenario.nodes.filter((node) => node.kind === "end").map((node) => node.id));
-  return scenario.edges.filter((edge) => !ends.has(edge.from) && !ends.has(edge.to)).map((edge) => edge.id);
+function drawTrips(scenario: Scenario, demand: Demand, random: Random, trips: Trip[]) {
+  const { inner } = demand;
+  for (const [entry, perHour] of Object.entries(demand.entries)) {
+    forEachDeparture(scenario, perHour, random, (departS) => {
+      const startsInside = random.next() < scenario.innerShare && inner.length > 0;
+      const endsInside = random.next() < scenario.innerShare && inner.length > 0;
+      const from = startsInside ? inner[Math.floor(random.next() * inner.length)] : entry;
+      const to = endsInside ? inner[Math.floor(random.next() * inner.length)] : pickExit(scenario, demand, entry, random);
+      if (from !== to) trips.push({ departS, from, to, startsInside, endsInside, heavy: random.next() < HEAVY_SHARE });
+    });
+  }
 }
 
 function forEachDeparture(scenario: Scenario, perHour: number, random: Random, visit: (departS: number) => void) {
@@ -79,9 +78,9 @@ function forEachDeparture(scenario: Scenario, perHour: number, random: Random, v
   }
 }
 
-function pickExit(scenario: Scenario, from: string, random: Random): string {
+function pickExit(scenario: Scenario, demand: Demand, from: string, random: Random): string {
   const entry = scenario.edges.find((edge) => edge.id === from);
-  const options = Object.entries(scenario.exits).filter(([id]) => scenario.edges.find((edge) => edge.id === id)?.to !== entry?.from);
+  const options = Object.entries(demand.exits).filter(([id]) => scenario.edges.find((edge) => edge.id === id)?.to !== entry?.from);
   let left = random.next() * options.reduce((sum, [, weight]) => sum + weight, 0);
   for (const [id, weight] of options) {
     left -= weight;
