@@ -26,3 +26,42 @@ export function setOf(tracks: ToyTrack[]): TrackSet {
 }
 
 export const sum = (values: ArrayLike<number>): number => Array.from(values).reduce((total, value) => total + value, 0);
+
+export interface SignalStreet {
+  lengthM: number;
+  freeMs: number;
+  cycleS: number;
+  greenS: number;
+  /** Seconds between arrivals at the upstream end. */
+  headwayS: number;
+  vehicles: number;
+}
+
+const STEP_S = 0.5;
+const JAM_M = 7;
+const REACTION_S = 1.5;
+
+/**
+ * One lane towards a signal by Newell's simplified car-following (2002): each vehicle drives free, or follows its
+ * leader's path shifted by 1.5 s and 7 m, and stands at the stop line while it is red. Points every half second.
+ */
+export function driveStreet(street: SignalStreet, exitM = -60): ToyTrack[] {
+  const lag = Math.round(REACTION_S / STEP_S);
+  const tracks: ToyTrack[] = [];
+  let leader: { from: number; s: number[] } | null = null;
+  for (let i = 0; i < street.vehicles; i++) {
+    const from = Math.round((i * street.headwayS) / STEP_S);
+    const s = [street.lengthM];
+    for (let k = from + 1; s[s.length - 1] > exitM; k++) {
+      let next = s[s.length - 1] - street.freeMs * STEP_S;
+      const ahead = leader ? leader.s[k - lag - leader.from] : undefined;
+      if (ahead !== undefined) next = Math.max(next, ahead + JAM_M);
+      const isRed = (k * STEP_S) % street.cycleS >= street.greenS;
+      if (isRed && s[s.length - 1] >= 1 && next < 1) next = 1;
+      s.push(Math.min(next, s[s.length - 1]));
+    }
+    tracks.push({ points: s.map((at, k): [number, number] => [(from + k) * STEP_S, at]) });
+    leader = { from, s };
+  }
+  return tracks;
+}

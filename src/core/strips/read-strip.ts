@@ -1,0 +1,75 @@
+import { columnReach } from "../queues/column-reach";
+import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "../queues/options";
+import type { Strip } from "./strip";
+
+/**
+ * Mean delay per vehicle read off a strip: the time in its cells beyond what the distance in them takes at
+ * the reference pace, shared among the vehicles. Over rows from cordon to exit cordon it equals the mean
+ * over traversals, since both are the same sums in another order. Not clipped at zero; NaN without vehicles.
+ * `paceSPerM` is reference time by distance of the vehicles' movements, in s/m. O(cells).
+ */
+export function stripDelayS(strip: Strip, paceSPerM: number, vehicles: number): number {
+  if (!(vehicles > 0)) return NaN;
+  let excess = 0;
+  for (let cell = 0; cell < strip.timeS.length; cell++) excess += strip.timeS[cell] - paceSPerM * strip.distanceM[cell];
+  return excess / vehicles;
+}
+
+/**
+ * Where along the leg the delay arises: excess over the reference pace in each row, seconds per vehicle that
+ * passed the row (its distance by the row's length); NaN in rows that nobody passed. O(cells).
+ */
+export function delayByRow(strip: Strip, paceSPerM: number): Float32Array {
+  const { rows, columns, cellM } = strip.spec;
+  const out = new Float32Array(rows).fill(NaN);
+  for (let row = 0; row < rows; row++) {
+    let time = 0;
+    let distance = 0;
+    for (let cell = row * columns; cell < (row + 1) * columns; cell++) {
+      time += strip.timeS[cell];
+      distance += strip.distanceM[cell];
+    }
+    if (distance > 0) out[row] = (time / distance - paceSPerM) * cellM;
+  }
+  return out;
+}
+
+/**
+ * Reach of the congested cells that hang together with the stop line, for each column, metres: cells slower
+ * than the speed at which a stop ends, now or within the last `memoryS`, their head and gaps as in a standing
+ * column. NaN in columns without a vehicle, 0 where none is congested. Meant for one day and rectangles of
+ * about 10 s: longer cells mix red with green, pooled days one day's queue with another's free street. O(cells × memory).
+ */
+export function congestedReaches(strip: Strip, options: Partial<QueueOptions> = {}): Float32Array {
+  const { goSpeedMs, headM, gapM, memoryS } = { ...DEFAULT_QUEUE_OPTIONS, ...options };
+  const { rows, columns, bottomM, cellM, cellS } = strip.spec;
+  const memory = Math.floor(memoryS / cellS);
+  const out = new Float32Array(columns).fill(NaN);
+  const positions = new Float64Array(rows);
+  const firstRow = Math.max(0, Math.ceil(-bottomM / cellM));
+  for (let column = 0; column < columns; column++) {
+    let congested = 0;
+    let isSeen = false;
+    for (let row = firstRow; row < rows; row++) {
+      isSeen ||= strip.timeS[row * columns + column] > 0;
+      if (wasCongested(strip, row, column, memory, goSpeedMs)) positions[congested++] = bottomM + (row + 0.5) * cellM;
+    }
+    if (isSeen) out[column] = columnReach(positions, congested, headM, gapM);
+  }
+  return out;
+}
+
+function wasCongested(strip: Strip, row: number, column: number, memory: number, goSpeedMs: number): boolean {
+  for (let c = Math.max(0, column - memory); c <= column; c++) {
+    const cell = row * strip.spec.columns + c;
+    if (strip.timeS[cell] > 0 && strip.distanceM[cell] < goSpeedMs * strip.timeS[cell]) return true;
+  }
+  return false;
+}
+
+/** Share of the columns seen in which the congested cells reach `spillShare` of the storage; NaN where it cannot be said. */
+export function spillShareOfCells(strip: Strip, storageM: number, options: Partial<QueueOptions> = {}): number {
+  const full = (options.spillShare ?? DEFAULT_QUEUE_OPTIONS.spillShare) * storageM;
+  const seen = congestedReaches(strip, options).filter((reach) => !Number.isNaN(reach));
+  return full > 0 && seen.length > 0 ? seen.filter((reach) => reach >= full).length / seen.length : NaN;
+}
