@@ -61,7 +61,7 @@ export const REJECT_REASONS = ["columns", "vehicle", "time", "position", "speed"
 export type RejectReason = (typeof REJECT_REASONS)[number];
 
 export const REJECT_SENTENCES: Record<RejectReason, string> = {
-  columns: "The row has too few columns.",
+  columns: "The row has too few or too many columns, or a stray quotation mark.",
   vehicle: "The vehicle identifier is empty.",
   time: "The time cannot be read.",
   position: "Latitude or longitude is missing or out of range.",
@@ -85,10 +85,14 @@ export interface IngestReport {
   rejected: Partial<Record<RejectReason, number>>;
   /** The first few, for the page; all of them are in the download. */
   samples: RejectedRow[];
+  /** Sentences about values that were left out. */
+  remarks?: string[];
   /** Of a pings file. */
   vehicles?: number;
   trips?: number;
   traversals?: number;
+  /** Left out because an earlier upload brought them. */
+  knownTraversals?: number;
   incompleteTraversals?: number;
   duplicatePings?: number;
   jumps?: number;
@@ -98,6 +102,8 @@ export interface IngestReport {
   firstAt?: string;
   lastAt?: string;
   medianIntervalS?: number;
+  /** Share of the traffic that was seen, estimated from queues. */
+  penetration?: number;
   hasSpeed?: boolean;
   hasHeading?: boolean;
   /** Of a junctions file. */

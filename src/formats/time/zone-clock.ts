@@ -1,0 +1,53 @@
+const QUARTER_MS = 900_000;
+const DAY_MS = 86_400_000;
+
+/**
+ * Turns wall-clock times of one zone into instants. Where clocks go back, the earlier of the two instants
+ * is meant; a time that clocks skip is no time (NaN). Offsets are looked up once for each quarter of an hour.
+ */
+export class ZoneClock {
+  private readonly format: Intl.DateTimeFormat;
+  private readonly offsets = new Map<number, number>();
+
+  constructor(timeZone: string) {
+    this.format = new Intl.DateTimeFormat("en-US", {
+      timeZone,
+      hourCycle: "h23",
+      year: "numeric",
+      month: "numeric",
+      day: "numeric",
+      hour: "numeric",
+      minute: "numeric",
+      second: "numeric",
+      era: "short",
+    });
+  }
+
+  /** `wallMs` is the wall-clock time read as if it were UTC. */
+  instantMs(wallMs: number): number {
+    const quarter = Math.floor(wallMs / QUARTER_MS);
+    let offset = this.offsets.get(quarter);
+    if (offset === undefined) {
+      offset = this.wallOffsetMs(quarter * QUARTER_MS);
+      this.offsets.set(quarter, offset);
+    }
+    return wallMs - offset;
+  }
+
+  private wallOffsetMs(wallMs: number): number {
+    const before = this.offsetMs(wallMs - DAY_MS);
+    const after = this.offsetMs(wallMs + DAY_MS);
+    // The larger offset is the earlier instant.
+    const larger = Math.max(before, after);
+    if (this.offsetMs(wallMs - larger) === larger) return larger;
+    const smaller = Math.min(before, after);
+    return this.offsetMs(wallMs - smaller) === smaller ? smaller : NaN;
+  }
+
+  private offsetMs(instantMs: number): number {
+    const part: Record<string, string> = {};
+    for (const { type, value } of this.format.formatToParts(instantMs)) part[type] = value;
+    const wall = Date.UTC(+part.year, +part.month - 1, +part.day, +part.hour, +part.minute, +part.second);
+    return wall - Math.floor(instantMs / 1000) * 1000;
+  }
+}
