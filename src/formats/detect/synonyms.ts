@@ -1,4 +1,4 @@
-import { JUNCTION_FIELDS, PING_FIELDS, type SpeedUnit, type UploadKind } from "@/domain/upload";
+import type { JUNCTION_FIELDS, PING_FIELDS, SpeedUnit, UploadKind } from "@/domain/upload";
 
 /** Names under which columns arrive, in the order in which they are preferred; compared by `plainName`. */
 const PING_SYNONYMS: Record<(typeof PING_FIELDS)[number], readonly string[]> = {
