@@ -77,8 +77,9 @@ export interface EstimateView {
   high: number;
 }
 
+/** A figure without an interval is no figure: one vehicle says nothing about a mean. */
 export function estimateView(e: Estimate): EstimateView | null {
-  return Number.isFinite(e.value) ? { value: e.value, low: e.low, high: e.high } : null;
+  return [e.value, e.low, e.high].every(Number.isFinite) ? { value: e.value, low: e.low, high: e.high } : null;
 }
 
 export interface NeedleView {

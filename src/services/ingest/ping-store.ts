@@ -71,6 +71,17 @@ export function emptyColumns(capacity: number): PingColumns {
   };
 }
 
+/** One batch out of several. */
+export function joinPings(parts: readonly PingColumns[]): PingColumns {
+  if (parts.length === 1) return parts[0];
+  const joined = emptyColumns(parts.reduce((sum, part) => sum + part.length, 0));
+  for (const part of parts) {
+    copyInto(joined, joined.length, part);
+    joined.length += part.length;
+  }
+  return joined;
+}
+
 function append(to: PingColumns, batch: PingColumns): PingColumns {
   const needed = to.length + batch.length;
   let grown = to;

@@ -1,6 +1,6 @@
 import { eq } from "drizzle-orm";
 import { z } from "zod";
-import { scoreProfile, type ProfileQuarter } from "@/core/scores";
+import { scoreProfile, type ProfileQuarter } from "@/core/scores/score-profile";
 import { corridors, junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { WhenQuery, type JunctionView, type ProfilePoint } from "@/domain/junction";
@@ -44,7 +44,7 @@ export async function getJunction(ctx: Context, input: z.input<typeof GetJunctio
     scoreCity(ctx, { ...when, turn: "any" }),
   ]);
   const listed = scored.catalogue.junctions.get(junctionId);
-  const profile = scoreProfile(scored.data.days, movementRows.map((movement) => movement.id), legIds);
+  const profile = scoreProfile(scored.data.days, { movements: movementRows.map((movement) => movement.id), legs: legIds });
   return {
     ...row,
     score: listed ? rowOf(listed, scored) : null,
@@ -62,6 +62,6 @@ export function profilePoint(quarter: ProfileQuarter): ProfilePoint {
     vehicles: quarter.vehicles,
     delay: estimateView(quarter.delay),
     reachM: finite(quarter.reachP95M),
-    spill: finite(quarter.spill),
+    spill: finite(quarter.spill.value),
   };
 }

@@ -32,7 +32,7 @@ export async function getReport(ctx: Context, input: { reportId: string }): Prom
   return { ...row, publishedAt: row.publishedAt.toISOString() };
 }
 
-export async function exportReport(ctx: Context, input: { reportId: string }): Promise<string> {
+export async function exportReport(ctx: Context, input: { reportId: string }): Promise<AsyncGenerator<string>> {
   const report = await getReport(ctx, input);
   return screenCsv(report.result.rows, report.result.basis);
 }

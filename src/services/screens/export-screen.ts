@@ -35,29 +35,29 @@ const HEADER = [
   "method_version",
 ];
 
-const round = (value: number | null | undefined, digits: number): number | "" =>
-  value === null || value === undefined ? "" : Number(value.toFixed(digits));
+const round = (value: number | null | undefined, digits: number): number | null =>
+  value === null || value === undefined ? null : Number(value.toFixed(digits));
 
-export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["basis"]): string {
+export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["basis"]): AsyncGenerator<string> {
   const period = `${clockText(basis.fromMin)}-${clockText(basis.toMin)}`;
   return csvText(
     HEADER,
     rows.map((row) => [
-      row.rank ?? "",
-      row.rankLow ?? "",
-      row.rankHigh ?? "",
+      row.rank ?? null,
+      row.rankLow ?? null,
+      row.rankHigh ?? null,
       row.code,
       row.name,
-      row.corridor ?? "",
+      row.corridor ?? null,
       round(row.lat, 6),
       round(row.lon, 6),
-      row.worst ? `${row.worst.turn} ${row.worst.from}` : "",
+      row.worst ? `${row.worst.turn} ${row.worst.from}` : null,
       round(row.delay?.value, 1),
       round(row.delay?.low, 1),
       round(row.delay?.high, 1),
       round(row.medianS, 1),
       round(row.p95S, 1),
-      row.los?.at ?? "",
+      row.los?.at ?? null,
       round(row.hoursSeen, 2),
       round(row.stopsPerVehicle, 2),
       round(row.reachM, 0),
@@ -67,15 +67,15 @@ export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["
       row.days,
       row.evidence,
       period,
-      basis.firstDate ?? "",
-      basis.lastDate ?? "",
+      basis.firstDate ?? null,
+      basis.lastDate ?? null,
       basis.methodVersion,
     ]),
   );
 }
 
 /** The list as the person sees it: the same filters, the same order. */
-export async function exportScreen(ctx: Context, input: ScreenQuery): Promise<string> {
+export async function exportScreen(ctx: Context, input: ScreenQuery): Promise<AsyncGenerator<string>> {
   requirePermission(ctx, "screen.export");
   const query = ScreenQuery.parse(input);
   const { rows, basis } = await rankCity(ctx, query);

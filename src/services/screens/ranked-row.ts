@@ -1,4 +1,4 @@
-import { levelOfService } from "@/core/stats";
+import { levelOfService } from "@/core/stats/level-of-service";
 import type { JunctionScore } from "@/core/scores/types";
 import { estimateView, type EstimateView, type NeedleView, type RankedJunction } from "@/domain/screen";
 import type { CatalogueJunction } from "../catalogue/catalogue";
@@ -8,7 +8,8 @@ export const finite = (value: number): number | null => (Number.isFinite(value) 
 
 export function losView(delay: EstimateView | null): { at: string; low: string; high: string } | null {
   if (!delay) return null;
-  return { at: levelOfService(delay.value), low: levelOfService(delay.low), high: levelOfService(delay.high) };
+  const [at, low, high] = [delay.value, delay.low, delay.high].map((seconds) => levelOfService(seconds));
+  return at && low && high ? { at, low, high } : null;
 }
 
 export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJunction {

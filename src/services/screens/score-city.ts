@@ -1,5 +1,5 @@
 import { METHOD_VERSION } from "@/core/method-version";
-import { scoreScreen } from "@/core/scores";
+import { scoreScreen } from "@/core/scores/score-screen";
 import type { JunctionScore, LegScore, MovementScore, ScreenScores } from "@/core/scores/types";
 import { isoFromDay } from "@/domain/local-time";
 import type { ScreenQuery, ScreenResult } from "@/domain/screen";

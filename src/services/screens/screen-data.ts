@@ -1,5 +1,6 @@
 import { inArray } from "drizzle-orm";
-import { decodeScreenDay, mergeScreenDays } from "@/core/scores";
+import { mergeScreenDays } from "@/core/scores/merge-screen-days";
+import { decodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { ScreenDay } from "@/core/scores/types";
 import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
@@ -79,8 +80,7 @@ async function decodeSlices(db: Db, slices: Slice[]): Promise<Map<number, Screen
       .select({ id: screenDays.id, payload: screenDays.payload })
       .from(screenDays)
       .where(inArray(screenDays.id, missing));
-    // The driver's buffer may sit at an odd offset of a pool; typed views need their own.
-    for (const row of rows) known.set(row.id, decodeScreenDay(row.payload.slice().buffer as ArrayBuffer));
+    for (const row of rows) known.set(row.id, decodeScreenDay(row.payload));
   }
   return known;
 }

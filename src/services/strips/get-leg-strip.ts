@@ -1,6 +1,6 @@
 import { and, eq, inArray, sql } from "drizzle-orm";
 import { z } from "zod";
-import { scoreProfile } from "@/core/scores";
+import { scoreProfile } from "@/core/scores/score-profile";
 import { junctions, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { StripQuery, type LegStripView } from "@/domain/junction";
@@ -41,7 +41,7 @@ export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStri
     leg: legView(leg, scored.legScores.get(legId)),
     movements: movementRows.map((movement) => movementView(movement, scored.movementScores.get(movement.id))),
     days: counted,
-    profile: scoreProfile(scored.data.days, movementRows.map((movement) => movement.id), [legId]).map(profilePoint),
+    profile: scoreProfile(scored.data.days, { movements: movementRows.map((movement) => movement.id), legs: [legId] }).map(profilePoint),
     basis: basisOf(scored),
   };
 }

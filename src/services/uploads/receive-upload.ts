@@ -4,7 +4,7 @@ import { z } from "zod";
 import { uploads } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { UPLOAD_KINDS, type Detection } from "@/domain/upload";
-import { detect } from "@/formats";
+import { detect } from "@/formats/detect/detect";
 import { recordAudit } from "../audit/record-audit";
 import { requirePermission, type Context } from "../context";
 

@@ -1,4 +1,6 @@
 import type { Handler } from "../handler";
+import { ingestUploadHandler } from "./ingest-upload";
 import { sendPasswordMailHandler } from "./send-password-mail";
+import { sendUploadMailHandler } from "./send-upload-mail";
 
-export const handlers: readonly Handler[] = [sendPasswordMailHandler];
+export const handlers: readonly Handler[] = [ingestUploadHandler, sendPasswordMailHandler, sendUploadMailHandler];

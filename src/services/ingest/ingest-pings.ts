@@ -1,0 +1,249 @@
+import { asc, eq } from "drizzle-orm";
+import { METHOD_VERSION } from "@/core/method-version";
+import { createMatcher, learnNetwork, setReferences } from "@/core/process";
+import { legQuarters } from "@/core/queues/leg-quarters";
+import { penetrationFromQueues } from "@/core/queues/penetration";
+import { buildScreenDays } from "@/core/scores/build-screen-days";
+import { localQuarter } from "@/core/scores/local-time";
+import { encodeScreenDay } from "@/core/scores/screen-day-codec";
+import type { JunctionPoint, Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
+import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
+import { junctions, legs, screenDays, traversals as traversalTable } from "@/db/schema";
+import { AppError } from "@/domain/errors";
+import { offsetTable } from "@/domain/local-time";
+import type { FileMapping, IngestReport } from "@/domain/upload";
+import { readPings } from "@/formats/pings/read-pings";
+import type { RowCounts } from "@/formats/row-tally";
+import { VehicleNames } from "@/formats/vehicle-names";
+import { createH3Index } from "@/geo/h3-index";
+import { raiseDataVersion } from "../catalogue/catalogue";
+import type { Context } from "../context";
+import { getSettings } from "../settings/get-settings";
+import { failUpload, finishUpload } from "./finish-upload";
+import { joinTraversals } from "./join-traversals";
+import { dropKnown } from "./known-traversals";
+import { readNetwork, storeNetwork } from "./network-rows";
+import { joinPings, openPingStore, type PingStore } from "./ping-store";
+import { openProgress, type ProgressWriter } from "./progress";
+import { openRejects, type RejectWriter } from "./rejects";
+import { storeTraversals } from "./store-traversals";
+import { vehicleHashes, vehicleKey } from "./vehicle-hash";
+
+/** Two files at once would both learn the same new legs; they take turns. */
+const INGEST_LOCK = 7_401_160;
+/** Enough vehicles to learn the streets from; the rest only passes over them. */
+const LEARNING_PINGS = 4_000_000;
+
+interface PingUpload {
+  id: string;
+  storageKey: string;
+  mapping: FileMapping;
+}
+
+interface Totals {
+  pings: number;
+  duplicates: number;
+  jumps: number;
+  trips: number;
+  incompleteTraversals: number;
+}
+
+/** From the file on storage to ranked screens in the database; the result appears in one transaction. */
+export async function ingestPings(ctx: Context, upload: PingUpload, signal?: AbortSignal): Promise<void> {
+  const progress = openProgress(ctx, upload.id, signal);
+  const store = openPingStore();
+  const rejects = openRejects(ctx, upload.id);
+  const names = new VehicleNames();
+  try {
+    const counts = await readIntoStore(ctx, upload, store, rejects, names, progress);
+    const rejectsKey = await rejects.finish();
+    if (counts.accepted === 0) {
+      const report: IngestReport = { ...counts };
+      return await failUpload(ctx, upload.id, "No row of the file could be read as a ping; the report says why.", report, rejectsKey);
+    }
+    await withAdvisoryLock(ctx.db, INGEST_LOCK, () => matchAndStore(ctx, upload, store, names, counts, rejectsKey, progress));
+  } catch (error) {
+    await rejects.abandon();
+    throw error;
+  } finally {
+    await store.close();
+  }
+}
+
+async function readIntoStore(
+  ctx: Context,
+  upload: PingUpload,
+  store: PingStore,
+  rejects: RejectWriter,
+  names: VehicleNames,
+  progress: ProgressWriter,
+): Promise<RowCounts> {
+  const bytes = (await ctx.storage.size(upload.storageKey)) ?? 0;
+  const stream = await ctx.storage.open(upload.storageKey);
+  let readBytes = 0;
+  async function* counted(): AsyncGenerator<Uint8Array> {
+    for await (const chunk of stream) {
+      readBytes += (chunk as Uint8Array).length;
+      yield chunk as Uint8Array;
+    }
+  }
+  return readPings(
+    counted(),
+    upload.mapping,
+    {
+      async onBatch(batch) {
+        await store.add(batch);
+        await progress.tell("read", readBytes / bytes, store.length);
+      },
+      onReject: (row) => rejects.add(row),
+    },
+    names,
+  );
+}
+
+async function matchAndStore(
+  ctx: Context,
+  upload: PingUpload,
+  store: PingStore,
+  names: VehicleNames,
+  counts: RowCounts,
+  rejectsKey: string | null,
+  progress: ProgressWriter,
+): Promise<void> {
+  const settings = await getSettings(ctx);
+  const points = await readJunctionPoints(ctx);
+  if (points.length === 0) throw new AppError("invalid", "Load the city's junctions first: pings are matched to them.");
+  const index = createH3Index();
+  const prior = await readNetwork(ctx.db, points, settings.driveSide);
+  await progress.tell("learn legs", 0.1, counts.rowsRead);
+  const network = learnNetwork(await learningSample(store), points, index, { driveSide: settings.driveSide }, prior);
+  const matched = await matchAll(network, store, index, counts, progress);
+  setReferences(network, matched.traversals);
+
+  await progress.tell("score", 0.2, counts.rowsRead);
+  const vehicleHash = vehicleHashes(await vehicleKey(ctx.db), names);
+  const localTime = offsetTable(settings.timeZone, matched.firstMs, matched.lastMs);
+  const daysOf = (all: Traversals) => Int32Array.from({ length: all.length }, (_, i) => localQuarter(all.stopLineMs[i], localTime).day);
+  const traversals = await dropKnown(ctx.db, matched.traversals, {
+    uploadId: upload.id,
+    network,
+    legKeys: await storedLegKeys(ctx),
+    days: [...new Set(daysOf(matched.traversals))],
+    vehicleHash,
+  });
+  const quarters = legQuarters(network, traversals);
+  const penetration = penetrationFromQueues(network, traversals);
+
+  await progress.tell("store", 0.1, counts.rowsRead);
+  const report = reportOf(counts, matched, traversals, network, penetration);
+  await bulkTransaction(ctx.db, async (tx, client) => {
+    await tx.delete(traversalTable).where(eq(traversalTable.uploadId, upload.id));
+    await tx.delete(screenDays).where(eq(screenDays.uploadId, upload.id));
+    const keys = await storeNetwork(tx, network, points.map((point) => point.key));
+    await storeTraversals(tx, client, { uploadId: upload.id, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
+    const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
+    const slices = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
+    for (const slice of slices) {
+      await tx.insert(screenDays).values({
+        uploadId: upload.id,
+        day: slice.day,
+        methodVersion: METHOD_VERSION,
+        medianIntervalS: Number.isFinite(matched.facts.medianIntervalS) ? Math.round(matched.facts.medianIntervalS) : null,
+        traversals: slice.offset[slice.cells],
+        payload: encodeScreenDay(slice),
+      });
+    }
+    await finishUpload({ ...ctx, db: tx }, upload.id, report, rejectsKey);
+    await raiseDataVersion(tx);
+  });
+}
+
+async function readJunctionPoints(ctx: Context): Promise<(JunctionPoint & { key: number })[]> {
+  return ctx.db
+    .select({ key: junctions.id, id: junctions.code, lat: junctions.lat, lon: junctions.lon })
+    .from(junctions)
+    .orderBy(asc(junctions.id));
+}
+
+async function storedLegKeys(ctx: Context): Promise<Map<string, number>> {
+  const rows = await ctx.db.select({ id: legs.id, code: legs.code }).from(legs);
+  return new Map(rows.map((row) => [row.code, row.id]));
+}
+
+async function learningSample(store: PingStore): Promise<PingColumns> {
+  const parts: PingColumns[] = [];
+  let length = 0;
+  for await (const bucket of store.buckets()) {
+    parts.push(bucket);
+    length += bucket.length;
+    if (length >= LEARNING_PINGS) break;
+  }
+  return joinPings(parts);
+}
+
+interface MatchedFile {
+  traversals: Traversals;
+  totals: Totals;
+  facts: SampleFacts;
+  firstMs: number;
+  lastMs: number;
+}
+
+async function matchAll(
+  network: Network,
+  store: PingStore,
+  index: ReturnType<typeof createH3Index>,
+  counts: RowCounts,
+  progress: ProgressWriter,
+): Promise<MatchedFile> {
+  const match = createMatcher(network, index);
+  const parts: Traversals[] = [];
+  const totals: Totals = { pings: 0, duplicates: 0, jumps: 0, trips: 0, incompleteTraversals: 0 };
+  let facts: SampleFacts | null = null;
+  let vehicles = 0;
+  let firstMs = Infinity;
+  let lastMs = -Infinity;
+  for await (const bucket of store.buckets()) {
+    const matched = match(bucket);
+    parts.push(matched.traversals);
+    for (const name of Object.keys(totals) as (keyof Totals)[]) totals[name] += matched.report[name];
+    vehicles += matched.facts.vehicles;
+    // Every bucket holds a fair share of all vehicles: the first one's interval stands for the file's.
+    facts = { ...(facts ?? matched.facts), vehicles };
+    for (let i = 0; i < bucket.length; i++) {
+      if (bucket.tMs[i] < firstMs) firstMs = bucket.tMs[i];
+      if (bucket.tMs[i] > lastMs) lastMs = bucket.tMs[i];
+    }
+    await progress.tell("match", totals.pings / counts.accepted, counts.rowsRead);
+  }
+  return { traversals: joinTraversals(parts), totals, facts: facts as SampleFacts, firstMs, lastMs };
+}
+
+function reportOf(counts: RowCounts, matched: MatchedFile, traversals: Traversals, network: Network, penetration: number): IngestReport {
+  const covered = new Set<number>();
+  const used = new Set<number>();
+  for (let i = 0; i < traversals.length; i++) {
+    const leg = network.movements[traversals.movement[i]].leg;
+    used.add(leg);
+    covered.add(network.legs[leg].junction);
+  }
+  return {
+    ...counts,
+    vehicles: matched.facts.vehicles,
+    trips: matched.totals.trips,
+    traversals: traversals.length,
+    knownTraversals: matched.traversals.length - traversals.length,
+    incompleteTraversals: matched.totals.incompleteTraversals,
+    duplicatePings: matched.totals.duplicates,
+    jumps: matched.totals.jumps,
+    junctionsCovered: covered.size,
+    junctionsTotal: network.junctions.length,
+    legsFound: used.size,
+    firstAt: new Date(matched.firstMs).toISOString(),
+    lastAt: new Date(matched.lastMs).toISOString(),
+    medianIntervalS: Number.isFinite(matched.facts.medianIntervalS) ? matched.facts.medianIntervalS : undefined,
+    penetration: Number.isFinite(penetration) ? penetration : undefined,
+    hasSpeed: matched.facts.hasSpeed,
+    hasHeading: matched.facts.hasHeading,
+  };
+}

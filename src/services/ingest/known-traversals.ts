@@ -1,0 +1,50 @@
+import { and, inArray, ne, sql } from "drizzle-orm";
+import type { Network, Traversals } from "@/core/types";
+import type { Db } from "@/db/client";
+import { screenDays, traversals as table } from "@/db/schema";
+import { isoFromDay } from "@/domain/local-time";
+import { filterTraversals } from "./join-traversals";
+
+/** The same vehicle cannot pass the same stop line twice within this time. */
+const SAME_PASSAGE_MS = 30_000;
+
+export interface OverlapQuestion {
+  uploadId: string;
+  network: Network;
+  /** Database key of each leg code; legs that are not stored yet are absent. */
+  legKeys: ReadonlyMap<string, number>;
+  days: readonly number[];
+  vehicleHash: BigInt64Array;
+}
+
+/** Leaves out what another upload has brought already, so that overlapping files count once. */
+export async function dropKnown(db: Db, all: Traversals, question: OverlapQuestion): Promise<Traversals> {
+  const { uploadId, network, legKeys, days, vehicleHash } = question;
+  if (days.length === 0) return all;
+  const others = await db
+    .select({ day: screenDays.day })
+    .from(screenDays)
+    .where(and(inArray(screenDays.day, [...days]), ne(screenDays.uploadId, uploadId)))
+    .groupBy(screenDays.day);
+  if (others.length === 0) return all;
+  const rows = await db
+    .select({
+      vehicle: table.vehicle,
+      legId: table.legId,
+      stopLineMs: sql<number>`extract(epoch from ${table.stopLineAt}) * 1000`.mapWith(Number),
+    })
+    .from(table)
+    .where(and(inArray(table.localDay, others.map((row) => isoFromDay(row.day))), ne(table.uploadId, uploadId)));
+  const known = new Map<string, number[]>();
+  for (const row of rows) {
+    const key = `${row.vehicle}:${row.legId}`;
+    const times = known.get(key);
+    if (times) times.push(row.stopLineMs);
+    else known.set(key, [row.stopLineMs]);
+  }
+  return filterTraversals(all, (i) => {
+    const leg = legKeys.get(network.legs[network.movements[all.movement[i]].leg].id);
+    const times = leg === undefined ? undefined : known.get(`${vehicleHash[all.vehicle[i]]}:${leg}`);
+    return !times?.some((ms) => Math.abs(ms - all.stopLineMs[i]) < SAME_PASSAGE_MS);
+  });
+}

@@ -1,0 +1,141 @@
+import { Readable } from "node:stream";
+import { text } from "node:stream/consumers";
+import { count, eq, sql } from "drizzle-orm";
+import { beforeAll, describe, expect, it } from "vitest";
+import { junctions, legs, screenDays, traversals } from "@/db/schema";
+import { ScreenQuery } from "@/domain/screen";
+import { StripQuery } from "@/domain/junction";
+import type { UploadKind } from "@/domain/upload";
+import { ingestUpload } from "@/services/ingest/ingest-upload";
+import { exportScreen } from "@/services/screens/export-screen";
+import { rankJunctions } from "@/services/screens/rank-junctions";
+import { getJunction } from "@/services/junctions/get-junction";
+import { getTracks } from "@/services/strips/get-tracks";
+import { decodeTrackSet } from "@/core/strips/track-set";
+import { getUpload, openRejects } from "@/services/uploads/get-upload";
+import { receiveUpload } from "@/services/uploads/receive-upload";
+import { startUpload } from "@/services/uploads/start-upload";
+import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
+import { testContext, type TestContext } from "@tests/support/database";
+
+let engineer: TestContext;
+let job: TestContext;
+
+async function upload(kind: UploadKind, name: string, content: string | Buffer): Promise<string> {
+  const { uploadId, detected } = await receiveUpload(engineer, { kind, name }, Readable.from([Buffer.from(content)]));
+  await startUpload(engineer, { uploadId, mapping: detected.mapping, supplier: "Harbour Fleet" });
+  await ingestUpload(job, { uploadId });
+  return uploadId;
+}
+
+const view = (uploadId: string) => getUpload(engineer, { uploadId });
+
+async function sums() {
+  const [row] = await job.db
+    .select({ rows: count(), delay: sql<number>`round(sum(${traversals.delayS})::numeric, 3)`.mapWith(Number) })
+    .from(traversals);
+  const [days] = await job.db.select({ rows: count() }).from(screenDays);
+  return { ...row, days: days.rows };
+}
+
+beforeAll(async () => {
+  engineer = await testContext("engineer");
+  job = await testContext("job");
+  await upload("junctions", "junctions.csv", JUNCTIONS_CSV);
+});
+
+describe("ingest", () => {
+  it("reads junctions in and counts what is new", async () => {
+    const id = await upload("junctions", "again.csv", `${JUNCTIONS_CSV}X2,,45.7,-38.2,,,,\n`);
+    const { state, report } = await view(id);
+    expect(state).toBe("done");
+    expect(report).toMatchObject({ rowsRead: 2, accepted: 1, rejected: { name: 1 }, created: 0, updated: 1 });
+    expect(await job.db.select({ n: count() }).from(junctions)).toEqual([{ n: 1 }]);
+  });
+
+  it("turns pings into traversals, legs and a ranked junction", async () => {
+    const id = await upload("pings", "crossing.csv", crossingPings());
+    const { state, report } = await view(id);
+    expect(state).toBe("done");
+    // 240 vehicles cross once each; all of them begin 420 m out and end 300 m past.
+    expect(report).toMatchObject({ vehicles: 240, traversals: 240, junctionsCovered: 1, legsFound: 4, rejected: {} });
+    const { rows, basis } = await rankJunctions(engineer, ScreenQuery.parse({ period: "all" }));
+    expect(rows).toHaveLength(1);
+    expect(basis).toMatchObject({ traversals: 240, firstDate: "2026-03-03", lastDate: "2026-03-03" });
+    // Half of the vehicles wait 30 s, the others drive through at cruising speed: 15 s on average.
+    expect(rows[0].delay?.value).toBeGreaterThan(14.5);
+    expect(rows[0].delay?.value).toBeLessThan(15.5);
+    expect(rows[0].needles).toHaveLength(4);
+  });
+
+  it("serves the junction's legs by their compass and the tracks of each", async () => {
+    const [junction] = await job.db.select({ id: junctions.id }).from(junctions);
+    const when = ScreenQuery.parse({ period: "all" });
+    const found = await getJunction(engineer, { junctionId: junction.id, when });
+    expect(found.legs.map((leg) => Math.round(leg.bearingDeg / 90) % 4).sort()).toEqual([0, 1, 2, 3]);
+    const seen = found.movements.filter((movement) => movement.vehicles > 0);
+    expect(seen.map((movement) => [movement.turn, movement.vehicles])).toEqual(Array(4).fill(["through", 60]));
+    const set = decodeTrackSet((await getTracks(engineer, { legId: found.legs[0].id, query: StripQuery.parse({ period: "all" }) })).buffer);
+    expect(set.tracks).toBe(60);
+  });
+
+  it("counts an overlapping file once, and the very same file not at all", async () => {
+    const before = await sums();
+    const id = await upload("pings", "crossing-again.csv", crossingPings());
+    expect((await view(id)).report).toMatchObject({ traversals: 0, knownTraversals: 240 });
+    expect((await sums()).rows).toBe(before.rows);
+    const { sameAs } = await receiveUpload(engineer, { kind: "pings", name: "copy.csv" }, Readable.from([Buffer.from(crossingPings())]));
+    expect(sameAs).not.toBeNull();
+  });
+
+  it("changes nothing when a job runs twice", async () => {
+    const id = await upload("pings", "later.csv", crossingPings({ startMs: Date.parse("2026-03-04T08:00:00Z") }));
+    const before = await sums();
+    await ingestUpload(job, { uploadId: id });
+    expect(await sums()).toEqual(before);
+  });
+
+  it("keeps the identity of legs from file to file", async () => {
+    const before = await job.db.select({ id: legs.id, code: legs.code }).from(legs).orderBy(legs.id);
+    await upload("pings", "third.csv", crossingPings({ startMs: Date.parse("2026-03-05T08:00:00Z"), vehicles: 80 }));
+    expect(await job.db.select({ id: legs.id, code: legs.code }).from(legs).orderBy(legs.id)).toEqual(before);
+  });
+
+  it("reports rejected rows with their lines and keeps the good ones", async () => {
+    const lines = crossingPings({ startMs: Date.parse("2026-03-06T08:00:00Z"), vehicles: 40 }).split("\n");
+    lines.splice(3, 0, "v1,not a time,45.6,-38.3,10,0", "v1,1772784000000,95.0,-38.3,10,0");
+    const id = await upload("pings", "dirty.csv", lines.join("\n"));
+    const { report, hasRejects } = await view(id);
+    expect(report).toMatchObject({ rejected: { time: 1, position: 1 }, traversals: 40 });
+    expect(report?.samples.map((row) => [row.line, row.reason])).toEqual([[4, "time"], [5, "position"]]);
+    expect(hasRejects).toBe(true);
+    expect(await text(await openRejects(engineer, { uploadId: id }))).toContain("4,time,The time cannot be read.,\"v1,not a time,45.6,-38.3,10,0\"");
+  });
+
+  it("fails a file without one good row by a sentence, and leaves everything as it was", async () => {
+    const before = await sums();
+    const id = await upload("pings", "empty.csv", "vehicle_id,timestamp,lat,lon\nv1,yesterday,45.6,-38.3\n");
+    const { state, failure, report } = await view(id);
+    expect(state).toBe("failed");
+    expect(failure).toContain("No row");
+    expect(report?.rejected).toEqual({ time: 1 });
+    expect(await sums()).toEqual(before);
+  });
+
+  it("exports the ranked list with units in the header", async () => {
+    let csv = "";
+    for await (const part of await exportScreen(engineer, ScreenQuery.parse({ period: "all" }))) csv += part;
+    const [header, first] = csv.split("\n");
+    expect(header).toContain("mean_delay_s_per_veh");
+    expect(first.split(",")[3]).toBe("X1");
+  });
+
+  it("refuses everyone but engineers and the worker", async () => {
+    for (const role of ["technician", "reader", "admin", "nobody"] as const) {
+      const ctx = await testContext(role);
+      await expect(receiveUpload(ctx, { kind: "pings", name: "x.csv" }, Readable.from(["x"]))).rejects.toThrow();
+      await expect(ingestUpload(ctx, { uploadId: "0b6f8e0e-9a0c-4d57-8e05-4c2a3f0f4f10" })).rejects.toThrow();
+    }
+    expect(await job.db.select({ n: count() }).from(legs).where(eq(legs.locked, true))).toEqual([{ n: 0 }]);
+  });
+});
