@@ -1,6 +1,7 @@
-import { columnReach } from "../queues/column-reach";
-import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "../queues/options";
-import { stopsOfTrack, type TrackColumns } from "../queues/standings";
+import { columnReach } from "@/core/queues/column-reach";
+import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "@/core/queues/options";
+import { stopsOfTrack, type TrackColumns } from "@/core/queues/standings";
+import { COUNT_LINE_M } from "./track-crossings";
 import type { TrackSet } from "./track-set";
 
 /**
@@ -98,16 +99,13 @@ function readDay(
   }
 }
 
-/** The stop line counts as passed on a virtual line where nobody stands. */
-const PASSED_M = -15;
-
 /** A vehicle speaks for the leg from `sightS` before its first point until `sightS` after it passed the stop line. */
 function markPresence(set: TrackSet, i: number, options: QueueOptions, fromS: number, out: Float32Array): void {
   const first = set.offset[i];
   const end = set.offset[i + 1];
   if (first === end) return;
   let last = first;
-  while (last + 1 < end && set.sM[last] > PASSED_M) last++;
+  while (last + 1 < end && set.sM[last] > COUNT_LINE_M) last++;
   const begin = Math.ceil((set.tS[first] - options.sightS - fromS) / options.stepS - 0.5);
   const until = Math.floor((set.tS[last] + options.sightS - fromS) / options.stepS - 0.5);
   for (let step = Math.max(0, begin); step <= Math.min(out.length - 1, until); step++) out[step] = 0;

@@ -1,5 +1,5 @@
-import { columnReach } from "../queues/column-reach";
-import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "../queues/options";
+import { columnReach } from "@/core/queues/column-reach";
+import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "@/core/queues/options";
 import type { Strip } from "./strip";
 
 /**

@@ -1,4 +1,4 @@
-import { quantileSorted } from "../stats/quantile";
+import { quantileEstimate } from "@/core/scores/leg-level";
 import type { DayReaches } from "./reach-of-days";
 
 /** Tail line over the columns of a strip; NaN where the days cannot say. */
@@ -9,7 +9,7 @@ export interface TailLine {
   /** Days (within the pooling span) that saw the leg in or near the column. */
   samples: Uint16Array;
   reachM: Float32Array;
-  /** 95 % interval from the order of the samples; NaN for a single day. */
+  /** 95 % interval; NaN for a single day. */
   lowM: Float32Array;
   highM: Float32Array;
 }
@@ -23,9 +23,8 @@ const TAIL_QUANTILE = 0.95;
 /**
  * Tail line of pooled days: for every column the 95th percentile (type 7) over days of the farthest reach
  * that each day showed in it. Where few days saw the column, neighbours up to 7.5 minutes away are pooled,
- * nearest first, until 21 samples are found. Its interval comes from the binomial order of the samples;
- * its upper end is at most the largest of them, as far as the sample can say. A single day shows its own
- * reach, without an interval. O(days × steps + columns × samples × log).
+ * nearest first, until 21 samples are found. Its interval is that of the scores (Woodruff 1952); its upper end
+ * is at most the largest reach seen. A single day shows its own reach, without an interval. O(days × steps + columns × samples × log).
  */
 export function tailLine(reaches: DayReaches, columnS: number): TailLine {
   const columns = Math.max(1, Math.ceil((reaches.steps * reaches.stepS) / columnS));
@@ -43,25 +42,14 @@ export function tailLine(reaches: DayReaches, columnS: number): TailLine {
   const neighbours = isSingle ? 0 : Math.floor(POOL_S / columnS);
   for (let column = 0; column < columns; column++) {
     const found = pooled(perDay, columns, reaches.days.length, column, neighbours);
+    const { value, low, high } = quantileEstimate(found, TAIL_QUANTILE);
     line.samples[column] = found.length;
-    line.reachM[column] = quantileSorted(found, TAIL_QUANTILE);
-    if (isSingle || found.length === 0) continue;
-    const [low, high] = quantileInterval(found.length, TAIL_QUANTILE);
-    line.lowM[column] = found[low];
-    line.highM[column] = found[high];
+    line.reachM[column] = value;
+    if (isSingle) continue;
+    line.lowM[column] = low;
+    line.highM[column] = high;
   }
   return line;
-}
-
-/**
- * Indices (from 0) of the order statistics that bound the p-quantile of n values with about 95 %, kept inside
- * the sample: np -+ 1.96 sqrt(np(1 - p)), both rounded up (Conover, Practical Nonparametric Statistics, 1999, 3.2).
- */
-export function quantileInterval(n: number, p: number): [number, number] {
-  const half = 1.959963984540054 * Math.sqrt(n * p * (1 - p));
-  const low = Math.ceil(n * p - half) - 1;
-  const high = Math.ceil(n * p + half) - 1;
-  return [Math.min(n - 1, Math.max(0, low)), Math.min(n - 1, Math.max(0, high))];
 }
 
 /** Farthest reach of each day in each column; entry = day * columns + column. */
@@ -77,7 +65,7 @@ function farthestByColumn(reaches: DayReaches, columnS: number, columns: number)
   return out;
 }
 
-/** Samples of a column, sorted; nearest neighbours join on both sides while there are too few. */
+/** Samples of a column; nearest neighbours join on both sides while there are too few. */
 function pooled(perDay: Float32Array, columns: number, days: number, column: number, neighbours: number): number[] {
   const found: number[] = [];
   for (let distance = 0; distance <= neighbours; distance++) {
@@ -90,5 +78,5 @@ function pooled(perDay: Float32Array, columns: number, days: number, column: num
     }
     if (found.length >= ENOUGH) break;
   }
-  return found.sort((a, b) => a - b);
+  return found;
 }

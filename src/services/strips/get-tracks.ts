@@ -14,7 +14,7 @@ export const GetTracks = z.object({ legId: z.coerce.number().int().positive(), q
 
 /** A strip of more tracks than this would not be drawn any better. */
 const MOST_TRACKS = 20_000;
-/** Tracks that reach into the window from before it belong on the strip. */
+/** Tracks that reach into the window from before it, or leave the leg after it, belong on the strip. */
 const LEAD_IN_MIN = 15;
 
 /** The tracks of one leg in the chosen window and dates, as the bytes of a TrackSet. Nothing names a vehicle. */
@@ -47,7 +47,7 @@ export async function getTracks(ctx: Context, input: z.input<typeof GetTracks>):
         inArray(traversals.localDay, dates),
         query.turn === "any" ? undefined : eq(movements.turn, query.turn),
         sql`${localMinute(settings.timeZone)} >= ${window.fromMin - LEAD_IN_MIN}`,
-        sql`${localMinute(settings.timeZone)} < ${window.toMin}`,
+        sql`${localMinute(settings.timeZone)} < ${window.toMin + LEAD_IN_MIN}`,
       ),
     )
     .orderBy(asc(traversals.localDay), asc(traversals.enterAt), asc(traversals.vehicle))

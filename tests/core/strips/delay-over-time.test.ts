@@ -1,0 +1,61 @@
+import { describe, expect, it } from "vitest";
+import { scoreProfile } from "@/core/scores/score-profile";
+import type { ScreenDay } from "@/core/scores/types";
+import { delayOverTime } from "@/core/strips/delay-over-time";
+import { crossingTimes } from "@/core/strips/track-crossings";
+import { setOf, type ToyTrack } from "./support";
+
+const passing = (day: number, crossS: number, delayS: number): ToyTrack => ({
+  day,
+  delayS,
+  points: [[crossS - 31.5, 300], [crossS, -15], [crossS + 4.5, -60]],
+});
+
+describe("crossing times", () => {
+  it("finds the moment on the virtual line between two points", () => {
+    // From 85 to -115 m in 20 s: -15 m after half of it.
+    expect([...crossingTimes(setOf([{ points: [[90, 250], [100, 85], [120, -115]] }]))]).toEqual([110]);
+  });
+
+  it("takes the last point of a track that ends before the line, and NaN of no track", () => {
+    expect([...crossingTimes(setOf([{ points: [[0, 100], [9, 4]] }, { points: [] }]))]).toEqual([9, NaN]);
+  });
+});
+
+describe("delay over time", () => {
+  it("averages the vehicles of each step and leaves out those not included", () => {
+    const set = setOf([passing(1, 3610, 10), passing(1, 3650, 30), passing(2, 3660, 80), passing(2, 4600, 12)]);
+    const delay = delayOverTime(set, crossingTimes(set), 3600, 5400, 900, Uint8Array.of(1, 1, 0, 1));
+    expect([...delay.vehicles]).toEqual([2, 1]);
+    expect([...delay.meanS]).toEqual([20, 12]);
+    expect(delay.lowS[0]).toBeLessThan(20);
+  });
+
+  it("gives the figures of the day profile in quarters of an hour", () => {
+    const delays = [[12, 40, 3], [55, 9, 21], [30, 31, 18]];
+    const set = setOf(delays.flatMap((ofDay, day) => ofDay.map((delay, k) => passing(day + 1, 8 * 3600 + 50 + 200 * k, delay))));
+    const days: ScreenDay[] = delays.map((ofDay, day) => ({
+      day: day + 1,
+      methodVersion: 1,
+      cells: 1,
+      movement: Uint32Array.of(1),
+      quarter: Uint8Array.of(32),
+      offset: Uint32Array.of(0, 3),
+      delayS: Float32Array.from(ofDay),
+      stops: new Uint8Array(3),
+      vehicle: Uint32Array.of(1, 2, 3),
+      legQuarters: 0,
+      leg: new Uint32Array(0),
+      legQuarter: new Uint8Array(0),
+      reachM: new Float32Array(0),
+      reachEstimateM: new Float32Array(0),
+      spilledS: new Float32Array(0),
+      observedS: new Float32Array(0),
+    }));
+    const stored = scoreProfile(days, { movements: [1], legs: [] })[32].delay;
+    const read = delayOverTime(set, crossingTimes(set), 8 * 3600, 8 * 3600 + 900, 900);
+    expect(read.meanS[0]).toBeCloseTo(stored.value, 6);
+    expect(read.lowS[0]).toBeCloseTo(stored.low, 6);
+    expect(read.highS[0]).toBeCloseTo(stored.high, 6);
+  });
+});
