@@ -1,33 +1,53 @@
 import type { JunctionIndex } from "@/core/index/junction-index";
+import { carryOver, type Carried } from "@/core/legs/carry-over";
 import { createFrame, type Frame } from "@/core/legs/frame";
+import { noteDoubts, settleIds, settleNames } from "@/core/legs/finish";
+import { applyGivenLegs } from "@/core/legs/given-legs";
 import { joinArms } from "@/core/legs/join";
 import { LEARNING } from "@/core/legs/learning";
 import { listMovements } from "@/core/legs/movements";
 import { createPingGrid } from "@/core/legs/ping-grid";
-import { pruneUnused } from "@/core/legs/prune";
+import { keepUsed } from "@/core/legs/prune";
 import { findSeeds } from "@/core/legs/seeds";
 import { traceArm } from "@/core/legs/trace";
 import { measureUsage } from "@/core/legs/usage";
 import { createGraph } from "@/core/match/graph";
 import type { CoreOptions } from "@/core/options";
 import type { Trips } from "@/core/pings/trips";
-import type { JunctionPoint, Network } from "@/core/types";
+import type { Exit, JunctionPoint, Leg, Network } from "@/core/types";
 
-/** Stage 4 on cleaned pings: derives legs, exits and movements of every junction, keeping what traffic uses. */
+/**
+ * Stage 4 on cleaned pings: derives legs and exits of every junction, lets drawn lines and earlier legs take their
+ * places, and keeps what matched traffic uses. `prior` is not changed.
+ */
 export function learnFromTrips(
   trips: Trips, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
 ): Network {
-  if (prior) return { ...prior, driveSide: options.driveSide };
   const frame = createFrame(junctions, LEARNING.traceMostM + 200);
+  const draft = proposeLegs(trips, frame, index, options, prior);
+  const network = withMovements(junctions, draft.legs, draft.exits, options);
+  const usage = measureUsage(trips, createGraph(network, index));
+  const kept = keepUsed(network, usage, draft.carried);
+  const exits = settleIds(kept.exits, draft.carried);
+  const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
+  return withMovements(junctions, legs, exits, options);
+}
+
+function proposeLegs(
+  trips: Trips, frame: Frame, index: JunctionIndex, options: CoreOptions, prior: Network | undefined,
+): Carried {
   const rings = claimRings(frame, index);
   const grid = createPingGrid(trips, frame, LEARNING.traceMostM);
   const isSparse = trips.medianIntervalS > LEARNING.sparseIntervalS;
   const arms = findSeeds(trips, frame, rings).map((seed) => traceArm(seed, frame, grid, isSparse));
-  const joined = joinArms(arms, frame);
-  const base = { junctions, ...joined, driveSide: options.driveSide };
-  const draft: Network = { ...base, movements: listMovements(base) };
-  const usage = measureUsage(trips, createGraph(draft, index));
-  return pruneUnused(draft, usage);
+  const derived = joinArms(arms, frame);
+  const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;
+  return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
+}
+
+function withMovements(junctions: JunctionPoint[], legs: Leg[], exits: Exit[], options: CoreOptions): Network {
+  const base = { junctions, legs, exits, driveSide: options.driveSide };
+  return { ...base, movements: listMovements(base) };
 }
 
 function claimRings(frame: Frame, index: JunctionIndex): ReturnType<JunctionIndex["claim"]> {
