@@ -19,6 +19,8 @@ export interface QueueOptions {
   sightS: number;
   /** Step in which the column is looked at. */
   stepS: number;
+  /** Speed at which the start of a discharging queue runs upstream (Newell: jam spacing by reaction time). */
+  waveSpeedMs: number;
   /** Road that one standing vehicle takes, gap included: 25 ft, Highway Capacity Manual Eq. 31-155. */
   jamSpacingM: number;
 }
@@ -34,6 +36,7 @@ export const DEFAULT_QUEUE_OPTIONS: Readonly<QueueOptions> = Object.freeze({
   spillShare: 0.9,
   sightS: 30,
   stepS: 5,
+  waveSpeedMs: 5,
   jamSpacingM: 7.62,
 });
 

@@ -1,7 +1,7 @@
 import type { Network, Traversals } from "@/core/types";
-import { columnReach } from "./column-reach";
+import { columnsOfLeg } from "./columns-of-leg";
 import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "./options";
-import { findStandings } from "./standings";
+import { findStandings, standingsByLeg } from "./standings";
 
 /** Fewer unseen places than this say nothing useful about the share seen. */
 const LEAST_PLACES = 200;
@@ -14,20 +14,14 @@ const LEAST_PLACES = 200;
 export function penetrationFromQueues(network: Network, traversals: Traversals, options: Partial<QueueOptions> = {}): number {
   const chosen: QueueOptions = { ...DEFAULT_QUEUE_OPTIONS, ...options };
   const standings = findStandings(network, traversals, chosen);
-  let seen = 0;
+  const offset = standingsByLeg(standings, network.legs.length);
+  let ahead = 0;
   let places = 0;
-  for (let i = 0; i < standings.length; ) {
-    // One column: standings of a leg that overlap the first of them.
-    const positions = [];
-    const until = standings.toMs[i];
-    const leg = standings.leg[i];
-    for (; i < standings.length && standings.leg[i] === leg && standings.fromMs[i] <= until; i++) positions.push(standings.s[i]);
-    positions.sort((a, b) => a - b);
-    const reach = columnReach(positions, positions.length, chosen.headM, chosen.gapM);
-    const n = positions.filter((s) => s <= reach).length;
-    if (n === 0) continue;
-    seen += n - 1;
-    places += Math.max(n - 1, Math.round(reach / chosen.jamSpacingM));
+  for (let leg = 0; leg < network.legs.length; leg++) {
+    for (const { seen, reachM } of columnsOfLeg(standings, offset[leg], offset[leg + 1], chosen)) {
+      ahead += seen - 1;
+      places += Math.max(seen - 1, Math.round(reachM / chosen.jamSpacingM));
+    }
   }
-  return places < LEAST_PLACES ? NaN : seen / places;
+  return places < LEAST_PLACES ? NaN : ahead / places;
 }

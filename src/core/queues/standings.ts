@@ -21,10 +21,16 @@ interface Standing {
   toMs: number;
 }
 
+/** A ping that tells of standing nearer than this to a stop seen in the track is that stop. */
+const SAME_STOP_M = 8;
+/** Length given to a stop that only one ping saw. */
+const SHORT_STOP_MS = 5000;
+
 /**
- * Stops on the leg, read off the tracks with hysteresis: below 5 km/h until above 10 km/h. Vehicles that stand past
- * the stop line (waiting to turn) or at the upstream junction's box (waiting there to turn) are not this leg's queue
- * and are left out. O(track points + standings × log).
+ * Stops on the leg, read off the tracks with hysteresis: below 5 km/h until above 10 km/h; and the place where the
+ * vehicle's own speed told of standing, which catches short stops at the tail between two pings. Vehicles that stand
+ * past the stop line (waiting to turn) or at the upstream junction's box (waiting there to turn) are not this leg's
+ * queue and are left out. O(track points + standings × log).
  */
 export function findStandings(network: Network, traversals: Traversals, options: QueueOptions): Standings {
   const found: Standing[] = [];
@@ -32,7 +38,8 @@ export function findStandings(network: Network, traversals: Traversals, options:
     const leg = network.movements[traversals.movement[i]].leg;
     const { storageM } = network.legs[leg];
     const farthest = storageM > 0 ? storageM : Infinity;
-    for (const stop of stopsOfTrack(traversals, i, options)) {
+    const stops = stopsOfTrack(traversals, i, options);
+    for (const stop of [...stops, ...slowPing(traversals, i, stops)]) {
       if (stop.s < -options.pastLineM || stop.s > farthest) continue;
       found.push({ leg, traversal: i, ...stop });
     }
@@ -68,6 +75,19 @@ export function stopsOfTrack(t: TrackColumns, i: number, options: QueueOptions):
   return stops;
 }
 
+/** The moment of the track that stands for `farthestStopM`, unless a stop already does. */
+function slowPing(t: Traversals, i: number, stops: { s: number }[]): { s: number; fromMs: number; toMs: number }[] {
+  const s = t.farthestStopM[i];
+  if (!(s >= 0) || stops.some((stop) => stop.s > s - SAME_STOP_M)) return [];
+  let nearest = t.trackOffset[i];
+  for (let p = nearest; p < t.trackOffset[i + 1]; p++) {
+    if (Math.abs(t.trackS[p] - s) < Math.abs(t.trackS[nearest] - s)) nearest = p;
+  }
+  if (nearest === t.trackOffset[i + 1]) return [];
+  const atMs = t.enterMs[i] + t.trackT[nearest] * 1000;
+  return [{ s, fromMs: atMs - SHORT_STOP_MS / 2, toMs: atMs + SHORT_STOP_MS / 2 }];
+}
+
 function medianOf(values: Float32Array, first: number, last: number): number {
   const sorted = values.slice(first, last + 1).sort();
   const middle = (sorted.length - 1) / 2;
@@ -83,4 +103,12 @@ function columnsOf(found: Standing[]): Standings {
     fromMs: Float64Array.from(found, (f) => f.fromMs),
     toMs: Float64Array.from(found, (f) => f.toMs),
   };
+}
+
+/** Standings of leg l: entries result[l] to result[l + 1]. O(standings + legs). */
+export function standingsByLeg(standings: Standings, legs: number): Uint32Array {
+  const offset = new Uint32Array(legs + 1);
+  for (let k = 0; k < standings.length; k++) offset[standings.leg[k] + 1] += 1;
+  for (let leg = 0; leg < legs; leg++) offset[leg + 1] += offset[leg];
+  return offset;
 }

@@ -1,27 +1,44 @@
+import { columnsOfLeg } from "./columns-of-leg";
 import type { QueueOptions } from "./options";
 import type { Standings } from "./standings";
 
-const QUARTER_S = 900;
+/** Seen vehicles that the city's density counts for beside a leg's own. */
+const PRIOR_VEHICLES = 5;
 
 /**
- * Road that the queue is expected to take behind the last seen vehicle, metres: a model, not an observation.
- *
- * After Comert and Cetin (EJOR 197, 2009): vehicles that arrive while the last seen one stands queue up behind it
- * unseen, E = (1 - p) λ τ. Here in metres of road, so that neither the penetration p nor the number of lanes is
- * needed: seen vehicles arrive at rate λp and stand κ to the metre, the queue therefore grows by λp / κ metres a
- * second while nobody else is seen to join. Never more than the mean gap between seen vehicles, 1 / κ.
+ * Seen vehicles per metre of standing column, by leg: Σ(n - 1) / Σ reach, since the last of a column marks its own
+ * reach (see `penetrationFromQueues`); drawn to the city's where a leg has few. `offset[leg]` to `offset[leg + 1]` are
+ * its standings. NaN where nobody stood behind anybody in the whole city. O(standings × log).
  */
-export function unseenTailM(indices: number[], standings: Standings, arrivals: number, reachM: number, options: QueueOptions): number {
-  let last = -1;
-  for (const k of indices) {
-    const isFarther = standings.s[k] <= reachM && (last < 0 || standings.s[k] > standings.s[last]);
-    if (isFarther) last = k;
+export function seenPerMetre(standings: Standings, offset: Uint32Array, options: QueueOptions): Float64Array {
+  const legs = offset.length - 1;
+  const ahead = new Float64Array(legs);
+  const reachM = new Float64Array(legs);
+  for (let leg = 0; leg < legs; leg++) {
+    for (const column of columnsOfLeg(standings, offset[leg], offset[leg + 1], options)) {
+      ahead[leg] += column.seen - 1;
+      reachM[leg] += column.reachM;
+    }
   }
-  if (last < 0) return 0;
-  const joined = indices.filter((k) => standings.fromMs[k] <= standings.fromMs[last] && standings.toMs[k] >= standings.fromMs[last]);
-  // Vehicles ahead of the last one give the density without its own bias; half a vehicle where none is seen.
-  const perMetre = Math.max(0.5, joined.length - 1) / Math.max(reachM, options.jamSpacingM);
-  const stoodS = (standings.toMs[last] - standings.fromMs[last]) / 1000;
-  const growthMs = arrivals / QUARTER_S / perMetre;
-  return Math.min(growthMs * stoodS, 1 / perMetre);
+  const sum = (values: Float64Array): number => values.reduce((total, value) => total + value, 0);
+  const city = sum(ahead) / sum(reachM);
+  return ahead.map((n, leg) => (city > 0 ? (n + PRIOR_VEHICLES) / (reachM[leg] + PRIOR_VEHICLES / city) : NaN));
+}
+
+/**
+ * Metres a second by which a queue is expected to grow behind the last seen vehicle while it stands: a model.
+ *
+ * Comert and Cetin (EJOR 197, 2009) expect (1 - p) λ τ vehicles behind the last seen one, τ after it joined. Vehicles
+ * of the sample arrive at p λ and stand κ to the metre, which gives the same in metres without knowing p or lanes.
+ */
+export function tailGrowthMs(seenPerSecond: number, perMetre: number): number {
+  return perMetre > 0 ? seenPerSecond / perMetre : 0;
+}
+
+/** Where the unseen end of the queue behind standing `k` is expected at `tMs`; NaN once it too has driven off. */
+export function expectedTailM(standings: Standings, k: number, tMs: number, growthMs: number, mostM: number, options: QueueOptions): number {
+  const stoodS = (Math.min(tMs, standings.toMs[k]) - standings.fromMs[k]) / 1000;
+  const behindM = Math.min(mostM, growthMs * stoodS);
+  const goneMs = standings.toMs[k] + (behindM / options.waveSpeedMs) * 1000;
+  return tMs <= goneMs ? standings.s[k] + behindM : NaN;
 }
