@@ -35,15 +35,24 @@ export class RequestError extends Error {
 
 /** GET of a JSON route; throws `RequestError` with the server's own sentence. */
 export async function getJson<T>(path: string, signal?: AbortSignal): Promise<T> {
-  const response = await fetchOrSay(path, signal);
-  if (response.ok) return (await response.json()) as T;
+  return (await fetchGood(path, "application/json", signal)).json() as Promise<T>;
+}
+
+/** GET of a route that answers with bytes; throws as `getJson`. */
+export async function getBytes(path: string, signal?: AbortSignal): Promise<ArrayBuffer> {
+  return (await fetchGood(path, "application/octet-stream, application/json", signal)).arrayBuffer();
+}
+
+async function fetchGood(path: string, accept: string, signal?: AbortSignal): Promise<Response> {
+  const response = await fetchOrSay(path, accept, signal);
+  if (response.ok) return response;
   const problem = (await response.json().catch(() => null)) as { message?: string } | null;
   throw new RequestError(response.status, problem?.message ?? `The server answered ${response.status}.`);
 }
 
-async function fetchOrSay(path: string, signal?: AbortSignal): Promise<Response> {
+async function fetchOrSay(path: string, accept: string, signal?: AbortSignal): Promise<Response> {
   try {
-    return await fetch(path, { signal, headers: { accept: "application/json" } });
+    return await fetch(path, { signal, headers: { accept } });
   } catch (error) {
     if (signal?.aborted) throw error;
     throw new RequestError(0, "The server cannot be reached. Check the connection and try again.");
