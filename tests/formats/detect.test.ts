@@ -28,7 +28,7 @@ describe("detect", () => {
     expect(mapping).toMatchObject({ delimiter: ";", decimal: ",", timeFormat: "local", speedUnit: "mph" });
     expect(mapping.columns).toEqual({ vehicle_id: 0, timestamp: 1, lat: 2, lon: 3, speed: 4, heading: 5 });
     expect(header[0]).toBe("Device ID");
-    expect(remarks).toEqual(["The times carry no zone: choose the zone they are meant in."]);
+    expect(remarks).toEqual(["The times carry no zone: they are read in the zone that is chosen."]);
   });
 
   it("finds tabs and epochs in milliseconds, in gzip too", () => {

@@ -88,7 +88,7 @@ function settlePings(mapping: FileMapping, sample: Sample, remarks: string[]): v
   const format = timeFormatOf(times);
   if (format !== null) mapping.timeFormat = format;
   else if (times.length > 0) remarks.push("The times are in no format that is known: see the first rows.");
-  if (format === "local") remarks.push("The times carry no zone: choose the zone they are meant in.");
+  if (format === "local") remarks.push("The times carry no zone: they are read in the zone that is chosen.");
   const speed = mapping.columns.speed;
   if (speed === undefined) return;
   const named = speedUnitFromName(typeof speed === "number" && mapping.hasHeader ? sample.header[speed] : String(speed));

@@ -1,4 +1,5 @@
 import type { PingColumns } from "@/core/types";
+import { emptyColumns } from "./ping-columns";
 
 /** Collects pings into batches of a fixed number of rows, wherever the input was cut. */
 export class PingBatcher {
@@ -6,7 +7,7 @@ export class PingBatcher {
   private batch: PingColumns;
 
   constructor(private readonly batchRows: number) {
-    this.batch = emptyBatch(batchRows);
+    this.batch = emptyColumns(batchRows);
   }
 
   add(vehicle: number, tMs: number, lat: number, lon: number, speedMs: number, headingDeg: number): void {
@@ -21,7 +22,7 @@ export class PingBatcher {
     batch.length = i + 1;
     if (batch.length === this.batchRows) {
       this.ready.push(batch);
-      this.batch = emptyBatch(this.batchRows);
+      this.batch = emptyColumns(this.batchRows);
     }
   }
 
@@ -35,16 +36,4 @@ export class PingBatcher {
   takeRest(): PingColumns | null {
     return this.batch.length > 0 ? this.batch : null;
   }
-}
-
-function emptyBatch(rows: number): PingColumns {
-  return {
-    length: 0,
-    vehicle: new Uint32Array(rows),
-    tMs: new Float64Array(rows),
-    lat: new Float64Array(rows),
-    lon: new Float64Array(rows),
-    speedMs: new Float32Array(rows),
-    headingDeg: new Float32Array(rows),
-  };
 }
