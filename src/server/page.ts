@@ -1,25 +1,27 @@
 import { headers } from "next/headers";
 import { forbidden, notFound, redirect } from "next/navigation";
-import { can, type Permission } from "@/domain/actor";
+import { can, type Actor, type Permission } from "@/domain/actor";
 import { AppError } from "@/domain/errors";
 import type { Context } from "@/services/context";
 import { currentContext } from "./current-context";
+
+export type PersonContext = Context & { actor: Extract<Actor, { type: "user" }> };
 
 /**
  * Context of a page that needs a permission. Signed out: goes to the sign-in page and comes back after it.
  * Without the permission: the nearest `forbidden.tsx` is shown with status 403.
  */
-export async function pageContext(permission: Permission): Promise<Context> {
+export async function pageContext(permission: Permission): Promise<PersonContext> {
   const ctx = await signedInContext();
   if (!can(ctx.actor, permission)) forbidden();
   return ctx;
 }
 
 /** Context of a page or layout for everyone who is signed in. */
-export async function signedInContext(): Promise<Context> {
+export async function signedInContext(): Promise<PersonContext> {
   const ctx = await currentContext();
-  if (ctx.actor.type === "nobody") await goToSignIn();
-  return ctx;
+  const { actor } = ctx;
+  return actor.type === "user" ? { ...ctx, actor } : goToSignIn();
 }
 
 /** Awaits a verb for a page: what it refuses or cannot find becomes the page's own state. */

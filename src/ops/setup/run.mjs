@@ -16,7 +16,7 @@ export function run(command, args, { env, cwd, uid, gid, input, onLine } = {}) {
       cwd,
       uid,
       gid,
-      env: { ...process.env, ...env },
+      env: { ...process.env, NO_COLOR: "1", ...env },
       stdio: [input === undefined ? "ignore" : "pipe", "pipe", "pipe"],
     });
     const lines = [];
