@@ -1,16 +1,15 @@
-import { redirect } from "next/navigation";
 import type { ReactNode } from "react";
 import { HOME_OF_ROLE } from "@/domain/actor";
-import { currentContext } from "@/server/current-context";
+import { signedInContext } from "@/server/page";
 import { getSettings } from "@/services/settings/get-settings";
 import { CityProvider, LOCALE } from "@/ui/shell/city";
 import { DeskHeader } from "@/ui/shell/desk-header";
 import { placesFor } from "@/ui/shell/navigation";
 
 export default async function DeskLayout({ children }: { children: ReactNode }) {
-  const ctx = await currentContext();
+  const ctx = await signedInContext();
   const { actor } = ctx;
-  if (actor.type !== "user") redirect("/sign-in");
+  if (actor.type !== "user") return null;
   const settings = await getSettings(ctx);
   const places = placesFor(actor).map(({ href, label }) => ({ href, label }));
   const person = { name: actor.name, email: actor.email, role: actor.role };
