@@ -8,13 +8,17 @@ export interface StandingColumn {
   reachM: number;
 }
 
-/** Columns of one leg (standings `from` to `to`): what overlaps the first standing in time and hangs together. O(standings × log). */
+/**
+ * Columns of one leg (standings `from` to `to`): what stood before the discharge that freed the first standing came by,
+ * and hangs together. The discharge runs upstream at the wave speed. O(standings × log).
+ */
 export function columnsOfLeg(standings: Standings, from: number, to: number, options: QueueOptions): StandingColumn[] {
   const columns: StandingColumn[] = [];
+  const lagMs = (k: number): number => (standings.s[k] / options.waveSpeedMs) * 1000;
   for (let k = from; k < to; ) {
-    const until = standings.toMs[k];
+    const until = standings.toMs[k] - lagMs(k);
     const positions = [];
-    for (; k < to && standings.fromMs[k] <= until; k++) positions.push(standings.s[k]);
+    for (; k < to && standings.fromMs[k] - lagMs(k) <= until; k++) positions.push(standings.s[k]);
     positions.sort((a, b) => a - b);
     const reachM = columnReach(positions, positions.length, options.headM, options.gapM);
     const seen = positions.filter((s) => s <= reachM).length;

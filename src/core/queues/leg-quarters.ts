@@ -1,7 +1,7 @@
 import type { LegQuarters, Network, Traversals } from "@/core/types";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
 import { presenceByLeg, type Presence } from "./presence";
-import { quarterFigures, type LegView, type QuarterFigures } from "./quarter-figures";
+import { createScratch, quarterFigures, type LegView, type QuarterFigures } from "./quarter-figures";
 import { findStandings, standingsByLeg } from "./standings";
 import { seenPerMetre } from "./unseen-tail";
 
@@ -10,14 +10,15 @@ import { seenPerMetre } from "./unseen-tail";
  * saw the leg: reach of the standing column that hangs together with the stop line, seconds spilled back, seconds for
  * which the sample can say. A quarter in which vehicles passed and none stood has reach 0; one in which nobody was
  * seen has no entry. `traversals` are all of the time span, in any order; rows come in order of leg, then time.
- * O(traversals × log + quarters × 180 × standing).
+ * O(traversals × log + moments with a queue × standing²).
  */
 export function legQuarters(network: Network, traversals: Traversals, options: Partial<QueueOptions> = {}): LegQuarters {
   const chosen: QueueOptions = { ...DEFAULT_QUEUE_OPTIONS, ...options };
   const standings = findStandings(network, traversals, chosen);
   const offset = standingsByLeg(standings, network.legs.length);
   const perMetre = seenPerMetre(standings, offset, chosen);
-  const presence = presenceByLeg(network, traversals, chosen);
+  const presence = presenceByLeg(network, traversals);
+  const scratch = createScratch(standings.length);
   const rows: (QuarterFigures & { leg: number; startMs: number })[] = [];
   for (let leg = 0; leg < network.legs.length; leg++) {
     const view: LegView = {
@@ -31,19 +32,18 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
       presenceTo: presence.offset[leg + 1],
     };
     for (const startMs of quartersOf(presence, leg)) {
-      const figures = quarterFigures(view, startMs, chosen);
-      if (figures) rows.push({ leg, startMs, ...figures });
+      rows.push({ leg, startMs, ...quarterFigures(view, startMs, chosen, scratch) });
     }
   }
   return columnsOf(rows);
 }
 
-/** Starts of the quarters that any vehicle's presence on the leg touches, ascending. */
+/** Starts of the quarters in which any vehicle was on the leg, ascending. */
 function quartersOf(presence: Presence, leg: number): number[] {
   const starts = new Set<number>();
   for (let k = presence.offset[leg]; k < presence.offset[leg + 1]; k++) {
     const first = Math.floor(presence.fromMs[k] / QUARTER_MS) * QUARTER_MS;
-    for (let start = first; start < presence.toMs[k]; start += QUARTER_MS) starts.add(start);
+    for (let start = first; start <= presence.toMs[k]; start += QUARTER_MS) starts.add(start);
   }
   return [...starts].sort((a, b) => a - b);
 }

@@ -1,15 +1,14 @@
 import type { Network, Traversals } from "@/core/types";
-import type { QueueOptions } from "./options";
 
-/** Spans of time in which some vehicle could speak for a leg: entries offset[leg] to offset[leg + 1], by beginning. */
+/** Spans of time in which vehicles were on a leg: entries offset[leg] to offset[leg + 1], by beginning. */
 export interface Presence {
   offset: Uint32Array;
   fromMs: Float64Array;
   toMs: Float64Array;
 }
 
-/** From the first point of the track on the leg to the stop line, widened by `sightS`. O(traversals × log). */
-export function presenceByLeg(network: Network, traversals: Traversals, options: QueueOptions): Presence {
+/** From the first point of the track on the leg to the stop line. O(traversals × log). */
+export function presenceByLeg(network: Network, traversals: Traversals): Presence {
   const { length } = traversals;
   const legOf = (i: number): number => network.movements[traversals.movement[i]].leg;
   const startOf = new Float64Array(length);
@@ -22,10 +21,9 @@ export function presenceByLeg(network: Network, traversals: Traversals, options:
   }
   for (let leg = 0; leg < network.legs.length; leg++) offset[leg + 1] += offset[leg];
   const order = Array.from({ length }, (_, i) => i).sort((a, b) => legOf(a) - legOf(b) || startOf[a] - startOf[b]);
-  const sightMs = options.sightS * 1000;
   return {
     offset,
-    fromMs: Float64Array.from(order, (i) => startOf[i] - sightMs),
-    toMs: Float64Array.from(order, (i) => traversals.stopLineMs[i] + sightMs),
+    fromMs: Float64Array.from(order, (i) => startOf[i]),
+    toMs: Float64Array.from(order, (i) => traversals.stopLineMs[i]),
   };
 }

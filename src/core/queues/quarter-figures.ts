@@ -25,57 +25,96 @@ export interface QuarterFigures {
   observedS: number;
 }
 
-/** Looks at the column every `stepS`; null where nobody could speak for the leg. O(steps × standing × log). */
-export function quarterFigures(leg: LegView, startMs: number, options: QueueOptions): QuarterFigures | null {
-  const memoryMs = options.memoryS * 1000;
+/** Standings remembered at one moment, and their places in ascending order; reused from moment to moment. */
+export interface Scratch {
+  count: number;
+  index: Uint32Array;
+  sorted: Float64Array;
+}
+
+export function createScratch(standings: number): Scratch {
+  return { count: 0, index: new Uint32Array(standings), sorted: new Float64Array(standings) };
+}
+
+/** Looks at the column every `stepS` while any vehicle stands or is remembered. O(moments × standing²). */
+export function quarterFigures(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch): QuarterFigures {
   const endMs = startMs + QUARTER_MS;
-  const standing = touching(leg.standings, leg.standingFrom, leg.standingTo, startMs - memoryMs, endMs);
-  const present = touching(leg.presence, leg.presenceFrom, leg.presenceTo, startMs, endMs);
-  const stepMs = options.stepS * 1000;
-  const moments: number[] = [];
-  for (let tMs = startMs + stepMs / 2; tMs < endMs; tMs += stepMs) if (isSeen(present, leg.presence, tMs)) moments.push(tMs);
-  if (moments.length === 0) return null;
-  const observedS = moments.length * options.stepS;
-  const growthMs = tailGrowthMs(arrivals(present, leg.presence, startMs, endMs, options) / observedS, leg.perMetre);
-  const longestM = leg.storageM > 0 ? leg.storageM : Infinity;
+  const { observedS, arrivals } = observe(leg, startMs, endMs, options.sightS * 1000);
+  const growthMs = tailGrowthMs(arrivals / observedS, leg.perMetre);
   const figures: QuarterFigures = { reachM: 0, reachEstimateM: 0, spilledS: leg.storageM > 0 ? 0 : NaN, observedS };
-  for (const tMs of moments) {
-    const tails = tailsAt(leg, standing, tMs, growthMs, options);
-    figures.reachM = Math.max(figures.reachM, tails.seenM);
-    figures.reachEstimateM = Math.max(figures.reachEstimateM, Math.min(longestM, tails.expectedM));
-    if (tails.expectedM >= options.spillShare * leg.storageM) figures.spilledS += options.stepS;
+  const stepMs = options.stepS * 1000;
+  const memoryMs = options.memoryS * 1000;
+  let next = leg.standingFrom;
+  scratch.count = 0;
+  for (let tMs = startMs + stepMs / 2; tMs < endMs; tMs += stepMs) {
+    next = remember(scratch, leg, next, tMs, memoryMs);
+    if (scratch.count === 0) {
+      if (next === leg.standingTo) break;
+      continue;
+    }
+    const reachM = reachOf(scratch, leg.standings, options);
+    const tailM = expectedTail(scratch, leg, reachM, tMs, growthMs, options);
+    figures.reachM = Math.max(figures.reachM, reachM);
+    figures.reachEstimateM = Math.max(figures.reachEstimateM, tailM);
+    if (tailM >= options.spillShare * leg.storageM) figures.spilledS += options.stepS;
   }
+  figures.reachEstimateM = Math.max(figures.reachEstimateM, figures.reachM);
+  figures.spilledS = Math.min(figures.spilledS, observedS);
   return figures;
 }
 
-/** Indices whose span touches [fromMs, toMs). The columns are in order of their beginning. */
-function touching(spans: { fromMs: Float64Array; toMs: Float64Array }, from: number, to: number, fromMs: number, toMs: number): number[] {
-  const found: number[] = [];
-  for (let k = from; k < to && spans.fromMs[k] < toMs; k++) if (spans.toMs[k] >= fromMs) found.push(k);
-  return found;
-}
-
-function isSeen(present: number[], presence: Presence, tMs: number): boolean {
-  return present.some((k) => presence.fromMs[k] <= tMs && tMs <= presence.toMs[k]);
-}
-
-function arrivals(present: number[], presence: Presence, startMs: number, endMs: number, options: QueueOptions): number {
-  const sightMs = options.sightS * 1000;
-  return present.filter((k) => presence.fromMs[k] + sightMs >= startMs && presence.fromMs[k] + sightMs < endMs).length;
-}
-
-/** Farthest standing vehicle of the column, and where the queue behind it is expected to end. */
-function tailsAt(leg: LegView, standing: number[], tMs: number, growthMs: number, options: QueueOptions): { seenM: number; expectedM: number } {
-  const { standings } = leg;
-  const memoryMs = options.memoryS * 1000;
-  const remembered = standing.filter((k) => standings.fromMs[k] <= tMs && tMs <= standings.toMs[k] + memoryMs);
-  const positions = remembered.map((k) => standings.s[k]).sort((a, b) => a - b);
-  const reachM = columnReach(positions, positions.length, options.headM, options.gapM);
-  const tails = { seenM: reachM, expectedM: 0 };
-  for (const k of remembered) {
-    if (standings.s[k] > reachM) continue;
-    const expectedM = expectedTailM(standings, k, tMs, growthMs, 1 / leg.perMetre, options);
-    if (expectedM > tails.expectedM) tails.expectedM = expectedM;
+/** Seconds of the quarter for which a vehicle can speak, and how many vehicles came on the leg in it. */
+function observe(leg: LegView, startMs: number, endMs: number, sightMs: number): { observedS: number; arrivals: number } {
+  let observedMs = 0;
+  let arrivals = 0;
+  let seenUntil = startMs;
+  for (let k = leg.presenceFrom; k < leg.presenceTo && leg.presence.fromMs[k] - sightMs < endMs; k++) {
+    const fromMs = leg.presence.fromMs[k];
+    if (fromMs >= startMs && fromMs < endMs) arrivals++;
+    const from = Math.max(seenUntil, fromMs - sightMs);
+    const to = Math.min(endMs, leg.presence.toMs[k] + sightMs);
+    if (to <= from) continue;
+    observedMs += to - from;
+    seenUntil = to;
   }
-  return tails;
+  return { observedS: observedMs / 1000, arrivals };
+}
+
+/** Takes in standings that have begun by `tMs` and drops those that ended more than the memory ago. */
+function remember(scratch: Scratch, leg: LegView, next: number, tMs: number, memoryMs: number): number {
+  const { fromMs, toMs } = leg.standings;
+  let kept = 0;
+  for (let i = 0; i < scratch.count; i++) {
+    if (toMs[scratch.index[i]] + memoryMs >= tMs) scratch.index[kept++] = scratch.index[i];
+  }
+  for (; next < leg.standingTo && fromMs[next] <= tMs; next++) {
+    if (toMs[next] + memoryMs >= tMs) scratch.index[kept++] = next;
+  }
+  scratch.count = kept;
+  return next;
+}
+
+function reachOf(scratch: Scratch, standings: Standings, options: QueueOptions): number {
+  const { sorted, index, count } = scratch;
+  for (let i = 0; i < count; i++) {
+    const s = standings.s[index[i]];
+    let at = i;
+    for (; at > 0 && sorted[at - 1] > s; at--) sorted[at] = sorted[at - 1];
+    sorted[at] = s;
+  }
+  return columnReach(sorted, count, options.headM, options.gapM);
+}
+
+/** Farthest expected end of the queue behind any vehicle of the column; 0 where none is left. */
+function expectedTail(scratch: Scratch, leg: LegView, reachM: number, tMs: number, growthMs: number, options: QueueOptions): number {
+  const gapM = leg.perMetre > 0 ? 1 / leg.perMetre : 0;
+  const longestM = leg.storageM > 0 ? leg.storageM : Infinity;
+  let tailM = 0;
+  for (let i = 0; i < scratch.count; i++) {
+    const k = scratch.index[i];
+    if (leg.standings.s[k] > reachM) continue;
+    const expectedM = expectedTailM(leg.standings, k, tMs, growthMs, Math.min(gapM, longestM - leg.standings.s[k]), options);
+    if (expectedM > tailM) tailM = expectedM;
+  }
+  return tailM;
 }
