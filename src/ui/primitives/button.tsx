@@ -1,5 +1,5 @@
 import Link from "next/link";
-import type { ButtonHTMLAttributes, ReactNode } from "react";
+import type { ButtonHTMLAttributes, ReactNode, Ref } from "react";
 import { classNames } from "./class-names";
 
 const BASE =
@@ -14,6 +14,7 @@ export type ButtonTone = keyof typeof TONES;
 
 export interface ButtonProps extends ButtonHTMLAttributes<HTMLButtonElement> {
   tone?: ButtonTone;
+  ref?: Ref<HTMLButtonElement>;
 }
 
 export function Button({ tone = "plain", className, type = "button", ...rest }: ButtonProps) {

@@ -22,21 +22,35 @@ export function Td({ numeric, className, ...rest }: TdHTMLAttributes<HTMLTableCe
 }
 
 /** Head of a column that sorts. `dir` is null where another column sorts. */
-export function SortTh(props: { label: ReactNode; dir: "asc" | "desc" | null; onSort: () => void; numeric?: boolean; className?: string }) {
-  const aria = props.dir === null ? "none" : props.dir === "asc" ? "ascending" : "descending";
+export function SortTh({ className, ...button }: SortButtonProps & { className?: string }) {
+  const aria = button.dir === null ? "none" : button.dir === "asc" ? "ascending" : "descending";
   return (
-    <Th numeric={props.numeric} aria-sort={aria} className={props.className}>
-      <button type="button" onClick={props.onSort} className={classNames("inline-flex min-h-6 items-end gap-1 hover:text-ink", props.numeric ? "flex-row-reverse text-right" : "text-left", props.dir && "font-semibold text-ink")}>
-        <span>{props.label}</span>
-        <SortMark dir={props.dir} />
-      </button>
+    <Th numeric={button.numeric} aria-sort={aria} className={className}>
+      <SortButton {...button} />
     </Th>
   );
 }
 
-function SortMark({ dir }: { dir: "asc" | "desc" | null }) {
+export interface SortButtonProps {
+  label: ReactNode;
+  dir: "asc" | "desc" | null;
+  onSort: () => void;
+  numeric?: boolean;
+}
+
+export function SortButton({ label, dir, onSort, numeric }: SortButtonProps) {
+  const alignment = numeric ? "flex-row-reverse text-right" : "text-left";
   return (
-    <svg aria-hidden="true" width="7" height="12" viewBox="0 0 7 12" className={dir ? "" : "invisible"}>
+    <button type="button" onClick={onSort} className={classNames("inline-flex min-h-6 items-end gap-0.5 leading-tight hover:text-ink", alignment, dir && "font-semibold text-ink")}>
+      <span>{label}</span>
+      {dir ? <SortMark dir={dir} /> : null}
+    </button>
+  );
+}
+
+function SortMark({ dir }: { dir: "asc" | "desc" }) {
+  return (
+    <svg aria-hidden="true" width="7" height="12" viewBox="0 0 7 12" className="mb-0.5 shrink-0">
       <path d={dir === "asc" ? "M3.5 1v10M.8 4 3.5 1l2.7 3" : "M3.5 1v10M.8 8l2.7 3 2.7-3"} fill="none" stroke="#C43E1C" strokeWidth="1.5" />
     </svg>
   );

@@ -1,0 +1,108 @@
+import type { Feature, FeatureCollection, LineString, Point } from "geojson";
+import { eastM, latAt, lonAt, northM, planeAt } from "@/core/geometry/plane";
+import type { RankedJunction } from "@/domain/screen";
+
+type Placed = Pick<RankedJunction, "junctionId" | "lat" | "lon" | "needles" | "rank">;
+
+export interface NeedleProperties {
+  legId: number;
+  junctionId: number;
+  /** Absent where the sample cannot say. */
+  delayS?: number;
+}
+
+export interface DotProperties {
+  junctionId: number;
+  /** Ranked junctions only. */
+  rank?: number;
+}
+
+/** Shortest needle, so that a leg without a queue, or without a figure, still shows which way it lies. */
+export const SHORTEST_NEEDLE_M = 18;
+
+const RAD = Math.PI / 180;
+
+/** One stroke for each leg, from the junction the way the leg lies, as long as its reach is on the ground. */
+export function needleFeatures(junctions: readonly Placed[]): FeatureCollection<LineString, NeedleProperties> {
+  const features = junctions.flatMap((junction) =>
+    junction.needles.map((needle): Feature<LineString, NeedleProperties> => {
+      const lengthM = Math.max(SHORTEST_NEEDLE_M, needle.reachM ?? 0);
+      const properties = { legId: needle.legId, junctionId: junction.junctionId, ...(needle.delayS !== null && { delayS: needle.delayS }) };
+      return { type: "Feature", properties, geometry: ray(junction, needle.lieDeg, lengthM) };
+    }),
+  );
+  return { type: "FeatureCollection", features };
+}
+
+export function dotFeatures(junctions: readonly Placed[]): FeatureCollection<Point, DotProperties> {
+  return {
+    type: "FeatureCollection",
+    features: junctions.map(({ junctionId, lat, lon, rank }) => ({
+      type: "Feature",
+      properties: { junctionId, ...(rank !== null && { rank }) },
+      geometry: { type: "Point", coordinates: [lon, lat] },
+    })),
+  };
+}
+
+function ray({ lat, lon }: Placed, lieDeg: number, lengthM: number): LineString {
+  const plane = planeAt(lat, lon);
+  const end = [lonAt(plane, Math.sin(lieDeg * RAD) * lengthM), latAt(plane, Math.cos(lieDeg * RAD) * lengthM)];
+  return { type: "LineString", coordinates: [[lon, lat], end] };
+}
+
+const LINK_LONGEST_M = 1200;
+const LINK_HALF_ANGLE_DEG = 22;
+
+/**
+ * Where a city has no base map: a line from each leg to the nearest junction in its direction, once for each pair.
+ * A drawing aid, not a street. Cost: legs times junctions.
+ */
+export function linkFeatures(junctions: readonly Placed[]): FeatureCollection<LineString> {
+  const drawn = new Set<string>();
+  const features: Feature<LineString>[] = [];
+  for (const from of junctions) {
+    for (const { lieDeg } of from.needles) {
+      const to = nearestAlong(from, lieDeg, junctions);
+      if (!to) continue;
+      const pair = [from.junctionId, to.junctionId].sort((a, b) => a - b).join("-");
+      if (drawn.has(pair)) continue;
+      drawn.add(pair);
+      features.push({ type: "Feature", properties: {}, geometry: { type: "LineString", coordinates: [[from.lon, from.lat], [to.lon, to.lat]] } });
+    }
+  }
+  return { type: "FeatureCollection", features };
+}
+
+function nearestAlong(from: Placed, lieDeg: number, junctions: readonly Placed[]): Placed | null {
+  const plane = planeAt(from.lat, from.lon);
+  let nearest: Placed | null = null;
+  let nearestM = LINK_LONGEST_M;
+  for (const to of junctions) {
+    const [x, y] = [eastM(plane, to.lon), northM(plane, to.lat)];
+    const distanceM = Math.hypot(x, y);
+    if (to === from || distanceM >= nearestM) continue;
+    const off = Math.abs(((Math.atan2(x, y) / RAD - lieDeg + 540) % 360) - 180);
+    if (off <= LINK_HALF_ANGLE_DEG) [nearest, nearestM] = [to, distanceM];
+  }
+  return nearest;
+}
+
+export type Bounds = [west: number, south: number, east: number, north: number];
+
+/** Box round the junctions; null where there are none. */
+export function boundsOf(junctions: readonly Pick<Placed, "lat" | "lon">[]): Bounds | null {
+  if (junctions.length === 0) return null;
+  const bounds: Bounds = [Infinity, Infinity, -Infinity, -Infinity];
+  for (const { lat, lon } of junctions) {
+    bounds[0] = Math.min(bounds[0], lon);
+    bounds[1] = Math.min(bounds[1], lat);
+    bounds[2] = Math.max(bounds[2], lon);
+    bounds[3] = Math.max(bounds[3], lat);
+  }
+  return bounds;
+}
+
+export function overlap(a: Bounds, b: Bounds): boolean {
+  return a[0] <= b[2] && b[0] <= a[2] && a[1] <= b[3] && b[1] <= a[3];
+}

@@ -1,0 +1,48 @@
+import type { RankedJunction } from "@/domain/screen";
+import { counted, formatLength, formatShare, NO_FIGURE, type Units } from "@/ui/format";
+
+const TURNING = { left: "turning left", through: "going through", right: "turning right", uturn: "making a U-turn" } as const;
+
+/** "left from the south": the movement with its leg, as the table and the map name it. */
+export function movementName(worst: NonNullable<RankedJunction["worst"]>): string {
+  const turn = worst.turn === "uturn" ? "U-turn" : worst.turn;
+  return `${turn} ${lowerFirst(worst.from)}`;
+}
+
+/** Two to five short sentences that say why a junction stands where it stands, and how sure that is. */
+export function explainJunction(row: RankedJunction, city: { units: Units; locale: string }): string {
+  if (row.rank === null || row.delay === null) {
+    const seen = row.vehicles === 0 ? "No vehicle was" : `Only ${counted(row.vehicles, "vehicle was", "vehicles were", city.locale)}`;
+    return `${seen} seen here in these hours. That is no figure, and it does not mean no delay.`;
+  }
+  return [delaySentence(row), queueSentence(row, city), standingSentence(row), sampleSentence(row, city.locale)].filter(Boolean).join(" ");
+}
+
+function delaySentence({ delay, worst }: RankedJunction): string {
+  if (!delay) return "";
+  const [value, low, high] = [delay.value, delay.low, delay.high].map(Math.round);
+  const mean = `A vehicle loses ${value} s on average${low === high ? "" : ` (${low} to ${high})`}`;
+  return worst ? `${mean}; ${TURNING[worst.turn]} ${lowerFirst(worst.from)}, ${Math.round(worst.delayS)} s.` : `${mean}.`;
+}
+
+function queueSentence({ reachM, storageM, spill }: RankedJunction, { units, locale }: { units: Units; locale: string }): string {
+  if (reachM === null) return "How far its queues reach, this sample cannot say.";
+  const room = storageM ? ` of the ${formatLength(storageM, units, locale)} it has` : "";
+  const reach = `On the fullest leg the queue reaches ${formatLength(reachM, units, locale)}${room} (95th percentile of what was seen)`;
+  if (!spill || formatShare(spill.value, locale) === NO_FIGURE) return `${reach}.`;
+  return spill.value > 0 ? `${reach} and spills back ${formatShare(spill.value, locale)} of the time.` : `${reach}; no spillback was seen.`;
+}
+
+function standingSentence({ rank, rankLow, rankHigh }: RankedJunction): string {
+  if (rank === null || rankLow === null || rankHigh === null || rankLow === rankHigh) return "";
+  return `With other vehicles in the sample its rank could be anything from ${rankLow} to ${rankHigh}.`;
+}
+
+function sampleSentence({ vehicles, days, evidence }: RankedJunction, locale: string): string {
+  const sample = `${counted(vehicles, "vehicle", "vehicles", locale)} seen on ${counted(days, "day", "days", locale)}`;
+  return `${sample}: ${evidence} evidence.`;
+}
+
+function lowerFirst(text: string): string {
+  return text.charAt(0).toLowerCase() + text.slice(1);
+}

@@ -1,0 +1,31 @@
+import { keepPreviousData, queryOptions } from "@tanstack/react-query";
+import { screenQueryToParams, ScreenQuery, type ScreenResult } from "@/domain/screen";
+import { getJson } from "@/ui/query-client";
+
+/** What decides the figures: filters that only choose among rows are left out, so that dragging them fetches nothing. */
+export function figuresParams(query: ScreenQuery): string {
+  const { period, from, to, days, since, until, turn } = query;
+  return screenQueryToParams(ScreenQuery.parse({ period, from, to, days, since, until, turn })).toString();
+}
+
+export function screenQuery(query: ScreenQuery) {
+  const params = figuresParams(query);
+  return queryOptions({
+    queryKey: ["screen", params],
+    queryFn: ({ signal }) => getJson<ScreenResult>(`/api/screen?${params}`, signal),
+    placeholderData: keepPreviousData,
+  });
+}
+
+export interface CorridorName {
+  id: number;
+  name: string;
+}
+
+export function corridorsQuery() {
+  return queryOptions({
+    queryKey: ["corridors"],
+    queryFn: ({ signal }) => getJson<CorridorName[]>("/api/corridors", signal),
+    staleTime: 10 * 60_000,
+  });
+}

@@ -1,0 +1,82 @@
+"use client";
+
+import { FlexRender, type Row } from "@tanstack/react-table";
+import { memo } from "react";
+import type { RankedJunction } from "@/domain/screen";
+import { classNames } from "@/ui/primitives/class-names";
+import { screenLooks, WorstMovement, type SCREEN_FEATURES, type Width } from "./screen-columns";
+
+export const SHOWN_FROM: Record<Width, string> = {
+  always: "flex",
+  middle: "hidden @xl:flex",
+  wide: "hidden @3xl:flex",
+};
+
+/** Columns of the ruled list in three widths of its panel; the cells that `SHOWN_FROM` hides leave no gap. */
+export const GRID =
+  "grid grid-cols-[2.4rem_minmax(0,1fr)_3.3rem_2.9rem_3.3rem] @xl:grid-cols-[2.6rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.9rem_3.3rem_3.4rem] @3xl:grid-cols-[2.6rem_3.8rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.7rem_3.3rem_3.3rem_3.3rem_3.6rem_3.6rem]";
+
+const LOOKS = screenLooks("metric");
+
+export interface RankingRowProps {
+  row: Row<typeof SCREEN_FEATURES, RankedJunction>;
+  index: number;
+  isSelected: boolean;
+  isTabStop: boolean;
+  onSelect: (junctionId: number) => void;
+  onHover: (junctionId: number | null) => void;
+}
+
+/** Drawn again only when its own figures or its own selection change. */
+export const RankingRow = memo(function RankingRow({ row, index, isSelected, isTabStop, onSelect, onHover }: RankingRowProps) {
+  const { junctionId, name } = row.original;
+  return (
+    <div
+      role="row"
+      data-row={index}
+      aria-rowindex={index + 2}
+      onClick={() => onSelect(junctionId)}
+      onPointerEnter={() => onHover(junctionId)}
+      onPointerLeave={() => onHover(null)}
+      className={classNames(
+        GRID,
+        "h-[3.6rem] cursor-pointer border-b border-l-4 border-b-rule pr-1 @xl:h-12",
+        isSelected ? "border-l-pick bg-[#E7EFEB]" : "border-l-transparent hover:bg-paper",
+      )}
+    >
+      {row.getAllCells().map((cell) => {
+        const look = LOOKS[cell.column.id];
+        return (
+          <div
+            key={cell.id}
+            role="cell"
+            className={classNames(SHOWN_FROM[look.width], "min-w-0 items-center px-1.5 leading-tight", look.numeric && "justify-end tabular-nums")}
+          >
+            {cell.column.id === "name" ? (
+              <span className="min-w-0">
+                <button
+                  type="button"
+                  data-index={index}
+                  tabIndex={isTabStop ? 0 : -1}
+                  aria-expanded={isSelected}
+                  onClick={(event) => {
+                    event.stopPropagation();
+                    onSelect(junctionId);
+                  }}
+                  className="line-clamp-2 min-h-6 text-left text-[1.02rem] font-medium"
+                >
+                  {name}
+                </button>
+                <span className="line-clamp-1 text-sm @xl:hidden" aria-hidden="true">
+                  <WorstMovement row={row.original} />
+                </span>
+              </span>
+            ) : (
+              <FlexRender cell={cell} />
+            )}
+          </div>
+        );
+      })}
+    </div>
+  );
+});

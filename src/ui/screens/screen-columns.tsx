@@ -1,0 +1,107 @@
+"use client";
+
+import { createColumnHelper, rowSortingFeature, tableFeatures } from "@tanstack/react-table";
+import type { RankedJunction, SortKey } from "@/domain/screen";
+import { formatNumber, formatSeconds, lengthNumber, lengthUnit, NO_FIGURE, shareNumber, type Units } from "@/ui/format";
+import { classNames } from "@/ui/primitives/class-names";
+import { EvidenceBar } from "@/ui/primitives/evidence-bar";
+import { IntervalMark } from "@/ui/primitives/interval-mark";
+import { LosSquare } from "@/ui/primitives/los-square";
+import { RankSpan } from "@/ui/primitives/rank-span";
+import { StorageBar } from "@/ui/primitives/storage-bar";
+import { movementName } from "./explain";
+import { TurnArrow } from "./turn-arrow";
+
+/** Sorting itself is done by `applyScreenFilter`, the same on server and browser. */
+export const SCREEN_FEATURES = tableFeatures({ rowSortingFeature });
+
+/** Where a column shows: always, from a middling panel on, or in a wide one. The grid in `screen-grid.css` goes with it. */
+export type Width = "always" | "middle" | "wide";
+
+export interface ColumnLook {
+  head: string;
+  sort: SortKey | null;
+  width: Width;
+  numeric?: boolean;
+}
+
+/** What the drawings of all rows share. */
+export interface ColumnScale {
+  units: Units;
+  locale: string;
+  maxDelayS: number;
+  lastRank: number;
+}
+
+const helper = createColumnHelper<typeof SCREEN_FEATURES, RankedJunction>();
+
+export function screenLooks(units: Units): Record<string, ColumnLook> {
+  return {
+    rank: { head: "rank", sort: "rank", width: "always", numeric: true },
+    span: { head: "could be", sort: null, width: "wide" },
+    name: { head: "junction", sort: "name", width: "always" },
+    worst: { head: "worst movement", sort: null, width: "middle" },
+    delay: { head: "delay s/veh", sort: "delay", width: "always", numeric: true },
+    interval: { head: "95 %", sort: null, width: "middle" },
+    los: { head: "LOS", sort: null, width: "always" },
+    reach: { head: `reach ${lengthUnit(units)}`, sort: "reach", width: "middle", numeric: true },
+    storage: { head: "storage", sort: "storage", width: "wide" },
+    spill: { head: "spills % of time", sort: "spill", width: "always", numeric: true },
+    evidence: { head: "evidence", sort: "evidence", width: "wide" },
+    vehicles: { head: "vehicles seen", sort: "vehicles", width: "wide", numeric: true },
+  };
+}
+
+export function screenColumns({ units, locale, maxDelayS, lastRank }: ColumnScale) {
+  return helper.columns([
+    helper.display({ id: "rank", cell: ({ row: { original: row } }) => <span className="text-[1.05rem]">{row.rank ?? <NoRank />}</span> }),
+    helper.display({ id: "span", cell: ({ row: { original: row } }) => <RankSpan rank={row.rank} low={row.rankLow} high={row.rankHigh} last={lastRank} /> }),
+    helper.display({ id: "name", cell: ({ row: { original: row } }) => row.name }),
+    helper.display({ id: "worst", cell: ({ row: { original: row } }) => <WorstMovement row={row} /> }),
+    helper.display({ id: "delay", cell: ({ row: { original: row } }) => <Delay row={row} locale={locale} /> }),
+    helper.display({
+      id: "interval",
+      cell: ({ row: { original: row } }) => (
+        <IntervalMark
+          estimate={row.delay}
+          max={maxDelayS}
+          describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`}
+        />
+      ),
+    }),
+    helper.display({ id: "los", cell: ({ row: { original: row } }) => <LosSquare los={row.los} /> }),
+    helper.display({ id: "reach", cell: ({ row: { original: row } }) => lengthNumber(row.reachM, units, locale) }),
+    helper.display({ id: "storage", cell: ({ row: { original: row } }) => <StorageBar reachM={row.reachM} storageM={row.storageM} /> }),
+    helper.display({
+      id: "spill",
+      cell: ({ row: { original: row } }) => <span className={classNames(row.spill && row.spill.value >= 0.1 && "font-semibold text-tail")}>{shareNumber(row.spill?.value, locale)}</span>,
+    }),
+    helper.display({ id: "evidence", cell: ({ row: { original: row } }) => <EvidenceBar evidence={row.evidence} /> }),
+    helper.display({ id: "vehicles", cell: ({ row: { original: row } }) => <span className="text-ink-soft">{formatNumber(row.vehicles, locale)}</span> }),
+  ]);
+}
+
+export type ScreenColumns = ReturnType<typeof screenColumns>;
+
+function NoRank() {
+  return (
+    <span className="text-ink-soft" title="Not ranked: no evidence">
+      <span aria-hidden="true">·</span>
+      <span className="sr-only">not ranked</span>
+    </span>
+  );
+}
+
+function Delay({ row, locale }: { row: RankedJunction; locale: string }) {
+  if (row.rank === null) return <span className="text-sm text-ink-soft">no data</span>;
+  return <span className="text-[1.05rem] font-semibold">{formatNumber(row.delay?.value, locale)}</span>;
+}
+
+export function WorstMovement({ row }: { row: RankedJunction }) {
+  if (!row.worst) return <span className="text-ink-soft">{NO_FIGURE}</span>;
+  return (
+    <span className="line-clamp-2 text-ink-soft">
+      <TurnArrow turn={row.worst.turn} /> {movementName(row.worst)}
+    </span>
+  );
+}

@@ -1,0 +1,33 @@
+"use client";
+
+import type { ScreenQuery, ScreenResult } from "@/domain/screen";
+import { counted } from "@/ui/format";
+import { Sentence } from "@/ui/primitives/sentence";
+import { useCity } from "@/ui/shell/city";
+import { CorridorControl, EvidenceControl, MinDelayControl, MinSpillControl, MovementControl, SortControl } from "./filter-controls";
+import { windowPreposition } from "./phrases";
+import { DaysControl, WindowControl } from "./when-controls";
+
+export function ScreenSentence(props: {
+  query: ScreenQuery;
+  onChange: (part: Partial<ScreenQuery>) => void;
+  result: ScreenResult | undefined;
+  shown: number;
+}) {
+  const { query, onChange, result } = props;
+  const { settings, locale } = useCity();
+  const count = `${props.shown.toLocaleString(locale)} of ${counted(result?.total ?? 0, "junction", "junctions", locale)}`;
+  const part = { query, onChange };
+  return (
+    <Sentence label="What is shown">
+      On <DaysControl {...part} basis={result?.basis} locale={locale} />, {windowPreposition(query)}
+      <WindowControl {...part} settings={settings} />, <CorridorControl {...part} />, <MovementControl {...part} /> delayed <MinDelayControl {...part} />, spilling back{" "}
+      <MinSpillControl {...part} />, with <EvidenceControl {...part} />
+      {query.q.trim() ? <>, named like “{query.q.trim()}”</> : null}:{" "}
+      <span aria-live="polite" aria-atomic="true" className="whitespace-nowrap text-ink" data-testid="result-count">
+        {count}
+      </span>
+      , <SortControl {...part} />.
+    </Sentence>
+  );
+}

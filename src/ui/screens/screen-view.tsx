@@ -1,0 +1,93 @@
+"use client";
+
+import { useQuery } from "@tanstack/react-query";
+import dynamic from "next/dynamic";
+import { useDeferredValue, useMemo, useState } from "react";
+import type { ActionResult } from "@/domain/errors";
+import type { RankedJunction, ScreenQuery } from "@/domain/screen";
+import { applyScreenFilter } from "@/domain/screen-filter";
+import { createHoverStore } from "@/ui/map/hover-store";
+import { Failed, Loading } from "@/ui/primitives/states";
+import { useCity } from "@/ui/shell/city";
+import { movementName } from "./explain";
+import { screenQuery } from "./queries";
+import { RankingTable } from "./ranking-table";
+import { ScreenEmpty } from "./screen-empty";
+import { ScreenFoot } from "./screen-foot";
+import { ScreenSentence } from "./screen-sentence";
+import { ScreenTools } from "./screen-tools";
+import { useScreenAddress } from "./use-screen-address";
+
+/** The map library is large: the list is there and usable before it. */
+const CityMap = dynamic(() => import("@/ui/map/city-map"), { ssr: false, loading: () => <Loading title="Drawing the map" /> });
+
+export interface PublishInput {
+  title: string;
+  query: ScreenQuery;
+}
+export type PublishAction = (input: PublishInput) => Promise<ActionResult<{ id: string }>>;
+
+const NO_ROWS: RankedJunction[] = [];
+
+export function ScreenView({ publish }: { publish: PublishAction }) {
+  const { settings } = useCity();
+  const { query, at, change, select } = useScreenAddress();
+  const { data: result, error, isPending, isPlaceholderData, refetch } = useQuery(screenQuery(query));
+  const [hover] = useState(createHoverStore);
+  const [isMapOpen, setMapOpen] = useState(false);
+
+  const all = result?.rows ?? NO_ROWS;
+  const filter = useDeferredValue(query);
+  const rows = useMemo(() => applyScreenFilter(all, filter), [all, filter]);
+  const shownIds = useMemo(() => new Set(rows.map((row) => row.junctionId)), [rows]);
+  const scale = useMemo(() => scaleOf(all), [all]);
+
+  return (
+    <div className="flex flex-1 flex-col lg:h-[calc(100dvh-3.3rem)] lg:min-h-[30rem] lg:flex-none">
+      <h1 className="sr-only">Screen of {settings.cityName}</h1>
+      <div className="border-b border-rule bg-paper px-4 py-2.5 sm:px-6">
+        <ScreenSentence query={query} onChange={change} result={result} shown={rows.length} />
+      </div>
+      {error && !result ? <Failed title="The ranking could not be read." message={error.message} onRetry={() => void refetch()} /> : null}
+      {isPending ? <Loading title="Ranking the junctions" /> : null}
+      {result && result.total === 0 ? <ScreenEmpty kind="no-junctions" onChange={change} /> : null}
+      {result && result.total > 0 ? (
+        <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(18rem,1fr)_minmax(30rem,50rem)] lg:grid-rows-[minmax(0,1fr)]">
+          <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
+            <CityMap
+              rows={all}
+              shownIds={shownIds}
+              selected={at}
+              hover={hover}
+              units={settings.units}
+              noteOf={noteOf}
+              onSelect={select}
+            />
+          </div>
+          <div className="flex min-h-0 flex-col" aria-busy={isPlaceholderData}>
+            <ScreenTools query={query} onChange={change} publish={publish} isMapOpen={isMapOpen} onToggleMap={() => setMapOpen(!isMapOpen)} shown={rows.length} />
+            <div data-scrolls className={`min-h-0 flex-1 lg:overflow-y-auto ${isPlaceholderData ? "opacity-60" : ""}`}>
+              {rows.length > 0 ? (
+                <RankingTable {...scale} rows={rows} query={query} selected={at} onSelect={select} onHover={hover.set} onSort={change} />
+              ) : (
+                <ScreenEmpty kind={result.basis.traversals === 0 ? "no-traversals" : "filtered"} onChange={change} />
+              )}
+            </div>
+            <ScreenFoot result={result} query={query} onChange={change} />
+          </div>
+        </div>
+      ) : null}
+    </div>
+  );
+}
+
+function noteOf({ worst }: RankedJunction): string | null {
+  return worst && `${movementName(worst)} ${Math.round(worst.delayS)} s`;
+}
+
+/** The axis of delays ends at the 98th percentile of the upper bounds, so that one wild interval does not flatten all others. */
+function scaleOf(rows: readonly RankedJunction[]): { maxDelayS: number; lastRank: number } {
+  const highs = rows.flatMap((row) => (row.rank !== null && row.delay ? [row.delay.high] : [])).sort((a, b) => a - b);
+  const maxDelayS = highs[Math.floor((highs.length - 1) * 0.98)] ?? 1;
+  return { maxDelayS, lastRank: rows.filter((row) => row.rank !== null).length };
+}
