@@ -38,4 +38,5 @@ export function proxy(request: NextRequest): NextResponse {
   return response;
 }
 
-export const config = { matcher: ["/((?!_next/static|_next/image|fonts/|map/|maplibre-gl-worker).*)"] };
+// The body of a request that passes the proxy is kept in memory and cut off at 10 MiB: files are sent past it.
+export const config = { matcher: ["/((?!_next/static|_next/image|fonts/|map/|maplibre-gl-worker|api/uploads$).*)"] };

@@ -32,6 +32,12 @@ export const PING_NEEDS = ["vehicle_id", "timestamp", "lat", "lon"] as const sat
 export const JUNCTION_NEEDS = ["junction_id", "name", "lat", "lon"] as const satisfies readonly JunctionField[];
 export type JunctionField = (typeof JUNCTION_FIELDS)[number];
 
+/** What the mapping must name: points of GeoJSON carry their own position. */
+export function neededFields(kind: UploadKind, format: "csv" | "geojson"): readonly string[] {
+  const needs: readonly string[] = kind === "pings" ? PING_NEEDS : JUNCTION_NEEDS;
+  return format === "csv" ? needs : needs.filter((field) => field !== "lat" && field !== "lon");
+}
+
 /** How to read a file: what detection proposes, the person corrects, and a supplier's next file starts from. */
 export const FileMapping = z.object({
   format: z.enum(["csv", "geojson"]),

@@ -62,6 +62,13 @@ describe("detect", () => {
     expect(remarks[0]).toContain("the way the vehicles went suggests");
   });
 
+  it("takes what a person has settled as given", () => {
+    const found = detect(fixture("clean.csv"), "clean.csv", "pings", { delimiter: ";", hasHeader: false });
+    expect(found.header).toEqual(["column 1"]);
+    expect(found.mapping).toMatchObject({ delimiter: ";", hasHeader: false, columns: { vehicle_id: 0 } });
+    expect(found.preview[0]).toEqual(["vehicle_id,timestamp,lat,lon,speed_kmh,heading"]);
+  });
+
   it("names the columns that it did not find", () => {
     const { remarks } = detect(bytes("vehicle_id,when,lat\nv,1,2\n"), "x.csv", "pings");
     expect(remarks).toContain("No column was recognised for timestamp, lon: choose it.");

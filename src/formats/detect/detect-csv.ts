@@ -18,14 +18,27 @@ export interface CsvShape {
 const MAX_ROWS = 5000;
 const NUMBER = /^[+-]?\d+([.,]\d+)?$/;
 
+/** What a person has settled already and is not to be guessed. */
+export interface SettledShape {
+  delimiter?: FileMapping["delimiter"];
+  hasHeader?: boolean;
+}
+
 /** Delimiter, header and columns of the beginning of a CSV file; `isWhole` if nothing was cut off. */
-export function csvShape(bytes: Uint8Array, kind: UploadKind, isWhole: boolean): CsvShape {
-  const shapes = DELIMITERS.map((delimiter) => shapeWith(delimiter, bytes, kind, isWhole)).filter((shape) => shape !== null);
+export function csvShape(bytes: Uint8Array, kind: UploadKind, isWhole: boolean, settled: SettledShape = {}): CsvShape {
+  const delimiters = settled.delimiter === undefined ? DELIMITERS : [settled.delimiter];
+  const shapes = delimiters.map((delimiter) => shapeWith(delimiter, bytes, kind, isWhole, settled.hasHeader)).filter((shape) => shape !== null);
   if (shapes.length === 0) throw unusable("The file is empty.");
   return shapes.reduce((a, b) => (merit(b) > merit(a) ? b : a));
 }
 
-function shapeWith(delimiter: FileMapping["delimiter"], bytes: Uint8Array, kind: UploadKind, isWhole: boolean): CsvShape | null {
+function shapeWith(
+  delimiter: FileMapping["delimiter"],
+  bytes: Uint8Array,
+  kind: UploadKind,
+  isWhole: boolean,
+  settledHeader: boolean | undefined,
+): CsvShape | null {
   const rows: string[][] = [];
   const scanner = new CsvScanner(byteOf(delimiter), (row) => {
     if (rows.length <= MAX_ROWS && !row.broken) rows.push(Array.from({ length: row.count }, (_, i) => fieldText(row, i)));
@@ -36,7 +49,8 @@ function shapeWith(delimiter: FileMapping["delimiter"], bytes: Uint8Array, kind:
   const [first, ...rest] = rows;
   if (first === undefined) return null;
   const named = columnsFromHeader(first, kind);
-  const hasHeader = Object.keys(named).length >= 2 || (rest.length > 0 && !first.some((cell) => NUMBER.test(cell)));
+  const looksLikeHeader = Object.keys(named).length >= 2 || (rest.length > 0 && !first.some((cell) => NUMBER.test(cell)));
+  const hasHeader = settledHeader ?? looksLikeHeader;
   if (hasHeader) return { delimiter, hasHeader, header: first, rows: rest, columns: named };
   const header = first.map((_, i) => `column ${i + 1}`);
   return { delimiter, hasHeader, header, rows, columns: columnsByPlace(first.length, kind) };

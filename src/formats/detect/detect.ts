@@ -1,12 +1,12 @@
-import type { Detection, FileMapping, SpeedUnit, UploadKind } from "@/domain/upload";
+import { neededFields, type Detection, type FileMapping, type SpeedUnit, type UploadKind } from "@/domain/upload";
 import { isGzip, unpackedStart } from "../gzip";
 import { timeParser } from "../time/parse-time";
-import { csvShape } from "./detect-csv";
+import { csvShape, type SettledShape } from "./detect-csv";
 import { geojsonShape } from "./detect-geojson";
 import { hasDecimalComma, speedUnitOf, timeFormatOf, type SpeedSample } from "./detect-values";
 import { unusable } from "../unusable";
 import { refuseBinary } from "./refuse-binary";
-import { REQUIRED_FIELDS, speedUnitFromName } from "./synonyms";
+import { speedUnitFromName } from "./synonyms";
 
 /** How much of a file `detect` looks at; give it at least this much where the file has it. */
 export const DETECT_BYTES = 262_144;
@@ -26,8 +26,9 @@ interface Sample {
 /**
  * What the first bytes of a file tell: delimiter, header, columns, decimal mark, time format, unit of speed, with
  * remarks about what could not be settled. Throws a sentence where the file is no CSV and no GeoJSON.
+ * What the person has `settled` is taken as given.
  */
-export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKind): Detection {
+export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKind, settled: SettledShape = {}): Detection {
   if (firstBytes.length === 0) throw refuseEmpty(fileName);
   const bytes = unpackedStart(firstBytes, DETECT_BYTES);
   if (bytes.length === 0) throw refuseEmpty(fileName);
@@ -37,8 +38,8 @@ export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKin
   const remarks: string[] = [];
   // One may be a letter that was cut in two at the end.
   if (undecoded > 1) remarks.push("Some letters are not UTF-8 and will look wrong: save the file as UTF-8.");
-  const { mapping, sample } = isGeojson ? fromGeojson(bytes, kind, isWhole) : fromCsv(bytes, kind, isWhole, remarks);
-  const missing = REQUIRED_FIELDS[kind].filter((field) => mapping.columns[field] === undefined && !(isGeojson && isCoordinate(field)));
+  const { mapping, sample } = isGeojson ? fromGeojson(bytes, kind, isWhole) : fromCsv(bytes, kind, isWhole, settled, remarks);
+  const missing = neededFields(kind, mapping.format).filter((field) => mapping.columns[field] === undefined);
   if (missing.length > 0) remarks.push(`No column was recognised for ${missing.join(", ")}: choose it.`);
   if (kind === "pings") settlePings(mapping, sample, remarks);
   return {
@@ -50,8 +51,8 @@ export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKin
   };
 }
 
-function fromCsv(bytes: Uint8Array, kind: UploadKind, isWhole: boolean, remarks: string[]) {
-  const shape = csvShape(bytes, kind, isWhole);
+function fromCsv(bytes: Uint8Array, kind: UploadKind, isWhole: boolean, settled: SettledShape, remarks: string[]) {
+  const shape = csvShape(bytes, kind, isWhole, settled);
   if (!shape.hasHeader) remarks.push("The file has no header row: check which column is which.");
   if (shape.rows.length === 0) remarks.push("The file has a header row but no rows of data.");
   const column = (field: string) => (shape.columns[field] === undefined ? [] : shape.rows.map((row) => row[shape.columns[field]] ?? ""));
@@ -113,10 +114,6 @@ function speedSamples(mapping: FileMapping, sample: Sample): SpeedSample[] {
     const text = encoder.encode(time);
     return { vehicle: vehicles[i] ?? "", tS: parseTime(text, 0, text.length) / 1000, lat: toNumber(sample.lat[i]), lon: toNumber(sample.lon[i]), speed: toNumber(speeds[i]) };
   });
-}
-
-function isCoordinate(field: string): boolean {
-  return field === "lat" || field === "lon";
 }
 
 function firstVisible(bytes: Uint8Array): number {

@@ -34,11 +34,6 @@ const SPEED_ENDINGS: Record<SpeedUnit, readonly string[]> = {
   kn: ["kn", "kt", "kts", "knot", "knots"],
 };
 
-export const REQUIRED_FIELDS: Record<UploadKind, readonly string[]> = {
-  pings: ["vehicle_id", "timestamp", "lat", "lon"],
-  junctions: ["junction_id", "name", "lat", "lon"],
-};
-
 export function plainName(name: string): string {
   return name
     .replace(/([a-z])([A-Z])/g, "$1_$2")

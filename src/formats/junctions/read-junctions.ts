@@ -1,5 +1,5 @@
 import type { FileMapping, JunctionField, RejectedRow, RejectReason } from "@/domain/upload";
-import { JUNCTION_FIELDS } from "@/domain/upload";
+import { JUNCTION_FIELDS, neededFields } from "@/domain/upload";
 import { CsvScanner, type CsvRow } from "../csv/csv-scanner";
 import { fieldText, MAX_REJECT_TEXT, rowText } from "../csv/field";
 import { byteOf, columnOf, propertyOf, requireFields } from "../fields";
@@ -27,7 +27,7 @@ type Texts = Record<JunctionField, string>;
 
 /** Reads a file of junctions, CSV or GeoJSON points, gzipped or not. The first of several rows with one identifier counts. */
 export async function readJunctions(chunks: AsyncIterable<Uint8Array>, mapping: FileMapping): Promise<JunctionsRead> {
-  requireFields(mapping, mapping.format === "csv" ? ["junction_id", "name", "lat", "lon"] : ["junction_id", "name"]);
+  requireFields(mapping, neededFields("junctions", mapping.format));
   const list = new JunctionList(mapping);
   const scanner = mapping.format === "csv" ? csvScanner(mapping, list) : featureScanner(mapping, list);
   for await (const chunk of plainChunks(chunks)) scanner.push(chunk);

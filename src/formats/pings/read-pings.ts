@@ -1,5 +1,5 @@
 import type { PingColumns } from "@/core/types";
-import type { FileMapping, RejectedRow } from "@/domain/upload";
+import { neededFields, type FileMapping, type RejectedRow } from "@/domain/upload";
 import { requireFields } from "../fields";
 import { plainChunks } from "../gzip";
 import { RowTally, type RowCounts } from "../row-tally";
@@ -39,7 +39,7 @@ export async function readPings(
   options: Partial<PingReadOptions> = {},
 ): Promise<RowCounts> {
   const { batchRows, maxRows } = { ...PING_READ_DEFAULTS, ...options };
-  requireFields(mapping, mapping.format === "csv" ? ["vehicle_id", "timestamp", "lat", "lon"] : ["vehicle_id", "timestamp"]);
+  requireFields(mapping, neededFields("pings", mapping.format));
   const tally = new RowTally();
   const batcher = new PingBatcher(batchRows);
   const open = mapping.format === "csv" ? csvPings : geojsonPings;

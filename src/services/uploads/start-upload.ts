@@ -3,7 +3,7 @@ import { z } from "zod";
 import { suppliers, uploads } from "@/db/schema";
 import { AppError, notFound } from "@/domain/errors";
 import { isTimeZone } from "@/domain/settings";
-import { FileMapping, JUNCTION_NEEDS, PING_NEEDS } from "@/domain/upload";
+import { FileMapping, neededFields } from "@/domain/upload";
 import { ingestUpload } from "@/jobs/definitions/ingest-upload";
 import { recordAudit } from "../audit/record-audit";
 import { requirePermission, type Context } from "../context";
@@ -28,7 +28,7 @@ export async function startUpload(ctx: Context, input: StartUpload): Promise<{ u
     if (!upload) throw notFound("Upload", uploadId);
     if (upload.state === "waiting" || upload.state === "reading") return { uploadId };
     if (upload.state === "done") throw new AppError("conflict", `${upload.fileName} has been read in already.`);
-    checkMapping(upload.kind === "pings" ? PING_NEEDS : JUNCTION_NEEDS, mapping);
+    checkMapping(neededFields(upload.kind, mapping.format), mapping);
     const supplierId = supplier ? await rememberMapping(tx, supplier, upload.kind, mapping) : null;
     await tx
       .update(uploads)
