@@ -22,7 +22,9 @@ export const LEARNING = Object.freeze({
   /** Tracing outwards. */
   stepM: 10,
   sideM: 13,
+  sideSpreadM: 7,
   traceHeadingDeg: 35,
+  traceSpreadDeg: 14,
   gapM: 70,
   sparseGapM: 120,
   traceMostM: 800,

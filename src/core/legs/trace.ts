@@ -1,5 +1,6 @@
 import { angleBetweenDeg } from "@/core/geometry/angles";
 import { eastM, latAt, lonAt, northM, type Plane } from "@/core/geometry/plane";
+import { lengthOf, slice } from "@/core/geometry/polyline";
 import type { Frame } from "@/core/legs/frame";
 import { LEARNING } from "@/core/legs/learning";
 import { pingsAround, type PingGrid } from "@/core/legs/ping-grid";
@@ -102,8 +103,9 @@ function look(
     const heading = trips.headingDeg[i];
     if (!(heading >= 0)) continue;
     const travelDeg = sign > 0 ? heading : heading + 180;
-    if (angleBetweenDeg(travelDeg, outwardDeg) > LEARNING.traceHeadingDeg) continue;
-    const weight = Math.exp(-0.5 * (right / 7) ** 2);
+    const off = angleBetweenDeg(travelDeg, outwardDeg);
+    if (off > LEARNING.traceHeadingDeg) continue;
+    const weight = Math.exp(-0.5 * ((right / LEARNING.sideSpreadM) ** 2 + (off / LEARNING.traceSpreadDeg) ** 2));
     total += weight;
     seen.count += 1;
     seen.side += weight * right;
@@ -130,10 +132,17 @@ function junctionAhead(frame: Frame, own: number, x: number, y: number, ux: numb
   return -1;
 }
 
-/** Takes the last points off that lie inside the met junction's box, keeping two. */
+/** Ends the line where it enters the met junction's box, judged along its own direction there. */
 function cutAtBox(line: number[], frame: Frame, own: number, meets: number): number[] {
   const other = frame.near[own].find((n) => n.junction === meets);
-  let n = line.length;
-  while (other && n > 4 && Math.hypot(line[n - 2] - other.x, line[n - 1] - other.y) < LEARNING.boxM) n -= 2;
-  return line.slice(0, n);
+  const n = line.length;
+  if (!other || n < 4) return line;
+  const back = Math.max(0, n - 6);
+  const length = Math.hypot(line[n - 2] - line[back], line[n - 1] - line[back + 1]) || 1;
+  const ux = (line[n - 2] - line[back]) / length;
+  const uy = (line[n - 1] - line[back + 1]) / length;
+  const ahead = (other.x - line[n - 2]) * ux + (other.y - line[n - 1]) * uy - LEARNING.boxM;
+  const whole = Float64Array.from(line);
+  const end = lengthOf(whole) + ahead;
+  return end < LEARNING.stepM ? line : [...slice(whole, 0, end)];
 }

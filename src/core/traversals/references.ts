@@ -4,9 +4,9 @@ import type { Movement, Network, Traversals } from "@/core/types";
 /** Settings of stage 6. */
 export const REFERENCE = Object.freeze({
   /** Quantile of unstopped traversals that stands for an undelayed vehicle. */
-  share: 0.25,
+  share: 0.15,
   /** Weight of the free-speed build in numbers of unstopped traversals. */
-  priorN: 3,
+  priorN: 8,
   leastN: 2,
 });
 
@@ -48,7 +48,7 @@ function setReference(network: Network, movement: Movement, unstoppedS: number[]
 export function turnAllowanceS(turnDeg: number): number {
   const angle = Math.abs(turnDeg);
   if (angle <= 30) return 0;
-  return angle > 150 ? 6 : ((angle - 30) / 60) * 2.5;
+  return angle > 150 ? 6 : ((angle - 30) / 60) * 1.9;
 }
 
 /** Reference from the leg's free speed and the turn's geometry. */
