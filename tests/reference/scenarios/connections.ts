@@ -64,8 +64,16 @@ function pointOf(nodes: Map<string, NodeSpec>, id: string): [number, number] {
   return [node.x, node.y];
 }
 
-/** Edges with no street end at either end: where trips may start and end part-way. */
+/** Shorter edges (turn bays, links inside a junction) are no place to park. */
+const PARKING_M = 120;
+
+/** Long enough edges with no street end at either end: where trips may start and end part-way. */
 export function innerEdges(nodes: NodeSpec[], edges: EdgeSpec[]): string[] {
-  const ends = new Set(nodes.filter((node) => node.kind === "end").map((node) => node.id));
-  return edges.filter((edge) => !ends.has(edge.from) && !ends.has(edge.to)).map((edge) => edge.id);
+  const nodeById = new Map(nodes.map((node) => [node.id, node]));
+  const isParking = (edge: EdgeSpec) => {
+    const [from, to] = [nodeById.get(edge.from), nodeById.get(edge.to)];
+    if (!from || !to || from.kind === "end" || to.kind === "end") return false;
+    return Math.hypot(to.x - from.x, to.y - from.y) >= PARKING_M;
+  };
+  return edges.filter(isParking).map((edge) => edge.id);
 }

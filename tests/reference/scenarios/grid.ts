@@ -90,8 +90,8 @@ export function gridScenario(): Scenario {
   });
   const signals = strayOffsets(streets.nodes, 90, 12);
   // J11 gives its cross street too little green: queues fill the short blocks behind it.
-  signals.J11.greens = [{ from: "J10_J11", dir: "s", factor: 0.55 }];
-  const perLane = (axis: "column" | "row", index: number) => (axis === "row" && index === 1 ? 860 : index === 3 ? 160 : 385);
+  signals.J11.greens = [{ from: "J10_J11", dir: "s", factor: 0.65 }];
+  const perLane = (axis: "column" | "row", index: number) => (axis === "row" && index === 1 ? 780 : index === 3 ? 150 : 340);
   return {
     id: "grid",
     title: "4 x 4 grid, right-hand driving, stray offsets, one street oversaturated with spillback",
@@ -115,7 +115,7 @@ export function gridScenario(): Scenario {
     ],
     innerShare: 0.12,
     profile: [0.85, 1.1, 0.9],
-    routeSpread: 1.5,
+    routeSpread: 1.3,
     warmUpS: 480,
     recordedS: 3600,
     vehicles: "calm",

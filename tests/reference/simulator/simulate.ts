@@ -10,11 +10,16 @@ import { writeTrips } from "./write-trips";
 /** Runs the scenario's traffic and returns every vehicle's course, one position a second. */
 export async function simulate(scenario: Scenario, network: string, folder: string): Promise<Map<string, Course>> {
   const output = join(folder, "fcd.xml");
-  runSimulator(network, writeTrips(scenario, folder), writeSignals(scenario, network, folder, false), output, [
+  const routes = join(folder, "routes.xml");
+  // Trips that no street allows (to the other side without a turnaround) are left out here.
+  runProgram("duarouter", [
+    "-n", network, "-r", writeTrips(scenario, folder), "-o", routes, "--ignore-errors", "--no-warnings", "--no-step-log",
+    "--weights.random-factor", String(scenario.routeSpread), "--seed", String(scenario.seed), "--xml-validation", "never",
+  ]);
+  runSimulator(network, routes, writeSignals(scenario, network, folder, false), output, [
     "--begin", "0", "--end", String(scenario.warmUpS + scenario.recordedS),
     "--device.fcd.begin", String(scenario.warmUpS),
     "--seed", String(scenario.seed),
-    "--weights.random-factor", String(scenario.routeSpread),
     "--time-to-teleport", "240",
   ]);
   return readTrajectories(output, scenario.warmUpS);
@@ -23,7 +28,7 @@ export async function simulate(scenario: Scenario, network: string, folder: stri
 export function runSimulator(network: string, routes: string, additional: string, output: string, options: string[]) {
   runProgram("sumo", [
     "-n", network, "-r", routes, "-a", additional, "--fcd-output", output,
-    "--step-length", "0.5", "--device.fcd.period", "1", "--lanechange.duration", "2",
+    "--step-length", "0.5", "--device.fcd.period", "1",
     "--no-step-log", "--no-warnings", "--xml-validation", "never", ...options,
   ]);
 }
