@@ -4,6 +4,8 @@ import { LANE_WIDTH_M, STREET_STANDARDS } from "./street-standards";
 
 const SHORTEST_BAY_BLOCK_M = 110;
 const ACCESS_BLOCK_M = 230;
+/** How far out of town vehicles are followed. */
+const GATE_M = 520;
 
 export function buildLinks(nodes: CityNode[], edges: CityEdge[], setbackM: (node: number) => number): CityLink[] {
   const links: CityLink[] = [];
@@ -24,7 +26,8 @@ function linkOf(index: number, edge: CityEdge, edgeIndex: number, nodes: CityNod
   const standard = STREET_STANDARDS[edge.class];
   const fullM = lineLengthM(edge.line);
   const isToGate = nodes[edge.to].isGate;
-  const inner = lineBetween(edge.line, nodes[edge.from].isGate ? 0 : setbackM(edge.from), fullM - (isToGate ? 0 : setbackM(edge.to)));
+  const startM = nodes[edge.from].isGate ? Math.max(0, fullM - GATE_M) : setbackM(edge.from);
+  const inner = lineBetween(edge.line, startM, isToGate ? Math.min(fullM, GATE_M) : fullM - setbackM(edge.to));
   const besideM = edge.isOneWay ? 0 : standard.medianM + (standard.lanes * LANE_WIDTH_M) / 2;
   const line = offsetLine(inner, besideM);
   const lengthM = lineLengthM(line);
@@ -51,7 +54,7 @@ export function offsetLine(line: readonly Point[], besideM: number): Point[] {
   });
 }
 
-const SHARPEST_TURN_DEG = 158;
+const SHARPEST_TURN_DEG = 142;
 const STRAIGHT_DEG = 50;
 const TURN_SPEED_MS: Record<TurnName, number> = { left: 7.5, through: Infinity, right: 6.5 };
 
