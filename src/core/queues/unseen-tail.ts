@@ -35,10 +35,12 @@ export function tailGrowthMs(seenPerSecond: number, perMetre: number): number {
   return perMetre > 0 ? seenPerSecond / perMetre : 0;
 }
 
-/** Where the unseen end of the queue behind standing `k` is expected at `tMs`; NaN once it too has driven off. */
+/**
+ * Where the unseen end of the queue behind standing `k` is expected at `tMs`; NaN once the discharge, which leaves the
+ * seen vehicle at its departure and runs upstream at the wave speed, has come to that end. `mostM` limits the unseen part.
+ */
 export function expectedTailM(standings: Standings, k: number, tMs: number, growthMs: number, mostM: number, options: QueueOptions): number {
-  const stoodS = (Math.min(tMs, standings.toMs[k]) - standings.fromMs[k]) / 1000;
-  const behindM = Math.min(mostM, growthMs * stoodS);
-  const goneMs = standings.toMs[k] + (behindM / options.waveSpeedMs) * 1000;
-  return tMs <= goneMs ? standings.s[k] + behindM : NaN;
+  const behindM = Math.min(mostM, (growthMs * (tMs - standings.fromMs[k])) / 1000);
+  const dischargedM = (options.waveSpeedMs * (tMs - standings.toMs[k])) / 1000;
+  return dischargedM <= behindM ? standings.s[k] + behindM : NaN;
 }
