@@ -46,15 +46,18 @@ function markApproach(edge: EdgeSpec, outs: Out[]): ConnectionSpec[] {
   return links;
 }
 
+function vertices(edge: EdgeSpec, nodes: Map<string, NodeSpec>): [number, number][] {
+  const inner = edge.shape ?? [];
+  return edge.ownEnds ? inner : [pointOf(nodes, edge.from), ...inner, pointOf(nodes, edge.to)];
+}
+
 function endStep(edge: EdgeSpec, nodes: Map<string, NodeSpec>): number {
-  const to = pointOf(nodes, edge.to);
-  const before = edge.shape?.[edge.shape.length - 1] ?? pointOf(nodes, edge.from);
+  const [before, to] = vertices(edge, nodes).slice(-2);
   return bearingDeg(to[0] - before[0], to[1] - before[1]);
 }
 
 function startStep(edge: EdgeSpec, nodes: Map<string, NodeSpec>): number {
-  const from = pointOf(nodes, edge.from);
-  const after = edge.shape?.[0] ?? pointOf(nodes, edge.to);
+  const [from, after] = vertices(edge, nodes);
   return bearingDeg(after[0] - from[0], after[1] - from[1]);
 }
 
