@@ -8,6 +8,8 @@ export default {
   // Tests build beside the developer's own build.
   distDir: process.env.NEXT_DIST_DIR ?? ".next",
   poweredByHeader: false,
+  // Else the development server writes what people type, passwords too, into its log.
+  logging: { serverFunctions: false },
   // A page that a role may not see answers 403 and shows the nearest forbidden.tsx.
   experimental: { authInterrupts: true },
   turbopack: { root: here },

@@ -5,7 +5,7 @@ import { getSettings } from "@/services/settings/get-settings";
 import { AuditTable } from "@/ui/admin/audit-table";
 import { ButtonLink } from "@/ui/primitives/button";
 import { Empty } from "@/ui/primitives/states";
-import { LOCALE } from "@/ui/shell/city";
+import { LOCALE } from "@/ui/shell/locale";
 import { PageHead } from "@/ui/shell/page-head";
 
 export const metadata: Metadata = { title: "Audit trail" };

@@ -4,7 +4,7 @@ import { listKeptMail } from "@/services/mail/list-kept-mail";
 import { getSettings } from "@/services/settings/get-settings";
 import { KeptMailList } from "@/ui/admin/kept-mail-list";
 import { Empty } from "@/ui/primitives/states";
-import { LOCALE } from "@/ui/shell/city";
+import { LOCALE } from "@/ui/shell/locale";
 import { PageHead } from "@/ui/shell/page-head";
 
 export const metadata: Metadata = { title: "Kept mail" };
