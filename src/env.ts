@@ -26,6 +26,8 @@ const Env = z.object({
   /** Port on loopback of that stand-in. */
   KEPT_MAIL_PORT: positive(2525, 65_535),
   MAIL_FROM: z.string().default("Tailmark <tailmark@localhost>"),
+  /** Size of the invented city that an empty database is filled with: `small` is for tests. */
+  DEMO_CITY: z.enum(["demo", "small"]).default("demo"),
   /** Hours until a session ends and the person signs in again. */
   SESSION_HOURS: positive(12, 24 * 30),
   /** Jobs that one worker process runs at the same time. */

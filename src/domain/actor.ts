@@ -18,6 +18,8 @@ export const PERMISSIONS = {
   "upload.view": ["engineer", "admin"],
   "coverage.view": ["engineer", "admin"],
   "method.view": ["engineer", "technician", "admin"],
+  "leg.view": ["engineer", "admin"],
+  "leg.edit": ["engineer"],
   "hotspots.view": ["engineer", "technician", "reader", "admin"],
   "hotspots.publish": ["engineer"],
   "user.manage": ["admin"],

@@ -1,0 +1,55 @@
+import { z } from "zod";
+import type { Origin } from "@/core/types";
+
+/** A leg in the list of what an engineer should look at, most doubtful first. */
+export interface LegToCheck {
+  id: number;
+  name: string;
+  bearingDeg: number;
+  junction: { id: number; code: string; name: string };
+  doubts: string[];
+  support: number;
+  storageM: number | null;
+  origin: Origin;
+  locked: boolean;
+}
+
+/** Pings near a junction as they were seen: a sample that shows where vehicles drive, without saying which vehicle. */
+export interface PingCloud {
+  /** East and north metres from the junction. */
+  eastM: number[];
+  northM: number[];
+  headingDeg: (number | null)[];
+  speedMs: (number | null)[];
+}
+
+const LegId = z.coerce.number().int().positive();
+const Point = z.tuple([z.number().min(-2000).max(2000), z.number().min(-2000).max(2000)]);
+/** East and north metres from the junction, from the stop line upstream. */
+const Line = z.array(Point).min(2, "A leg line needs at least two points.").max(200);
+const Name = z.string().trim().min(1, "Give the leg a name.").max(80);
+
+export const EditLeg = z.object({
+  legId: LegId,
+  name: Name.optional(),
+  /** Metres to move the stop line upstream; negative towards the junction. */
+  stopLineShiftM: z.number().min(-60).max(60).optional(),
+  /** Null takes the limit away. */
+  speedLimitKmh: z.number().min(5).max(150).nullable().optional(),
+  /** Null goes back to what the street between the junctions gives. */
+  storageM: z.number().min(5).max(5000).nullable().optional(),
+  lanes: z.number().int().min(1).max(12).nullable().optional(),
+  locked: z.boolean().optional(),
+});
+export type EditLeg = z.infer<typeof EditLeg>;
+
+export const AddLeg = z.object({ junctionId: LegId, name: Name, line: Line });
+export type AddLeg = z.infer<typeof AddLeg>;
+
+export const SplitLeg = z.object({ legId: LegId, first: Line, second: Line });
+export type SplitLeg = z.infer<typeof SplitLeg>;
+
+export const MergeLegs = z
+  .object({ keepId: LegId, dropId: LegId })
+  .refine((input) => input.keepId !== input.dropId, { message: "Choose two different legs.", path: ["dropId"] });
+export type MergeLegs = z.infer<typeof MergeLegs>;
