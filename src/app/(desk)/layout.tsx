@@ -2,8 +2,9 @@ import type { ReactNode } from "react";
 import { HOME_OF_ROLE } from "@/domain/actor";
 import { signedInContext } from "@/server/page";
 import { getSettings } from "@/services/settings/get-settings";
-import { CityProvider, LOCALE } from "@/ui/shell/city";
+import { CityProvider } from "@/ui/shell/city";
 import { DeskHeader } from "@/ui/shell/desk-header";
+import { LOCALE } from "@/ui/shell/locale";
 import { placesFor } from "@/ui/shell/navigation";
 
 export default async function DeskLayout({ children }: { children: ReactNode }) {

@@ -26,6 +26,7 @@ export interface CityMapProps {
   selected: number | null;
   hover: HoverStore;
   units: Units;
+  locale: string;
   /** Said beside the selected junction, under its name. */
   noteOf: (row: RankedJunction) => string | null;
   onSelect: (junctionId: number | null) => void;
@@ -34,7 +35,7 @@ export interface CityMapProps {
 const PICK_PX = 14;
 const NOBODY: ReadonlySet<number> = new Set();
 
-export default function CityMap({ rows, shownIds, selected, hover, units, noteOf, onSelect }: CityMapProps) {
+export default function CityMap({ rows, shownIds, selected, hover, units, locale, noteOf, onSelect }: CityMapProps) {
   const [map, setMap] = useState<MapRef | null>(null);
   const [view, setView] = useState({ metresPerPx: 20, centreLon: 0 });
   const { data: anyBaseMap, isPending } = useQuery(baseMapQuery());
@@ -103,7 +104,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, noteOf
         {hovered && hovered !== chosen ? <HoveredMark lat={hovered.lat} lon={hovered.lon} name={hovered.name} /> : null}
       </Map>
       <MapButtons onZoom={(by) => map?.zoomTo(map.getZoom() + by)} onWhole={() => map?.fitBounds(bounds, { padding: 50 })} />
-      <MapLegend metresPerPx={view.metresPerPx} units={units} />
+      <MapLegend metresPerPx={view.metresPerPx} units={units} locale={locale} />
     </div>
   );
 }

@@ -1,4 +1,4 @@
-import { lengthFromMetres, lengthUnit, type Units } from "@/ui/format";
+import { formatNumber, lengthFromMetres, lengthUnit, type Units } from "@/ui/format";
 import { DELAY_SCALE, NO_DATA_COLOR } from "@/ui/scales";
 
 const WIDEST_PX = 110;
@@ -14,7 +14,7 @@ export function groundRule(metresPerPx: number, units: Units, widestPx = WIDEST_
 }
 
 /** The delay ramp with its bounds, and a rule that says how long a needle is on the ground. */
-export function MapLegend({ metresPerPx, units }: { metresPerPx: number; units: Units }) {
+export function MapLegend({ metresPerPx, units, locale }: { metresPerPx: number; units: Units; locale: string }) {
   const rule = groundRule(metresPerPx, units);
   return (
     <div className="pointer-events-none absolute bottom-3 left-3 max-w-[calc(100%-1.5rem)] border border-rule bg-sheet px-2.5 py-1.5 font-table text-sm leading-tight text-ink-soft">
@@ -43,7 +43,7 @@ export function MapLegend({ metresPerPx, units }: { metresPerPx: number; units: 
           <path d={`M0.5 0V8M0.5 4.5H${rule.px}M${rule.px - 0.5} 0V8`} stroke="#16213A" strokeWidth="1.25" />
         </svg>
         <span>
-          {rule.length} {lengthUnit(units)}
+          {formatNumber(rule.length, locale)} {lengthUnit(units)}
         </span>
       </div>
     </div>

@@ -40,7 +40,7 @@ export const RankingRow = memo(function RankingRow({ row, index, isSelected, isT
       onPointerLeave={() => onHover(null)}
       className={classNames(
         GRID,
-        "h-[3.6rem] cursor-pointer border-b border-l-4 border-b-rule pr-1 @xl:h-12",
+        "h-[4.5rem] cursor-pointer border-b border-l-4 border-b-rule pr-1 @xl:h-12",
         isSelected ? "border-l-pick bg-[#E7EFEB]" : "border-l-transparent hover:bg-paper",
       )}
     >

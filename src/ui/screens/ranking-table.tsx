@@ -3,7 +3,6 @@
 import { useTable } from "@tanstack/react-table";
 import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { RankedJunction, ScreenQuery, SortKey } from "@/domain/screen";
-import { defaultDirection } from "@/domain/screen-filter";
 import { useCity } from "@/ui/shell/city";
 import { oppositeOf } from "./filter-controls";
 import { RankingDetail } from "./ranking-detail";
@@ -119,7 +118,7 @@ function bringIntoView(list: HTMLElement | null, index: number, rowPx: number): 
   const view = own ? scroller.getBoundingClientRect() : { top: 0, bottom: window.innerHeight };
   const top = list.getBoundingClientRect().top + index * rowPx;
   const above = view.top + rowPx * 1.5 - top;
-  const below = top + rowPx * 3 - view.bottom;
+  const below = top + rowPx * 4.5 - view.bottom;
   const by = above > 0 ? -above : below > 0 ? below : 0;
   if (by !== 0) (own ? scroller : window).scrollBy({ top: by });
 }

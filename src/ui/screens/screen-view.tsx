@@ -8,6 +8,7 @@ import type { RankedJunction, ScreenQuery } from "@/domain/screen";
 import { applyScreenFilter } from "@/domain/screen-filter";
 import { createHoverStore } from "@/ui/map/hover-store";
 import { Failed, Loading } from "@/ui/primitives/states";
+import { useMediaQuery } from "@/ui/primitives/use-media-query";
 import { useCity } from "@/ui/shell/city";
 import { movementName } from "./explain";
 import { screenQuery } from "./queries";
@@ -30,11 +31,12 @@ export type PublishAction = (input: PublishInput) => Promise<ActionResult<{ id: 
 const NO_ROWS: RankedJunction[] = [];
 
 export function ScreenView({ publish }: { publish: PublishAction }) {
-  const { settings } = useCity();
+  const { settings, locale } = useCity();
   const { query, at, change, select } = useScreenAddress();
   const { data: result, error, isPending, isPlaceholderData, refetch } = useQuery(screenQuery(query));
   const [hover] = useState(createHoverStore);
   const [isMapOpen, setMapOpen] = useState(false);
+  const isWide = useMediaQuery("(min-width: 64rem)");
 
   const all = result?.rows ?? NO_ROWS;
   const filter = useDeferredValue(query);
@@ -54,15 +56,9 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
       {result && result.total > 0 ? (
         <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(18rem,1fr)_minmax(30rem,50rem)] lg:grid-rows-[minmax(0,1fr)]">
           <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
-            <CityMap
-              rows={all}
-              shownIds={shownIds}
-              selected={at}
-              hover={hover}
-              units={settings.units}
-              noteOf={noteOf}
-              onSelect={select}
-            />
+            {isWide || isMapOpen ? (
+              <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
+            ) : null}
           </div>
           <div className="flex min-h-0 flex-col" aria-busy={isPlaceholderData}>
             <ScreenTools query={query} onChange={change} publish={publish} isMapOpen={isMapOpen} onToggleMap={() => setMapOpen(!isMapOpen)} shown={rows.length} />

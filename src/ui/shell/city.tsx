@@ -28,6 +28,3 @@ export function useCan(permission: Permission): boolean {
   const { role } = useCity();
   return can({ type: "user", userId: "", name: "", email: "", role }, permission);
 }
-
-/** British English words with ISO-like order; numbers and dates follow it on server and browser alike. */
-export const LOCALE = "en-GB";
