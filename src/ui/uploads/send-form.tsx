@@ -1,0 +1,81 @@
+"use client";
+
+import { useQueryClient } from "@tanstack/react-query";
+import { useRouter } from "next/navigation";
+import { useId, useRef, useState, type FormEvent } from "react";
+import { UPLOAD_KINDS, type UploadKind } from "@/domain/upload";
+import { Button } from "@/ui/primitives/button";
+import { FileChooser } from "./file-chooser";
+import { ProgressBar } from "./progress-bar";
+import { uploadsQuery } from "./queries";
+import { sendFile } from "./send-file";
+
+const KIND_WORDS: Record<UploadKind, { label: string; fields: string }> = {
+  pings: { label: "Pings of vehicles", fields: "vehicle, time, latitude, longitude; speed and heading where the supplier has them" },
+  junctions: { label: "Junctions of the city", fields: "identifier, name, latitude, longitude; corridor, district, cycle length, last retimed, notes if you keep them" },
+};
+
+/** Chooses a file and sends it; what is in it is settled on the next page. */
+export function SendForm({ firstKind }: { firstKind: UploadKind }) {
+  const [kind, setKind] = useState<UploadKind>(firstKind);
+  const [file, setFile] = useState<File | null>(null);
+  const [share, setShare] = useState<number | null>(null);
+  const [error, setError] = useState<string | null>(null);
+  const sending = useRef<AbortController | null>(null);
+  const router = useRouter();
+  const client = useQueryClient();
+  const id = useId();
+
+  async function send(event: FormEvent) {
+    event.preventDefault();
+    if (!file) return setError("Choose a file first.");
+    setError(null);
+    setShare(0);
+    sending.current = new AbortController();
+    try {
+      const { uploadId, sameAs } = await sendFile(file, kind, setShare, sending.current.signal);
+      void client.invalidateQueries({ queryKey: uploadsQuery().queryKey });
+      router.push(sameAs ? `/data/${uploadId}?same=${sameAs.id}` : `/data/${uploadId}`);
+    } catch (failure) {
+      setShare(null);
+      setError(failure instanceof Error ? failure.message : "The file could not be sent.");
+    }
+  }
+
+  return (
+    <form onSubmit={send} noValidate className="flex flex-col gap-4">
+      <fieldset className="flex flex-col gap-1.5" disabled={share !== null}>
+        <legend className="mb-1 text-sm font-medium">What is in it</legend>
+        {UPLOAD_KINDS.map((value) => (
+          <label key={value} className="flex min-h-7 items-baseline gap-2.5">
+            <input type="radio" name={`${id}-kind`} value={value} checked={kind === value} onChange={() => setKind(value)} className="relative top-0.5 size-4 shrink-0 accent-pick" />
+            <span>
+              {KIND_WORDS[value].label}
+              <span className="block text-sm text-ink-soft">{KIND_WORDS[value].fields}</span>
+            </span>
+          </label>
+        ))}
+      </fieldset>
+      <FileChooser file={file} onChoose={setFile} describedBy={`${id}-formats`} />
+      <p id={`${id}-formats`} className="text-sm text-ink-soft">
+        CSV with comma, semicolon or tab, or GeoJSON points; UTF-8; packed with gzip if you like. You see the first rows and confirm the columns before anything is read.
+      </p>
+      {share === null ? (
+        <Button type="submit" tone="strong" className="self-start">
+          Send the file
+        </Button>
+      ) : (
+        <div className="flex flex-col items-start gap-3">
+          <p role="status">{share < 1 ? "Sending" : "Sent. Looking at the first rows"}…</p>
+          <ProgressBar share={share} label="Sent" />
+          <Button onClick={() => sending.current?.abort()}>Stop</Button>
+        </div>
+      )}
+      {error ? (
+        <p role="alert" className="font-medium text-tail">
+          {error}
+        </p>
+      ) : null}
+    </form>
+  );
+}

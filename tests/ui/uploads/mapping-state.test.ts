@@ -1,0 +1,51 @@
+import { describe, expect, it } from "vitest";
+import type { FileMapping } from "@/domain/upload";
+import { fieldList, fieldOfColumn, fieldsOf, missingFields, remembered, withColumnAs } from "@/ui/uploads/mapping-state";
+
+const HEADER = ["id", "when", "y", "x"];
+const CSV: FileMapping = {
+  format: "csv",
+  delimiter: ",",
+  decimal: ".",
+  hasHeader: true,
+  columns: { vehicle_id: 0, timestamp: 1, lat: 2, lon: 3 },
+  timeFormat: "iso",
+  timeZone: "UTC",
+  speedUnit: "kmh",
+};
+
+describe("a mapping in the form", () => {
+  it("moves a field from one column to another and frees what stood there", () => {
+    const moved = withColumnAs(CSV, HEADER, 3, "lat");
+    expect(moved.columns).toEqual({ vehicle_id: 0, timestamp: 1, lat: 3 });
+    expect(missingFields(moved, "pings")).toEqual(["lon"]);
+    expect(fieldOfColumn(moved, HEADER, 2)).toBe("");
+    expect(fieldOfColumn(moved, HEADER, 3)).toBe("lat");
+  });
+
+  it("leaves a column unused", () => {
+    expect(withColumnAs(CSV, HEADER, 0, "").columns).toEqual({ timestamp: 1, lat: 2, lon: 3 });
+  });
+
+  it("names properties in GeoJSON and asks for no position there", () => {
+    const geojson: FileMapping = { ...CSV, format: "geojson", columns: {} };
+    const named = withColumnAs(geojson, HEADER, 0, "vehicle_id");
+    expect(named.columns).toEqual({ vehicle_id: "id" });
+    expect(missingFields(named, "pings")).toEqual(["timestamp"]);
+    expect(fieldsOf("pings", "geojson")).toEqual(["vehicle_id", "timestamp", "speed", "heading", "trip_id"]);
+  });
+
+  it("takes a supplier's mapping only if it fits the file", () => {
+    const before: FileMapping = { ...CSV, speedUnit: "mph", columns: { vehicle_id: 3, timestamp: 2, lat: 1, lon: 0 } };
+    expect(remembered(before, CSV, HEADER)).toBe(before);
+    expect(remembered(before, CSV, HEADER.slice(0, 3))).toBeNull();
+    expect(remembered({ ...before, delimiter: ";" }, CSV, HEADER)).toBeNull();
+    expect(remembered({ ...before, format: "geojson" }, CSV, HEADER)).toBeNull();
+    expect(remembered(null, CSV, HEADER)).toBeNull();
+  });
+
+  it("lists fields as a person would", () => {
+    expect(fieldList(["lat"])).toBe("latitude");
+    expect(fieldList(["timestamp", "lat", "lon"])).toBe("time, latitude and longitude");
+  });
+});
