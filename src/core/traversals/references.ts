@@ -1,50 +1,115 @@
 import { quantileWithin } from "@/core/traversals/small-quantile";
-import type { Movement, Network, Traversals } from "@/core/types";
+import { TRAVERSAL_FLAGS, TURNS, type Movement, type Network, type Traversals } from "@/core/types";
 
 /** Settings of stage 6. */
 export const REFERENCE = Object.freeze({
-  /** Quantile of unstopped traversals that stands for an undelayed vehicle. */
-  share: 0.15,
-  /** Weight of the free-speed build in numbers of unstopped traversals. */
-  priorN: 8,
-  leastN: 2,
+  /** Quantile of unhindered traversals that stands for an undelayed vehicle. */
+  share: 0.2,
+  /** An unhindered traversal has no stop and loses no more than this share of a step of hinderedStepS against free speed. */
+  lostShare: 0.3,
+  hinderedStepS: 7,
+  /** Turning vehicles slow down this near to the stop line without being hindered, m. */
+  turnSlowsM: 30,
+  /** Steps of the track shorter than this tell no speed, s. */
+  leastStepS: 2,
+  /** Weights, in traversals, of "no difference" for turn class, leg and movement. */
+  classN: 30,
+  legN: 8,
+  movementN: 8,
+  /** From here on a reference counts as seen rather than shrunk. */
+  seenN: 10,
 });
 
 /**
- * Stage 6: sets each movement's reference time and each traversal's delay. The reference is the small-sample
- * quantile p(n + 1) (Hyndman and Fan, Sample Quantiles, 1996, type 6) of traversals without a stop, shrunk to the
- * time built from the leg's free speed and the turn's geometry. Delays are not clipped. O(n log n).
+ * Stage 6: sets each movement's reference time and each traversal's delay. A reference is the time that the leg's free
+ * speed and the turn's geometry ask for, moved by what unhindered traversals show: their small-sample quantile p(n + 1)
+ * (Hyndman and Fan, Sample Quantiles in Statistical Packages, 1996, type 6), shrunk in turn to turn class, leg and
+ * movement. Never faster than the speed limit. Delays are not clipped. O(track points + n log n).
  */
 export function setReferences(network: Network, traversals: Traversals): void {
-  const byMovement: number[][] = network.movements.map(() => []);
-  for (let i = 0; i < traversals.length; i++) {
-    if (traversals.stops[i] === 0) byMovement[traversals.movement[i]].push((traversals.exitMs[i] - traversals.enterMs[i]) / 1000);
-  }
-  network.movements.forEach((movement, m) => setReference(network, movement, byMovement[m]));
+  const unhindered = gatherUnhindered(network, traversals);
+  const built = network.movements.map((movement) => builtReferenceS(network, movement));
+  const counts = unhindered.map((seconds) => seconds.length);
+  const excess = unhindered.map((seconds, m) =>
+    seconds.length > 0 ? quantileWithin(seconds.sort((a, b) => a - b), REFERENCE.share) - built[m] : 0,
+  );
+  const references = Float64Array.from(built);
+  const shift = (groupOf: (movement: Movement) => number, groups: number, priorN: number): void => {
+    const moved = shrunkMeans(network.movements.map(groupOf), groups, excess, counts, priorN);
+    network.movements.forEach((movement, m) => {
+      references[m] += moved[groupOf(movement)];
+      excess[m] -= moved[groupOf(movement)];
+    });
+  };
+  shift((movement) => TURNS.indexOf(movement.turn), TURNS.length, REFERENCE.classN);
+  shift((movement) => movement.leg, network.legs.length, REFERENCE.legN);
+  network.movements.forEach((movement, m) => {
+    references[m] += (counts[m] * excess[m]) / (counts[m] + REFERENCE.movementN);
+    movement.referenceS = Math.max(fastestS(network, movement), references[m]);
+    movement.referenceN = counts[m];
+    movement.referenceSource = counts[m] >= REFERENCE.seenN ? "unstopped" : counts[m] > 0 ? "shrunk" : "free-speed";
+  });
   for (let i = 0; i < traversals.length; i++) {
     const seconds = (traversals.exitMs[i] - traversals.enterMs[i]) / 1000;
     traversals.delayS[i] = seconds - network.movements[traversals.movement[i]].referenceS;
   }
 }
 
-function setReference(network: Network, movement: Movement, unstoppedS: number[]): void {
-  const built = builtReferenceS(network, movement);
-  const n = unstoppedS.length;
-  movement.referenceN = n;
-  if (n < REFERENCE.leastN) {
-    movement.referenceS = built;
-    movement.referenceSource = "free-speed";
-    return;
-  }
-  const seen = quantileWithin(unstoppedS.sort((a, b) => a - b), REFERENCE.share);
-  const weight = n / (n + REFERENCE.priorN);
-  const limit = network.legs[movement.leg].speedLimitMs;
-  const fastest = limit > 0 ? (movement.cordonUpM + movement.cordonDownM) / limit : 0;
-  movement.referenceS = Math.max(fastest, weight * seen + (1 - weight) * built);
-  movement.referenceSource = n >= 10 ? "unstopped" : "shrunk";
+/** Mean of the values of each group, weighted by counts, drawn to zero by a prior weight. */
+function shrunkMeans(group: number[], groups: number, values: number[], counts: number[], priorN: number): Float64Array {
+  const sum = new Float64Array(groups);
+  const weight = new Float64Array(groups).fill(priorN);
+  group.forEach((g, m) => {
+    sum[g] += counts[m] * values[m];
+    weight[g] += counts[m];
+  });
+  return sum.map((value, g) => value / weight[g]);
 }
 
-/** Seconds that a turn costs against going straight, by its angle: braking to the speed of its radius and back. */
+/** Seconds from cordon to cordon of the traversals that nothing slowed down, by movement. */
+function gatherUnhindered(network: Network, traversals: Traversals): number[][] {
+  const out: number[][] = network.movements.map(() => []);
+  for (let i = 0; i < traversals.length; i++) {
+    const isWhole = (traversals.flags[i] & TRAVERSAL_FLAGS.truncated) === 0;
+    if (traversals.stops[i] > 0 || !isWhole) continue;
+    const movement = network.movements[traversals.movement[i]];
+    if (isUnhindered(traversals, i, movement, network.legs[movement.leg].freeSpeedMs)) {
+      out[traversals.movement[i]].push((traversals.exitMs[i] - traversals.enterMs[i]) / 1000);
+    }
+  }
+  return out;
+}
+
+function isUnhindered(traversals: Traversals, i: number, movement: Movement, freeSpeedMs: number): boolean {
+  const { trackOffset, trackT, trackS } = traversals;
+  const slowsFromM = movement.turn === "through" ? -Infinity : REFERENCE.turnSlowsM;
+  let from = -1;
+  for (let n = trackOffset[i]; n < trackOffset[i + 1]; n++) {
+    if (trackS[n] > movement.cordonUpM + 1) continue;
+    if (from >= 0 && trackT[n] - trackT[from] < REFERENCE.leastStepS) continue;
+    if (from >= 0 && trackS[n] >= slowsFromM) {
+      const seconds = trackT[n] - trackT[from];
+      const lostS = seconds - (trackS[from] - trackS[n]) / freeSpeedMs;
+      if (lostS > REFERENCE.lostShare * Math.min(seconds, REFERENCE.hinderedStepS)) return false;
+    }
+    from = n;
+  }
+  return true;
+}
+
+function fastestS(network: Network, movement: Movement): number {
+  const limit = network.legs[movement.leg].speedLimitMs;
+  return limit > 0 ? windowM(network, movement) / limit : 0;
+}
+
+/** Length of a movement's window, across the box on the chord, m. */
+function windowM(network: Network, movement: Movement): number {
+  const leg = network.legs[movement.leg];
+  const exit = network.exits[movement.exit];
+  return movement.cordonUpM + Math.hypot(exit.line[0] - leg.line[0], exit.line[1] - leg.line[1]) + movement.cordonDownM;
+}
+
+/** Seconds that a turn costs against going straight: braking to the speed of its bend and back. */
 export function turnAllowanceS(turnDeg: number): number {
   const angle = Math.abs(turnDeg);
   if (angle <= 30) return 0;
@@ -53,8 +118,5 @@ export function turnAllowanceS(turnDeg: number): number {
 
 /** Reference from the leg's free speed and the turn's geometry. */
 export function builtReferenceS(network: Network, movement: Movement): number {
-  const leg = network.legs[movement.leg];
-  const exit = network.exits[movement.exit];
-  const box = Math.hypot(exit.line[0] - leg.line[0], exit.line[1] - leg.line[1]);
-  return (movement.cordonUpM + box + movement.cordonDownM) / leg.freeSpeedMs + turnAllowanceS(movement.turnDeg);
+  return windowM(network, movement) / network.legs[movement.leg].freeSpeedMs + turnAllowanceS(movement.turnDeg);
 }
