@@ -1,0 +1,38 @@
+import { defineConfig, devices } from "@playwright/test";
+
+// WebGL by software, and nothing that phones home.
+const FLAGS = [
+  "--no-sandbox",
+  "--enable-unsafe-swiftshader",
+  "--disable-gpu",
+  "--disable-quic",
+  "--no-first-run",
+  "--disable-background-networking",
+  "--disable-component-update",
+  "--disable-sync",
+  "--disable-dev-shm-usage",
+];
+
+export default defineConfig({
+  testDir: "e2e",
+  outputDir: ".results",
+  globalSetup: "./support/servers.ts",
+  workers: 1,
+  fullyParallel: false,
+  timeout: 90_000,
+  expect: { timeout: 15_000 },
+  reporter: process.env.TAILMARK_RESULTS ? [["list"], ["json", { outputFile: process.env.TAILMARK_RESULTS }]] : [["list"]],
+  use: {
+    baseURL: process.env.E2E_URL,
+    locale: "en-GB",
+    // The city's people are elsewhere than the server: times must not follow the browser's zone.
+    timezoneId: "Pacific/Auckland",
+    trace: "retain-on-failure",
+    screenshot: "only-on-failure",
+    launchOptions: { executablePath: "/usr/bin/chromium", args: FLAGS },
+  },
+  projects: [
+    { name: "desk", testIgnore: /\.phone\.spec\.ts$/, use: { viewport: { width: 1440, height: 900 } } },
+    { name: "phone", testMatch: /\.phone\.spec\.ts$/, use: { ...devices["Pixel 7"] } },
+  ],
+});
