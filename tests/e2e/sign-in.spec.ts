@@ -112,7 +112,7 @@ async function linkMailedTo(email: string): Promise<string> {
   let link: string | undefined;
   await expect
     .poll(async () => {
-      const names = await readdir(folder).catch(() => [] as string[]);
+      const names = (await readdir(folder).catch(() => [] as string[])).sort();
       const mails = await Promise.all(names.map(async (name) => JSON.parse(await readFile(join(folder, name), "utf8")) as { to: string; text: string }));
       link = mails.filter((mail) => mail.to.includes(email)).at(-1)?.text.match(/https?:\/\/\S+/)?.[0];
       return link;
