@@ -6,7 +6,7 @@ import type { SimulatedNetwork, StreetEdge } from "../simulator/read-network";
 const LONGEST_LEG_M = 800;
 const CORDON_UP_M = 250;
 const CORDON_DOWN_M = 60;
-/** Streets that bend less than this at an unsignalised node count as one street. */
+/** Streets that bend less than this at an unsignalised junction count as one street. */
 const SAME_STREET_DEG = 50;
 const THROUGH_DEG = 50;
 const U_TURN_DEG = 150;
@@ -68,10 +68,16 @@ function traceLeg(network: SimulatedNetwork, junctionId: string, edge: StreetEdg
 }
 
 function straightestBefore(network: SimulatedNetwork, edge: StreetEdge): StreetEdge | undefined {
-  const bend = (candidate: StreetEdge) => Math.abs(signedTurnDeg(endBearing(candidate), startBearing(edge)));
-  return (network.incoming.get(edge.from) ?? [])
-    .filter((candidate) => network.connections.has(`${candidate.id}>${edge.id}`) && bend(candidate) < SAME_STREET_DEG)
-    .sort((a, b) => bend(a) - bend(b))[0];
+  const options = (network.incoming.get(edge.from) ?? []).filter(
+    (candidate) => candidate.from !== edge.to && network.connections.has(`${candidate.id}>${edge.id}`),
+  );
+  return sameStreet(options, (candidate) => Math.abs(signedTurnDeg(endBearing(candidate), startBearing(edge))));
+}
+
+/** The street goes on straight, or round any bend where there is no other way. */
+function sameStreet(options: StreetEdge[], bend: (candidate: StreetEdge) => number): StreetEdge | undefined {
+  const straightest = [...options].sort((a, b) => bend(a) - bend(b))[0];
+  return options.length === 1 || (straightest && bend(straightest) < SAME_STREET_DEG) ? straightest : undefined;
 }
 
 function findExits(network: SimulatedNetwork, edge: StreetEdge): ExitStreet[] {
@@ -101,10 +107,10 @@ function followStreet(network: SimulatedNetwork, first: StreetEdge): StreetEdge[
   const chain = [first];
   while (!network.signals.has(chain[chain.length - 1].to)) {
     const last = chain[chain.length - 1];
-    const bend = (candidate: StreetEdge) => Math.abs(signedTurnDeg(endBearing(last), startBearing(candidate)));
-    const next = (network.outgoing.get(last.to) ?? [])
-      .filter((out) => network.connections.has(`${last.id}>${out.id}`) && bend(out) < SAME_STREET_DEG)
-      .sort((a, b) => bend(a) - bend(b))[0];
+    const options = (network.outgoing.get(last.to) ?? []).filter(
+      (out) => out.to !== last.from && network.connections.has(`${last.id}>${out.id}`),
+    );
+    const next = sameStreet(options, (out) => Math.abs(signedTurnDeg(endBearing(last), startBearing(out))));
     if (!next || chain.includes(next)) break;
     chain.push(next);
   }
