@@ -1,0 +1,22 @@
+import { drawCells, drawPaths } from "./draw-cells";
+import { drawDelay, drawProfile } from "./draw-delay";
+import { drawAxes, drawStorage, drawTail, FONT, type StripWords } from "./draw-lines";
+import { scalesOf, type StripLayout } from "./strip-layout";
+import type { StripPicture } from "./strip-picture";
+
+/** The whole strip with its delay curve, in CSS pixels; the caller has scaled the context and painted the ground. */
+export function drawPicture(ctx: CanvasRenderingContext2D, layout: StripLayout, picture: StripPicture, words: StripWords): void {
+  const scales = scalesOf(layout.plot, picture.window);
+  drawCells(ctx, layout.plot, scales, picture);
+  if (picture.hasPaths) drawPaths(ctx, layout.plot, scales, picture);
+  drawStorage(ctx, layout, scales, picture, words);
+  drawTail(ctx, layout, scales, picture);
+  drawAxes(ctx, layout, scales, picture, words);
+  drawProfile(ctx, layout, scales, picture, words);
+  drawDelay(ctx, layout, scales, picture, words);
+}
+
+/** A canvas draws with what is loaded: ask for the faces before the first stroke. */
+export async function loadFaces(): Promise<void> {
+  await Promise.all([document.fonts.load(`14px ${FONT}`), document.fonts.load(`600 14px ${FONT}`)]);
+}

@@ -1,0 +1,105 @@
+"use client";
+
+import { useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from "react";
+import { cellAt } from "@/core/strips/strip";
+import { COLORS } from "@/ui/scales";
+import { StripOverlay } from "./strip-overlay";
+import { drawPicture, loadFaces } from "./draw-picture";
+import type { StripWords } from "./draw-lines";
+import { firstCell, moveCursor, readOut, readOutText, type CursorMove, type ReadOutWords } from "./strip-cursor";
+import { layoutStrip, scalesOf, stripHeight } from "./strip-layout";
+import type { StripPicture } from "./strip-picture";
+import { useBoxWidth } from "./use-box-width";
+
+const MOVES: Record<string, CursorMove> = {
+  ArrowLeft: "earlier",
+  ArrowRight: "later",
+  ArrowUp: "farther",
+  ArrowDown: "nearer",
+  Home: "first",
+  End: "last",
+};
+const BIG_STEP = 10;
+
+/** Strip and delay on one canvas; a cursor that follows the pointer or the arrow keys reads a cell out. */
+export function StripCanvas({ picture, words, reads, label }: { picture: StripPicture; words: StripWords; reads: ReadOutWords; label: string }) {
+  const box = useRef<HTMLDivElement>(null);
+  const canvas = useRef<HTMLCanvasElement>(null);
+  const { width, windowHeight, ratio } = useBoxWidth(box);
+  const layout = useMemo(() => layoutStrip(width, stripHeight(windowHeight)), [width, windowHeight]);
+  const [cursor, setCursor] = useState<number | null>(null);
+  const [spoken, setSpoken] = useState("");
+
+  useEffect(() => {
+    if (width === 0) return;
+    let frame = 0;
+    let isGone = false;
+    void loadFaces().then(() => {
+      if (isGone) return;
+      frame = requestAnimationFrame(() => paint(canvas.current, layout.width, layout.height, ratio, (ctx) => drawPicture(ctx, layout, picture, words)));
+    });
+    return () => {
+      isGone = true;
+      cancelAnimationFrame(frame);
+    };
+  }, [picture, words, layout, width, ratio]);
+
+  const known = cursor !== null && cursor < picture.speeds.length ? cursor : null;
+
+  function onPointer(event: PointerEvent<HTMLDivElement>) {
+    const frame = event.currentTarget.getBoundingClientRect();
+    const [x, y] = [event.clientX - frame.left, event.clientY - frame.top];
+    const { plot, delay } = layout;
+    const isAside = x < plot.left || x > plot.left + plot.width || y < plot.top || y > delay.top + delay.height;
+    if (isAside) return setCursor(null);
+    const scales = scalesOf(plot, picture.window);
+    const s = y <= plot.top + plot.height ? scales.sOf(y) : picture.window.bottomM;
+    const cell = cellAt(picture.strip.spec, scales.tOf(x), Math.min(s, picture.window.topM - 0.01));
+    setCursor(cell >= 0 ? cell : null);
+  }
+
+  function onKey(event: KeyboardEvent) {
+    if (event.key === "Escape") return setCursor(null);
+    const move = MOVES[event.key];
+    if (!move || event.altKey || event.ctrlKey || event.metaKey) return;
+    event.preventDefault();
+    const next = known === null ? firstCell(picture) : moveCursor(picture, known, move, event.shiftKey ? BIG_STEP : 1);
+    setCursor(next);
+    setSpoken(readOutText(readOut(picture, next, reads)));
+  }
+
+  return (
+    <div
+      ref={box}
+      role="application"
+      aria-roledescription="strip"
+      aria-label={label}
+      tabIndex={0}
+      className="relative min-w-0 touch-pan-y outline-offset-[-2px]"
+      style={{ height: layout.height }}
+      onPointerMove={onPointer}
+      onPointerDown={onPointer}
+      onPointerLeave={(event) => event.pointerType === "mouse" && setCursor(null)}
+      onKeyDown={onKey}
+      data-testid="strip"
+    >
+      <canvas ref={canvas} aria-hidden="true" className="block" style={{ width: layout.width, height: layout.height }} />
+      {known !== null && width > 0 ? <StripOverlay picture={picture} layout={layout} cell={known} text={readOut(picture, known, reads)} /> : null}
+      <p className="sr-only" aria-live="polite" aria-atomic="true">
+        {spoken}
+      </p>
+    </div>
+  );
+}
+
+/** Sizes the canvas for the screen's pixels, lays the sheet and hands over a context in CSS pixels. */
+function paint(canvas: HTMLCanvasElement | null, width: number, height: number, ratio: number, draw: (ctx: CanvasRenderingContext2D) => void): void {
+  const ctx = canvas?.getContext("2d");
+  if (!canvas || !ctx) return;
+  canvas.width = Math.round(width * ratio);
+  canvas.height = Math.round(height * ratio);
+  ctx.setTransform(ratio, 0, 0, ratio, 0, 0);
+  ctx.fillStyle = COLORS.sheet;
+  ctx.fillRect(0, 0, width, height);
+  draw(ctx);
+}

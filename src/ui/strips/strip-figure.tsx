@@ -1,0 +1,96 @@
+"use client";
+
+import { useMemo, useState } from "react";
+import { stripQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
+import { formatLength, formatSpeed } from "@/ui/format";
+import { Button, ButtonLink } from "@/ui/primitives/button";
+import { CAUTIONS } from "@/ui/primitives/caution";
+import { daysPhrase, windowPhrase } from "@/ui/screens/phrases";
+import { useCan, useCity } from "@/ui/shell/city";
+import type { StripWords } from "./draw-lines";
+import { factsText } from "./facts-text";
+import { download, pictureBlob } from "./save-picture";
+import { StripCanvas } from "./strip-canvas";
+import { StripLegend } from "./strip-legend";
+import { captionOf, legTitle } from "./strip-phrases";
+import type { DrawnStrip } from "./use-strip-picture";
+
+/** Key, strip and the ways to take it along. */
+export function StripFigure({ drawn, view, query }: { drawn: DrawnStrip; view: LegStripView; query: StripQuery }) {
+  const { settings, locale } = useCity();
+  const { units } = settings;
+  const { picture } = drawn;
+  const isTypical = query.day === undefined;
+  const words = useMemo<StripWords>(() => stripWords(view, query, units, locale), [view, query, units, locale]);
+  const reads = useMemo(() => ({ units, locale, isTypical }), [units, locale, isTypical]);
+  const hours = windowPhrase(query, view.basis);
+  const caption = captionOf(query, view, { days: daysPhrase(query, view.basis, locale), hours, cellS: picture.strip.spec.cellS }, units, locale);
+  const label = `Speed on the ${legTitle(view.leg).toLowerCase()}, time across and distance to the stop line upwards. Arrow keys move from cell to cell and read it out, Shift moves ten at once.`;
+  return (
+    <figure aria-label="Strip">
+      <div className="flex flex-wrap items-start justify-between gap-x-6 pt-4">
+        <StripLegend freeMs={picture.freeMs} isTypical={isTypical} hasStorage={view.leg.storageM !== null} />
+        <TakeAlong drawn={drawn} view={view} query={query} words={words} caption={caption} />
+      </div>
+      <div className="px-2 sm:px-4">
+        <StripCanvas picture={picture} words={words} reads={reads} label={label} />
+      </div>
+    </figure>
+  );
+}
+
+function stripWords(view: LegStripView, query: StripQuery, units: "metric" | "us", locale: string): StripWords {
+  const { storageM, upstream } = view.leg;
+  return {
+    units,
+    lengthAxis: `${units === "us" ? "feet" : "metres"} to the stop line`,
+    delayAxis: "delay, s/veh",
+    profileAxis: `delay, s per ${formatLength(query.cellM, units, locale)}`,
+    stopLine: "stop line",
+    storage: storageM === null ? null : `storage ${formatLength(storageM, units, locale)}${upstream ? "," : ""}`,
+    upstream: upstream ? `${upstream.name} behind` : null,
+  };
+}
+
+function TakeAlong(props: { drawn: DrawnStrip; view: LegStripView; query: StripQuery; words: StripWords; caption: string }) {
+  const { drawn, view, query, words, caption } = props;
+  const { settings, locale } = useCity();
+  const mayExport = useCan("strip.export");
+  const [failure, setFailure] = useState<string | null>(null);
+  const { units } = settings;
+
+  async function savePicture() {
+    setFailure(null);
+    try {
+      const blob = await pictureBlob(drawn.picture, words, {
+        above: `${settings.cityName}: ${view.junction.name}`,
+        title: legTitle(view.leg),
+        caption,
+        facts: factsText(drawn.facts, units, locale),
+        free: `free, ${formatSpeed(drawn.picture.freeMs, units, locale)}`,
+        tail: query.day === undefined ? "tail line, 95th percentile of observed reach" : "tail line, farthest reach observed",
+        cautions: [...CAUTIONS],
+      });
+      download(blob, `strip-${view.junction.code}-${view.leg.id}${query.day ? `-${query.day}` : ""}.png`);
+    } catch (error) {
+      setFailure(error instanceof Error ? error.message : "The picture could not be made.");
+    }
+  }
+
+  const params = stripQueryToParams({ ...query, cellS: drawn.picture.strip.spec.cellS }).toString();
+  return (
+    <div className="flex flex-wrap gap-2 px-4 pb-3 sm:px-6">
+      <Button onClick={() => void savePicture()}>Save picture</Button>
+      {mayExport ? (
+        <ButtonLink href={`/api/legs/${view.leg.id}/export?${params}`} download>
+          Save cells as CSV
+        </ButtonLink>
+      ) : null}
+      {failure ? (
+        <p role="alert" className="w-full text-sm text-tail">
+          {failure}
+        </p>
+      ) : null}
+    </div>
+  );
+}
