@@ -16,12 +16,14 @@ export interface Carried extends Joined {
 
 /**
  * Brings earlier legs and exits into a fresh draft. They keep id, name and settings. The line comes from whichever
- * knew more trips, except where an engineer locked the leg or set its line. Earlier junctions are found by their id.
+ * knew more trips, except where an engineer locked the leg or set its line. A junction with a drawn or set leg has
+ * none but its earlier ones. Earlier junctions are found by their id.
  */
 export function carryOver(draft: Joined, prior: Network, frame: Frame): Carried {
   const home = new Map(frame.junctions.map((junction, i) => [junction.id, i]));
+  const settled = new Set(prior.legs.filter((leg) => leg.origin !== "derived").map((leg) => home.get(prior.junctions[leg.junction].id)));
   const exits = [...draft.exits];
-  const legs = [...draft.legs];
+  const legs = draft.legs.filter((leg) => !settled.has(leg.junction));
   const carried = new Set<string>();
   const exitNow = new Int32Array(prior.exits.length).fill(-1);
   prior.exits.forEach((exit, i) => {

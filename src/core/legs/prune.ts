@@ -39,7 +39,7 @@ export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Jo
 
 function settleLeg(leg: Leg, upstreamExit: number, usage: Usage, i: number, freeSpeedMs: number, isCarried: boolean): Leg {
   const isKnown = isCarried && usage.speeds[i].length < PLENTY_SPEEDS;
-  const isStorageGiven = leg.origin !== "derived" && leg.storageM > 0;
+  const isStorageGiven = (leg.locked || leg.origin !== "derived") && leg.storageM > 0;
   return {
     ...leg,
     upstreamExit,

@@ -1,4 +1,4 @@
-import { asc, eq } from "drizzle-orm";
+import { eq } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
 import { createMatcher, learnNetwork, setReferences } from "@/core/process";
 import { legQuarters } from "@/core/queues/leg-quarters";
@@ -6,13 +6,12 @@ import { penetrationFromQueues } from "@/core/queues/penetration";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
 import { localQuarter } from "@/core/scores/local-time";
 import { encodeScreenDay } from "@/core/scores/screen-day-codec";
-import type { JunctionPoint, Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
+import type { Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
-import { junctions, legs, screenDays, traversals as traversalTable } from "@/db/schema";
+import { screenDays, traversals as traversalTable } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { offsetTable } from "@/domain/local-time";
-import type { FileMapping, IngestReport } from "@/domain/upload";
-import { readPings } from "@/formats/pings/read-pings";
+import type { IngestReport } from "@/domain/upload";
 import type { RowCounts } from "@/formats/row-tally";
 import { VehicleNames } from "@/formats/vehicle-names";
 import { createH3Index } from "@/geo/h3-index";
@@ -22,23 +21,16 @@ import { getSettings } from "../settings/get-settings";
 import { failUpload, finishUpload } from "./finish-upload";
 import { joinTraversals } from "./join-traversals";
 import { dropKnown } from "./known-traversals";
-import { readNetwork, storeNetwork } from "./network-rows";
+import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork } from "./network-rows";
 import { joinPings, openPingStore, type PingStore } from "./ping-store";
 import { openProgress, type ProgressWriter } from "./progress";
-import { openRejects, type RejectWriter } from "./rejects";
+import { readIntoStore, type PingUpload } from "./read-into-store";
+import { openRejects } from "./rejects";
 import { storeTraversals } from "./store-traversals";
 import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 
-/** Two files at once would both learn the same new legs; they take turns. */
-const INGEST_LOCK = 7_401_160;
 /** Enough vehicles to learn the streets from; the rest only passes over them. */
 const LEARNING_PINGS = 4_000_000;
-
-interface PingUpload {
-  id: string;
-  storageKey: string;
-  mapping: FileMapping;
-}
 
 interface Totals {
   pings: number;
@@ -55,7 +47,10 @@ export async function ingestPings(ctx: Context, upload: PingUpload, signal?: Abo
   const rejects = openRejects(ctx, upload.id);
   const names = new VehicleNames();
   try {
-    const counts = await readIntoStore(ctx, upload, store, rejects, names, progress);
+    const counts = await readIntoStore(ctx, upload, store, names, {
+      onReject: (row) => rejects.add(row),
+      onProgress: (share) => progress.tell("read", share, store.length),
+    });
     const rejectsKey = await rejects.finish();
     if (counts.accepted === 0) {
       const report: IngestReport = { ...counts };
@@ -70,37 +65,6 @@ export async function ingestPings(ctx: Context, upload: PingUpload, signal?: Abo
   }
 }
 
-async function readIntoStore(
-  ctx: Context,
-  upload: PingUpload,
-  store: PingStore,
-  rejects: RejectWriter,
-  names: VehicleNames,
-  progress: ProgressWriter,
-): Promise<RowCounts> {
-  const bytes = (await ctx.storage.size(upload.storageKey)) ?? 0;
-  const stream = await ctx.storage.open(upload.storageKey);
-  let readBytes = 0;
-  async function* counted(): AsyncGenerator<Uint8Array> {
-    for await (const chunk of stream) {
-      readBytes += (chunk as Uint8Array).length;
-      yield chunk as Uint8Array;
-    }
-  }
-  return readPings(
-    counted(),
-    upload.mapping,
-    {
-      async onBatch(batch) {
-        await store.add(batch);
-        await progress.tell("read", readBytes / bytes, store.length);
-      },
-      onReject: (row) => rejects.add(row),
-    },
-    names,
-  );
-}
-
 async function matchAndStore(
   ctx: Context,
   upload: PingUpload,
@@ -111,7 +75,7 @@ async function matchAndStore(
   progress: ProgressWriter,
 ): Promise<void> {
   const settings = await getSettings(ctx);
-  const points = await readJunctionPoints(ctx);
+  const points = await readJunctionPoints(ctx.db);
   if (points.length === 0) throw new AppError("invalid", "Load the city's junctions first: pings are matched to them.");
   const index = createH3Index();
   const prior = await readNetwork(ctx.db, points, settings.driveSide);
@@ -127,7 +91,7 @@ async function matchAndStore(
   const traversals = await dropKnown(ctx.db, matched.traversals, {
     uploadId: upload.id,
     network,
-    legKeys: await storedLegKeys(ctx),
+    legKeys: await storedLegKeys(ctx.db),
     days: [...new Set(daysOf(matched.traversals))],
     vehicleHash,
   });
@@ -156,18 +120,6 @@ async function matchAndStore(
     await finishUpload({ ...ctx, db: tx }, upload.id, report, rejectsKey);
     await raiseDataVersion(tx);
   });
-}
-
-async function readJunctionPoints(ctx: Context): Promise<(JunctionPoint & { key: number })[]> {
-  return ctx.db
-    .select({ key: junctions.id, id: junctions.code, lat: junctions.lat, lon: junctions.lon })
-    .from(junctions)
-    .orderBy(asc(junctions.id));
-}
-
-async function storedLegKeys(ctx: Context): Promise<Map<string, number>> {
-  const rows = await ctx.db.select({ id: legs.id, code: legs.code }).from(legs);
-  return new Map(rows.map((row) => [row.code, row.id]));
 }
 
 async function learningSample(store: PingStore): Promise<PingColumns> {

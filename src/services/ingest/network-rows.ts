@@ -1,9 +1,12 @@
-import { inArray, sql, type SQL } from "drizzle-orm";
+import { asc, inArray, sql, type SQL } from "drizzle-orm";
 import type { AnyPgColumn } from "drizzle-orm/pg-core";
 import { METHOD_VERSION } from "@/core/method-version";
 import type { DriveSide, JunctionPoint, Network } from "@/core/types";
 import type { Db } from "@/db/client";
-import { exits, legs, movements } from "@/db/schema";
+import { exits, junctions, legs, movements } from "@/db/schema";
+
+/** Two files at once would both learn the same new legs; they, and changes of legs, take turns. */
+export const INGEST_LOCK = 7_401_160;
 
 const ROWS_PER_STATEMENT = 400;
 
@@ -17,8 +20,22 @@ export interface NetworkKeys {
 const nullable = (value: number): number | null => (Number.isFinite(value) ? value : null);
 const orNaN = (value: number | null): number => value ?? NaN;
 
+export type KeyedPoint = JunctionPoint & { key: number };
+
+export async function readJunctionPoints(db: Db): Promise<KeyedPoint[]> {
+  return db
+    .select({ key: junctions.id, id: junctions.code, lat: junctions.lat, lon: junctions.lon })
+    .from(junctions)
+    .orderBy(asc(junctions.id));
+}
+
+export async function storedLegKeys(db: Db): Promise<Map<string, number>> {
+  const rows = await db.select({ id: legs.id, code: legs.code }).from(legs);
+  return new Map(rows.map((row) => [row.code, row.id]));
+}
+
 /** The network that earlier uploads taught, in the core's shape. `junctions` carry their database keys. */
-export async function readNetwork(db: Db, points: (JunctionPoint & { key: number })[], driveSide: DriveSide): Promise<Network | undefined> {
+export async function readNetwork(db: Db, points: KeyedPoint[], driveSide: DriveSide): Promise<Network | undefined> {
   const indexOf = new Map(points.map((point, index) => [point.key, index]));
   const exitRows = await db.select().from(exits).orderBy(exits.id);
   const legRows = await db.select().from(legs).orderBy(legs.id);

@@ -1,6 +1,7 @@
 import type { Handler } from "../handler";
 import { ingestUploadHandler } from "./ingest-upload";
+import { reprocessLegsHandler } from "./reprocess-legs";
 import { sendPasswordMailHandler } from "./send-password-mail";
 import { sendUploadMailHandler } from "./send-upload-mail";
 
-export const handlers: readonly Handler[] = [ingestUploadHandler, sendPasswordMailHandler, sendUploadMailHandler];
+export const handlers: readonly Handler[] = [ingestUploadHandler, reprocessLegsHandler, sendPasswordMailHandler, sendUploadMailHandler];

@@ -1,0 +1,196 @@
+import { and, asc, eq, inArray, notInArray, or } from "drizzle-orm";
+import { METHOD_VERSION } from "@/core/method-version";
+import { relistMovements } from "@/core/legs/relist";
+import { createMatcher, setReferences } from "@/core/process";
+import { legQuarters } from "@/core/queues/leg-quarters";
+import { buildScreenDays } from "@/core/scores/build-screen-days";
+import { keepInScreenDay } from "@/core/scores/leave-out";
+import { localQuarter } from "@/core/scores/local-time";
+import { mergeScreenDays } from "@/core/scores/merge-screen-days";
+import { decodeScreenDay, encodeScreenDay } from "@/core/scores/screen-day-codec";
+import type { ScreenDay } from "@/core/scores/types";
+import type { Network, PingColumns, Traversals } from "@/core/types";
+import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
+import type { Db } from "@/db/client";
+import { screenDays, traversals as traversalTable, uploads } from "@/db/schema";
+import { AppError } from "@/domain/errors";
+import { offsetTable } from "@/domain/local-time";
+import { VehicleNames } from "@/formats/vehicle-names";
+import { createH3Index } from "@/geo/h3-index";
+import { raiseDataVersion } from "../catalogue/catalogue";
+import type { Context } from "../context";
+import { getSettings } from "../settings/get-settings";
+import { filterTraversals, joinTraversals } from "./join-traversals";
+import { dropKnown } from "./known-traversals";
+import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork, type KeyedPoint, type NetworkKeys } from "./network-rows";
+import { emptyColumns, openPingStore } from "./ping-store";
+import { readIntoStore, type PingUpload } from "./read-into-store";
+import { storeTraversals } from "./store-traversals";
+import { vehicleHashes, vehicleKey } from "./vehicle-hash";
+
+/** Pings farther than this from the changed junctions take no part in their legs or in those of their neighbours, degrees. */
+const NEAR_LAT_DEG = 0.02;
+
+interface Job {
+  network: Network;
+  keys: NetworkKeys;
+  /** 1 for each leg that the change touches: the junction's own and those that it feeds. */
+  touched: Uint8Array;
+  choose: (batch: PingColumns) => PingColumns;
+  timeZone: string;
+}
+
+/** Matches the stored pings around one junction anew, file by file; figures elsewhere stay as they are. Safe to run twice. */
+export async function reprocessLegs(ctx: Context, input: { junctionId: number }, run?: { signal: AbortSignal }): Promise<void> {
+  if (ctx.actor.type !== "job") throw new AppError("forbidden", "Legs are matched anew by the worker only.");
+  await withAdvisoryLock(ctx.db, INGEST_LOCK, async () => {
+    const job = await prepare(ctx, input.junctionId);
+    if (!job) return;
+    const files = await ctx.db
+      .select({ id: uploads.id, storageKey: uploads.storageKey, mapping: uploads.mapping })
+      .from(uploads)
+      .where(and(eq(uploads.kind, "pings"), eq(uploads.state, "done")))
+      .orderBy(asc(uploads.createdAt), asc(uploads.id));
+    for (const file of files) {
+      run?.signal.throwIfAborted();
+      if (file.mapping) await rematchUpload(ctx, { ...file, mapping: file.mapping }, job);
+    }
+    await bulkTransaction(ctx.db, async (tx) => {
+      const points = await readJunctionPoints(tx);
+      await storeNetwork(tx, job.network, points.map((point) => point.key));
+      await raiseDataVersion(tx);
+    });
+  });
+}
+
+async function prepare(ctx: Context, junctionId: number): Promise<Job | null> {
+  const { driveSide, timeZone } = await getSettings(ctx);
+  const points = await readJunctionPoints(ctx.db);
+  const stored = await readNetwork(ctx.db, points, driveSide);
+  const home = points.findIndex((point) => point.key === junctionId);
+  if (!stored || home < 0) return null;
+  const network = relistMovements(stored);
+  const touched = Uint8Array.from(network.legs, (leg) =>
+    leg.junction === home || (leg.upstreamExit >= 0 && network.exits[leg.upstreamExit].junction === home) ? 1 : 0,
+  );
+  const near = new Set([home]);
+  network.legs.forEach((leg, l) => touched[l] && near.add(leg.junction));
+  const keys = await bulkTransaction(ctx.db, (tx) => storeNetwork(tx, network, points.map((point) => point.key)));
+  return { network, keys, touched, timeZone, choose: (batch) => chooseNear(batch, [...near].map((i) => points[i])) };
+}
+
+function chooseNear(batch: PingColumns, points: readonly KeyedPoint[]): PingColumns {
+  const lonDeg = NEAR_LAT_DEG / Math.cos((points[0].lat * Math.PI) / 180);
+  const chosen: number[] = [];
+  for (let i = 0; i < batch.length; i++) {
+    const isNear = points.some((point) => Math.abs(batch.lat[i] - point.lat) < NEAR_LAT_DEG && Math.abs(batch.lon[i] - point.lon) < lonDeg);
+    if (isNear) chosen.push(i);
+  }
+  const some = emptyColumns(chosen.length);
+  some.length = chosen.length;
+  for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) {
+    chosen.forEach((from, to) => (some[name][to] = batch[name][from]));
+  }
+  return some;
+}
+
+async function rematchUpload(ctx: Context, upload: PingUpload, job: Job): Promise<void> {
+  const names = new VehicleNames();
+  const store = openPingStore();
+  try {
+    await readIntoStore(ctx, upload, store, names, { choose: job.choose });
+    const match = createMatcher(job.network, createH3Index());
+    const parts: Traversals[] = [];
+    for await (const bucket of store.buckets()) {
+      parts.push(touchedOnly(match(bucket).traversals, job));
+    }
+    if (parts.length === 0) return;
+    const traversals = joinTraversals(parts);
+    setTouchedReferences(job, traversals);
+    await replace(ctx, upload.id, job, traversals, vehicleHashes(await vehicleKey(ctx.db), names));
+  } finally {
+    await store.close();
+  }
+}
+
+function touchedOnly(all: Traversals, { network, touched }: Job): Traversals {
+  return filterTraversals(all, (i) => touched[network.movements[all.movement[i]].leg] === 1);
+}
+
+/** Untouched movements have no traversals here: what they rest on stays. */
+function setTouchedReferences({ network, touched }: Job, traversals: Traversals): void {
+  const kept = network.movements.map(({ referenceS, referenceSource, referenceN }) => ({ referenceS, referenceSource, referenceN }));
+  setReferences(network, traversals);
+  network.movements.forEach((movement, m) => {
+    if (!touched[movement.leg]) Object.assign(movement, kept[m]);
+  });
+}
+
+async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals, vehicleHash: BigInt64Array): Promise<void> {
+  const { network, keys, touched } = job;
+  const [firstMs, lastMs] = spanOf(all);
+  const localTime = offsetTable(job.timeZone, firstMs, lastMs);
+  const daysOf = (some: Traversals) => Int32Array.from({ length: some.length }, (_, i) => localQuarter(some.stopLineMs[i], localTime).day);
+  const traversals = await dropKnown(ctx.db, all, {
+    uploadId,
+    network,
+    legKeys: await storedLegKeys(ctx.db),
+    days: [...new Set(daysOf(all))],
+    vehicleHash,
+  });
+  const quarters = legQuarters(network, traversals);
+  const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
+  const fresh = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
+  const touchedKeys = [...keys.legs].filter((_, l) => touched[l] === 1);
+  await bulkTransaction(ctx.db, async (tx, client) => {
+    await tx
+      .delete(traversalTable)
+      .where(
+        and(
+          eq(traversalTable.uploadId, uploadId),
+          or(inArray(traversalTable.legId, touchedKeys), notInArray(traversalTable.legId, [...keys.legs])),
+        ),
+      );
+    await storeTraversals(tx, client, { uploadId, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
+    await patchSlices(tx, uploadId, job, fresh);
+    await raiseDataVersion(tx);
+  });
+}
+
+async function patchSlices(db: Db, uploadId: string, { network, keys, touched }: Job, fresh: ScreenDay[]): Promise<void> {
+  const keptMovements = new Set([...keys.movements].filter((_, m) => !touched[network.movements[m].leg]));
+  const keptLegs = new Set([...keys.legs].filter((_, l) => !touched[l]));
+  const freshByDay = new Map(fresh.map((slice) => [slice.day, slice]));
+  const rows = await db.select().from(screenDays).where(eq(screenDays.uploadId, uploadId));
+  for (const row of rows) {
+    const rest = keepInScreenDay(decodeScreenDay(row.payload), (key) => keptMovements.has(key), (key) => keptLegs.has(key));
+    const added = freshByDay.get(row.day);
+    freshByDay.delete(row.day);
+    const slice = added ? mergeScreenDays([rest, added]) : rest;
+    // A new row, since whoever remembers the old one knows it by its key.
+    await db.delete(screenDays).where(eq(screenDays.id, row.id));
+    await insertSlice(db, uploadId, row.medianIntervalS, slice);
+  }
+  for (const slice of freshByDay.values()) await insertSlice(db, uploadId, rows[0]?.medianIntervalS ?? null, slice);
+}
+
+async function insertSlice(db: Db, uploadId: string, medianIntervalS: number | null, slice: ScreenDay): Promise<void> {
+  await db.insert(screenDays).values({
+    uploadId,
+    day: slice.day,
+    methodVersion: METHOD_VERSION,
+    medianIntervalS,
+    traversals: slice.offset[slice.cells],
+    payload: encodeScreenDay(slice),
+  });
+}
+
+function spanOf(all: Traversals): [number, number] {
+  let first = Infinity;
+  let last = -Infinity;
+  for (let i = 0; i < all.length; i++) {
+    if (all.stopLineMs[i] < first) first = all.stopLineMs[i];
+    if (all.stopLineMs[i] > last) last = all.stopLineMs[i];
+  }
+  return all.length === 0 ? [0, 0] : [first, last];
+}
