@@ -21,7 +21,7 @@ export const COLORS = {
 
 /**
  * Mean control delay, seconds per vehicle: one hue, light to dark. The steps are the bounds of level of
- * service A to F at signalised junctions (Highway Capacity Manual, 6th edition, exhibit 19-8).
+ * service A to F at signalised junctions (Highway Capacity Manual, 7th edition, Exhibit 19-8).
  */
 export const DELAY_SCALE: readonly ScaleStep[] = [
   { from: 0, color: "#E3D2AF" },

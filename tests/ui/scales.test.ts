@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { DELAY_SCALE, delayColor, NO_DATA_COLOR, speedColor, SPEED_RAMP } from "@/ui/scales";
 
 describe("delay scale", () => {
-  it("steps at the level-of-service bounds of HCM 6, exhibit 19-8", () => {
+  it("steps at the level-of-service bounds of HCM 7, Exhibit 19-8", () => {
     expect(DELAY_SCALE.map((step) => step.from)).toEqual([0, 10, 20, 35, 55, 80]);
   });
 
