@@ -1,9 +1,8 @@
 import { studentT975 } from "@/core/stats/student-t";
 import { clusterVariance, type ClusterVariance } from "./cluster-variance";
+import { peerSpread, PEER_SPREAD_DF, squaresWithin } from "./peer-spread";
 import type { RatioTally } from "./ratio-tally";
 
-/** Weight of the peers' spread, in degrees of freedom: a few lucky equal delays must not look exact. */
-const PEER_SPREAD_DF = 4;
 /** Weight of the peers' design effect beside the unit's own clusters. */
 const PEER_DESIGN_DF = 8;
 /** Rounding of one delay, s²: the variance of a mean is never below it divided by n. */
@@ -36,10 +35,8 @@ export function meanIntervals(tally: RatioTally, sumSq: Float64Array, group: Arr
   for (let u = 0; u < units; u++) {
     own.push(clusterVariance(tally, u));
     const n = tally.base[u];
-    const prior = spread.get(group[u]) ?? NaN;
-    const priorDf = Number.isNaN(prior) ? 0 : PEER_SPREAD_DF;
-    const squares = Math.max(0, sumSq[u] - tally.total[u] ** 2 / n);
-    single[u] = Math.max(LEAST_VARIANCE, ((priorDf > 0 ? priorDf * prior : 0) + squares) / (priorDf + n - 1)) / n;
+    const squares = PEER_SPREAD_DF * spread[u] + squaresWithin(tally, sumSq, u);
+    single[u] = Math.max(LEAST_VARIANCE, squares / (PEER_SPREAD_DF + n - 1)) / n;
   }
   const rho = peerCorrelation(own, single, tally);
   const out: MeanIntervals = {
@@ -57,7 +54,6 @@ function fillUnit(out: MeanIntervals, u: number, tally: RatioTally, own: Cluster
   const n = tally.base[u];
   if (!(n > 0)) return;
   out.value[u] = tally.total[u] / n;
-  if (!Number.isFinite(single)) return;
   const expected = single * (1 + Math.max(0, own.size - 1) * rho);
   const ownDf = own.df > 0 ? own.df : 0;
   const ownSquares = ownDf > 0 ? ownDf * own.variance : 0;
@@ -68,29 +64,6 @@ function fillUnit(out: MeanIntervals, u: number, tally: RatioTally, own: Cluster
   out.effective[u] = n / Math.max(1, variance / single);
   out.low[u] = out.value[u] - half;
   out.high[u] = out.value[u] + half;
-}
-
-/** Variance of single delays within units, pooled over each group of peers; absent where no unit has two. */
-function peerSpread(tally: RatioTally, sumSq: Float64Array, group: ArrayLike<number>): Map<number, number> {
-  const squares = new Map<number, { sum: number; df: number }>();
-  const everyone = { sum: 0, df: 0 };
-  for (let u = 0; u < tally.base.length; u++) {
-    const n = tally.base[u];
-    if (!(n > 0)) continue;
-    const pool = squares.get(group[u]) ?? { sum: 0, df: 0 };
-    squares.set(group[u], pool);
-    const within = n > 1 ? Math.max(0, sumSq[u] - tally.total[u] ** 2 / n) : 0;
-    for (const p of [pool, everyone]) {
-      p.sum += within;
-      p.df += n - 1;
-    }
-  }
-  const spread = new Map<number, number>();
-  for (const [key, pool] of squares) {
-    const chosen = pool.df >= PEER_SPREAD_DF ? pool : everyone;
-    if (chosen.df > 0) spread.set(key, chosen.sum / chosen.df);
-  }
-  return spread;
 }
 
 /** ρ of the peers: by how much variances between clusters exceed those of independent members, for members at hand. */
