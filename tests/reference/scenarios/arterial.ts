@@ -129,3 +129,30 @@ export function arterialScenario(): Scenario {
     vehicles: "calm",
   };
 }
+
+/** Another street, kept aside, mirrored by the caller. */
+export function arterialBScenario(): { scenario: Scenario; bays: ConnectionSpec[] } {
+  const streets = arterialStreets({
+    mainPerHour: 820,
+    mainSpeedMs: 13.89,
+    crossings: [
+      { x: 0, y: 0, skewDeg: 75, sides: ["north", "south"], lanes: 1, perHour: 220 },
+      { x: 250, y: -15, skewDeg: 90, sides: ["north"], lanes: 1, perHour: 180 },
+      { x: 560, y: 10, skewDeg: 135, sides: ["north", "south"], lanes: 1, perHour: 200 },
+      { x: 690, y: 30, skewDeg: 92, sides: ["north", "south"], lanes: 1, perHour: 170 },
+      { x: 1180, y: -40, skewDeg: 58, sides: ["south"], lanes: 1, perHour: 210 },
+      { x: 1420, y: -35, skewDeg: 105, sides: ["north", "south"], lanes: 2, perHour: 300 },
+    ],
+  });
+  const base = arterialScenario();
+  const signals: Scenario["signals"] = {};
+  for (const node of streets.nodes.filter(({ kind }) => kind === "signal")) signals[node.id] = { offsetS: Math.round(node.x / 9) % 90 };
+  signals.A2.greens = [{ from: "bA1_A2_A2", dir: "s", factor: 0.8 }];
+  const scenario: Scenario = {
+    ...base, seed: 707, lat: 45.57, lon: -38.2, nodes: streets.nodes, edges: streets.edges, cycleS: 90, signals,
+    connections: [...streets.links, ...markLanes(streets.nodes, streets.edges, "right")],
+    demand: [{ entries: streets.entries, exits: streets.exits, inner: innerEdges(streets.nodes, streets.edges) }],
+    relations: [], vehicles: "default",
+  };
+  return { scenario, bays: streets.links };
+}

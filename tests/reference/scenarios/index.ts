@@ -1,7 +1,8 @@
-import { arterialScenario } from "./arterial";
+import { arterialBScenario, arterialScenario } from "./arterial";
 import { gridScenario } from "./grid";
 import { mirrorScenario } from "./mirror";
 import { oddScenario } from "./odd";
+import { oddBScenario } from "./odd-b";
 import { townScenario } from "./town";
 import type { Scenario } from "./types";
 
@@ -27,4 +28,18 @@ export const TUNING: Scenario[] = [
 ];
 
 /** Kept aside while the core was tuned. */
-export const HOLD_OUT: Scenario[] = [];
+export const HOLD_OUT: Scenario[] = [
+  leftArterial(),
+  oddBScenario(),
+  townScenario({
+    id: "town-b",
+    title: "another irregular town, denser and busier",
+    seed: 818, columns: 5, rows: 5, spacingM: 160, jitterM: 34, gapShare: 0.14, diagonalShare: 0.25,
+    perHour: 250, cycleS: 76, vehicles: "calm",
+  }),
+];
+
+function leftArterial(): Scenario {
+  const { scenario, bays } = arterialBScenario();
+  return mirrorScenario(scenario, "arterial-left", "arterial with bays and skewed side streets, left-hand driving", bays);
+}
