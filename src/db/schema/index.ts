@@ -6,3 +6,4 @@ export * from "./legs";
 export * from "./uploads";
 export * from "./traversals";
 export * from "./reports";
+export * from "./ping-clouds";

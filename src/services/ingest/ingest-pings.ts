@@ -1,5 +1,6 @@
 import { eq } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
+import { createNearSampler, encodeNearPings, type NearPings } from "@/core/pings/near-sample";
 import { createMatcher, learnNetwork, setReferences } from "@/core/process";
 import { legQuarters } from "@/core/queues/leg-quarters";
 import { penetrationFromQueues } from "@/core/queues/penetration";
@@ -8,7 +9,8 @@ import { localQuarter } from "@/core/scores/local-time";
 import { encodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
-import { screenDays, traversals as traversalTable } from "@/db/schema";
+import type { Db } from "@/db/client";
+import { pingClouds, screenDays, traversals as traversalTable } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { offsetTable } from "@/domain/local-time";
 import type { IngestReport } from "@/domain/upload";
@@ -21,7 +23,7 @@ import { getSettings } from "../settings/get-settings";
 import { failUpload, finishUpload } from "./finish-upload";
 import { joinTraversals } from "./join-traversals";
 import { dropKnown } from "./known-traversals";
-import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork } from "./network-rows";
+import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork, type KeyedPoint } from "./network-rows";
 import { joinPings, openPingStore, type PingStore } from "./ping-store";
 import { openProgress, type ProgressWriter } from "./progress";
 import { readIntoStore, type PingUpload } from "./read-into-store";
@@ -31,6 +33,7 @@ import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 
 /** Enough vehicles to learn the streets from; the rest only passes over them. */
 const LEARNING_PINGS = 4_000_000;
+const CLOUDS_PER_STATEMENT = 200;
 
 interface Totals {
   pings: number;
@@ -117,9 +120,16 @@ async function matchAndStore(
         payload: encodeScreenDay(slice),
       });
     }
+    await storeClouds(tx, upload.id, points, matched.clouds);
     await finishUpload({ ...ctx, db: tx }, upload.id, report, rejectsKey);
     await raiseDataVersion(tx);
   });
+}
+
+async function storeClouds(db: Db, uploadId: string, points: readonly KeyedPoint[], clouds: readonly NearPings[]): Promise<void> {
+  await db.delete(pingClouds).where(eq(pingClouds.uploadId, uploadId));
+  const rows = points.flatMap((point, j) => (clouds[j].length > 0 ? [{ junctionId: point.key, uploadId, payload: encodeNearPings(clouds[j]) }] : []));
+  for (let i = 0; i < rows.length; i += CLOUDS_PER_STATEMENT) await db.insert(pingClouds).values(rows.slice(i, i + CLOUDS_PER_STATEMENT));
 }
 
 async function learningSample(store: PingStore): Promise<PingColumns> {
@@ -139,6 +149,8 @@ interface MatchedFile {
   facts: SampleFacts;
   firstMs: number;
   lastMs: number;
+  /** By index of the junction. */
+  clouds: NearPings[];
 }
 
 async function matchAll(
@@ -149,6 +161,7 @@ async function matchAll(
   progress: ProgressWriter,
 ): Promise<MatchedFile> {
   const match = createMatcher(network, index);
+  const sampler = createNearSampler(network.junctions, index);
   const parts: Traversals[] = [];
   const totals: Totals = { pings: 0, duplicates: 0, jumps: 0, trips: 0, incompleteTraversals: 0 };
   let facts: SampleFacts | null = null;
@@ -158,6 +171,7 @@ async function matchAll(
   for await (const bucket of store.buckets()) {
     const matched = match(bucket);
     parts.push(matched.traversals);
+    sampler.add(bucket);
     for (const name of Object.keys(totals) as (keyof Totals)[]) totals[name] += matched.report[name];
     vehicles += matched.facts.vehicles;
     // Every bucket holds a fair share of all vehicles: the first one's interval stands for the file's.
@@ -168,7 +182,7 @@ async function matchAll(
     }
     await progress.tell("match", totals.pings / counts.accepted, counts.rowsRead);
   }
-  return { traversals: joinTraversals(parts), totals, facts: facts as SampleFacts, firstMs, lastMs };
+  return { traversals: joinTraversals(parts), totals, facts: facts as SampleFacts, firstMs, lastMs, clouds: sampler.finish() };
 }
 
 function reportOf(counts: RowCounts, matched: MatchedFile, traversals: Traversals, network: Network, penetration: number): IngestReport {
