@@ -11,6 +11,9 @@ export const metadata: Metadata = {
 
 export const viewport: Viewport = { width: "device-width", initialScale: 1, themeColor: "#F6F3EC" };
 
+/** The policy names the scripts of each answer anew, so no page can be made ahead of its request. */
+export const dynamic = "force-dynamic";
+
 export default function RootLayout({ children }: { children: ReactNode }) {
   return (
     <html lang="en-GB">

@@ -13,8 +13,9 @@ export function sessionCookieName(baseUrl: string): string {
 }
 
 export async function readSession(now: Date): Promise<SessionClaims | null> {
+  const jar = await cookies();
   const settings = env();
-  const cookie = (await cookies()).get(sessionCookieName(settings.BASE_URL))?.value;
+  const cookie = jar.get(sessionCookieName(settings.BASE_URL))?.value;
   if (!cookie) return null;
   try {
     const claims = SessionClaims.safeParse(await decode({ token: cookie, secret: settings.NEXTAUTH_SECRET }));

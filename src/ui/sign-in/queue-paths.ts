@@ -8,7 +8,7 @@ export interface DrawnQueue {
 
 const CYCLE_S = 60;
 const RED_S = 32;
-const HEADWAY_S = 3.4;
+const HEADWAY_S = 4.2;
 const FREE_MS = 13;
 const SPACING_M = 7.5;
 /** Each vehicle starts this much after the one before it. */
