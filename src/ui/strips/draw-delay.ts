@@ -97,12 +97,33 @@ function drawBounds(ctx: CanvasRenderingContext2D, layout: StripLayout, box: Box
     ctx.textAlign = "right";
     const roomPx = y(band.fromS) - y(band.toS);
     if (band.fromS === 0 || roomPx >= layout.fontPx * 0.8) ctx.fillText(String(band.fromS), box.left - 9, line);
-    if (roomPx >= 17) drawLetter(ctx, band.letter, squareX, (y(band.fromS) + y(band.toS)) / 2);
   }
+  const bands = losBands(topS);
+  const middles = bands.map((band) => (y(band.fromS) + y(band.toS)) / 2);
+  const places = spreadUpwards(middles, LETTER_PX + 2, box.top + box.height);
+  bands.forEach((band, k) => drawLetter(ctx, band.letter, squareX, places[k], { x: box.left + box.width, y: middles[k] }));
 }
 
-function drawLetter(ctx: CanvasRenderingContext2D, letter: string, left: number, middleY: number): void {
+const LETTER_PX = 17;
+
+/** Moves marks that would overlap upwards, lowest first, and as little as it takes; none stands below `bottom`. */
+export function spreadUpwards(middles: number[], apart: number, bottom: number): number[] {
+  let last = Infinity;
+  return middles.map((middle) => {
+    last = Math.min(middle, last - apart, bottom - apart / 2 + 4);
+    return last;
+  });
+}
+
+/** A letter in a square, tied to the middle of its band. */
+function drawLetter(ctx: CanvasRenderingContext2D, letter: string, left: number, middleY: number, band: { x: number; y: number }): void {
   ctx.save();
+  ctx.strokeStyle = COLORS.rule;
+  ctx.lineWidth = 1;
+  ctx.beginPath();
+  ctx.moveTo(band.x + 1, band.y);
+  ctx.lineTo(left, middleY);
+  ctx.stroke();
   ctx.strokeStyle = COLORS.ink;
   ctx.lineWidth = 1.25;
   ctx.strokeRect(left + 0.5, Math.round(middleY) - 7.5, 16, 16);

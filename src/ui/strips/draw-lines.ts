@@ -12,6 +12,7 @@ export interface StripWords {
   profileAxis: string;
   stopLine: string;
   storage: string | null;
+  /** The junction behind, where it is known. */
   upstream: string | null;
 }
 
@@ -22,10 +23,10 @@ export function drawTail(ctx: CanvasRenderingContext2D, layout: StripLayout, sca
   ctx.save();
   clipTo(ctx, { ...layout.plot, top: layout.plot.top - 3, height: layout.plot.height + 6 });
   ctx.lineJoin = "round";
-  for (const [color, width] of [[COLORS.sheet, 4.2], [COLORS.tail, 2.2]] as const) {
+  for (const [color, width] of [[COLORS.sheet, 3.8], [COLORS.tail, 2.1]] as const) {
     ctx.strokeStyle = color;
     ctx.lineWidth = width;
-    ctx.globalAlpha = color === COLORS.sheet ? 0.9 : 1;
+    ctx.globalAlpha = color === COLORS.sheet ? 0.75 : 1;
     ctx.beginPath();
     let isDown = false;
     for (let column = 0; column < tail.columns; column++) {
@@ -58,9 +59,10 @@ export function drawStorage(ctx: CanvasRenderingContext2D, layout: StripLayout, 
   ctx.lineTo(plot.left + plot.width, y);
   ctx.stroke();
   ctx.restore();
-  const lines = [words.storage, words.upstream].filter((line): line is string => line !== null);
-  if (layout.isNarrow) drawTag(ctx, layout, lines[0], plot.left + plot.width - 4, Math.max(plot.top + 11, y - 10));
-  else lines.forEach((line, k) => drawSideLabel(ctx, layout, line, y + 5 + k * 18, k === 0));
+  const label = words.storage ?? "storage";
+  if (layout.isNarrow) return drawTag(ctx, layout, label, plot.left + plot.width - 4, Math.max(plot.top + 11, y - 10));
+  drawSideLabel(ctx, layout, words.upstream === null ? label : `${label},`, y + 5, true);
+  if (words.upstream !== null) drawSideLabel(ctx, layout, words.upstream, y + 23, false);
 }
 
 export function drawAxes(ctx: CanvasRenderingContext2D, layout: StripLayout, scales: StripScales, picture: StripPicture, words: StripWords): void {

@@ -2,6 +2,7 @@
 
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
+import { useState } from "react";
 import { stripQueryFromParams, stripQueryToParams, whenQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
 import { Caution } from "@/ui/primitives/caution";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";
@@ -13,7 +14,7 @@ import { StripFigure } from "./strip-figure";
 import { legTitle } from "./strip-phrases";
 import { StripSentence } from "./strip-sentence";
 import { useQueryAddress, type AddressCodec } from "./use-query-address";
-import { useStripPicture } from "./use-strip-picture";
+import { useStripPicture, type DrawnStrip } from "./use-strip-picture";
 
 const CODEC: AddressCodec<StripQuery> = { fromParams: stripQueryFromParams, toParams: stripQueryToParams };
 
@@ -22,10 +23,14 @@ export function LegStripPage({ legId }: { legId: number }) {
   const figures = useQuery(legStripQuery(legId, query));
   const tracks = useQuery(tracksQuery(legId, query));
   const view = figures.data;
-  const drawn = useStripPicture(view, tracks.data, query);
+  // Figures of the last choice stay while the next ones come, but must not be drawn with the next tracks.
+  const drawn = useStripPicture(figures.isPlaceholderData ? undefined : view, tracks.data, query);
+  const [shown, setShown] = useState<DrawnStrip | null>(null);
+  if (drawn && drawn !== shown) setShown(drawn);
 
   if (figures.isError && !view) return <Failed message={figures.error.message} onRetry={() => void figures.refetch()} />;
   if (!view) return <Loading title="Reading the leg" />;
+  const failure = figures.error ?? tracks.error;
   return (
     <article className="flex flex-1 flex-col">
       <PageHead title={legTitle(view.leg)} above={<Crumbs view={view} query={query} />}>
@@ -33,27 +38,33 @@ export function LegStripPage({ legId }: { legId: number }) {
           <StripSentence query={query} view={view} onChange={change} />
         </div>
       </PageHead>
-      <div className="flex flex-1 flex-col">
-        {tracks.isError ? (
-          <Failed title="The vehicles' paths could not be read." message={tracks.error.message} onRetry={() => void tracks.refetch()} />
-        ) : !drawn ? (
-          <Loading title="Reading the vehicles' paths" />
-        ) : drawn.picture.set.tracks === 0 ? (
-          <NothingSeen query={query} view={view} />
-        ) : (
-          <StripFigure drawn={drawn} view={view} query={query} />
-        )}
-      </div>
-      {drawn && drawn.picture.set.tracks > 0 ? (
-        <>
-          <FactsLine facts={drawn.facts} fromMin={view.basis.fromMin} toMin={view.basis.toMin}>
-            <Caution />
-            {view.leg.doubts.length > 0 ? <Doubts doubts={view.leg.doubts} /> : null}
-          </FactsLine>
-          <DelayTable picture={drawn.picture} />
-        </>
-      ) : null}
+      {failure ? (
+        <Failed title="The strip could not be read." message={failure.message} onRetry={() => void Promise.all([figures.refetch(), tracks.refetch()])} />
+      ) : !shown ? (
+        <Loading title="Reading the vehicles' paths" />
+      ) : (
+        <div aria-busy={!drawn} className={drawn ? "flex flex-1 flex-col" : "flex flex-1 flex-col opacity-50"}>
+          <StripBody shown={shown} />
+        </div>
+      )}
     </article>
+  );
+}
+
+function StripBody({ shown }: { shown: DrawnStrip }) {
+  const { picture, facts, view, query } = shown;
+  if (picture.set.tracks === 0) return <NothingSeen query={query} view={view} />;
+  return (
+    <>
+      <div className="flex-1">
+        <StripFigure drawn={shown} />
+      </div>
+      <FactsLine facts={facts} fromMin={view.basis.fromMin} toMin={view.basis.toMin}>
+        <Caution />
+        {view.leg.doubts.length > 0 ? <Doubts doubts={view.leg.doubts} /> : null}
+      </FactsLine>
+      <DelayTable picture={picture} />
+    </>
   );
 }
 

@@ -21,7 +21,7 @@ const TYPICAL = "typical";
 
 export function DayControl({ query, view, onChange }: ControlProps) {
   const { locale } = useCity();
-  const days = view.days.map(({ date, tracks }) => ({ value: date, label: weekdayPhrase(date, locale), note: counted(tracks, "vehicle", "vehicles", locale) }));
+  const days = view.days.map(({ date, tracks }) => ({ value: date, label: weekdayPhrase(date, locale), note: `${counted(tracks, "vehicle", "vehicles", locale)} that day` }));
   const pooled = { value: TYPICAL, label: TYPICAL_DAY, note: `${counted(view.days.length, "day", "days", locale)} together` };
   return (
     <SentenceControl name="Day" phrase={query.day === undefined ? TYPICAL_DAY : weekdayPhrase(query.day, locale)}>

@@ -16,10 +16,10 @@ import { captionOf, legTitle } from "./strip-phrases";
 import type { DrawnStrip } from "./use-strip-picture";
 
 /** Key, strip and the ways to take it along. */
-export function StripFigure({ drawn, view, query }: { drawn: DrawnStrip; view: LegStripView; query: StripQuery }) {
+export function StripFigure({ drawn }: { drawn: DrawnStrip }) {
   const { settings, locale } = useCity();
   const { units } = settings;
-  const { picture } = drawn;
+  const { picture, view, query } = drawn;
   const isTypical = query.day === undefined;
   const words = useMemo<StripWords>(() => stripWords(view, query, units, locale), [view, query, units, locale]);
   const reads = useMemo(() => ({ units, locale, isTypical }), [units, locale, isTypical]);
@@ -30,7 +30,7 @@ export function StripFigure({ drawn, view, query }: { drawn: DrawnStrip; view: L
     <figure aria-label="Strip">
       <div className="flex flex-wrap items-start justify-between gap-x-6 pt-4">
         <StripLegend freeMs={picture.freeMs} isTypical={isTypical} hasStorage={view.leg.storageM !== null} />
-        <TakeAlong drawn={drawn} view={view} query={query} words={words} caption={caption} />
+        <TakeAlong drawn={drawn} words={words} caption={caption} />
       </div>
       <div className="px-2 sm:px-4">
         <StripCanvas picture={picture} words={words} reads={reads} label={label} />
@@ -47,13 +47,13 @@ function stripWords(view: LegStripView, query: StripQuery, units: "metric" | "us
     delayAxis: "delay, s/veh",
     profileAxis: `delay, s per ${formatLength(query.cellM, units, locale)}`,
     stopLine: "stop line",
-    storage: storageM === null ? null : `storage ${formatLength(storageM, units, locale)}${upstream ? "," : ""}`,
+    storage: storageM === null ? null : `storage ${formatLength(storageM, units, locale)}`,
     upstream: upstream ? `${upstream.name} behind` : null,
   };
 }
 
-function TakeAlong(props: { drawn: DrawnStrip; view: LegStripView; query: StripQuery; words: StripWords; caption: string }) {
-  const { drawn, view, query, words, caption } = props;
+function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripWords; caption: string }) {
+  const { view, query } = drawn;
   const { settings, locale } = useCity();
   const mayExport = useCan("strip.export");
   const [failure, setFailure] = useState<string | null>(null);

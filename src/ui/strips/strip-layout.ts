@@ -42,7 +42,7 @@ export function layoutStrip(width: number, tall: number): StripLayout {
 
 /** Height of the strip that leaves room for sentence, delay and figures in the window. */
 export function stripHeight(windowPx: number): number {
-  return Math.round(Math.min(520, Math.max(270, windowPx - 556)));
+  return Math.round(Math.min(520, Math.max(270, windowPx - 590)));
 }
 
 export interface StripScales {

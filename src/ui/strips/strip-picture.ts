@@ -32,7 +32,7 @@ const MOST_COLUMNS = 1440;
 export const CELL_SECONDS = [5, 10, 15, 30, 60, 120, 300, 900] as const;
 export const CELL_METRES = [5, 10, 20, 50] as const;
 
-export function windowOfView(view: LegStripView): StripWindow {
+export function windowOfView(view: PictureView): StripWindow {
   return { fromS: view.basis.fromMin * 60, toS: view.basis.toMin * 60, bottomM: 0, topM: view.leg.lengthM };
 }
 
@@ -59,7 +59,7 @@ export function referencePace(set: TrackSet, include: Uint8Array, movements: Mov
   let metres = 0;
   for (let i = 0; i < set.tracks; i++) {
     const movement = include[i] === 1 ? byId.get(set.movement[i]) : undefined;
-    if (movement?.referenceS == null) continue;
+    if (!movement || movement.referenceS === null) continue;
     seconds += movement.referenceS;
     metres += movement.cordonUpM + movement.cordonDownM;
   }
@@ -71,8 +71,11 @@ export function delayStepS(vehicles: number, window: Pick<StripWindow, "fromS" |
   return (vehicles * 300) / (window.toS - window.fromS) >= 20 ? 300 : 900;
 }
 
+/** The part of a leg's view that a picture needs; a junction's page has it for each of its legs. */
+export type PictureView = Pick<LegStripView, "leg" | "movements" | "basis">;
+
 export interface PictureInput {
-  view: LegStripView;
+  view: PictureView;
   query: StripQuery;
   set: TrackSet;
   include: Uint8Array;

@@ -8,7 +8,10 @@ import type { LegStripView, StripQuery } from "@/domain/junction";
 import { dayFacts, typicalFacts, type StripFacts } from "./strip-facts";
 import { buildPicture, includeTurn, windowOfView, type StripPicture } from "./strip-picture";
 
+/** A picture together with what it was drawn from: they belong together even while the next choice is read. */
 export interface DrawnStrip {
+  view: LegStripView;
+  query: StripQuery;
   picture: StripPicture;
   facts: StripFacts;
 }
@@ -26,6 +29,6 @@ export function useStripPicture(view: LegStripView | undefined, set: TrackSet | 
     if (!view || !set || !include || !crossingS || !reaches) return null;
     const picture = buildPicture({ view, query, set, include, crossingS, reaches });
     const facts = query.day === undefined ? typicalFacts(view, query.turn) : dayFacts(view, picture, reaches, crossingS);
-    return { picture, facts };
+    return { view, query, picture, facts };
   }, [view, query, set, include, crossingS, reaches]);
 }

@@ -1,0 +1,30 @@
+import { keepPreviousData, queryOptions } from "@tanstack/react-query";
+import { whenQueryToParams, type JunctionView, type WhenQuery } from "@/domain/junction";
+import { getJson } from "@/ui/query-client";
+
+export interface ListedJunction {
+  id: number;
+  code: string;
+  name: string;
+  lat: number;
+  lon: number;
+  corridor: string | null;
+}
+
+/** All junctions of the city: the list is searched in the browser. */
+export function junctionsQuery() {
+  return queryOptions({
+    queryKey: ["junctions"],
+    queryFn: ({ signal }) => getJson<ListedJunction[]>("/api/junctions", signal),
+    staleTime: 10 * 60_000,
+  });
+}
+
+export function junctionQuery(junctionId: number, when: WhenQuery) {
+  const params = whenQueryToParams(when).toString();
+  return queryOptions({
+    queryKey: ["junctions", junctionId, params],
+    queryFn: ({ signal }) => getJson<JunctionView>(`/api/junctions/${junctionId}?${params}`, signal),
+    placeholderData: keepPreviousData,
+  });
+}
