@@ -8,6 +8,7 @@ import { LEARNING } from "@/core/legs/learning";
 import { listMovements } from "@/core/legs/movements";
 import { createPingGrid } from "@/core/legs/ping-grid";
 import { keepUsed } from "@/core/legs/prune";
+import { refineDraft } from "@/core/legs/refine-draft";
 import { findSeeds } from "@/core/legs/seeds";
 import { traceArm } from "@/core/legs/trace";
 import { measureUsage } from "@/core/legs/usage";
@@ -27,7 +28,7 @@ export function learnFromTrips(
   const draft = proposeLegs(trips, frame, index, options, prior);
   const network = withMovements(junctions, draft.legs, draft.exits, options);
   const usage = measureUsage(trips, createGraph(network, index));
-  const kept = keepUsed(network, usage, draft.carried);
+  const kept = keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
   return withMovements(junctions, legs, exits, options);

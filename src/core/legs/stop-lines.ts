@@ -1,48 +1,77 @@
+import { lengthOf, slice } from "@/core/geometry/polyline";
 import { legBearingDeg } from "@/core/legs/draft";
 import type { Usage } from "@/core/legs/usage";
-import { lengthOf, slice } from "@/core/geometry/polyline";
 import type { Leg } from "@/core/types";
 
-const BINS_FROM_M = -20;
-const BINS_TO_M = 60;
-const KERNEL_M = 3.5;
 /** Passages with a stand that a leg needs for a stop line of its own. */
 const LEAST_HEADS = 8;
-/** A peak counts as the first vehicle's place from this share of the highest on. */
-const PEAK_SHARE = 0.45;
+const MOST_HEADS = 200;
+/** Spread of positions, and road that one standing vehicle takes, m. */
+const SPREAD_M = 4;
+const SPACING_M = 7.5;
+/** Shares of next to this place in the queue that are tried. */
+const FADES = [0.5, 0.65, 0.8, 0.9];
+const MOST_IN_QUEUE = 30;
+/** Share of stands that are no queue, spread over the range. */
+const STRAY_SHARE = 0.03;
+const RANGE_M = 200;
+const TABLE_FROM_M = -40;
+const FROM_M = -15;
+const TO_M = 18;
+const STEP_M = 0.5;
 /** Half a car and the gap that drivers leave to the line, m. */
-const STANDS_BEFORE_M = 3.2;
-const MOST_SHIFT_M = 18;
+const STANDS_BEFORE_M = 3;
+
+/** Log density of a standing place at a distance behind the first vehicle's, by fade: index (distance - TABLE_FROM_M) / STEP_M. */
+const TABLES = FADES.map(logDensity);
+
+function logDensity(fade: number): Float64Array {
+  const table = new Float64Array((RANGE_M - TABLE_FROM_M) / STEP_M + 1);
+  const norm = (1 - fade) / (SPREAD_M * Math.sqrt(2 * Math.PI));
+  for (let n = 0; n < table.length; n++) {
+    let density = 0;
+    for (let k = 0; k < MOST_IN_QUEUE; k++) {
+      const u = (TABLE_FROM_M + n * STEP_M - k * SPACING_M) / SPREAD_M;
+      density += fade ** k * Math.exp(-0.5 * u * u);
+    }
+    table[n] = Math.log((1 - STRAY_SHARE) * norm * density + STRAY_SHARE / RANGE_M);
+  }
+  return table;
+}
 
 /**
- * Where the stop line lies on a leg's present line, metres upstream of its start: the first peak of the places where
- * the heads of queues stand. NaN where too few stood.
+ * Where the stop line lies on a leg's present line, metres upstream of its start: maximum likelihood of a queue whose
+ * first vehicle stands there, each next one 7.5 m behind with a fading share. NaN where too few stood. O(heads).
  */
 export function findStopLine(heads: number[]): number {
   if (heads.length < LEAST_HEADS) return NaN;
-  const size = BINS_TO_M - BINS_FROM_M + 1;
-  const density = new Float64Array(size);
-  for (const head of heads) {
-    for (let b = 0; b < size; b++) density[b] += Math.exp(-0.5 * ((b + BINS_FROM_M - head) / KERNEL_M) ** 2);
+  const step = Math.max(1, Math.floor(heads.length / MOST_HEADS));
+  let best = -Infinity;
+  let first = NaN;
+  for (let place = FROM_M; place <= TO_M; place += STEP_M) {
+    for (const table of TABLES) {
+      let sum = 0;
+      for (let i = 0; i < heads.length; i += step) {
+        const n = Math.round((heads[i] - place - TABLE_FROM_M) / STEP_M);
+        sum += table[Math.max(0, Math.min(table.length - 1, n))];
+      }
+      if (sum > best) {
+        best = sum;
+        first = place;
+      }
+    }
   }
-  const highest = density.reduce((most, value) => Math.max(most, value), 0);
-  for (let b = 1; b + 1 < size; b++) {
-    const isPeak = density[b] >= density[b - 1] && density[b] > density[b + 1];
-    if (isPeak && density[b] >= PEAK_SHARE * highest) return clampShift(b + BINS_FROM_M - STANDS_BEFORE_M);
-  }
-  return NaN;
+  return first - STANDS_BEFORE_M;
 }
-
-const clampShift = (shift: number): number => Math.min(MOST_SHIFT_M, Math.max(-MOST_SHIFT_M, shift));
 
 /** Moves the stop lines of derived legs to where queues begin. */
 export function placeStopLines(legs: Leg[], usage: Usage, carried: Set<string>): Leg[] {
   const isFree = (leg: Leg): boolean =>
     leg.origin === "derived" && !leg.locked && (!carried.has(leg.id) || leg.stopLineOrigin === "default");
-  const shifts = legs.map((leg, i) => (isFree(leg) ? findStopLine(usage.heads[i]) : 0));
   return legs.map((leg, i) => {
-    if (!(Math.abs(shifts[i]) > 0) || leg.lengthM - shifts[i] < 20) return leg;
-    const line = slice(leg.line, shifts[i], leg.lengthM);
+    const shift = isFree(leg) ? findStopLine(usage.heads[i]) : NaN;
+    if (Number.isNaN(shift) || leg.lengthM - shift < 20) return leg;
+    const line = slice(leg.line, shift, leg.lengthM);
     return { ...leg, line, lengthM: lengthOf(line), bearingDeg: legBearingDeg(line), stopLineOrigin: "derived" as const };
   });
 }

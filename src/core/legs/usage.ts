@@ -1,5 +1,9 @@
+import { signedTurnDeg } from "@/core/geometry/angles";
+import { eastM, northM } from "@/core/geometry/plane";
+import { projectPoint } from "@/core/geometry/polyline";
+import { OFFSET_BIN_M } from "@/core/legs/refine";
 import type { StreetGraph } from "@/core/match/graph";
-import { matchTrips } from "@/core/match/match-trips";
+import { matchTrips, type Chain } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
 
 /** What matched traffic makes of a draft network. */
@@ -14,18 +18,35 @@ export interface Usage {
   movement: Map<number, number>;
   /** Moving speeds on each leg away from junctions, m/s. */
   speeds: number[][];
-  /** Distances to the stop line at which pings stood, nearest first for each passage, by leg. */
+  /** Distance to the stop line at which each passage of a leg last stood, without those that wait inside the box to turn across. */
   heads: number[][];
-  /** Passages of each leg with a standing ping on it. */
-  stood: Uint32Array;
+  /** Sideways distances of moving pings from the line of each leg, and of each exit, by stretch of OFFSET_BIN_M. */
+  legOffsets: Offsets[];
+  exitOffsets: Offsets[];
 }
 
-/** Nearest to a junction at which speeds count as free of it, m. */
+export interface Offsets {
+  count: Uint32Array;
+  /** Sum of offsets to the right of the line's direction of drawing, m. */
+  sum: Float64Array;
+}
+
+/** Nearest to a junction at which speeds count as free of it, and from the upstream end, m. */
 const CLEAR_M = 60;
+const CLEAR_OF_START_M = 30;
+const MOST_SPEEDS = 4000;
+const STANDING_MS = 1;
+const MOVING_MS = 3;
+const ACROSS_DEG = 45;
+const HEAD_PAST_LINE_M = 12;
 
 /** Matches all trips and counts. O(pings). */
 export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
   const { network } = graph;
+  const offsets = (line: { lengthM: number }): Offsets => {
+    const bins = Math.ceil(line.lengthM / OFFSET_BIN_M) + 1;
+    return { count: new Uint32Array(bins), sum: new Float64Array(bins) };
+  };
   const usage: Usage = {
     leg: new Uint32Array(network.legs.length),
     exit: new Uint32Array(network.exits.length),
@@ -33,35 +54,12 @@ export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
     movement: new Map(),
     speeds: network.legs.map(() => []),
     heads: network.legs.map(() => []),
-    stood: new Uint32Array(network.legs.length),
+    legOffsets: network.legs.map(offsets),
+    exitOffsets: network.exits.map(offsets),
   };
   matchTrips(trips, graph, (chain) => {
-    let k = 0;
-    let head = NaN;
-    const closeHead = (step: number): void => {
-      const leg = graph.leg[chain.links[step]];
-      if (head >= -15 && leg >= 0) {
-        usage.heads[leg].push(head);
-        usage.stood[leg] += 1;
-      }
-      head = NaN;
-    };
-    for (let c = 0; c < chain.pings.length; c++) {
-      if (chain.step[c] !== k) {
-        closeHead(k);
-        k = chain.step[c];
-      }
-      const link = chain.links[k];
-      const leg = graph.leg[link];
-      if (leg < 0) continue;
-      const toLine = graph.stopAt[link] - chain.position[c];
-      const speed = trips.speedMs[chain.pings[c]];
-      if (speed < 1) head = toLine;
-      const isClear = toLine > CLEAR_M && chain.position[c] > CLEAR_M / 2;
-      if (isClear && speed > 2.5 && usage.speeds[leg].length < 4000) usage.speeds[leg].push(speed);
-    }
-    closeHead(k);
     countPassages(chain.links, graph, usage);
+    countPings(chain, trips, graph, usage);
   });
   return usage;
 }
@@ -77,4 +75,48 @@ function countPassages(links: number[], graph: StreetGraph, usage: Usage): void 
     const key = leg * graph.network.exits.length + exit;
     usage.movement.set(key, (usage.movement.get(key) ?? 0) + 1);
   }
+}
+
+function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage): void {
+  let head = NaN;
+  for (let c = 0; c < chain.pings.length; c++) {
+    const k = chain.step[c];
+    if (c > 0 && chain.step[c - 1] !== k) {
+      keepHead(chain, chain.step[c - 1], head, graph, usage);
+      head = NaN;
+    }
+    const link = chain.links[k];
+    const leg = graph.leg[link];
+    const i = chain.pings[c];
+    const speed = trips.speedMs[i];
+    if (speed >= MOVING_MS) addOffset(trips, i, link, graph, usage);
+    if (leg < 0) continue;
+    const toLine = graph.stopAt[link] - chain.position[c];
+    if (speed < STANDING_MS) head = toLine;
+    const isClear = toLine > CLEAR_M && chain.position[c] > CLEAR_OF_START_M;
+    if (isClear && speed > MOVING_MS && usage.speeds[leg].length < MOST_SPEEDS) usage.speeds[leg].push(speed);
+  }
+}
+
+function keepHead(chain: Chain, step: number, head: number, graph: StreetGraph, usage: Usage): void {
+  const { legs, exits, driveSide } = graph.network;
+  const leg = graph.leg[chain.links[step]];
+  if (leg < 0 || step + 1 >= chain.links.length || !(head >= -HEAD_PAST_LINE_M)) return;
+  const turn = signedTurnDeg(legs[leg].bearingDeg, exits[graph.exit[chain.links[step + 1]]].bearingDeg);
+  const isAcross = driveSide === "right" ? turn < -ACROSS_DEG : turn > ACROSS_DEG;
+  if (!isAcross) usage.heads[leg].push(head);
+}
+
+function addOffset(trips: Trips, i: number, link: number, graph: StreetGraph, usage: Usage): void {
+  const { legs, exits } = graph.network;
+  const leg = graph.leg[link];
+  const plane = graph.planes[graph.home[link]];
+  const line = leg >= 0 ? legs[leg].line : exits[graph.exit[link]].line;
+  const offsets = leg >= 0 ? usage.legOffsets[leg] : usage.exitOffsets[graph.exit[link]];
+  const { at, offset } = projectPoint(line, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]));
+  const end = leg >= 0 ? legs[leg].lengthM : exits[graph.exit[link]].lengthM;
+  if (at <= 0 || at >= end) return;
+  const bin = Math.floor(at / OFFSET_BIN_M);
+  offsets.count[bin] += 1;
+  offsets.sum[bin] += offset;
 }
