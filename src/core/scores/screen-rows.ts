@@ -18,8 +18,9 @@ export interface ScreenRow {
   p95DelayS: number;
   stopShare: number;
   stopsPerVehicle: number;
-  /** Of the leg, whatever the turn. */
+  /** Of the leg, whatever the turn: farthest reach, with the tail that the sample is expected not to see. */
   queueReachM: number;
+  /** Of the leg; share of the observed time. */
   spillbackShare: number;
 }
 
@@ -80,7 +81,8 @@ function sumLegs(quarters: LegQuarters): Map<string, LegSums> {
     for (const startMs of [NaN, quarters.startMs[k]]) {
       const key = sumKey(quarters.leg[k], startMs);
       const sum = sums.get(key) ?? { reachM: NaN, spilledS: 0, observedS: 0 };
-      if (Number.isNaN(sum.reachM) || quarters.reachM[k] > sum.reachM) sum.reachM = quarters.reachM[k];
+      const reachM = quarters.reachEstimateM[k];
+      if (Number.isNaN(sum.reachM) || reachM > sum.reachM) sum.reachM = reachM;
       sum.spilledS += quarters.spilledS[k];
       sum.observedS += quarters.observedS[k];
       sums.set(key, sum);
