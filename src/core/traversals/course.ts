@@ -1,12 +1,19 @@
-/** A vehicle's way over time: distance along its path, growing, with speeds where they were reported. */
+/** A vehicle's way over time: distance along its path, growing, with speeds. */
 export interface Course {
   length: number;
   tMs: Float64Array;
   /** Metres along the path; never falls (see smoothForward). */
   distanceM: Float64Array;
-  /** NaN where not reported. */
+  /** Reported, else estimated (see estimateSpeeds). */
   speedMs: Float64Array;
+  /** Free speed of the street at this point, m/s. */
+  freeMs: Float64Array;
+  /** One of KNOTS. */
+  kind: Uint8Array;
 }
+
+/** What a point of a course is: a ping, or put in between by kinematics, at a known or at an unknown place. */
+export const KNOTS = { ping: 0, placed: 1, unplaced: 2 } as const;
 
 export function createCourse(size: number): Course {
   return {
@@ -14,6 +21,8 @@ export function createCourse(size: number): Course {
     tMs: new Float64Array(size),
     distanceM: new Float64Array(size),
     speedMs: new Float64Array(size),
+    freeMs: new Float64Array(size),
+    kind: new Uint8Array(size),
   };
 }
 
@@ -42,9 +51,25 @@ export function smoothForward(course: Course): void {
 }
 
 /**
- * Time at which the course passes a distance, by the monotone cubic Hermite curve between the two pings around it
- * (Fritsch and Carlson, Monotone Piecewise Cubic Interpolation, 1980) with the reported speeds, linear where there
- * are none. NaN outside the course. Where the vehicle stands exactly there, the end of its wait.
+ * Speeds from the distances alone, for suppliers that report none: the harmonic mean of the steps before and after
+ * (as in Fritsch and Butland's monotone interpolation, 1984), so that a step without movement means a standing vehicle.
+ */
+export function estimateSpeeds(course: Course): void {
+  let before = NaN;
+  for (let i = 0; i < course.length; i++) {
+    const seconds = i + 1 < course.length ? (course.tMs[i + 1] - course.tMs[i]) / 1000 : NaN;
+    const after = seconds > 0 ? (course.distanceM[i + 1] - course.distanceM[i]) / seconds : NaN;
+    if (Number.isNaN(before)) course.speedMs[i] = after;
+    else if (Number.isNaN(after)) course.speedMs[i] = before;
+    else course.speedMs[i] = before + after > 0 ? (2 * before * after) / (before + after) : 0;
+    before = after;
+  }
+}
+
+/**
+ * Time at which the course passes a distance, by the monotone cubic Hermite curve between the two points around it
+ * (Fritsch and Carlson, Monotone Piecewise Cubic Interpolation, 1980) with their speeds, linear where one is missing.
+ * NaN outside the course. Where the vehicle stands exactly there, the end of its wait.
  */
 export function timeAt(course: Course, distanceM: number): number {
   const { length } = course;

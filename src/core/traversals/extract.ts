@@ -4,7 +4,8 @@ import { boxLine, type StreetGraph } from "@/core/match/graph";
 import type { Chain } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";
-import { createCourse, smoothForward, timeAt, type Course } from "@/core/traversals/course";
+import { createCourse, estimateSpeeds, KNOTS, smoothForward, timeAt, type Course } from "@/core/traversals/course";
+import { fillGaps } from "@/core/traversals/fill-gaps";
 import { summariseStops } from "@/core/traversals/stops";
 import { TRAVERSAL_FLAGS } from "@/core/types";
 
@@ -45,23 +46,26 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     }
     return found;
   };
-  let course: Course = createCourse(256);
-  let trackMs = new Float64Array(256);
-  let trackS = new Float64Array(256);
+  let seen: Course = createCourse(256);
+  let course: Course = createCourse(1024);
+  let trackMs = new Float64Array(0);
+  let trackS = new Float64Array(0);
 
   return {
     addChain(chain) {
       if (chain.links.length < 2) return 0;
       const base = basesOf(chain, graph, box);
-      const first = chain.pings[0];
-      const last = chain.pings[chain.pings.length - 1];
-      const size = last - first + 1;
-      if (size > course.tMs.length) {
-        course = createCourse(size * 2);
-        trackMs = new Float64Array(size * 2 + 8);
-        trackS = new Float64Array(size * 2 + 8);
+      const size = chain.pings.length;
+      if (size > seen.tMs.length) {
+        seen = createCourse(size * 2);
+        course = createCourse(size * 8);
       }
-      fillCourse(course, chain, base, trips, graph, box);
+      if (trackMs.length < course.tMs.length + 2) {
+        trackMs = new Float64Array(course.tMs.length + 2);
+        trackS = new Float64Array(course.tMs.length + 2);
+      }
+      fillCourse(seen, chain, base, trips, graph, box);
+      fillGaps(seen, base.map((at, k) => at + graph.stopAt[chain.links[k]]), course);
       let cut = 0;
       for (let k = 0; k + 1 < chain.links.length; k++) {
         const leg = graph.leg[chain.links[k]];
@@ -103,7 +107,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     }
     let stopLineMs = timeAt(course, Math.min(stopAt + CROSSING.virtualLineM, exitAt));
     if (!(stopLineMs >= 0)) stopLineMs = exitMs;
-    const stops = summariseStops(course, enterMs, exitMs, free, base[k], stopAt + 6);
+    const stops = summariseStops(course, enterMs, exitMs, base[k], stopAt + 6);
     if (stops.inferred) flags |= TRAVERSAL_FLAGS.stopInferred;
     if (stops.hasLongSteps) flags |= TRAVERSAL_FLAGS.stopsLowerBound;
     const points = fillTrack(base[k], exitAt, stopAt);
@@ -130,7 +134,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     put(timeAt(course, from), from);
     for (let i = 0; i < course.length; i++) {
       const d = course.distanceM[i];
-      if (d >= from && d <= to) put(course.tMs[i], d);
+      if (d >= from && d <= to && course.kind[i] !== KNOTS.unplaced) put(course.tMs[i], d);
     }
     put(timeAt(course, to), to);
     return n;
@@ -168,11 +172,13 @@ function fillCourse(
     }
     course.tMs[n] = trips.tMs[i];
     course.distanceM[n] = distance;
-    course.speedMs[n] = trips.hasSpeed ? trips.speedMs[i] : NaN;
+    course.speedMs[n] = trips.speedMs[i];
+    course.freeMs[n] = graph.freeSpeedMs[link];
     n += 1;
   }
   course.length = n;
   smoothForward(course);
+  if (!trips.hasSpeed) estimateSpeeds(course);
 }
 
 /** Distance along the way through a box; outside its ends the given straight distance holds. */
