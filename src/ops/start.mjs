@@ -27,7 +27,7 @@ let isStopping = false;
 async function stop(code) {
   if (isStopping) return;
   isStopping = true;
-  process.stdout.write("\nStopping.\n");
+  if (undo.length > 0) process.stdout.write("\nStopping.\n");
   for (const action of undo.reverse()) {
     await Promise.resolve(action()).catch((error) => console.error(error.message));
   }
@@ -65,7 +65,7 @@ function startWorker(record, programs, env) {
   const start = () => {
     const args = isDev ? ["--import", "tsx", "--watch-path=src", "--watch-preserve-output", "src/worker/main.ts"] : ["--enable-source-maps", programs.worker];
     child = startProcess(process.execPath, args, { cwd: root, env, print: printFrom("worker") });
-    record.noteChild(child.pid, isDev ? "src/worker/main.ts" : programs.worker);
+    record.noteChild("worker", child.pid);
     void child.ended.then((how) => {
       if (isStopping) return;
       restarts += 1;
@@ -86,7 +86,7 @@ async function startWeb(record, { env, port, readyUrl }) {
   const next = join(root, "node_modules/next/dist/bin/next");
   const args = [next, isDev ? "dev" : "start", "-H", host, "-p", String(port)];
   const child = startProcess(process.execPath, args, { cwd: root, env: isDev ? env : { ...env, NODE_ENV: "production" }, print: printFrom("web") });
-  record.noteChild(child.pid, next);
+  record.noteChild("web", child.pid);
   undo.push(() => child.stop());
   await step("Starting the pages", () => waitForAnswer(readyUrl, child));
   void child.ended.then((how) => {
@@ -125,7 +125,7 @@ async function main() {
   const mode = modeOf();
   await ensurePackages(root);
   const secrets = cloneSecrets(dataDir);
-  const record = await takeRun(dataDir);
+  const record = await takeRun(dataDir, root);
   undo.push(() => record.end());
 
   let databaseUrl = process.env.DATABASE_URL;
