@@ -1,5 +1,6 @@
 import type { RankedJunction, ScreenQuery, ScreenResult } from "@/domain/screen";
 import { counted, formatLength, formatShare, type Units } from "@/ui/format";
+import { legPlace } from "@/ui/screens/explain";
 import { daysPhrase, EVIDENCE_PHRASES, TURN_PHRASES, windowPhrase, windowPreposition } from "@/ui/screens/phrases";
 
 /** The sentence of the screen that was published, as plain text: nothing in it can be changed any more. */
@@ -28,7 +29,7 @@ export function plainFinding(row: RankedJunction, { units, locale }: { units: Un
   if (!row.delay) return "Too few vehicles were seen to say.";
   const [value, low, high] = [row.delay.value, row.delay.low, row.delay.high].map(Math.round);
   const wait = `Drivers lose about ${value} seconds here${low === high ? "" : ` (likely ${low} to ${high})`}: ${GRADES[row.los?.at ?? ""] ?? "waiting"}.`;
-  const most = row.worst ? ` Most is lost ${MOST_LOST[row.worst.turn]} ${row.worst.from.charAt(0).toLowerCase()}${row.worst.from.slice(1)}, about ${Math.round(row.worst.delayS)} seconds.` : "";
+  const most = row.worst ? ` Most is lost ${MOST_LOST[row.worst.turn]} ${legPlace(row.worst.from)}, about ${Math.round(row.worst.delayS)} seconds.` : "";
   return wait + most + queueWords(row, units, locale);
 }
 

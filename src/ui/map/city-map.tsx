@@ -33,6 +33,7 @@ export interface CityMapProps {
 }
 
 const PICK_PX = 14;
+const WHOLE_CITY_PADDING = { top: 24, left: 24, right: 24, bottom: 48 };
 const NOBODY: ReadonlySet<number> = new Set();
 
 export default function CityMap({ rows, shownIds, selected, hover, units, locale, noteOf, onSelect }: CityMapProps) {
@@ -66,7 +67,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
   return (
     <div className="absolute inset-0" role="group" aria-label="Map of the junctions. The list holds the same figures.">
       <Map
-        initialViewState={{ bounds, fitBoundsOptions: { padding: { top: 40, left: 40, right: 40, bottom: 90 } } }}
+        initialViewState={{ bounds, fitBoundsOptions: { padding: WHOLE_CITY_PADDING } }}
         mapStyle={PAPER_STYLE}
         attributionControl={false}
         dragRotate={false}
@@ -103,7 +104,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
         {chosen ? <SelectedMark lat={chosen.lat} lon={chosen.lon} name={chosen.name} note={noteOf(chosen)} side={chosen.lon > view.centreLon ? "left" : "right"} /> : null}
         {hovered && hovered !== chosen ? <HoveredMark lat={hovered.lat} lon={hovered.lon} name={hovered.name} /> : null}
       </Map>
-      <MapButtons onZoom={(by) => map?.zoomTo(map.getZoom() + by)} onWhole={() => map?.fitBounds(bounds, { padding: 50 })} />
+      <MapButtons onZoom={(by) => map?.zoomTo(map.getZoom() + by)} onWhole={() => map?.fitBounds(bounds, { padding: WHOLE_CITY_PADDING })} />
       <MapLegend metresPerPx={view.metresPerPx} units={units} locale={locale} />
     </div>
   );

@@ -93,6 +93,12 @@ export const WATER_NAME_LAYER = {
 const shown = (yes: unknown, no: unknown): unknown => ["case", ["boolean", ["feature-state", "shown"], false], yes, no];
 const strong = (yes: unknown, no: unknown): unknown => ["case", ["boolean", ["feature-state", "strong"], false], yes, no];
 
+/** Dark needles are broader as well: far out they are what the eye has to find. Pixels at the given scale. */
+const byDelay = (scale: number): unknown => {
+  const steps = DELAY_SCALE.slice(1).flatMap((step, at) => [step.from, (2.6 + at * 0.55) * scale]);
+  return strong(5.5 * scale, ["step", ["coalesce", ["get", "delayS"], 0], 2 * scale, ...steps]);
+};
+
 export const NEEDLE_LAYER = {
   id: "needles",
   type: "line",
@@ -104,7 +110,7 @@ export const NEEDLE_LAYER = {
       ["step", ["get", "delayS"], DELAY_SCALE[0].color, ...DELAY_SCALE.slice(1).flatMap((step) => [step.from, step.color])],
       NO_DATA_COLOR,
     ],
-    "line-width": ["interpolate", ["linear"], ["zoom"], 11, strong(4, 2.6), 14, strong(7, 5), 17, strong(12, 9)],
+    "line-width": ["interpolate", ["linear"], ["zoom"], 11, byDelay(1), 14, byDelay(1.7), 17, byDelay(2.6)],
     "line-opacity": shown(1, 0),
   },
 } as LayerProps;
@@ -113,9 +119,9 @@ export const DOT_LAYER = {
   id: "dots",
   type: "circle",
   paint: {
-    "circle-radius": ["interpolate", ["linear"], ["zoom"], 11, shown(2.2, 1.2), 14, shown(3.8, 2.2), 17, shown(6, 4)],
+    "circle-radius": ["interpolate", ["linear"], ["zoom"], 11, shown(1.1, 1), 13, shown(2.2, 1.6), 15, shown(4.5, 3), 17, shown(7, 5)],
     "circle-color": ["case", ["has", "rank"], COLORS.sheet, NO_DATA_COLOR],
-    "circle-stroke-width": ["interpolate", ["linear"], ["zoom"], 11, 0.9, 14, 1.4],
+    "circle-stroke-width": ["interpolate", ["linear"], ["zoom"], 11, 0.7, 14, 1.4],
     "circle-stroke-color": shown(COLORS.ink, "#A9A393"),
   },
 } as LayerProps;

@@ -6,7 +6,13 @@ const TURNING = { left: "turning left", through: "going through", right: "turnin
 /** "left from the south": the movement with its leg, as the table and the map name it. */
 export function movementName(worst: NonNullable<RankedJunction["worst"]>): string {
   const turn = worst.turn === "uturn" ? "U-turn" : worst.turn;
-  return `${turn} ${lowerFirst(worst.from)}`;
+  return `${turn} ${legPlace(worst.from)}`;
+}
+
+/** Where a leg comes from, out of its name: "From the south, northbound" is "from the south". */
+export function legPlace(legName: string): string {
+  const place = legName.split(",")[0];
+  return place.charAt(0).toLowerCase() + place.slice(1);
 }
 
 /** Two to five short sentences that say why a junction stands where it stands, and how sure that is. */
@@ -22,7 +28,7 @@ function delaySentence({ delay, worst }: RankedJunction): string {
   if (!delay) return "";
   const [value, low, high] = [delay.value, delay.low, delay.high].map(Math.round);
   const mean = `A vehicle loses ${value} s on average${low === high ? "" : ` (${low} to ${high})`}`;
-  return worst ? `${mean}; ${TURNING[worst.turn]} ${lowerFirst(worst.from)}, ${Math.round(worst.delayS)} s.` : `${mean}.`;
+  return worst ? `${mean}; ${TURNING[worst.turn]} ${legPlace(worst.from)}, ${Math.round(worst.delayS)} s.` : `${mean}.`;
 }
 
 function queueSentence({ reachM, storageM, spill }: RankedJunction, { units, locale }: { units: Units; locale: string }): string {
@@ -41,8 +47,4 @@ function standingSentence({ rank, rankLow, rankHigh }: RankedJunction): string {
 function sampleSentence({ vehicles, days, evidence }: RankedJunction, locale: string): string {
   const sample = `${counted(vehicles, "vehicle", "vehicles", locale)} seen on ${counted(days, "day", "days", locale)}`;
   return `${sample}: ${evidence} evidence.`;
-}
-
-function lowerFirst(text: string): string {
-  return text.charAt(0).toLowerCase() + text.slice(1);
 }

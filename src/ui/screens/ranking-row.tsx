@@ -9,12 +9,12 @@ import { screenLooks, WorstMovement, type SCREEN_FEATURES, type Width } from "./
 export const SHOWN_FROM: Record<Width, string> = {
   always: "flex",
   middle: "hidden @xl:flex",
-  wide: "hidden @3xl:flex",
+  wide: "hidden @[44rem]:flex",
 };
 
 /** Columns of the ruled list in three widths of its panel; the cells that `SHOWN_FROM` hides leave no gap. */
 export const GRID =
-  "grid grid-cols-[2.4rem_minmax(0,1fr)_3.3rem_2.9rem_3.3rem] @xl:grid-cols-[2.6rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.9rem_3.3rem_3.4rem] @3xl:grid-cols-[2.6rem_3.8rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.7rem_3.3rem_3.3rem_3.3rem_3.6rem_3.6rem]";
+  "grid grid-cols-[2.4rem_minmax(0,1fr)_3.3rem_2.9rem_3.3rem] @xl:grid-cols-[2.6rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.9rem_3.3rem_3.4rem] @[44rem]:grid-cols-[2.5rem_3.6rem_minmax(0,1.45fr)_minmax(0,1fr)_2.8rem_4.4rem_2.3rem_2.9rem_3.1rem_3.1rem_3.3rem_3.3rem]";
 
 const LOOKS = screenLooks("metric");
 
@@ -59,6 +59,7 @@ export const RankingRow = memo(function RankingRow({ row, index, isSelected, isT
                   data-index={index}
                   tabIndex={isTabStop ? 0 : -1}
                   aria-expanded={isSelected}
+                  title={name.length > 30 ? name : undefined}
                   onClick={(event) => {
                     event.stopPropagation();
                     onSelect(junctionId);

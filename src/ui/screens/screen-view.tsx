@@ -54,7 +54,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
       {isPending ? <Loading title="Ranking the junctions" /> : null}
       {result && result.total === 0 ? <ScreenEmpty kind="no-junctions" onChange={change} /> : null}
       {result && result.total > 0 ? (
-        <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(18rem,1fr)_minmax(30rem,50rem)] lg:grid-rows-[minmax(0,1fr)]">
+        <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(18rem,1fr)_minmax(30rem,47rem)] lg:grid-rows-[minmax(0,1fr)]">
           <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
             {isWide || isMapOpen ? (
               <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
@@ -81,9 +81,10 @@ function noteOf({ worst }: RankedJunction): string | null {
   return worst && `${movementName(worst)} ${Math.round(worst.delayS)} s`;
 }
 
-/** The axis of delays ends at the 98th percentile of the upper bounds, so that one wild interval does not flatten all others. */
+/** The axis of delays ends at the highest upper bound, but not so far out that one wild interval flattens all others. */
 function scaleOf(rows: readonly RankedJunction[]): { maxDelayS: number; lastRank: number } {
-  const highs = rows.flatMap((row) => (row.rank !== null && row.delay ? [row.delay.high] : [])).sort((a, b) => a - b);
-  const maxDelayS = highs[Math.floor((highs.length - 1) * 0.98)] ?? 1;
-  return { maxDelayS, lastRank: rows.filter((row) => row.rank !== null).length };
+  const ranked = rows.filter((row) => row.rank !== null && row.delay !== null);
+  const mostS = ranked.reduce((most, { delay }) => Math.max(most, delay?.value ?? 0), 1);
+  const highS = ranked.reduce((most, { delay }) => Math.max(most, delay?.high ?? 0), 1);
+  return { maxDelayS: Math.min(highS, mostS * 1.4), lastRank: ranked.length };
 }

@@ -8,7 +8,7 @@ import { figuresParams } from "@/ui/screens/queries";
 const CITY = { units: "metric", locale: "en-GB" } as const;
 const ROW: RankedJunction = {
   junctionId: 1, code: "V1", name: "Harbour Road / Mill Lane", lat: 45.6, lon: -38.3, corridorId: null, corridor: null,
-  rank: 2, rankLow: 1, rankHigh: 4, worst: { turn: "left", from: "From the south", legId: 3, delayS: 104.4 },
+  rank: 2, rankLow: 1, rankHigh: 4, worst: { turn: "left", from: "From the south, northbound", legId: 3, delayS: 104.4 },
   delay: { value: 82.3, low: 74.1, high: 90.6 }, shrunkDelayS: 80, medianS: 70, p95S: 160, los: { at: "F", low: "E", high: "F" },
   hoursSeen: 9, stopsPerVehicle: 1.4, reachM: 268, storageM: 310, spill: { value: 0.11, low: 0.08, high: 0.15 },
   vehicles: 1412, days: 5, evidence: "strong", needles: [],
