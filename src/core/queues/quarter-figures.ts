@@ -40,7 +40,7 @@ export function createScratch(standings: number): Scratch {
 export function quarterFigures(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch): QuarterFigures {
   const endMs = startMs + QUARTER_MS;
   const { observedS, arrivals } = observe(leg, startMs, endMs, options.sightS * 1000);
-  const growthMs = tailGrowthMs(arrivals / observedS, leg.perMetre);
+  const growthMs = tailGrowthMs(arrivals / observedS, leg.perMetre, options);
   const figures: QuarterFigures = { reachM: 0, reachEstimateM: 0, spilledS: leg.storageM > 0 ? 0 : NaN, observedS };
   const stepMs = options.stepS * 1000;
   const memoryMs = options.memoryS * 1000;

@@ -29,10 +29,12 @@ export function seenPerMetre(standings: Standings, offset: Uint32Array, options:
  * Metres a second by which a queue is expected to grow behind the last seen vehicle while it stands: a model.
  *
  * Comert and Cetin (EJOR 197, 2009) expect (1 - p) λ τ vehicles behind the last seen one, τ after it joined. Vehicles
- * of the sample arrive at p λ and stand κ to the metre, which gives the same in metres without knowing p or lanes.
+ * of the sample arrive at p λ and stand κ to the metre: the queue grows by their ratio, whatever p and the number of
+ * lanes are. 1 - p, that nobody seen was among them, is taken for one lane.
  */
-export function tailGrowthMs(seenPerSecond: number, perMetre: number): number {
-  return perMetre > 0 ? seenPerSecond / perMetre : 0;
+export function tailGrowthMs(seenPerSecond: number, perMetre: number, options: QueueOptions): number {
+  if (!(perMetre > 0)) return 0;
+  return (seenPerSecond / perMetre) * Math.max(0, 1 - perMetre * options.jamSpacingM);
 }
 
 /**
