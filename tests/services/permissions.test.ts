@@ -11,6 +11,7 @@ const NEEDS: Record<string, Permission> = {
   addLeg: "leg.edit",
   changeRole: "user.manage",
   detectUpload: "upload.create",
+  discardUpload: "upload.create",
   disablePerson: "user.manage",
   editLeg: "leg.edit",
   enablePerson: "user.manage",

@@ -6,6 +6,7 @@ import { neededFields, type Detection, type UploadView } from "@/domain/upload";
 import { isTimeZone } from "@/domain/settings";
 import { Button } from "@/ui/primitives/button";
 import { Field, Input } from "@/ui/primitives/field";
+import { DiscardButton } from "./discard-button";
 import { MappingSentence } from "./mapping-sentence";
 import { fieldList, missingFields } from "./mapping-state";
 import { PreviewTable } from "./preview-table";
@@ -79,6 +80,7 @@ export function MappingForm({ upload, detection, onReshape }: Props) {
         <Button type="submit" tone="strong" disabled={isStarting}>
           {isStarting ? "Starting…" : "Read the file"}
         </Button>
+        <DiscardButton uploadId={upload.id} />
         <p className="text-sm text-ink-soft">{missing.length > 0 ? `Still needed: ${fieldList(missing)}.` : "All that is needed is there. Rows that cannot be read are listed afterwards."}</p>
       </div>
     </form>

@@ -27,12 +27,8 @@ export function PreviewTable({ kind, detection, mapping, needed, onUse }: Props)
             <Th key={at} className="min-w-36 border-rule">
               <Select aria-label={`Column ${name || at + 1} is used as`} value={used[at]} onChange={(event) => onUse(at, event.target.value)} className={classNames("font-table text-base text-ink", used[at] === "" && "text-ink-soft")}>
                 <option value="">not used</option>
-                {fields.map((field) => (
-                  <option key={field} value={field}>
-                    {fieldName(field)}
-                    {needed.includes(field) ? " (needed)" : ""}
-                  </option>
-                ))}
+                <FieldOptions label="needed" fields={fields.filter((field) => needed.includes(field))} />
+                <FieldOptions label="optional" fields={fields.filter((field) => !needed.includes(field))} />
               </Select>
             </Th>
           ))}
@@ -57,5 +53,17 @@ export function PreviewTable({ kind, detection, mapping, needed, onUse }: Props)
         ))}
       </tbody>
     </RuledTable>
+  );
+}
+
+function FieldOptions({ label, fields }: { label: string; fields: readonly string[] }) {
+  return (
+    <optgroup label={label}>
+      {fields.map((field) => (
+        <option key={field} value={field}>
+          {fieldName(field)}
+        </option>
+      ))}
+    </optgroup>
   );
 }

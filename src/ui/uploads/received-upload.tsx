@@ -6,6 +6,7 @@ import type { UploadView } from "@/domain/upload";
 import { ButtonLink } from "@/ui/primitives/button";
 import { Failed, Loading, NoPermission } from "@/ui/primitives/states";
 import { useCan } from "@/ui/shell/city";
+import { DiscardButton } from "./discard-button";
 import { MappingForm } from "./mapping-form";
 import { detectedQuery, type SettledShape } from "./queries";
 
@@ -30,6 +31,7 @@ function Confirm({ upload }: { upload: UploadView }) {
     return (
       <Failed title="The first rows cannot be read." message={detected.error.message} onRetry={() => void detected.refetch()}>
         <ButtonLink href="/data">Send another file</ButtonLink>
+        <DiscardButton uploadId={upload.id} />
       </Failed>
     );
   }

@@ -48,8 +48,10 @@ function Samples({ report, locale }: { report: IngestReport; locale: string }) {
     <RuledTable caption={caption} showCaption>
       <thead>
         <tr>
-          <Th numeric>line</Th>
-          <Th>reason</Th>
+          <Th numeric className="w-20">
+            line
+          </Th>
+          <Th className="w-1/4">reason</Th>
           <Th>the row as it stands</Th>
         </tr>
       </thead>
@@ -57,7 +59,7 @@ function Samples({ report, locale }: { report: IngestReport; locale: string }) {
         {report.samples.map((row) => (
           <tr key={row.line}>
             <Td numeric>{formatNumber(row.line, locale)}</Td>
-            <Td className="min-w-48">{REJECT_SENTENCES[row.reason]}</Td>
+            <Td className="min-w-40">{REJECT_SENTENCES[row.reason]}</Td>
             <Td className="break-all font-mono text-sm">{row.text}</Td>
           </tr>
         ))}

@@ -31,6 +31,7 @@ function pingWords(report: IngestReport, locale: string, timeZone: string): stri
     const onLegs = legsFound === undefined ? "" : `, on ${counted(legsFound, "leg", "legs", locale)},`;
     words.push(`${counted(traversals, "traversal", "traversals", locale)}${where}${onLegs} ${traversals === 1 ? "was" : "were"} added.`);
   }
+  if (traversals === 0 && !report.knownTraversals) words.push("No vehicle passes a junction that is loaded: are pings and junctions of the same city, and latitude and longitude not mixed up?");
   if (report.knownTraversals) words.push(`${counted(report.knownTraversals, "traversal was", "traversals were", locale)} known from an earlier file and left out.`);
   if (incompleteTraversals) words.push(`${counted(incompleteTraversals, "traversal begins or ends", "traversals begin or end", locale)} inside a junction's window: counted, not scored.`);
   const dropped = [

@@ -33,8 +33,18 @@ export function sendFile(file: File, kind: UploadKind, onShare: (share: number) 
 
 /** Has a received file read in the way that the person settled on. */
 export async function startReading(uploadId: string, mapping: FileMapping, supplier: string): Promise<void> {
-  const body = JSON.stringify({ mapping, supplier: supplier.trim() === "" ? null : supplier.trim() });
-  const answer = await fetch(`/api/uploads/${uploadId}/start`, { method: "POST", headers: { "content-type": "application/json" }, body }).catch(() => null);
+  const name = supplier.trim();
+  await change(`/api/uploads/${uploadId}/start`, "POST", { mapping, supplier: name === "" ? null : name });
+}
+
+/** Has the server forget a file of which nothing was read in. */
+export async function discardFile(uploadId: string): Promise<void> {
+  await change(`/api/uploads/${uploadId}`, "DELETE");
+}
+
+async function change(path: string, method: "POST" | "DELETE", body?: unknown): Promise<void> {
+  const json = body === undefined ? {} : { headers: { "content-type": "application/json" }, body: JSON.stringify(body) };
+  const answer = await fetch(path, { method, ...json }).catch(() => null);
   if (answer === null) throw new RequestError(0, "The server cannot be reached. Check the connection and try again.");
   if (answer.ok) return;
   const problem = (await answer.json().catch(() => null)) as { message?: string } | null;

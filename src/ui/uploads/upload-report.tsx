@@ -43,8 +43,10 @@ function Figures({ report, kind }: { report: IngestReport; kind: UploadView["kin
     ["accepted", number(report.accepted)],
     ["rejected", number(rejectedCount(report))],
   ];
-  const figures: [string, string][] =
-    kind === "junctions"
+  const isIn = report.traversals !== undefined || report.created !== undefined;
+  const figures: [string, string][] = !isIn
+    ? rows
+    : kind === "junctions"
       ? [...rows, ["new junctions", number(report.created)], ["brought up to date", number(report.updated)]]
       : [
           ...rows,

@@ -9,6 +9,7 @@ import { ButtonLink } from "@/ui/primitives/button";
 import { Failed, Loading } from "@/ui/primitives/states";
 import { useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
+import { DiscardButton } from "./discard-button";
 import { uploadQuery } from "./queries";
 import { ReadingUpload } from "./reading-upload";
 import { ReceivedUpload } from "./received-upload";
@@ -71,6 +72,7 @@ function Body({ upload }: { upload: Upload }): ReactNode {
         <>
           <Failed title="This file could not be read in." message={failure ?? "The reason was not kept."}>
             <ButtonLink href="/data">Send another file</ButtonLink>
+            <DiscardButton uploadId={upload.id} />
           </Failed>
           {report ? <UploadReport upload={upload} report={report} /> : null}
         </>
