@@ -2,7 +2,9 @@ import { assignDemand, type Demand } from "./demand/assign";
 import { PERIODS, type Period } from "./demand/pattern";
 import { buildCity, type CityScale } from "./network/build-city";
 import type { City } from "./network/types";
-import { demandCaps, spoilTimings } from "./planted";
+import { BLUR, nodeById, PLANTED } from "./planted";
+import { saturationCaps } from "./demand/caps";
+import { plantFaults } from "./signals/faults";
 import { compilePlan, planSignals, type SignalPlan } from "./signals/plan";
 import { buildLanes, type LaneMap } from "./simulation/lanes";
 
@@ -15,15 +17,20 @@ export interface Scenario {
   map: LaneMap;
   demand: Demand;
   plans: Record<Period, SignalPlan>;
+  /** How much worse than usual positions are at a place. */
+  blurAt(x: number, y: number): number;
 }
 
 export function createScenario(scale: CityScale): Scenario {
   const city = buildCity(scale);
-  const demand = assignDemand(city, scale, PERIODS, CITY_SEED, (period) => demandCaps(city, scale, period, CITY_SEED));
+  const quiet = PLANTED[scale].filter((problem) => problem.kind === "noisy").map((problem) => nodeById(city, problem.junctionId));
+  const demand = assignDemand(city, scale, PERIODS, CITY_SEED, saturationCaps(city, CITY_SEED), quiet);
   const planOf = (period: Period): SignalPlan => {
     const timings = planSignals(city, demand.flows[period]);
-    spoilTimings(city, scale, period, timings, demand.flows[period]);
+    plantFaults(city, timings, PLANTED[scale].filter((problem) => problem.period === period), demand.flows[period]);
     return compilePlan(city, timings);
   };
-  return { scale, city, map: buildLanes(city), demand, plans: { am: planOf("am"), midday: planOf("midday"), pm: planOf("pm") } };
+  const blurred = quiet.map((node) => city.nodes[node].point);
+  const blurAt = (x: number, y: number) => (blurred.some((at) => Math.hypot(x - at[0], y - at[1]) < BLUR.withinM) ? BLUR.factor : 1);
+  return { scale, city, blurAt, map: buildLanes(city), demand, plans: { am: planOf("am"), midday: planOf("midday"), pm: planOf("pm") } };
 }

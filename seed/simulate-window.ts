@@ -66,7 +66,7 @@ export function simulateWindow(scenario: Scenario, day: DayPlan, window: Window,
         recording, reader.readPath(recording),
         {
           fleet, vehicle: Buffer.from(`${fleet.prefix}${dayLetter}-${number}`), zeroMs, fromS: WARM_UP_S, untilS: endS,
-          isParked: demand.routes[trips.route[trip]].endsAtAccess, blurAt: () => 1,
+          isParked: demand.routes[trips.route[trip]].endsAtAccess, blurAt: scenario.blurAt,
         },
         createRandomStream(...seeds, 2, trip), writer,
       );

@@ -1,4 +1,5 @@
 import type { City } from "../network/types";
+import { QUIET_SHARE } from "../planted";
 import { createRandomStream, pickFromCumulative } from "../random";
 import { timeNode } from "../signals/timing";
 import { attraction, shortestTripM, type Period } from "./pattern";
@@ -21,7 +22,7 @@ const CALIBRATION_STEPS = 14;
 const CALIBRATION_CYCLE_S = 100;
 
 /** Routes by the gravity model, thinned until no junction is asked for more than its share of capacity. */
-export function assignDemand(city: City, scale: CityScale, periods: readonly Period[], seed: number, caps: (period: Period) => Float64Array): Demand {
+export function assignDemand(city: City, scale: CityScale, periods: readonly Period[], seed: number, caps: Float64Array, quiet: number[]): Demand {
   const zones = findZones(city);
   const demand: Demand = {
     zones, routes: [],
@@ -31,7 +32,10 @@ export function assignDemand(city: City, scale: CityScale, periods: readonly Per
   const raw = drawRoutes(city, scale, zones, periods, seed, demand.routes);
   for (const period of periods) {
     const rates = Float64Array.from(raw[period]);
-    calibrate(city, demand.routes, rates, caps(period));
+    calibrate(city, demand.routes, rates, caps);
+    demand.routes.forEach((route, i) => {
+      if (route.movements.some((movement) => quiet.includes(city.movements[movement].node))) rates[i] *= QUIET_SHARE;
+    });
     demand.rates[period] = rates;
     demand.flows[period] = movementFlows(city, demand.routes, rates);
   }

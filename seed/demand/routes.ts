@@ -84,6 +84,30 @@ export function movementsTo(city: City, via: Int32Array, firstLink: number, last
   return movements.length > 0 ? movements.reverse() : null;
 }
 
+/** The way on from any link towards one destination: the next movement by link, -1 where there is none. */
+export function waysTo(city: City, lastLink: number): Int32Array {
+  const into: number[][] = city.links.map(() => []);
+  for (const movement of city.movements) into[movement.to].push(movement.index);
+  const cost = new Float64Array(city.links.length).fill(Infinity);
+  const next = new Int32Array(city.links.length).fill(-1);
+  const heap: [number, number][] = [[0, lastLink]];
+  cost[lastLink] = 0;
+  while (heap.length > 0) {
+    const [at, link] = popSmallest(heap);
+    if (at > cost[link]) continue;
+    for (const index of into[link]) {
+      const movement = city.movements[index];
+      const before = city.links[movement.from];
+      const total = at + TURN_COST_S[movement.turn] + (before.lengthM / before.speedMs) * CLASS_COST[before.class];
+      if (total >= cost[movement.from]) continue;
+      cost[movement.from] = total;
+      next[movement.from] = index;
+      push(heap, [total, movement.from]);
+    }
+  }
+  return next;
+}
+
 function push(heap: [number, number][], entry: [number, number]): void {
   let i = heap.length;
   heap.push(entry);

@@ -3,7 +3,7 @@ import type { CityEdge, CityLink, CityMovement, CityNode, TurnName } from "./typ
 import { LANE_WIDTH_M, STREET_STANDARDS } from "./street-standards";
 
 const SHORTEST_BAY_BLOCK_M = 110;
-const ACCESS_BLOCK_M = 230;
+const LONG_BLOCK_M = 230;
 /** How far out of town vehicles are followed. */
 const GATE_M = 520;
 
@@ -40,7 +40,7 @@ function linkOf(index: number, edge: CityEdge, edgeIndex: number, nodes: CityNod
     endBearingDeg: bearingDeg(line[last - 1], line[last]),
     speedMs: standard.speedMs, lanes: standard.lanes,
     bayM: isToGate || lengthM < SHORTEST_BAY_BLOCK_M ? 0 : Math.min(standard.bayM, lengthM * 0.45),
-    hasAccess: !isGated && lengthM > ACCESS_BLOCK_M && edge.class !== "ring" && edgeIndex % 3 !== 0,
+    hasAccess: !isGated && edge.class !== "ring" && (lengthM > LONG_BLOCK_M ? edgeIndex % 3 !== 0 : lengthM > SHORTEST_BAY_BLOCK_M && edgeIndex % 2 === 0),
   };
 }
 

@@ -39,9 +39,14 @@ export function crossingsAlong(street: Street, others: Street[]): number[] {
 function collectCrossings(streets: Street[], i: number, j: number, out: Crossing[]): void {
   const a = streets[i].line;
   const b = streets[j].line;
+  if (areApart(boxOf(a), boxOf(b))) return;
   let alongA = 0;
   for (let p = 1; p < a.length; p++) {
     const stepA = distanceM(a[p - 1], a[p]);
+    if (areApart(boxOf([a[p - 1], a[p]]), boxOf(b))) {
+      alongA += stepA;
+      continue;
+    }
     let alongB = 0;
     for (let q = 1; q < b.length; q++) {
       const stepB = distanceM(b[q - 1], b[q]);
@@ -61,6 +66,27 @@ function collectCrossings(streets: Street[], i: number, j: number, out: Crossing
     }
     alongA += stepA;
   }
+}
+
+type Box = [west: number, south: number, east: number, north: number];
+const boxes = new WeakMap<readonly Point[], Box>();
+
+function boxOf(line: readonly Point[]): Box {
+  const known = boxes.get(line);
+  if (known) return known;
+  const box: Box = [Infinity, Infinity, -Infinity, -Infinity];
+  for (const [x, y] of line) {
+    box[0] = Math.min(box[0], x);
+    box[1] = Math.min(box[1], y);
+    box[2] = Math.max(box[2], x);
+    box[3] = Math.max(box[3], y);
+  }
+  boxes.set(line, box);
+  return box;
+}
+
+function areApart(a: Box, b: Box): boolean {
+  return a[0] > b[2] || b[0] > a[2] || a[1] > b[3] || b[1] > a[3];
 }
 
 /** Shares along both segments at which they cross, half-open so that a shared vertex counts once. */

@@ -6,7 +6,7 @@ export const LOST_S = 5;
 export const YELLOW_S = 3;
 const SATURATION_VEH_H = 1750;
 const LEFT_MIN_S = 7;
-const STAGE_MIN_S = 11;
+const STAGE_MIN_S = 13;
 /** A left that waits for gaps in a shared lane takes the room of at most so many through vehicles. */
 const MOST_EQUIVALENTS = 8;
 
@@ -70,12 +70,14 @@ export function timeNode(city: City, node: CityNode, flow: Float64Array, cycleS:
 }
 
 const WANTED_SATURATION = 0.82;
-export const CYCLES_S = { shortest: 60, longest: 115, step: 5 };
+/** Somewhat longer than the optimum costs little (Webster's near-optimal band) and rides out chance peaks. */
+const WEBSTER_ALLOWANCE = 1.3;
+export const CYCLES_S = { shortest: 75, longest: 120, step: 5 };
 
 /** The shorter of the cycles that keep every stage below the wanted degree of saturation, but not below Webster's. */
 export function chooseCycleS(city: City, node: CityNode, flow: Float64Array): number {
   const first = timeNode(city, node, flow, CYCLES_S.shortest);
-  const websterS = Math.round(websterCycleS(first.ratios) / CYCLES_S.step) * CYCLES_S.step;
+  const websterS = Math.round((WEBSTER_ALLOWANCE * websterCycleS(first.ratios)) / CYCLES_S.step) * CYCLES_S.step;
   let cycleS = Math.min(CYCLES_S.longest, Math.max(CYCLES_S.shortest, websterS));
   while (cycleS < CYCLES_S.longest && timeNode(city, node, flow, cycleS).saturation > WANTED_SATURATION) cycleS += CYCLES_S.step;
   return cycleS;

@@ -2,6 +2,7 @@ import type { City } from "../network/types";
 import type { Route } from "../demand/routes";
 import type { SignalPlan } from "../signals/plan";
 import { createCalendar } from "./calendar";
+import { createDetours } from "./detours";
 import { buildLanes, REACTION_S, TURN_BIT, type LaneMap } from "./lanes";
 import { createSignalClock } from "./signals";
 import { createLaneState, RING, RING_MASK, type LaneState, type MovementTruth, type Trips } from "./state";
@@ -14,6 +15,8 @@ const GAP_BEFORE_S = 3.6;
 const GAP_AFTER_S = 1.2;
 /** Whoever is shut in for so long gives up and parks: keeps a standstill from locking the city. */
 const GIVE_UP_S = 300;
+/** Whoever sees no way into a full street for so long drives round it. */
+const DETOUR_S = 60;
 const SWEEP_SLOTS = 20;
 /** Vehicles about to enter may queue for so long in front of the lane; beyond, they try again later. */
 const ENTRY_QUEUE_S = 20;
@@ -45,6 +48,7 @@ export interface SimulationInput {
 export interface SimulationResult {
   started: number;
   finished: number;
+  detours: number;
   gaveUp: number;
   /** Trips that never found room to enter. */
   keptOut: number;
@@ -75,7 +79,10 @@ export function simulate(input: SimulationInput): SimulationResult {
   const crossS = Float64Array.from(city.movements, (movement) => movement.lengthM / movement.speedMs);
   const saturationS = Float64Array.from(city.movements, (movement) => SATURATION_S[movement.turn]);
   const opposing = opposingLanes(city, plan, map);
-  const result: SimulationResult = { started: 0, finished: 0, gaveUp: 0, keptOut: 0, state: lanes };
+  const detours = createDetours(city);
+  const changed = new Map<number, Route>();
+  const routeOf = (trip: number): Route => changed.get(trip) ?? routes[trips.route[trip]];
+  const result: SimulationResult = { started: 0, finished: 0, detours: 0, gaveUp: 0, keptOut: 0, state: lanes };
   let waiting: number[] = [];
   let nextTrip = 0;
 
@@ -152,7 +159,7 @@ export function simulate(input: SimulationInput): SimulationResult {
   /** Turn of the lane's first vehicle: two facing lefts pass each other. */
   function nextTurn(lane: number): number {
     const trip = lanes.vehicle[lane * RING + (lanes.left[lane] & RING_MASK)];
-    return turnAfter(routes[trips.route[trip]], hop[trip]);
+    return turnAfter(routeOf(trip), hop[trip]);
   }
 
   function gapIsOpen(movement: number, atS: number): boolean {
@@ -170,7 +177,7 @@ export function simulate(input: SimulationInput): SimulationResult {
     while (lanes.entered[lane] > lanes.left[lane]) {
       const at = lane * RING + (lanes.left[lane] & RING_MASK);
       const trip = lanes.vehicle[at];
-      const route = routes[trips.route[trip]];
+      const route = routeOf(trip);
       let atS = Math.max(readyS(lane), slotStartS);
       if (atS >= slotEndS) return calendar.schedule(lane, atS);
       const isLastLink = hop[trip] >= route.movements.length;
@@ -215,7 +222,7 @@ export function simulate(input: SimulationInput): SimulationResult {
   }
 
   function depart(trip: number, atS: number): boolean {
-    const route = routes[trips.route[trip]];
+    const route = routeOf(trip);
     const candidates = route.startsAtAccess ? map.accessOf[route.firstLink] : map.firstOf[route.firstLink];
     const lane = chooseLane(candidates, turnAfter(route, 0));
     const room = roomS(lane);
@@ -227,11 +234,36 @@ export function simulate(input: SimulationInput): SimulationResult {
     return true;
   }
 
+  /** Gives the first vehicle of a lane another movement from there, into a street with room. */
+  function drivesRound(lane: number, trip: number): boolean {
+    const route = routeOf(trip);
+    if (hop[trip] >= route.movements.length) return false;
+    for (const movement of city.movementsOf[lanes.link[lane]]) {
+      if (movement === route.movements[hop[trip]] || (turnBit[movement] & lanes.turns[lane]) === 0) continue;
+      const other = detours.via(route, hop[trip], movement);
+      if (!other) continue;
+      const target = chooseLane(map.firstOf[movementTo[movement]], turnAfter(other, hop[trip] + 1));
+      if (roomS(target) === Infinity) continue;
+      changed.set(trip, other);
+      result.detours++;
+      return true;
+    }
+    return false;
+  }
+
   function sweep(nowS: number): void {
     waiting = waiting.filter((trip) => !depart(trip, nowS));
     for (let lane = 0; lane < map.lanes.length; lane++) {
       const since = lanes.blockedSinceS[lane];
       if (Number.isNaN(since)) continue;
+      if (lanes.next[lane] < 0 && nowS - since > DETOUR_S) {
+        const trip = lanes.vehicle[lane * RING + (lanes.left[lane] & RING_MASK)];
+        if (drivesRound(lane, trip)) {
+          lanes.blockedSinceS[lane] = NaN;
+          calendar.schedule(lane, nowS);
+          continue;
+        }
+      }
       if (nowS - since > GIVE_UP_S && lanes.entered[lane] > lanes.left[lane]) {
         const trip = lanes.vehicle[lane * RING + (lanes.left[lane] & RING_MASK)];
         finish(lane, trip, nowS);
@@ -247,8 +279,8 @@ export function simulate(input: SimulationInput): SimulationResult {
       if (!depart(nextTrip, trips.departS[nextTrip])) waiting.push(nextTrip);
       nextTrip++;
     }
-    for (let lane = calendar.take(slot); lane >= 0; lane = calendar.take(slot)) serve(lane, slotStartS);
     if (slot % SWEEP_SLOTS === 0) sweep(slotStartS);
+    for (let lane = calendar.take(slot); lane >= 0; lane = calendar.take(slot)) serve(lane, slotStartS);
   }
   result.keptOut = waiting.length;
   return result;
