@@ -12,6 +12,8 @@ export default {
   logging: { serverFunctions: false },
   // A page that a role may not see answers 403 and shows the nearest forbidden.tsx.
   experimental: { authInterrupts: true },
+  // `npm test` checks the types of everything; a first start need not wait for it.
+  typescript: { ignoreBuildErrors: true },
   turbopack: { root: here },
   outputFileTracingRoot: here,
   serverExternalPackages: ["pg", "pg-copy-streams", "pg-boss", "@node-rs/argon2", "nodemailer", "smtp-server", "mailparser"],
