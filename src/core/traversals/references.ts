@@ -8,8 +8,9 @@ export const REFERENCE = Object.freeze({
   /** An unhindered traversal has no stop and loses no more than this share of a step of hinderedStepS against free speed. */
   lostShare: 0.3,
   hinderedStepS: 7,
-  /** Turning vehicles slow down this near to the stop line without being hindered, m. */
+  /** Turning vehicles slow down this near to the stop line without being hindered, m; what they may lose more than the usual, s. */
   turnSlowsM: 30,
+  turnSpareS: 2,
   /** Steps of the track shorter than this tell no speed, s. */
   leastStepS: 2,
   /** Weights, in traversals, of "no difference" for turn class, leg and movement. */
@@ -82,15 +83,16 @@ function gatherUnhindered(network: Network, traversals: Traversals): number[][] 
 
 function isUnhindered(traversals: Traversals, i: number, movement: Movement, freeSpeedMs: number): boolean {
   const { trackOffset, trackT, trackS } = traversals;
-  const slowsFromM = movement.turn === "through" ? -Infinity : REFERENCE.turnSlowsM;
+  const turnS = movement.turn === "through" ? 0 : turnAllowanceS(movement.turnDeg) + REFERENCE.turnSpareS;
   let from = -1;
   for (let n = trackOffset[i]; n < trackOffset[i + 1]; n++) {
     if (trackS[n] > movement.cordonUpM + 1) continue;
     if (from >= 0 && trackT[n] - trackT[from] < REFERENCE.leastStepS) continue;
-    if (from >= 0 && trackS[n] >= slowsFromM) {
+    if (from >= 0) {
       const seconds = trackT[n] - trackT[from];
       const lostS = seconds - (trackS[from] - trackS[n]) / freeSpeedMs;
-      if (lostS > REFERENCE.lostShare * Math.min(seconds, REFERENCE.hinderedStepS)) return false;
+      const mayLoseS = trackS[n] < REFERENCE.turnSlowsM ? turnS : 0;
+      if (lostS > mayLoseS + REFERENCE.lostShare * Math.min(seconds, REFERENCE.hinderedStepS)) return false;
     }
     from = n;
   }
