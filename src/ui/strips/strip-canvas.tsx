@@ -2,11 +2,11 @@
 
 import { useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from "react";
 import { cellAt } from "@/core/strips/strip";
-import { COLORS } from "@/ui/scales";
 import { StripOverlay } from "./strip-overlay";
 import { drawPicture, loadFaces } from "./draw-picture";
 import type { StripWords } from "./draw-lines";
 import { firstCell, moveCursor, readOut, readOutText, type CursorMove, type ReadOutWords } from "./strip-cursor";
+import { paintCanvas } from "./paint-canvas";
 import { layoutStrip, scalesOf, stripHeight } from "./strip-layout";
 import type { StripPicture } from "./strip-picture";
 import { useBoxWidth } from "./use-box-width";
@@ -36,7 +36,7 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
     let isGone = false;
     void loadFaces().then(() => {
       if (isGone) return;
-      frame = requestAnimationFrame(() => paint(canvas.current, layout.width, layout.height, ratio, (ctx) => drawPicture(ctx, layout, picture, words)));
+      frame = requestAnimationFrame(() => paintCanvas(canvas.current, layout.width, layout.height, ratio, (ctx) => drawPicture(ctx, layout, picture, words)));
     });
     return () => {
       isGone = true;
@@ -90,16 +90,4 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
       </p>
     </div>
   );
-}
-
-/** Sizes the canvas for the screen's pixels, lays the sheet and hands over a context in CSS pixels. */
-function paint(canvas: HTMLCanvasElement | null, width: number, height: number, ratio: number, draw: (ctx: CanvasRenderingContext2D) => void): void {
-  const ctx = canvas?.getContext("2d");
-  if (!canvas || !ctx) return;
-  canvas.width = Math.round(width * ratio);
-  canvas.height = Math.round(height * ratio);
-  ctx.setTransform(ratio, 0, 0, ratio, 0, 0);
-  ctx.fillStyle = COLORS.sheet;
-  ctx.fillRect(0, 0, width, height);
-  draw(ctx);
 }

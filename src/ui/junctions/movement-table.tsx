@@ -1,0 +1,172 @@
+"use client";
+
+import Link from "next/link";
+import { whenQueryToParams, type JunctionView, type LegView, type MovementView, type WhenQuery } from "@/domain/junction";
+import type { ReferenceSource } from "@/core/types";
+import { formatLength, formatNumber, formatSeconds, formatShare, shareNumber } from "@/ui/format";
+import { EvidenceBar } from "@/ui/primitives/evidence-bar";
+import { IntervalMark } from "@/ui/primitives/interval-mark";
+import { LosSquare } from "@/ui/primitives/los-square";
+import { StorageBar } from "@/ui/primitives/storage-bar";
+import { RuledTable, Td, Th } from "@/ui/primitives/table";
+import { TURN_WORDS } from "@/ui/screens/phrases";
+import { TurnArrow } from "@/ui/screens/turn-arrow";
+import { useCity } from "@/ui/shell/city";
+
+const COLUMNS = 10;
+/** Least width of the shared axis of the intervals. */
+const LEAST_AXIS_S = 60;
+
+const REFERENCE_WORDS: Record<ReferenceSource, string> = {
+  unstopped: "from vehicles that did not stop",
+  shrunk: "from few vehicles that did not stop, steadied by those of the same turn",
+  "free-speed": "from free speed and the turn's geometry",
+};
+
+const REFERENCE_SHORT: Record<ReferenceSource, string> = { unstopped: "unstopped", shrunk: "few unstopped", "free-speed": "free speed" };
+
+/** One row for each movement under its leg; what is known of the leg's queue stands with the leg. */
+export function MovementTable({ view, when }: { view: JunctionView; when: WhenQuery }) {
+  const maxS = Math.max(LEAST_AXIS_S, ...view.movements.map((movement) => Math.min(movement.delay?.high ?? 0, 2 * (movement.delay?.value ?? 0))));
+  const suffix = whenQueryToParams(when).toString();
+  return (
+    <RuledTable caption="Movements of this junction">
+      <thead>
+        <tr>
+          <Th>movement</Th>
+          <Th numeric>
+            mean delay
+            <br />
+            s/veh
+          </Th>
+          <Th>95 % interval</Th>
+          <Th>LOS</Th>
+          <Th numeric>
+            95th pct.
+            <br />s
+          </Th>
+          <Th numeric>
+            stopping
+            <br />%
+          </Th>
+          <Th numeric>
+            stops
+            <br />
+            /veh
+          </Th>
+          <Th numeric>
+            vehicles
+            <br />
+            seen
+          </Th>
+          <Th>evidence</Th>
+          <Th>
+            reference
+            <br />
+            time
+          </Th>
+        </tr>
+      </thead>
+      {view.legs.map((leg) => (
+        <tbody key={leg.id}>
+          <LegRow leg={leg} href={`/legs/${leg.id}${suffix ? `?${suffix}` : ""}`} />
+          {view.movements
+            .filter((movement) => movement.legId === leg.id)
+            .map((movement) => (
+              <MovementRow key={movement.id} movement={movement} leg={leg} maxS={maxS} />
+            ))}
+        </tbody>
+      ))}
+    </RuledTable>
+  );
+}
+
+function LegRow({ leg, href }: { leg: LegView; href: string }) {
+  const { settings, locale } = useCity();
+  const { units } = settings;
+  const queue =
+    leg.reachP95M === null
+      ? "reach cannot be said"
+      : `reach ${formatLength(leg.reachP95M, units, locale)}${leg.storageM === null ? "" : ` of ${formatLength(leg.storageM, units, locale)}`}`;
+  const spill = leg.spill === null ? "spillback cannot be said" : `spills back ${formatShare(leg.spill.value, locale)} of the time (${shareNumber(leg.spill.low, locale)} to ${shareNumber(leg.spill.high, locale)})`;
+  return (
+    <tr>
+      <th scope="rowgroup" colSpan={COLUMNS} className="border-b border-rule bg-paper px-2 py-1.5 text-left font-normal">
+        <span className="flex flex-wrap items-center gap-x-4 gap-y-1">
+          <Link href={href} className="text-link font-semibold">
+            Leg {leg.name}
+          </Link>
+          <span className="inline-flex items-center gap-2 text-ink-soft">
+            {queue}
+            {leg.reachP95M !== null && leg.storageM !== null ? <StorageBar reachM={leg.reachP95M} storageM={leg.storageM} /> : null}
+          </span>
+          <span className={leg.spill !== null && leg.spill.value >= 0.05 ? "font-medium text-tail" : "text-ink-soft"}>{spill}</span>
+          {leg.reachEstimateP95M ? (
+            <span className="text-ink-soft" title="A model of the vehicles that were not seen, not an observation">
+              with the unseen tail about {formatLength(leg.reachEstimateP95M.value, units, locale)}
+            </span>
+          ) : null}
+        </span>
+      </th>
+    </tr>
+  );
+}
+
+function MovementRow({ movement, leg, maxS }: { movement: MovementView; leg: LegView; maxS: number }) {
+  const { locale } = useCity();
+  const { delay } = movement;
+  return (
+    <tr>
+      <th scope="row" className="whitespace-nowrap border-b border-rule px-2 py-2 text-left align-top font-medium">
+        <TurnArrow turn={movement.turn} /> {TURN_WORDS[movement.turn]}
+        <span className="sr-only"> {leg.name}</span>
+      </th>
+      <Td numeric className="text-[1.02rem] font-semibold">
+        {delay === null ? <span className="text-sm font-normal text-ink-soft">no figure</span> : formatNumber(Math.max(0, delay.value), locale)}
+      </Td>
+      <Td className="whitespace-nowrap">
+        <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`} />
+        {delay ? (
+          <span aria-hidden="true" className="ml-1.5 text-sm text-ink-soft">
+            {formatNumber(delay.low, locale)} to {formatNumber(delay.high, locale)}
+          </span>
+        ) : null}
+      </Td>
+      <Td className="whitespace-nowrap">
+        <LosSquare los={movement.los} />
+        {movement.los && movement.los.low !== movement.los.high ? (
+          <span aria-hidden="true" className="ml-1.5 text-sm text-ink-soft">
+            {movement.los.low} to {movement.los.high}
+          </span>
+        ) : null}
+      </Td>
+      <Td numeric>{formatNumber(movement.p95S, locale)}</Td>
+      <Td numeric>{shareNumber(movement.stopShare?.value, locale)}</Td>
+      <Td numeric>{formatNumber(movement.stopsPerVehicle, locale, 1)}</Td>
+      <Td numeric>{formatNumber(movement.vehicles, locale)}</Td>
+      <Td>
+        <EvidenceBar evidence={movement.evidence} withWord />
+      </Td>
+      <Td className="whitespace-nowrap text-ink-soft">
+        <Reference movement={movement} />
+      </Td>
+    </tr>
+  );
+}
+
+/** The time that an undelayed vehicle needs, and where it comes from: no delay is shown without it. */
+function Reference({ movement }: { movement: MovementView }) {
+  const { locale } = useCity();
+  if (movement.referenceS === null) return "–";
+  const rests = movement.referenceSource === "free-speed" ? "" : `, ${formatNumber(movement.referenceN, locale)} ${movement.referenceN === 1 ? "vehicle" : "vehicles"}`;
+  return (
+    <span title={`${REFERENCE_WORDS[movement.referenceSource]}${rests}`}>
+      {formatSeconds(movement.referenceS, locale)} <span className="text-sm">({REFERENCE_SHORT[movement.referenceSource]}{movement.referenceSource === "free-speed" ? "" : ` ${movement.referenceN}`})</span>
+      <span className="sr-only">
+        {", "}
+        {REFERENCE_WORDS[movement.referenceSource]}
+        {rests}
+      </span>
+    </span>
+  );
+}
