@@ -4,7 +4,7 @@ import { classNames } from "./class-names";
 /** A ruled table that scrolls sideways inside itself where the window is narrow. `caption` is read out, and shown on request. */
 export function RuledTable({ caption, showCaption = false, children, className }: { caption: string; showCaption?: boolean; children: ReactNode; className?: string }) {
   return (
-    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label={caption}>
+    <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label={caption}>
       <table className={classNames("w-full border-collapse text-[0.97rem] leading-snug", className)}>
         <caption className={showCaption ? "pb-2 text-left font-semibold" : "sr-only"}>{caption}</caption>
         {children}
