@@ -69,13 +69,21 @@ async function* unpacked(chunks: AsyncIterable<Uint8Array>, limits: GunzipLimits
   }
 }
 
-/** As much of the beginning as the packed bytes hold, at most `maxBytes`. The bytes may stop in the middle. */
-export function unpackedStart(bytes: Uint8Array, maxBytes: number): Uint8Array {
-  if (!isGzip(bytes)) return bytes.subarray(0, maxBytes);
+/** 64 KiB of gzip unpack to 66 MiB at most. */
+const MAX_PACKED_HEAD = 65_536;
+
+export interface PlainStart {
+  bytes: Uint8Array;
+  /** Nothing was cut off, if the packed bytes are the whole file. */
+  isWhole: boolean;
+}
+
+/** The beginning of a file, unpacked as far as the given bytes reach, at most `maxBytes`. It may stop in the middle of a row. */
+export function plainStart(bytes: Uint8Array, maxBytes: number): PlainStart {
+  if (!isGzip(bytes)) return { bytes: bytes.subarray(0, maxBytes), isWhole: bytes.length < maxBytes };
   try {
-    // 64 KiB of gzip unpack to 66 MiB at most.
-    const plain = gunzipSync(bytes.subarray(0, 65_536), { finishFlush: constants.Z_SYNC_FLUSH });
-    return plain.subarray(0, maxBytes);
+    const plain = gunzipSync(bytes.subarray(0, MAX_PACKED_HEAD), { finishFlush: constants.Z_SYNC_FLUSH });
+    return { bytes: plain.subarray(0, maxBytes), isWhole: bytes.length <= MAX_PACKED_HEAD && plain.length < maxBytes };
   } catch (error) {
     throw gzipProblem(error);
   }

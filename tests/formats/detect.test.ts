@@ -37,6 +37,17 @@ describe("detect", () => {
     expect(found.mapping).toMatchObject({ delimiter: "\t", timeFormat: "epoch_ms" });
   });
 
+  it("looks at the beginning of a packed file that hardly shrinks", () => {
+    // 32-bit congruential numbers as names: gzip has little to gain, so that 64 KiB of it end within the list.
+    let seed = 1;
+    const next = () => (seed = (Math.imul(seed, 1664525) + 1013904223) >>> 0).toString(36);
+    const name = () => Array.from({ length: 150 }, next).join("");
+    const features = Array.from({ length: 120 }, () => ({ type: "Feature", geometry: { type: "Point", coordinates: [-38.3, 45.6] }, properties: { junction_id: name(), name: "x" } }));
+    const packed = gzipSync(JSON.stringify({ type: "FeatureCollection", features }));
+    expect(packed.length).toBeGreaterThan(65_536);
+    expect(detect(packed, "j.geojson.gz", "junctions").mapping.columns).toEqual({ junction_id: "junction_id", name: "name" });
+  });
+
   it("finds properties of GeoJSON", () => {
     const found = detect(fixture("pings.geojson"), "pings.geojson", "pings");
     expect(found.mapping).toMatchObject({ format: "geojson", speedUnit: "ms", timeFormat: "iso" });

@@ -1,5 +1,5 @@
 import { neededFields, type Detection, type FileMapping, type SpeedUnit, type UploadKind } from "@/domain/upload";
-import { isGzip, unpackedStart } from "../gzip";
+import { isGzip, plainStart } from "../gzip";
 import { timeParser } from "../time/parse-time";
 import { csvShape, type SettledShape } from "./detect-csv";
 import { geojsonShape } from "./detect-geojson";
@@ -30,10 +30,9 @@ interface Sample {
  */
 export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKind, settled: SettledShape = {}): Detection {
   if (firstBytes.length === 0) throw refuseEmpty(fileName);
-  const bytes = unpackedStart(firstBytes, DETECT_BYTES);
+  const { bytes, isWhole } = plainStart(firstBytes, DETECT_BYTES);
   if (bytes.length === 0) throw refuseEmpty(fileName);
   const undecoded = refuseBinary(bytes);
-  const isWhole = bytes.length < DETECT_BYTES && firstBytes.length < DETECT_BYTES;
   const isGeojson = firstVisible(bytes) === 123;
   const remarks: string[] = [];
   // One may be a letter that was cut in two at the end.
