@@ -13,7 +13,7 @@ export function ReportTable({ rows, selected, onSelect }: { rows: RankedJunction
   const { settings, locale } = useCity();
   const city = { units: settings.units, locale };
   return (
-    <RuledTable caption="Junctions of this report, worst first">
+    <RuledTable caption="Junctions of this report">
       <thead>
         <tr>
           <Th numeric>rank</Th>

@@ -1,5 +1,0 @@
-import { Loading } from "@/ui/primitives/states";
-
-export default function DeskLoading() {
-  return <Loading />;
-}
