@@ -6,6 +6,7 @@ import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";
 import { createCourse, estimateSpeeds, KNOTS, smoothForward, timeAt, type Course } from "@/core/traversals/course";
 import { fillGaps } from "@/core/traversals/fill-gaps";
+import { filledEndMs, filledStartMs } from "@/core/traversals/fill-ends";
 import { summariseStops } from "@/core/traversals/stops";
 import { TRAVERSAL_FLAGS } from "@/core/types";
 
@@ -18,11 +19,6 @@ export const CROSSING = Object.freeze({
   /** A course must begin this far before the stop line and end this far past it. */
   seenBeforeM: 5,
   seenAfterM: 8,
-  /** Longest part of a window that may be filled in at free speed where a trip begins or ends inside it, m. */
-  fillUpM: 140,
-  fillDownM: 60,
-  /** A trip's first ping must be at least this share of free speed for the part before it to be filled in. */
-  fillSpeedShare: 0.5,
 });
 
 export interface Extractor {
@@ -46,6 +42,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     }
     return found;
   };
+  const intervalS = trips.medianIntervalS;
   let seen: Course = createCourse(256);
   let course: Course = createCourse(1024);
   let trackMs = new Float64Array(0);
@@ -80,7 +77,6 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
 
   function addTraversal(k: number, movement: number, chain: Chain, base: Float64Array): boolean {
     const link = chain.links[k];
-    const next = chain.links[k + 1];
     const { cordonUpM, cordonDownM } = network.movements[movement];
     const stopAt = base[k] + graph.stopAt[link];
     const enterAt = stopAt - cordonUpM;
@@ -92,19 +88,16 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     let flags = 0;
     let enterMs = timeAt(course, enterAt);
     if (begin > enterAt) {
-      const speed = course.speedMs[0];
-      const isSlow = speed < CROSSING.fillSpeedShare * free;
-      if (begin - enterAt > CROSSING.fillUpM || isSlow) return false;
-      enterMs = course.tMs[0] - ((begin - enterAt) / free) * 1000;
+      enterMs = filledStartMs(course, begin - enterAt, free, intervalS, chain.pings[0] === trips.tripOffset[chain.trip]);
       flags |= TRAVERSAL_FLAGS.truncated;
     }
     let exitMs = timeAt(course, exitAt);
     if (end < exitAt) {
-      const speed = course.speedMs[course.length - 1];
-      if (exitAt - end > CROSSING.fillDownM || speed < CROSSING.fillSpeedShare * free) return false;
-      exitMs = course.tMs[course.length - 1] + ((exitAt - end) / Math.max(speed || free, 0.6 * free)) * 1000;
+      const isTripEnd = chain.pings[chain.pings.length - 1] === trips.tripOffset[chain.trip + 1] - 1;
+      exitMs = filledEndMs(course, exitAt - end, free, intervalS, isTripEnd);
       flags |= TRAVERSAL_FLAGS.truncated;
     }
+    if (Number.isNaN(enterMs) || Number.isNaN(exitMs)) return false;
     let stopLineMs = timeAt(course, Math.min(stopAt + CROSSING.virtualLineM, exitAt));
     if (!(stopLineMs >= 0)) stopLineMs = exitMs;
     const stops = summariseStops(course, enterMs, exitMs, base[k], stopAt + 6);
@@ -119,7 +112,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       },
       trackMs, trackS, points,
     );
-    return next >= 0;
+    return true;
   }
 
   /** The pings between the leg's upstream end and the exit cordon, with one point on each end where it was passed. */
