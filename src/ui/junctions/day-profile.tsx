@@ -11,10 +11,10 @@ import { timeTicks } from "@/ui/strips/strip-layout";
 import { useBoxWidth } from "@/ui/strips/use-box-width";
 import { profileRuns, type ProfileRun } from "./profile-runs";
 
-const HEIGHT = 236;
+const HEIGHT = 356;
 const TOP = 10;
-const PLOT = 150;
-const BARS = 30;
+const PLOT = 262;
+const BARS = 38;
 const LEFT = 46;
 const RIGHT = 40;
 

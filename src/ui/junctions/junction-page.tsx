@@ -11,12 +11,13 @@ import { useCan, useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
 import { useQueryAddress, type AddressCodec } from "@/ui/strips/use-query-address";
 import { DayProfile } from "./day-profile";
-import { JunctionPlan } from "./junction-plan";
 import { JunctionSentence } from "./junction-sentence";
 import { JunctionStanding } from "./junction-standing";
 import { LegStrips } from "./leg-strips";
+import { MovementPlan } from "./movement-plan";
 import { MovementTable } from "./movement-table";
 import { junctionQuery } from "./queries";
+import { TailPlan } from "./tail-plan";
 
 const CODEC: AddressCodec<WhenQuery> = { fromParams: whenQueryFromParams, toParams: whenQueryToParams };
 
@@ -51,22 +52,21 @@ function JunctionBody({ view, when }: { view: JunctionView; when: WhenQuery }) {
   const doubtful = view.legs.filter((leg) => leg.doubts.length > 0);
   return (
     <>
-      <div className="grid gap-x-10 gap-y-6 px-4 py-5 sm:px-6 lg:grid-cols-[minmax(20rem,2fr)_minmax(0,3fr)]">
-        <section aria-label="Plan" className="max-w-[42rem] min-w-0">
-          <JunctionPlan view={view} when={when} />
+      {view.score ? (
+        <section aria-label="Standing" className="flex flex-wrap items-start gap-x-14 gap-y-3 border-b border-rule px-4 py-4 sm:px-6">
+          <JunctionStanding score={view.score} />
+          <p className="max-w-[38rem] min-w-64 flex-1">{explainJunction(view.score, city)}</p>
         </section>
-        <div className="flex min-w-0 flex-col gap-6">
-          {view.score ? (
-            <section aria-label="Standing">
-              <JunctionStanding score={view.score} />
-              <p className="mt-2 max-w-[46rem]">{explainJunction(view.score, city)}</p>
-            </section>
-          ) : null}
-          <section aria-label="Delay by time of day">
-            <h2 className="text-lg">Delay by time of day</h2>
-            <DayProfile profile={view.profile} fromMin={view.basis.fromMin} toMin={view.basis.toMin} />
-          </section>
-        </div>
+      ) : null}
+      <div className="grid gap-x-10 gap-y-8 px-4 py-5 sm:px-6 md:grid-cols-2 xl:grid-cols-[minmax(0,1fr)_minmax(0,1fr)_minmax(0,1.35fr)]">
+        <MovementPlan view={view} />
+        <TailPlan view={view} when={when} />
+        <section aria-labelledby="by-time" className="min-w-0 md:col-span-2 xl:col-span-1">
+          <h2 id="by-time" className="text-[1.05rem] font-medium">
+            Delay by time of day
+          </h2>
+          <DayProfile profile={view.profile} fromMin={view.basis.fromMin} toMin={view.basis.toMin} />
+        </section>
       </div>
       <section aria-label="Movements" className="border-t border-rule px-4 py-5 sm:px-6">
         <h2 className="mb-2 text-lg">Movements</h2>

@@ -124,13 +124,15 @@ function MovementRow({ movement, leg, maxS }: { movement: MovementView; leg: Leg
       <Td numeric className="text-[1.02rem] font-semibold">
         {delay === null ? <span className="text-sm font-normal text-ink-soft">no figure</span> : formatNumber(Math.max(0, delay.value), locale)}
       </Td>
-      <Td className="whitespace-nowrap">
-        <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`} />
-        {delay ? (
-          <span aria-hidden="true" className="ml-1.5 text-sm text-ink-soft">
-            {formatNumber(delay.low, locale)} to {formatNumber(delay.high, locale)}
-          </span>
-        ) : null}
+      <Td>
+        <span className="flex items-center gap-2 whitespace-nowrap">
+          <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`} />
+          {delay ? (
+            <span aria-hidden="true" className="text-sm text-ink-soft">
+              {formatNumber(delay.low, locale)} to {formatNumber(delay.high, locale)}
+            </span>
+          ) : null}
+        </span>
       </Td>
       <Td className="whitespace-nowrap">
         <LosSquare los={movement.los} />
