@@ -30,12 +30,23 @@ export function buildBaseMap(city: City): BaseMap {
     })),
     water: [
       polygon({ kind: "river", name: RIVER_NAME }, riverBanks()),
+      polygon({ kind: "river", name: "" }, riverFromTheHills()),
       polygon({ kind: "sea", name: "Varn Sound" }, seaRing()),
       { type: "Feature", properties: { kind: "coast", name: "" }, geometry: { type: "LineString", coordinates: smoothLine(COAST, 120).map(positionOf) } },
     ],
     parks: PARKS.map((park) => polygon({ name: park.name }, park.ring)),
     labels: labels(),
   };
+}
+
+/** The river above the plan, as broad as where the plan takes it up. */
+function riverFromTheHills(): Point[] {
+  const banks = riverBanks();
+  const [left, right] = [banks[0], banks[banks.length - 1]];
+  const centre: Point[] = [[-6200, 1500], [-7600, 3000], [-9800, 4100], [-12600, 4600], [-16500, 6800], [-24000, 9000]];
+  const line = smoothLine(centre, 120);
+  const shifted = (bank: Point) => line.map(([x, y]): Point => [x + bank[0] - centre[0][0], y + bank[1] - centre[0][1]]);
+  return [...shifted(left), ...shifted(right).reverse()];
 }
 
 export function featureCollection(features: Feature[]): string {
