@@ -1,7 +1,8 @@
 import type { LegQuarters, Network, Traversals } from "@/core/types";
+import { createScratch, type LegView } from "./moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
 import { presenceByLeg, type Presence } from "./presence";
-import { createScratch, quarterFigures, type LegView, type QuarterFigures } from "./quarter-figures";
+import { quarterFigures, type QuarterFigures } from "./quarter-figures";
 import { findStandings, standingsByLeg } from "./standings";
 import { seenPerMetre } from "./unseen-tail";
 

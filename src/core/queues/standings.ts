@@ -13,12 +13,16 @@ export interface Standings {
   toMs: Float64Array;
 }
 
-interface Standing {
-  leg: number;
-  traversal: number;
+/** One stop: where, and from when to when. */
+export interface Stop {
   s: number;
   fromMs: number;
   toMs: number;
+}
+
+export interface Standing extends Stop {
+  leg: number;
+  traversal: number;
 }
 
 /** A ping that tells of standing nearer than this to a stop seen in the track is that stop. */
@@ -36,14 +40,20 @@ export function findStandings(network: Network, traversals: Traversals, options:
   const found: Standing[] = [];
   for (let i = 0; i < traversals.length; i++) {
     const leg = network.movements[traversals.movement[i]].leg;
-    const { storageM } = network.legs[leg];
-    const farthest = storageM > 0 ? storageM : Infinity;
     const stops = stopsOfTrack(traversals, i, options);
-    for (const stop of [...stops, ...slowPing(traversals, i, stops)]) {
-      if (stop.s < -options.pastLineM || stop.s > farthest) continue;
-      found.push({ leg, traversal: i, ...stop });
-    }
+    addStandings(found, [...stops, ...slowPing(traversals, i, stops)], leg, i, network.legs[leg].storageM, options);
   }
+  return standingsOf(found);
+}
+
+/** Keeps the stops of one track that belong to the leg's queue. */
+export function addStandings(out: Standing[], stops: Stop[], leg: number, traversal: number, storageM: number, options: QueueOptions): void {
+  const farthest = storageM > 0 ? storageM : Infinity;
+  for (const stop of stops) if (stop.s >= -options.pastLineM && stop.s <= farthest) out.push({ leg, traversal, ...stop });
+}
+
+/** Sorts in place, then copies to columns. */
+export function standingsOf(found: Standing[]): Standings {
   found.sort((a, b) => a.leg - b.leg || a.fromMs - b.fromMs || a.s - b.s);
   return columnsOf(found);
 }
@@ -52,8 +62,8 @@ export function findStandings(network: Network, traversals: Traversals, options:
 export type TrackColumns = Pick<Traversals, "enterMs" | "trackOffset" | "trackT" | "trackS">;
 
 /** Stops along one track: median position, first and last moment. O(points of the track). */
-export function stopsOfTrack(t: TrackColumns, i: number, options: QueueOptions): { s: number; fromMs: number; toMs: number }[] {
-  const stops: { s: number; fromMs: number; toMs: number }[] = [];
+export function stopsOfTrack(t: TrackColumns, i: number, options: QueueOptions): Stop[] {
+  const stops: Stop[] = [];
   const end = t.trackOffset[i + 1];
   let first = -1;
   for (let p = t.trackOffset[i]; p + 1 < end; p++) {
@@ -76,7 +86,7 @@ export function stopsOfTrack(t: TrackColumns, i: number, options: QueueOptions):
 }
 
 /** The moment of the track that stands for `farthestStopM`, unless a stop already does. */
-function slowPing(t: Traversals, i: number, stops: { s: number }[]): { s: number; fromMs: number; toMs: number }[] {
+function slowPing(t: Traversals, i: number, stops: { s: number }[]): Stop[] {
   const s = t.farthestStopM[i];
   if (!(s >= 0) || stops.some((stop) => stop.s > s - SAME_STOP_M)) return [];
   let nearest = t.trackOffset[i];

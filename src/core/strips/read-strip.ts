@@ -35,9 +35,9 @@ export function delayByRow(strip: Strip, paceSPerM: number): Float32Array {
 }
 
 /**
- * Reach of the congested cells that hang together with the stop line, for each column, metres: cells slower
- * than the speed at which a stop ends, now or within the last `memoryS`, their head and gaps as in a standing
- * column. NaN in columns without a vehicle, 0 where none is congested. Meant for one day and rectangles of
+ * Reach of the congested cells that hang together with the stop line, for each column, metres: the farthest cell
+ * slower than the speed at which a stop ends, tied to the line by such cells, now or within the last `memoryS`,
+ * with head and gaps as in a standing column. NaN in columns without a vehicle, 0 where none is congested. Meant for one day and rectangles of
  * about 10 s: longer cells mix red with green, pooled days one day's queue with another's free street. O(cells × memory).
  */
 export function congestedReaches(strip: Strip, options: Partial<QueueOptions> = {}): Float32Array {
@@ -54,7 +54,14 @@ export function congestedReaches(strip: Strip, options: Partial<QueueOptions> = 
       isSeen ||= strip.timeS[row * columns + column] > 0;
       if (wasCongested(strip, row, column, memory, goSpeedMs)) positions[congested++] = bottomM + (row + 0.5) * cellM;
     }
-    if (isSeen) out[column] = columnReach(positions, congested, headM, gapM);
+    if (!isSeen) continue;
+    const reachM = columnReach(positions, congested, headM, gapM);
+    out[column] = 0;
+    for (let k = 0; k < congested && positions[k] <= reachM; k++) {
+      const row = Math.floor((positions[k] - bottomM) / cellM);
+      // What was congested a moment ago only ties the column together; its end is where it stands now.
+      if (wasCongested(strip, row, column, 0, goSpeedMs)) out[column] = positions[k];
+    }
   }
   return out;
 }

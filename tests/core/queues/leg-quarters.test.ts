@@ -81,9 +81,9 @@ describe("legQuarters", () => {
   });
 
   it("joins vehicles of one red although the head has left before the tail stood", () => {
-    const q = quarters([stopping(START, 8, 10), stopping(START + 40_000, 70, 10)]);
-    expect(q.reachM[0]).toBe(70);
-    const apart = quarters([stopping(START, 8, 10), stopping(START + 90_000, 70, 10)]);
+    const q = quarters([stopping(START, 8, 10), stopping(START + 40_000, 110, 10)]);
+    expect(q.reachM[0]).toBe(110);
+    const apart = quarters([stopping(START, 8, 10), stopping(START + 90_000, 110, 10)]);
     expect(apart.reachM[0]).toBe(8);
   });
 

@@ -37,10 +37,10 @@ describe("reach of days", () => {
   });
 
   it("keeps days apart", () => {
-    const reaches = reachOfDays(setOf([stander(1, 20, 100, 160), stander(2, 80, 100, 160)]), 0, 400, 280);
+    const reaches = reachOfDays(setOf([stander(1, 20, 100, 160), stander(2, 110, 100, 160)]), 0, 400, 280);
     expect([...reaches.days]).toEqual([1, 2]);
     expect(reaches.reachM[Math.floor(140 / 5)]).toBe(20);
-    // Alone at 80 m, beyond the 60 m within which a head must stand.
+    // Alone at 110 m, beyond the 100 m within which a head must stand.
     expect(reaches.reachM[reaches.steps + Math.floor(140 / 5)]).toBe(0);
   });
 
@@ -50,7 +50,8 @@ describe("reach of days", () => {
     const quarters = legQuarters(networkOf(200), traversalsOf(set));
     const total = (values: Float32Array) => values.reduce((sum, value) => sum + value, 0);
     const stored = total(quarters.spilledS) / total(quarters.observedS);
-    const read = spillShare(reachOfDays(set, -900, 3600, 200), 200);
+    const fromS = quarters.startMs[0] / 1000;
+    const read = spillShare(reachOfDays(set, fromS, fromS + quarters.length * 900, 200), 200);
     expect(stored).toBeGreaterThan(0.1);
     expect(read).toBeCloseTo(stored, 9);
   });
