@@ -97,25 +97,32 @@ function ZonePhrase({ zone, onChoose }: { zone: string; onChoose: (zone: string)
   return (
     <SentenceControl name="Time zone" phrase={zone}>
       {(close) => (
-        <form
-          className="flex flex-col gap-3"
-          onSubmit={(event) => {
-            event.preventDefault();
-            close();
-          }}
-        >
+        <div className="flex flex-col gap-3">
           <Field label="Time zone" hint="Area and place, such as Atlantic/Azores.">
-            {(told) => <Input {...told} list={listId} defaultValue={zone} onChange={(event) => onChoose(event.target.value)} />}
+            {(told) => (
+              <Input
+                {...told}
+                list={listId}
+                defaultValue={zone}
+                onChange={(event) => onChoose(event.target.value)}
+                onKeyDown={(event) => {
+                  if (event.key !== "Enter") return;
+                  // Enter would send the form around the sentence.
+                  event.preventDefault();
+                  close();
+                }}
+              />
+            )}
           </Field>
           <datalist id={listId}>
             {Intl.supportedValuesOf("timeZone").map((name) => (
               <option key={name} value={name} />
             ))}
           </datalist>
-          <Button type="submit" className="self-start">
+          <Button onClick={close} className="self-start">
             Done
           </Button>
-        </form>
+        </div>
       )}
     </SentenceControl>
   );

@@ -5,11 +5,10 @@ import Link from "next/link";
 import type { ReactNode } from "react";
 import type { UploadView as Upload } from "@/domain/upload";
 import { formatBytes, formatInstant } from "@/ui/format";
-import { ButtonLink } from "@/ui/primitives/button";
 import { Failed, Loading } from "@/ui/primitives/states";
 import { useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
-import { DiscardButton } from "./discard-button";
+import { FailedUpload } from "./failed-upload";
 import { uploadQuery } from "./queries";
 import { ReadingUpload } from "./reading-upload";
 import { ReceivedUpload } from "./received-upload";
@@ -58,7 +57,7 @@ function About({ upload }: { upload: Upload }) {
 }
 
 function Body({ upload }: { upload: Upload }): ReactNode {
-  const { state, report, failure } = upload;
+  const { state, report } = upload;
   switch (state) {
     case "received":
       return <ReceivedUpload upload={upload} />;
@@ -68,15 +67,7 @@ function Body({ upload }: { upload: Upload }): ReactNode {
     case "done":
       return report ? <UploadReport upload={upload} report={report} /> : <Failed title="The report is missing." message="The file is in, but no report was kept." />;
     case "failed":
-      return (
-        <>
-          <Failed title="This file could not be read in." message={failure ?? "The reason was not kept."}>
-            <ButtonLink href="/data">Send another file</ButtonLink>
-            <DiscardButton uploadId={upload.id} />
-          </Failed>
-          {report ? <UploadReport upload={upload} report={report} /> : null}
-        </>
-      );
+      return <FailedUpload upload={upload} />;
     default:
       return state satisfies never;
   }
