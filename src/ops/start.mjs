@@ -27,7 +27,7 @@ let isStopping = false;
 async function stop(code) {
   if (isStopping) return;
   isStopping = true;
-  if (undo.length > 0) process.stdout.write("\nStopping.\n");
+  if (undo.length > 1) process.stdout.write("\nStopping.\n");
   for (const action of undo.reverse()) {
     await Promise.resolve(action()).catch((error) => console.error(error.message));
   }
