@@ -6,6 +6,7 @@ import { applyGivenLegs } from "@/core/legs/given-legs";
 import { joinArms } from "@/core/legs/join";
 import { LEARNING } from "@/core/legs/learning";
 import { listMovements } from "@/core/legs/movements";
+import { PASSAGES } from "@/core/legs/passage-seeds";
 import { createPingGrid } from "@/core/legs/ping-grid";
 import { keepUsed } from "@/core/legs/prune";
 import { refineDraft } from "@/core/legs/refine-draft";
@@ -37,10 +38,11 @@ export function learnFromTrips(
 function proposeLegs(
   trips: Trips, frame: Frame, index: JunctionIndex, options: CoreOptions, prior: Network | undefined,
 ): Carried {
-  const rings = claimRings(frame, index);
+  const rings = claimRings(frame, index, LEARNING.ringOuterM);
   const grid = createPingGrid(trips, frame, LEARNING.traceMostM);
   const isSparse = trips.medianIntervalS > LEARNING.sparseIntervalS;
-  const arms = findSeeds(trips, frame, rings).map((seed) => traceArm(seed, frame, grid, isSparse));
+  const reach = isSparse ? claimRings(frame, index, PASSAGES.reachM) : null;
+  const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse));
   const derived = joinArms(arms, frame);
   const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;
   return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
@@ -51,13 +53,13 @@ function withMovements(junctions: JunctionPoint[], legs: Leg[], exits: Exit[], o
   return { ...base, movements: listMovements(base) };
 }
 
-function claimRings(frame: Frame, index: JunctionIndex): ReturnType<JunctionIndex["claim"]> {
+function claimRings(frame: Frame, index: JunctionIndex, radiusM: number): ReturnType<JunctionIndex["claim"]> {
   const length = frame.junctions.length;
   return index.claim({
     length,
     lat: Float64Array.from(frame.junctions, (junction) => junction.lat),
     lon: Float64Array.from(frame.junctions, (junction) => junction.lon),
-    radiusM: new Float64Array(length).fill(LEARNING.ringOuterM),
+    radiusM: new Float64Array(length).fill(radiusM),
     owner: Uint32Array.from({ length }, (_, i) => i),
   });
 }

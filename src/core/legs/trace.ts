@@ -68,7 +68,7 @@ export function traceArm(seed: Seed, frame: Frame, grid: PingGrid, isSparse: boo
     supported = line.length / 2;
     [ux, uy] = turnTowards(line, ux, uy, seen, gain);
   }
-  const line2 = meets >= 0 ? cutAtBox(line, frame, seed.junction, meets) : line.slice(0, 2 * supported);
+  const line2 = meets >= 0 ? cutAtBox(line, frame, seed.junction, meets) : line.slice(0, 2 * Math.max(supported, LEARNING.leastPoints));
   return { junction: seed.junction, inbound: seed.inbound, support: seed.support, line: line2, meets };
 }
 
