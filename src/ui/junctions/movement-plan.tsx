@@ -25,11 +25,14 @@ export function MovementPlan({ view }: { view: JunctionView }) {
       <figcaption className="font-table font-medium">Movements</figcaption>
       <svg viewBox={`0 0 ${SIZE} ${SIZE}`} role="img" aria-label={label} className="h-auto w-full max-w-[30rem] font-table">
         <Streets streets={[...view.legs, ...view.exits]} scale={scale} radiusM={FLOW_RADIUS_M + 4} />
-        {view.legs.map((leg) => (
-          <CrossBar key={leg.id} leg={leg} scale={scale} atM={0} halfPx={(STREET_M * scale.perM) / 2} stroke={COLORS.ink} width={3} />
-        ))}
         {flows.map((flow) => (
           <FlowBand key={flow.movement.id} flow={flow} />
+        ))}
+        {view.legs.map((leg) => (
+          <g key={leg.id}>
+            <CrossBar leg={leg} scale={scale} atM={0} halfPx={(STREET_M * scale.perM) / 2 + 1} stroke={COLORS.sheet} width={5} />
+            <CrossBar leg={leg} scale={scale} atM={0} halfPx={(STREET_M * scale.perM) / 2} stroke={COLORS.ink} width={2.5} />
+          </g>
         ))}
         <NorthArrow size={SIZE} />
         <ScaleBar scale={scale} units={settings.units} />

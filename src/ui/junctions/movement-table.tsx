@@ -1,7 +1,7 @@
 "use client";
 
 import Link from "next/link";
-import { whenQueryToParams, type JunctionView, type LegView, type MovementView, type WhenQuery } from "@/domain/junction";
+import { whenQueryToParams, type ExitView, type JunctionView, type LegView, type MovementView, type WhenQuery } from "@/domain/junction";
 import type { ReferenceSource } from "@/core/types";
 import { formatLength, formatNumber, formatSeconds, formatShare, shareNumber } from "@/ui/format";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
@@ -9,9 +9,9 @@ import { IntervalMark } from "@/ui/primitives/interval-mark";
 import { LosSquare } from "@/ui/primitives/los-square";
 import { StorageBar } from "@/ui/primitives/storage-bar";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
-import { TURN_WORDS } from "@/ui/screens/phrases";
 import { TurnArrow } from "@/ui/screens/turn-arrow";
 import { useCity } from "@/ui/shell/city";
+import { movementWords } from "./movement-words";
 
 const COLUMNS = 10;
 /** Least width of the shared axis of the intervals. */
@@ -70,11 +70,7 @@ export function MovementTable({ view, when }: { view: JunctionView; when: WhenQu
       {view.legs.map((leg) => (
         <tbody key={leg.id}>
           <LegRow leg={leg} href={`/legs/${leg.id}${suffix ? `?${suffix}` : ""}`} />
-          {view.movements
-            .filter((movement) => movement.legId === leg.id)
-            .map((movement) => (
-              <MovementRow key={movement.id} movement={movement} leg={leg} maxS={maxS} />
-            ))}
+          <MovementRows leg={leg} movements={view.movements.filter((movement) => movement.legId === leg.id)} exits={view.exits} maxS={maxS} />
         </tbody>
       ))}
     </RuledTable>
@@ -88,7 +84,7 @@ function LegRow({ leg, href }: { leg: LegView; href: string }) {
     leg.reachP95M === null
       ? "reach cannot be said"
       : `reach ${formatLength(leg.reachP95M, units, locale)}${leg.storageM === null ? "" : ` of ${formatLength(leg.storageM, units, locale)}`}`;
-  const spill = leg.spill === null ? "spillback cannot be said" : `spills back ${formatShare(leg.spill.value, locale)} of the time (${shareNumber(leg.spill.low, locale)} to ${shareNumber(leg.spill.high, locale)})`;
+  const spill = leg.spill === null ? "spillback cannot be said" : `spills back ${formatShare(leg.spill.value, locale)} of the time (${formatNumber(leg.spill.low * 100, locale)} to ${formatNumber(leg.spill.high * 100, locale)})`;
   return (
     <tr>
       <th scope="rowgroup" colSpan={COLUMNS} className="border-b border-rule bg-paper px-2 py-1.5 text-left font-normal">
@@ -112,13 +108,33 @@ function LegRow({ leg, href }: { leg: LegView; href: string }) {
   );
 }
 
-function MovementRow({ movement, leg, maxS }: { movement: MovementView; leg: LegView; maxS: number }) {
+/** Movements that were seen, then in one line those that exist and were not seen in these hours. */
+function MovementRows({ leg, movements, exits, maxS }: { leg: LegView; movements: MovementView[]; exits: ExitView[]; maxS: number }) {
+  const seen = movements.filter((movement) => movement.vehicles > 0);
+  const unseen = movements.filter((movement) => movement.vehicles === 0);
+  return (
+    <>
+      {seen.map((movement) => (
+        <MovementRow key={movement.id} movement={movement} words={movementWords(movement, movements, exits)} leg={leg} maxS={maxS} />
+      ))}
+      {unseen.length > 0 ? (
+        <tr>
+          <td colSpan={COLUMNS} className="border-b border-rule px-2 py-1.5 text-sm text-ink-soft">
+            Not seen in these hours: {unseen.map((movement) => movementWords(movement, movements, exits)).join("; ")}.
+          </td>
+        </tr>
+      ) : null}
+    </>
+  );
+}
+
+function MovementRow({ movement, words, leg, maxS }: { movement: MovementView; words: string; leg: LegView; maxS: number }) {
   const { locale } = useCity();
   const { delay } = movement;
   return (
     <tr>
       <th scope="row" className="whitespace-nowrap border-b border-rule px-2 py-2 text-left align-top font-medium">
-        <TurnArrow turn={movement.turn} /> {TURN_WORDS[movement.turn]}
+        <TurnArrow turn={movement.turn} /> {words}
         <span className="sr-only"> {leg.name}</span>
       </th>
       <Td numeric className="text-[1.02rem] font-semibold">
@@ -126,10 +142,10 @@ function MovementRow({ movement, leg, maxS }: { movement: MovementView; leg: Leg
       </Td>
       <Td>
         <span className="flex items-center gap-2 whitespace-nowrap">
-          <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`} />
+          <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(Math.max(0, e.low), locale)} to ${formatSeconds(e.high, locale)}`} />
           {delay ? (
             <span aria-hidden="true" className="text-sm text-ink-soft">
-              {formatNumber(delay.low, locale)} to {formatNumber(delay.high, locale)}
+              {formatNumber(Math.max(0, delay.low), locale)} to {formatNumber(delay.high, locale)}
             </span>
           ) : null}
         </span>

@@ -45,10 +45,10 @@ const MOST_RADIUS_M = 330;
 
 /** Radius of the plan of tails: as far as the queues need, within bounds. */
 export function planRadius(legs: LegView[]): number {
-  const reaches = legs.map((leg) => leg.reachP95M ?? 0);
-  const storages = legs.map((leg) => leg.storageM ?? 0).filter((storage) => storage <= MOST_RADIUS_M);
-  const wanted = Math.max(0, ...reaches.map((reach) => reach * 1.15), ...storages.map((storage) => storage * 1.06));
-  return Math.min(MOST_RADIUS_M, Math.max(LEAST_RADIUS_M, wanted));
+  const forReach = Math.max(LEAST_RADIUS_M, ...legs.map((leg) => (leg.reachP95M ?? 0) * 1.2));
+  // A storage line a little farther out is worth the smaller scale, one far out is not.
+  const storages = legs.map((leg) => (leg.storageM ?? 0) * 1.06).filter((storage) => storage <= 1.6 * forReach);
+  return Math.min(MOST_RADIUS_M, Math.max(forReach, ...storages));
 }
 
 /** Metres to drawing units: north is up. */

@@ -5,6 +5,7 @@ import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } fr
 import { formatLength, formatSeconds, type Units } from "@/ui/format";
 import { COLORS, delayColor } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";
+import { shortLegName } from "./movement-words";
 import { lineLength, pathOf, placeOn, planRadius, planScale, stretchOf, type PlanScale } from "./plan-geometry";
 import { CrossBar, NorthArrow, ScaleBar, Streets } from "./plan-parts";
 
@@ -82,10 +83,10 @@ function LegLabel({ leg, scale, seenM, href, lines }: { leg: LegView; scale: Pla
   // Beside a street that lies to the east or west the label stands above it; else beyond the street's end.
   const y = isEast || isWest ? end - 16 - 17 * lines.length : below ? Math.min(SIZE - 6 - 17 * lines.length, end + 18) : Math.max(14, end - 8 - 17 * lines.length);
   return (
-    <text x={x} y={y} textAnchor={isEast ? "end" : isWest ? "start" : "middle"} fontSize="14.5" fill={COLORS.inkSoft} stroke={COLORS.sheet} strokeWidth="4" paintOrder="stroke">
+    <text x={x} y={y} textAnchor={isEast ? "end" : isWest ? "start" : "middle"} fontSize="15.5" fill={COLORS.inkSoft} stroke={COLORS.sheet} strokeWidth="4" paintOrder="stroke">
       <Link href={href} aria-label={`Strip of the leg ${leg.name}: ${lines.join(", ")}`}>
         <tspan fontWeight="600" fill={COLORS.ink} textDecoration="underline">
-          {leg.name.split(",")[0]}
+          {shortLegName(leg)}
         </tspan>
       </Link>
       {lines.map((line) => (

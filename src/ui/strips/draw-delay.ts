@@ -86,6 +86,7 @@ function drawBounds(ctx: CanvasRenderingContext2D, layout: StripLayout, box: Box
   ctx.strokeStyle = COLORS.rule;
   ctx.textBaseline = "middle";
   const squareX = box.left + box.width + (layout.isNarrow ? 7 : 16);
+  let lastLabel = Infinity;
   for (const band of losBands(topS)) {
     const line = Math.round(y(band.fromS)) + 0.5;
     ctx.lineWidth = 1;
@@ -95,8 +96,9 @@ function drawBounds(ctx: CanvasRenderingContext2D, layout: StripLayout, box: Box
     ctx.stroke();
     ctx.fillStyle = COLORS.inkSoft;
     ctx.textAlign = "right";
-    const roomPx = y(band.fromS) - y(band.toS);
-    if (band.fromS === 0 || roomPx >= layout.fontPx * 0.8) ctx.fillText(String(band.fromS), box.left - 9, line);
+    if (lastLabel - line < layout.fontPx) continue;
+    ctx.fillText(String(band.fromS), box.left - 9, line);
+    lastLabel = line;
   }
   const bands = losBands(topS);
   const middles = bands.map((band) => (y(band.fromS) + y(band.toS)) / 2);

@@ -32,8 +32,12 @@ const MOST_COLUMNS = 1440;
 export const CELL_SECONDS = [5, 10, 15, 30, 60, 120, 300, 900] as const;
 export const CELL_METRES = [5, 10, 20, 50] as const;
 
-export function windowOfView(view: PictureView): StripWindow {
-  return { fromS: view.basis.fromMin * 60, toS: view.basis.toMin * 60, bottomM: 0, topM: view.leg.lengthM };
+/** Room above the end of the leg, so that a storage line at the very end still shows. */
+const HEADROOM = 1.03;
+
+export function windowOfView({ leg, basis }: PictureView): StripWindow {
+  const endM = leg.storageM !== null && leg.storageM < 1.2 * leg.lengthM ? Math.max(leg.lengthM, leg.storageM) : leg.lengthM;
+  return { fromS: basis.fromMin * 60, toS: basis.toMin * 60, bottomM: 0, topM: endM * HEADROOM };
 }
 
 /** The chosen width, or the finest that the length of the window allows. */
