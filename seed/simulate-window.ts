@@ -7,8 +7,9 @@ import { writePings } from "./probes/sample";
 import type { PingWriter } from "./output/ping-writer";
 import { createRandomStream } from "./random";
 import { CITY_SEED, type Scenario } from "./scenario";
-import { simulate, type SimulationResult } from "./simulation/engine";
+import { simulate } from "./simulation/engine";
 import { createTruth, type MovementTruth } from "./simulation/state";
+import type { SimulationResult } from "./simulation/traffic";
 
 export interface DayPlan {
   /** Local calendar day, YYYY-MM-DD. */

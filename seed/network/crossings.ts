@@ -43,7 +43,7 @@ function collectCrossings(streets: Street[], i: number, j: number, out: Crossing
   let alongA = 0;
   for (let p = 1; p < a.length; p++) {
     const stepA = distanceM(a[p - 1], a[p]);
-    if (areApart(boxOf([a[p - 1], a[p]]), boxOf(b))) {
+    if (areApart(measure([a[p - 1], a[p]]), boxOf(b))) {
       alongA += stepA;
       continue;
     }
@@ -72,8 +72,15 @@ type Box = [west: number, south: number, east: number, north: number];
 const boxes = new WeakMap<readonly Point[], Box>();
 
 function boxOf(line: readonly Point[]): Box {
-  const known = boxes.get(line);
-  if (known) return known;
+  let box = boxes.get(line);
+  if (!box) {
+    box = measure(line);
+    boxes.set(line, box);
+  }
+  return box;
+}
+
+function measure(line: readonly Point[]): Box {
   const box: Box = [Infinity, Infinity, -Infinity, -Infinity];
   for (const [x, y] of line) {
     box[0] = Math.min(box[0], x);
@@ -81,7 +88,6 @@ function boxOf(line: readonly Point[]): Box {
     box[2] = Math.max(box[2], x);
     box[3] = Math.max(box[3], y);
   }
-  boxes.set(line, box);
   return box;
 }
 

@@ -1,6 +1,6 @@
 import { placeTimesInto } from "../simulation/path-times";
 import { RING, RING_MASK, type LaneState, type Trips } from "../simulation/state";
-import type { Passage } from "../simulation/engine";
+import type { Passage } from "../simulation/traffic";
 import type { City } from "../network/types";
 
 /** The way of one vehicle: where it was when, as a line in time and distance, and over what it drove. */

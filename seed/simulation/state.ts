@@ -19,7 +19,6 @@ export interface LaneState {
   nextBay: Int32Array;
   turns: Uint8Array;
   link: Int32Array;
-  lastEntryS: Float64Array;
   lastExitS: Float64Array;
   /** By lane times RING plus the vehicle's number in the lane, modulo RING. */
   entryS: Float64Array;
@@ -41,7 +40,7 @@ export function createLaneState(city: City, map: LaneMap): LaneState {
     nextBay: Int32Array.from(map.lanes, (lane) => lane.nextBay),
     turns: Uint8Array.from(map.lanes, (lane) => lane.turns),
     link: Int32Array.from(map.lanes, (lane) => lane.link),
-    lastEntryS: new Float64Array(n).fill(-1e9), lastExitS: new Float64Array(n).fill(-1e9),
+    lastExitS: new Float64Array(n).fill(-1e9),
     entryS: new Float64Array(n * RING), exitS: new Float64Array(n * RING).fill(-1e9),
     vehicle: new Int32Array(n * RING), blockedSinceS: new Float64Array(n).fill(NaN),
   };
@@ -86,4 +85,14 @@ export function createTruth(city: City, startS: number, endS: number, binS: numb
     startS, binS, bins, vehicles: new Int32Array(movements), delayS: new Float64Array(movements),
     blockedS: new Float64Array(city.links.length * bins),
   };
+}
+
+/** Notes one crossing: delay over the whole link, and how long the lane was held up by a full street ahead. */
+export function recordTruth(truth: MovementTruth, lanes: LaneState, lane: number, movement: number, exitS: number, entryS: number, freeS: number): void {
+  const bin = Math.floor((exitS - truth.startS) / truth.binS);
+  if (bin < 0 || bin >= truth.bins) return;
+  truth.vehicles[movement * truth.bins + bin]++;
+  truth.delayS[movement * truth.bins + bin] += exitS - entryS - freeS;
+  const blockedSinceS = lanes.blockedSinceS[lane];
+  if (!Number.isNaN(blockedSinceS)) truth.blockedS[lanes.link[lane] * truth.bins + bin] += exitS - blockedSinceS;
 }
