@@ -12,7 +12,7 @@ import { fieldList, missingFields } from "./mapping-state";
 import { PreviewTable } from "./preview-table";
 import { suppliersQuery, uploadsQuery, type SettledShape } from "./queries";
 import { startReading } from "./send-file";
-import { useMapping } from "./use-mapping";
+import { useMapping, type SupplierMatch } from "./use-mapping";
 
 interface Props {
   upload: UploadView;
@@ -56,7 +56,7 @@ export function MappingForm({ upload, detection, onReshape }: Props) {
       <SupplierField
         upload={upload}
         value={supplier}
-        onChange={(name, isTaken) => setNote(isTaken ? `Columns and units are set as for the last file of ${name.trim()}.` : "")}
+        onChange={(name, match) => setNote(noteOf(name.trim(), match))}
         controls={controls}
       />
       <p role="status" className={note ? "text-sm" : "sr-only"}>
@@ -87,7 +87,12 @@ export function MappingForm({ upload, detection, onReshape }: Props) {
   );
 }
 
-function SupplierField(props: { upload: UploadView; value: string; onChange: (name: string, isTaken: boolean) => void; controls: ReturnType<typeof useMapping> }) {
+function noteOf(name: string, match: SupplierMatch): string {
+  if (match === "taken") return `Columns and units are set as for the last file of ${name}.`;
+  return match === "differs" ? `The last file of ${name} had other columns: those found in this one are kept.` : "";
+}
+
+function SupplierField(props: { upload: UploadView; value: string; onChange: (name: string, match: SupplierMatch) => void; controls: ReturnType<typeof useMapping> }) {
   const listId = useId();
   const suppliers = useQuery(suppliersQuery(props.upload.kind)).data ?? [];
   return (

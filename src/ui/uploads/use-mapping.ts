@@ -6,6 +6,9 @@ import { useCity } from "@/ui/shell/city";
 import type { KnownSupplier } from "./queries";
 import { remembered, withColumnAs } from "./mapping-state";
 
+/** What a supplier's last file says about this one. */
+export type SupplierMatch = "unknown" | "taken" | "differs";
+
 /** The mapping as found out, with what the person changed in it. */
 export function useMapping(detection: Detection) {
   const { settings } = useCity();
@@ -24,15 +27,16 @@ export function useMapping(detection: Detection) {
     useColumn: (at: number, field: string) => setChanges((before) => ({ ...before, columns: withColumnAs(mapping, header, at, field).columns })),
     /** Forgets the columns that were chosen: the file is about to be cut afresh. */
     forgetColumns: () => setChanges(({ columns: _, ...rest }) => rest),
-    /** True if the supplier's last mapping was taken over. */
-    chooseSupplier(name: string, known: readonly KnownSupplier[]): boolean {
+    /** Takes the supplier's last mapping over where it fits. */
+    chooseSupplier(name: string, known: readonly KnownSupplier[]): SupplierMatch {
       setSupplier(name);
       const before = known.find((one) => one.name.toLowerCase() === name.trim().toLowerCase());
-      const mappingBefore = remembered(before?.mapping ?? null, found, header);
-      if (mappingBefore === null) return false;
+      if (!before?.mapping) return "unknown";
+      const mappingBefore = remembered(before.mapping, found, header);
+      if (mappingBefore === null) return "differs";
       const { columns, decimal, timeFormat, timeZone, speedUnit } = mappingBefore;
       setChanges({ columns, decimal, timeFormat, timeZone, speedUnit });
-      return true;
+      return "taken";
     },
   };
 }
