@@ -9,7 +9,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { gzipSync } from "node:zlib";
 
-import { encodeCourses, toSampledCourses } from "./recording";
+import { RECORDINGS, encodeCourses, toSampledCourses } from "./recording";
 import type { RecordedTruth } from "./recording";
 import { isSampled } from "./sampling";
 import { HOLD_OUT, TUNING } from "./scenarios/index";
@@ -20,15 +20,13 @@ import { writeNetwork } from "./simulator/write-network";
 import { listPassages, measureTruth } from "./truth/measure-truth";
 import type { Measured } from "./truth/measure-truth";
 import { findPassages, indexLegs } from "./truth/passages";
-import { findReferenceTimes } from "./truth/reference-times";
+import { findReferenceTimes, movementKey } from "./truth/reference-times";
 import { findLegStreets } from "./truth/street-legs";
 import { writeWorkingFiles } from "./working-files";
 
 /** A Tuesday in September, seven in the morning UTC. */
 const START_MS = Date.UTC(2026, 8, 15, 7);
-const RECORDED_SHARE = 0.2;
-const ORACLE_SHARES = [0.2, 0.1, 0.05, 0.02];
-const RECORDINGS = join(import.meta.dirname, "recordings");
+const ORACLE_SHARES = [1, 0.2, 0.1, 0.05, 0.02];
 
 async function measure(scenario: Scenario): Promise<Measured> {
   const folder = mkdtempSync(join(tmpdir(), `reference-${scenario.id}-`));
@@ -40,7 +38,7 @@ async function measure(scenario: Scenario): Promise<Measured> {
     const courses = await simulate(scenario, networkPath, folder);
     const passages = [...courses.values()].flatMap((course) => findPassages(course, index));
     const referenceS = await findReferenceTimes(scenario, networkPath, network, folder, passages, index);
-    const known = passages.filter((passage) => referenceS.has(`${passage.leg.chain[0].id}>${passage.exit.edge.id}`));
+    const known = passages.filter((passage) => !passage.isComplete || referenceS.has(movementKey(passage)));
     return { scenario, network, legs, courses, passages: known, referenceS, startMs: START_MS };
   } finally {
     rmSync(folder, { recursive: true, force: true });
@@ -48,21 +46,21 @@ async function measure(scenario: Scenario): Promise<Measured> {
 }
 
 function recordTruth(measured: Measured): RecordedTruth {
-  const { id } = measured.scenario;
+  const { id, recordedShare } = measured.scenario;
   const oracle: RecordedTruth["oracle"] = {};
-  for (const share of ORACLE_SHARES) {
+  for (const share of ORACLE_SHARES.filter((candidate) => candidate <= recordedShare)) {
     oracle[share * 100] = measureTruth(measured, (vehicle) => isSampled(id, vehicle, share), false);
   }
   return {
     truth: measureTruth(measured, () => true, true),
     oracle,
-    passages: listPassages(measured, (vehicle) => isSampled(id, vehicle, RECORDED_SHARE)),
+    passages: listPassages(measured, (vehicle) => isSampled(id, vehicle, recordedShare)),
   };
 }
 
 function writeRecording(measured: Measured, recorded: RecordedTruth) {
   mkdirSync(RECORDINGS, { recursive: true });
-  const sampled = [...measured.courses.values()].filter((course) => isSampled(measured.scenario.id, course.id, RECORDED_SHARE));
+  const sampled = [...measured.courses.values()].filter((course) => isSampled(measured.scenario.id, course.id, measured.scenario.recordedShare));
   const bytes = encodeCourses(sampled.flatMap(toSampledCourses));
   writeFileSync(join(RECORDINGS, `${measured.scenario.id}.courses.gz`), gzipSync(bytes, { level: 9 }));
   writeFileSync(join(RECORDINGS, `${measured.scenario.id}.truth.json.gz`), gzipSync(JSON.stringify(recorded), { level: 9 }));

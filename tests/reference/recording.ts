@@ -1,3 +1,7 @@
+import { readFileSync } from "node:fs";
+import { join } from "node:path";
+import { gunzipSync } from "node:zlib";
+
 import type { Course } from "./simulator/read-trajectories";
 import type { SampledCourse } from "./sampling";
 import type { Passage, Truth } from "./truth/types";
@@ -9,6 +13,19 @@ export interface RecordedTruth {
   oracle: Record<string, Truth>;
   /** Complete passages of the sampled vehicles. */
   passages: Passage[];
+}
+
+export interface Recording extends RecordedTruth {
+  courses: SampledCourse[];
+}
+
+export const RECORDINGS = join(import.meta.dirname, "recordings");
+
+/** Opens the kept recording of a scenario; throws where there is none. */
+export function readRecording(scenarioId: string): Recording {
+  const open = (name: string) => gunzipSync(readFileSync(join(RECORDINGS, `${scenarioId}.${name}.gz`)));
+  const recorded: RecordedTruth = JSON.parse(new TextDecoder().decode(open("truth.json")));
+  return { ...recorded, courses: decodeCourses(open("courses")) };
 }
 
 /** Courses cut where seconds are missing (the simulator moved the vehicle by hand). */

@@ -32,8 +32,9 @@ const passages: Passage[] = readRows(join(folder, "passages.csv"))
     enterMs: Number(row.enter_ms),
     stopLineMs: Number(row.stop_line_ms),
     exitMs: Number(row.exit_ms),
-    delayS: Number(row.delay_s),
+    delayS: row.delay_s ? Number(row.delay_s) : null,
     stops: Number(row.stops),
+    isComplete: row.is_complete === "1",
   }))
   .filter((passage) => isSampled(truth.scenario, passage.vehicleId, Number(share) / 100));
 const pingTimes = new Map<string, number[]>();

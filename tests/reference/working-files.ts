@@ -23,11 +23,12 @@ export function writeWorkingFiles(measured: Measured, recorded: RecordedTruth, r
   for (const [share, oracle] of Object.entries(recorded.oracle)) {
     writeFileSync(join(folder, `oracle-${share}.json`), JSON.stringify(oracle));
   }
-  const passages = recorded.passages.map(
+  const sampled = recorded.passages.filter((p) => isSampled(measured.scenario.id, p.vehicleId, 0.2));
+  const passages = sampled.map(
     (p) =>
-      `${p.vehicleId},${p.junctionId},${p.approachBearingDeg},${p.turn},${p.enterMs},${p.stopLineMs},${p.exitMs},${p.delayS},${p.stops}`,
+      `${p.vehicleId},${p.junctionId},${p.approachBearingDeg},${p.turn},${p.enterMs},${p.stopLineMs},${p.exitMs},${p.delayS ?? ""},${p.stops},${p.isComplete ? 1 : 0}`,
   );
-  const header = "vehicle_id,junction_id,approach_bearing_deg,turn,enter_ms,stop_line_ms,exit_ms,delay_s,stops";
+  const header = "vehicle_id,junction_id,approach_bearing_deg,turn,enter_ms,stop_line_ms,exit_ms,delay_s,stops,is_complete";
   writeFileSync(join(folder, "passages.csv"), `${header}\n${passages.join("\n")}\n`);
 }
 

@@ -126,6 +126,7 @@ export function arterialScenario(): Scenario {
     routeSpread: 1,
     warmUpS: 480,
     recordedS: 3600,
+    recordedShare: 0.2,
     vehicles: "calm",
   };
 }

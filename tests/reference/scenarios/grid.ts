@@ -118,6 +118,7 @@ export function gridScenario(): Scenario {
     routeSpread: 1.3,
     warmUpS: 480,
     recordedS: 3600,
+    recordedShare: 1,
     vehicles: "calm",
   };
 }

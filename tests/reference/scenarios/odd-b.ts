@@ -110,6 +110,7 @@ export function oddBScenario(): Scenario {
     routeSpread: 1.2,
     warmUpS: 480,
     recordedS: 3600,
+    recordedShare: 0.2,
     vehicles: "calm",
   };
 }

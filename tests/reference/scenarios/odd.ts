@@ -111,6 +111,7 @@ export function oddScenario(): Scenario {
     routeSpread: 1.2,
     warmUpS: 480,
     recordedS: 3600,
+    recordedShare: 0.2,
     vehicles: "default",
   };
 }

@@ -70,6 +70,7 @@ export function townScenario(options: TownOptions): Scenario {
     routeSpread: 1.4,
     warmUpS: 480,
     recordedS: 3600,
+    recordedShare: 0.2,
     vehicles: options.vehicles,
   };
 }

@@ -73,4 +73,6 @@ export interface Scenario {
   warmUpS: number;
   recordedS: number;
   vehicles: "calm" | "default";
+  /** Share of the vehicles whose courses are kept; 1 lets strips be tested on full data. */
+  recordedShare: number;
 }

@@ -6,10 +6,11 @@ import type { FoundTraversal, ScoreInput } from "./types";
 const SAME_PASSAGE_S = 20;
 const SAME_LEG_DEG = 25;
 
-/** Passages with a ping on the way from cordon to stop line and another between the stop line and the vehicle's next one. */
+/** Complete passages with a ping on the way from cordon to stop line and another between the stop line and the vehicle's next one. */
 export function scorablePassages(passages: Passage[], pingTimes: Map<string, number[]>): Passage[] {
   const byVehicle = groupByVehicle(passages);
   return passages.filter((passage) => {
+    if (!passage.isComplete) return false;
     const next = byVehicle.get(passage.vehicleId)?.find((other) => other.stopLineMs > passage.stopLineMs);
     const times = pingTimes.get(passage.vehicleId) ?? [];
     return (

@@ -48,7 +48,7 @@ export interface Scores {
   legPrecision: number;
   /** Share of found traversals, matched to a true passage, whose turn is right; from movement counts where no traversals are given. */
   turnsRight: number;
-  /** Distance of the number of traversals from the band [passages with a ping on the leg and one after, all passages], as a share. */
+  /** Distance of the number of traversals from the band [complete passages with a ping on the leg and one after, all over the stop line], as a share. */
   countError: number;
   /** Found traversals without any true passage near, as a share; NaN without traversals. */
   falseTraversals: number;

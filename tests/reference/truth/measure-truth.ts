@@ -34,11 +34,12 @@ export function measureTruth(measured: Measured, isSeen: (vehicleId: string) => 
   const names = intervalNames(startMs, scenario.recordedS);
   const seen = [...measured.courses.values()].filter((course) => isSeen(course.id));
   const tails = tailsBySecond(seen, legs, scenario.recordedS, everyone ? GAP_ALL_M : GAP_SAMPLE_M);
-  const byLeg = groupByLeg(measured.passages.filter((passage) => isSeen(passage.vehicleId)));
+  const byLeg = groupByLeg(measured.passages.filter((passage) => passage.isComplete && isSeen(passage.vehicleId)));
   return {
     scenario: scenario.id,
     title: scenario.title,
     driveSide: scenario.driveSide,
+    origin: { lat: scenario.lat, lon: scenario.lon },
     startMs,
     endMs: startMs + scenario.recordedS * 1000,
     junctions: listJunctions(scenario, plane),
@@ -132,7 +133,8 @@ export function listPassages(measured: Measured, isSeen: (vehicleId: string) => 
       enterMs: ms(passage.enterS),
       stopLineMs: ms(passage.stopLineS),
       exitMs: ms(passage.exitS),
-      delayS: round(delayOf(measured, passage), 2),
+      delayS: passage.isComplete ? round(delayOf(measured, passage), 2) : null,
       stops: passage.stops,
+      isComplete: passage.isComplete,
     }));
 }

@@ -17,6 +17,8 @@ export interface RawPassage {
   stopLineS: number;
   exitS: number;
   stops: number;
+  /** Seen from the upstream cordon to the exit cordon, on the streets of leg and exit all the way. */
+  isComplete: boolean;
   /** Edge before the leg and edge after the exit: where the vehicle came from and goes to. */
   context: string[];
 }
@@ -30,7 +32,10 @@ export function indexLegs(legs: LegStreet[]): LegIndex {
   return { atStopLine: new Map(legs.map((leg) => [leg.chain[0].id, leg])) };
 }
 
-/** All complete passages of one vehicle: seen from the upstream cordon to the exit cordon, on the streets all the way. */
+/**
+ * All passages of one vehicle over a stop line. Those of which the cordons were not seen, because the trip or the
+ * recording begins or ends between them, are marked: they count as having passed, but have no delay.
+ */
 export function findPassages(course: Course, index: LegIndex): RawPassage[] {
   const odometer = courseOdometer(course);
   const standing = standingFlags(course);
@@ -43,15 +48,14 @@ export function findPassages(course: Course, index: LegIndex): RawPassage[] {
     while (j < n && course.edge[j].startsWith(":")) j++;
     const exit = j < n ? leg.exits.find((candidate) => candidate.edge.id === course.edge[j]) : undefined;
     if (!exit) continue;
-    const passage = measure(course, odometer, standing, leg, exit, i, j);
-    if (passage) passages.push(passage);
+    passages.push(measure(course, odometer, standing, leg, exit, i, j));
   }
   return passages;
 }
 
 function measure(
   course: Course, odometer: Float64Array, standing: Uint8Array, leg: LegStreet, exit: ExitStreet, last: number, first: number,
-): RawPassage | undefined {
+): RawPassage {
   const toLine = leg.chain[0].lanes[course.lane[last]].lengthM - course.pos[last];
   const lineOdo = odometer[last] + toLine;
   const enterOdo = lineOdo - leg.cordonUpM;
@@ -61,15 +65,17 @@ function measure(
   while (from > 0 && odometer[from] > enterOdo) from--;
   let to = first;
   while (to < course.t.length - 1 && odometer[to] < exitOdo) to++;
-  if (odometer[from] > enterOdo + SLACK_M || odometer[to] < exitOdo) return undefined;
-  const legEdges = new Set(leg.chain.map((edge) => edge.id));
-  const exitEdges = new Set(exit.chain.map((edge) => edge.id));
-  for (let k = from + 1; k < to; k++) {
-    const edge = course.edge[k];
-    if (odometer[k] > odometer[k - 1] + JUMP_MS * (course.t[k] - course.t[k - 1])) return undefined;
-    const inside = edge.startsWith(":") || (k <= last ? legEdges.has(edge) : exitEdges.has(edge));
-    if (!inside && odometer[k] > enterOdo + SLACK_M && odometer[k] < exitOdo - SLACK_M) return undefined;
-  }
+  const staysOnStreets = () => {
+    const legEdges = new Set(leg.chain.map((edge) => edge.id));
+    const exitEdges = new Set(exit.chain.map((edge) => edge.id));
+    for (let k = from + 1; k < to; k++) {
+      const edge = course.edge[k];
+      if (odometer[k] > odometer[k - 1] + JUMP_MS * (course.t[k] - course.t[k - 1])) return false;
+      const isInside = edge.startsWith(":") || (k <= last ? legEdges.has(edge) : exitEdges.has(edge));
+      if (!isInside && odometer[k] > enterOdo + SLACK_M && odometer[k] < exitOdo - SLACK_M) return false;
+    }
+    return true;
+  };
   let stops = 0;
   for (let k = from + 1; k < to; k++) if (standing[k] && !standing[k - 1]) stops++;
   return {
@@ -80,6 +86,7 @@ function measure(
     stopLineS: timeAt(course, odometer, lineOdo, last, first),
     exitS: timeAt(course, odometer, exitOdo, first - 1, to),
     stops,
+    isComplete: odometer[from] <= enterOdo + SLACK_M && odometer[to] >= exitOdo && staysOnStreets(),
     context: contextOf(course, from, to),
   };
 }

@@ -38,7 +38,7 @@ export async function findReferenceTimes(
   const sums = new Map<string, { time: number; weight: number }>();
   for (const course of courses.values()) {
     const run = runs[Number(course.id)];
-    const passage = findPassages(course, index).find((candidate) => movementKey(candidate) === run.movement);
+    const passage = findPassages(course, index).find((candidate) => candidate.isComplete && movementKey(candidate) === run.movement);
     if (!passage) continue;
     const sum = sums.get(run.movement) ?? { time: 0, weight: 0 };
     sum.time += (passage.exitS - passage.enterS) * run.weight;
@@ -52,7 +52,7 @@ function commonContexts(passages: RawPassage[], network: SimulatedNetwork): { mo
   const counts = new Map<string, Map<string, number>>();
   const isDrivable = (context: string[]) => context.every((edge, i) => i === 0 || network.connections.has(`${context[i - 1]}>${edge}`));
   for (const passage of passages) {
-    if (!isDrivable(passage.context)) continue;
+    if (!passage.isComplete || !isDrivable(passage.context)) continue;
     const movement = movementKey(passage);
     const contexts = counts.get(movement) ?? new Map<string, number>();
     const key = passage.context.join(" ");

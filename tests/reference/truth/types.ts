@@ -48,13 +48,15 @@ export interface Truth {
   scenario: string;
   title: string;
   driveSide: DriveSide;
+  /** Where the scenario's plane touches the globe, degrees. */
+  origin: { lat: number; lon: number };
   startMs: number;
   endMs: number;
   junctions: { id: string; name: string; lat: number; lon: number }[];
   legs: TrueLeg[];
 }
 
-/** One true complete passage of one sampled vehicle. */
+/** One true passage of one sampled vehicle over a stop line. */
 export interface Passage {
   vehicleId: string;
   junctionId: string;
@@ -63,6 +65,9 @@ export interface Passage {
   enterMs: number;
   stopLineMs: number;
   exitMs: number;
-  delayS: number;
+  /** Null where the passage is not complete. */
+  delayS: number | null;
   stops: number;
+  /** False where trip or recording begins or ends between the cordons: passed, but not scored. */
+  isComplete: boolean;
 }
