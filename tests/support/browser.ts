@@ -31,7 +31,7 @@ export async function signInAs(context: BrowserContext, role: Role): Promise<voi
   await context.addCookies([{ name: "tailmark-session", value, url, httpOnly: true, sameSite: "Lax" }]);
 }
 
-async function userIdOf(email: string): Promise<string> {
+export async function userIdOf(email: string): Promise<string> {
   const client = new Client({ connectionString: process.env.DATABASE_URL });
   await client.connect();
   try {

@@ -25,10 +25,21 @@ function canReach(account, path) {
   return spawnSync("/usr/bin/test", ["-x", path], { ...account, cwd: "/" }).status === 0;
 }
 
+/** Where the data go when a parent of the wanted folder is closed to the server's account. */
+function placeElsewhere(wanted) {
+  return join("/var/tmp", `tailmark-${shortHash(wanted)}`);
+}
+
+/** Version of the server that made the data directory, or undefined where there is none yet. */
+export function majorOfData(wanted) {
+  const file = [wanted, placeElsewhere(wanted)].map((place) => join(place, "PG_VERSION")).find((path) => existsSync(path));
+  return file === undefined ? undefined : Number(readFileSync(file, "utf8"));
+}
+
 /** The wanted data directory, or one under /var/tmp where a parent folder is closed to the server's account. */
 export function placeData(account, wanted) {
   mkdirSync(dirname(wanted), { recursive: true });
-  const place = canReach(account, dirname(wanted)) ? wanted : join("/var/tmp", `tailmark-${shortHash(wanted)}`);
+  const place = canReach(account, dirname(wanted)) ? wanted : placeElsewhere(wanted);
   refuseOtherOwner(account, place);
   return place;
 }
@@ -53,6 +64,6 @@ export function newSocketFolder(account) {
   return path;
 }
 
-export function shortHash(text) {
+function shortHash(text) {
   return createHash("sha256").update(text).digest("hex").slice(0, 12);
 }

@@ -2,7 +2,7 @@ import { spawnSync } from "node:child_process";
 import { appendFileSync, chownSync, existsSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { ensurePostgres } from "./postgres-binaries.mjs";
-import { makeFolderFor, newSocketFolder, placeData, serverAccount } from "./postgres-place.mjs";
+import { majorOfData, makeFolderFor, newSocketFolder, placeData, serverAccount } from "./postgres-place.mjs";
 import { anyFreePort } from "./ports.mjs";
 import { step } from "./progress.mjs";
 import { run, SetupError } from "./run.mjs";
@@ -16,8 +16,7 @@ const DATABASE = "tailmark";
  * Answers the address of the database and a function that stops the server.
  */
 export async function startPostgres({ wanted, password, volatile = false }) {
-  const madeWith = existsSync(join(wanted, "PG_VERSION")) ? Number(readFileSync(join(wanted, "PG_VERSION"), "utf8")) : undefined;
-  const bin = await ensurePostgres(madeWith);
+  const bin = await ensurePostgres(majorOfData(wanted));
   const account = serverAccount();
   const data = placeData(account, wanted);
   const server = { bin, account, data, log: join(data, "server.log") };
