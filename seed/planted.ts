@@ -61,7 +61,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
       expectation: "Out of step with Harbour Road: platoons that come over the bridge arrive on red. Mean delay of the through movement above 22 s; in step it would be below 13 s.",
     },
     {
-      ...PM, kind: "spillback-chain", junctionId: "VM126", approachBearingDeg: 189, turn: "through", saturation: 1.04, upstreamIds: ["VM127", "VM128"],
+      ...PM, kind: "spillback-chain", junctionId: "VM126", approachBearingDeg: 189, turn: "through", saturation: 1.07, upstreamIds: ["VM127", "VM128"],
       expectation: "Harbour Road outbound cannot discharge at Quay Street: the queue fills the block and stands back through the two junctions behind.",
     },
     {
