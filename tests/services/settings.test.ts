@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { settings } from "@/db/schema";
+import { settings, uploads } from "@/db/schema";
 import { CitySettings } from "@/domain/settings";
 import { listAudit } from "@/services/audit/list-audit";
 import { getSettings } from "@/services/settings/get-settings";
@@ -24,5 +24,19 @@ describe("the city's settings", () => {
     await expect(saveSettings(admin, { ...valid, timeZone: "Mars/Olympus" })).rejects.toThrow("Not a time zone");
     const periods = { ...valid.periods, am: { fromMin: 600, toMin: 540 } };
     await expect(saveSettings(admin, { ...valid, periods })).rejects.toThrow("must end after it begins");
+  });
+
+  it("keep time zone and side of the road once pings are being read in; the rest may change", async () => {
+    const admin = await testContext("admin");
+    const before = await getSettings(admin);
+    await admin.db.insert(uploads).values({
+      kind: "pings", fileName: "monday.csv", storageKey: "uploads/x", bytes: 1, sha256: "0", state: "reading", createdAt: admin.now,
+    });
+    await expect(saveSettings(admin, { ...before, timeZone: "Europe/Lisbon" })).rejects.toThrow("The time zone cannot change any more");
+    const mirrored = saveSettings(admin, { ...before, driveSide: before.driveSide === "right" ? "left" : "right" });
+    await expect(mirrored).rejects.toMatchObject({ code: "conflict", fieldErrors: { driveSide: [expect.stringContaining("legs and turns")] } });
+    expect(await getSettings(admin)).toEqual(before);
+    await saveSettings(admin, { ...before, cityName: "Varnmouth and Isle" });
+    expect((await getSettings(admin)).cityName).toBe("Varnmouth and Isle");
   });
 });

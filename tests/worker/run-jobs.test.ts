@@ -151,8 +151,35 @@ describe("running", () => {
     other.release(true);
   });
 
+  it("gives a job up whose workers have died as often as it may run", async () => {
+    await ctx.queue.enqueue(plain, { n: 5 });
+    await ctx.db.execute(sql`update pgboss.job set state = 'active', retry_count = retry_limit, started_on = now() - interval '1 minute'`);
+    const givenUp: number[] = [];
+    await start(handler(plain, async () => undefined, async (_ctx, { n }) => void givenUp.push(n)));
+    expect(await states()).toEqual(["failed"]);
+    expect(givenUp).toEqual([5]);
+  });
+
+  it("runs a job again that a stopping worker left off, even on its last run, and counts it as none", async () => {
+    await ctx.queue.enqueue(plain, { n: 9 });
+    await ctx.db.execute(sql`update pgboss.job set state = 'retry', retry_count = retry_limit - 1, started_on = now()`);
+    const isLast: boolean[] = [];
+    await start(
+      handler(plain, async (_ctx, _payload, run) => {
+        isLast.push(run.isLast);
+        await new Promise((_, reject) => run.signal.addEventListener("abort", () => reject(new Error("connection lost"))));
+      }),
+    );
+    await vi.waitFor(() => expect(isLast).toEqual([true]), 10_000);
+    await runner?.stop();
+    expect((await jobs())[0]).toMatchObject({ state: "retry", retry_count: 2 });
+    await skipWaiting();
+    await start(handler(plain, async (_ctx, _payload, run) => void isLast.push(run.isLast)));
+    await vi.waitFor(async () => expect(await states()).toEqual(["completed"]), 10_000);
+    expect(isLast).toEqual([true, true]);
+  });
+
   it("tells a running job that the worker is to stop, and hands it back", async () => {
-    expectLoggedErrors();
     await ctx.queue.enqueue(plain, { n: 1 });
     let started = false;
     await start(

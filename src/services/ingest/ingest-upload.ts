@@ -1,4 +1,4 @@
-import { eq } from "drizzle-orm";
+import { and, eq } from "drizzle-orm";
 import { uploads } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import type { FileMapping } from "@/domain/upload";
@@ -6,6 +6,8 @@ import type { Context } from "../context";
 import { failUpload } from "./finish-upload";
 import { ingestJunctions } from "./ingest-junctions";
 import { ingestPings } from "./ingest-pings";
+
+const OUR_FAULT = "Reading the file failed on our side; nothing of it was kept. Start it again, and tell your administrator if it fails again.";
 
 export interface IngestRun {
   /** A failure of this run is final. */
@@ -33,8 +35,21 @@ export async function ingestUpload(ctx: Context, input: { uploadId: string }, ru
   } catch (error) {
     if (error instanceof AppError) return failUpload(ctx, upload.id, error.message, null, null);
     if (run?.isLast && !run.signal.aborted) {
-      await failUpload(ctx, upload.id, "Reading the file failed on our side; nothing of it was kept. Start it again, and tell your administrator if it fails again.", null, null);
+      await failUpload(ctx, upload.id, OUR_FAULT, null, null);
     }
+    if (run?.signal.aborted) await waitAgain(ctx, upload.id);
     throw error;
   }
+}
+
+/** The worker was told to stop in the middle: the file waits for the next one. */
+async function waitAgain(ctx: Context, uploadId: string): Promise<void> {
+  await ctx.db.update(uploads).set({ state: "waiting", progress: null }).where(and(eq(uploads.id, uploadId), eq(uploads.state, "reading")));
+}
+
+/** No worker is left that would try: each died over the file. */
+export async function giveUpUpload(ctx: Context, input: { uploadId: string }): Promise<void> {
+  if (ctx.actor.type !== "job") throw new AppError("forbidden", "Files are given up by the worker only.");
+  const [upload] = await ctx.db.select({ state: uploads.state }).from(uploads).where(eq(uploads.id, input.uploadId));
+  if (upload?.state === "waiting" || upload?.state === "reading") await failUpload(ctx, input.uploadId, OUR_FAULT, null, null);
 }

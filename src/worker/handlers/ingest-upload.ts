@@ -1,5 +1,5 @@
 import { ingestUpload as job } from "@/jobs/definitions/ingest-upload";
-import { ingestUpload } from "@/services/ingest/ingest-upload";
+import { giveUpUpload, ingestUpload } from "@/services/ingest/ingest-upload";
 import { handler } from "../handler";
 
-export const ingestUploadHandler = handler(job, ingestUpload);
+export const ingestUploadHandler = handler(job, ingestUpload, giveUpUpload);
