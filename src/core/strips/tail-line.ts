@@ -23,7 +23,7 @@ const TAIL_QUANTILE = 0.95;
 /**
  * Tail line of pooled days: for every column the 95th percentile (type 7) over days of the farthest reach
  * that each day showed in it. Where few days saw the column, neighbours up to 7.5 minutes away are pooled,
- * nearest first, until 21 samples are found. Its interval is that of the scores (Woodruff 1952); its upper end
+ * nearest first, until 21 samples are found; a column that no day saw stays NaN. Its interval is that of the scores (Woodruff 1952); its upper end
  * is at most the largest reach seen. A single day shows its own reach, without an interval. O(days × steps + columns × samples × log).
  */
 export function tailLine(reaches: Omit<DayReaches, "tailM">, columnS: number): TailLine {
@@ -69,6 +69,8 @@ function farthestByColumn(reaches: Omit<DayReaches, "tailM">, columnS: number, c
 function pooled(perDay: Float32Array, columns: number, days: number, column: number, neighbours: number): number[] {
   const found: number[] = [];
   for (let distance = 0; distance <= neighbours; distance++) {
+    // A column that no day saw stays empty: its neighbours must not speak for it.
+    if (distance === 1 && found.length === 0) break;
     for (const at of distance === 0 ? [column] : [column - distance, column + distance]) {
       if (at < 0 || at >= columns) continue;
       for (let day = 0; day < days; day++) {

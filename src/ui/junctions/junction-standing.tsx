@@ -27,7 +27,6 @@ export function JunctionStanding({ score }: { score: RankedJunction }) {
         <dt className="text-[0.92rem] text-ink-soft">level of service</dt>
         <dd className="flex min-h-9 items-center gap-2">
           <LosSquare los={score.los} />
-          {score.los && score.los.low !== score.los.high ? <span className="font-medium text-ink-soft">could be {score.los.low} to {score.los.high}</span> : null}
         </dd>
       </div>
       <div>

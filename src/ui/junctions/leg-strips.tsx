@@ -3,15 +3,19 @@
 import Link from "next/link";
 import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } from "@/domain/junction";
 import { formatLength, formatSeconds } from "@/ui/format";
+import { classNames } from "@/ui/primitives/class-names";
 import { useCity } from "@/ui/shell/city";
 import { SmallStrip } from "@/ui/strips/small-strip";
+
+/** One row where they fit. */
+const COLUMNS: Record<number, string> = { 3: "xl:grid-cols-3", 5: "xl:grid-cols-5", 6: "xl:grid-cols-3" };
 
 /** A small strip for each leg, all on one scale of time and of distance; each opens the large one. */
 export function LegStrips({ view, when }: { view: JunctionView; when: WhenQuery }) {
   const suffix = whenQueryToParams(when).toString();
   const longestM = Math.max(...view.legs.map((leg) => leg.lengthM));
   return (
-    <ul className="grid gap-x-8 gap-y-6 sm:grid-cols-2 xl:grid-cols-4">
+    <ul className={classNames("grid gap-x-8 gap-y-6 sm:grid-cols-2", COLUMNS[view.legs.length] ?? "xl:grid-cols-4")}>
       {view.legs.map((leg) => (
         <li key={leg.id} className="flex min-w-0 flex-col justify-end">
           <Link href={`/legs/${leg.id}${suffix ? `?${suffix}` : ""}`} className="group block outline-offset-4">

@@ -152,11 +152,6 @@ function MovementRow({ movement, words, leg, maxS }: { movement: MovementView; w
       </Td>
       <Td className="whitespace-nowrap">
         <LosSquare los={movement.los} />
-        {movement.los && movement.los.low !== movement.los.high ? (
-          <span aria-hidden="true" className="ml-1.5 text-sm text-ink-soft">
-            {movement.los.low} to {movement.los.high}
-          </span>
-        ) : null}
       </Td>
       <Td numeric>{formatNumber(movement.p95S, locale)}</Td>
       <Td numeric>{shareNumber(movement.stopShare?.value, locale)}</Td>

@@ -76,6 +76,16 @@ describe("tail line", () => {
     expect(line.samples[0]).toBe(21);
   });
 
+  it("lends nothing to a column that no day saw", () => {
+    const reachM = new Float32Array(2 * 40).fill(10);
+    reachM[5] = NaN;
+    reachM[40 + 5] = NaN;
+    const line = tailLine({ fromS: 0, stepS: 60, steps: 40, days: Int32Array.of(1, 2), reachM }, 60);
+    expect(line.reachM[5]).toBeNaN();
+    expect(line.samples[5]).toBe(0);
+    expect(line.reachM[6]).toBe(10);
+  });
+
   it("borrows from neighbours up to 7.5 minutes away while samples are few", () => {
     const days = Int32Array.of(1, 2);
     const reachM = new Float32Array(2 * 40).fill(10);
