@@ -17,6 +17,8 @@ export function ChoiceList<T extends string>(props: {
   value: T | null;
   onChoose: (value: T) => void;
   onSettle?: () => void;
+  /** A click only chooses: there are other fields to fill in beside the list. */
+  staysOpen?: boolean;
   children?: ReactNode;
 }) {
   const name = useId();
@@ -33,7 +35,7 @@ export function ChoiceList<T extends string>(props: {
               value={choice.value}
               checked={props.value === choice.value}
               onChange={() => props.onChoose(choice.value)}
-              onClick={(event) => event.detail > 0 && props.onSettle?.()}
+              onClick={(event) => event.detail > 0 && !props.staysOpen && props.onSettle?.()}
               onKeyDown={(event) => event.key === "Enter" && props.onSettle?.()}
             />
             <span>

@@ -39,9 +39,11 @@ function queueSentence({ reachM, storageM, spill }: RankedJunction, { units, loc
   return spill.value > 0 ? `${reach} and spills back ${formatShare(spill.value, locale)} of the time.` : `${reach}; no spillback was seen.`;
 }
 
-function standingSentence({ rank, rankLow, rankHigh }: RankedJunction): string {
-  if (rank === null || rankLow === null || rankHigh === null || rankLow === rankHigh) return "";
-  return `With other vehicles in the sample its rank could be anything from ${rankLow} to ${rankHigh}.`;
+function standingSentence({ rank, rankLow, rankHigh, delay, shrunkDelayS }: RankedJunction): string {
+  const counts = delay && shrunkDelayS !== null && Math.round(delay.value) !== Math.round(shrunkDelayS);
+  const shrunk = counts ? `For the rank it counts as ${Math.round(shrunkDelayS)} s, drawn towards the city’s mean by how few were seen` : "";
+  if (rank === null || rankLow === null || rankHigh === null || rankLow === rankHigh) return shrunk && `${shrunk}.`;
+  return `${shrunk ? `${shrunk}; with` : "With"} other vehicles in the sample the rank could be anything from ${rankLow} to ${rankHigh}.`;
 }
 
 function sampleSentence({ vehicles, days, evidence }: RankedJunction, locale: string): string {

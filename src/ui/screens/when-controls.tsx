@@ -26,6 +26,7 @@ export function DaysControl({ query, onChange, basis, locale }: WhenControlProps
           value={query.days}
           onChoose={(days) => onChange({ days })}
           onSettle={close}
+          staysOpen
         >
           <div className="mt-3 grid grid-cols-2 gap-3 border-t border-rule pt-3">
             <DateField label="From" value={query.since} max={query.until} onChange={(since) => onChange({ since })} />
@@ -67,6 +68,7 @@ export function WindowControl({ query, onChange, settings }: WhenControlProps & 
           value={own ? null : query.period}
           onChoose={(period) => onChange({ period, from: undefined, to: undefined })}
           onSettle={close}
+          staysOpen
         >
           <div className="mt-3 grid grid-cols-2 gap-3 border-t border-rule pt-3">
             <ClockField label="Or from" value={window.fromMin} options={STARTS} onChange={(from) => onChange({ from, to: Math.max(window.toMin, from + STEP_MIN) })} />

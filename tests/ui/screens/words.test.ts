@@ -19,8 +19,13 @@ describe("explanation of a junction", () => {
     expect(explainJunction(ROW, CITY)).toBe(
       "A vehicle loses 82 s on average (74 to 91); turning left from the south, 104 s. " +
         "On the fullest leg the queue reaches 268 m of the 310 m it has (95th percentile of what was seen) and spills back 11 % of the time. " +
-        "With other vehicles in the sample its rank could be anything from 1 to 4. 1,412 vehicles seen on 5 days: strong evidence.",
+        "For the rank it counts as 80 s, drawn towards the city’s mean by how few were seen; with other vehicles in the sample the rank could be anything from 1 to 4. 1,412 vehicles seen on 5 days: strong evidence.",
     );
+  });
+
+  it("says nothing of a rank that is certain and of a mean that stays what it is", () => {
+    const certain = { ...ROW, shrunkDelayS: 82.1, rankLow: 2, rankHigh: 2 };
+    expect(explainJunction(certain, CITY)).not.toContain("rank");
   });
 
   it("never reads no data as no delay", () => {
