@@ -2,8 +2,7 @@ import { quantileInPlace } from "@/core/stats/quantile-in-place";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Estimate } from "@/core/types";
 import { meanIntervals, type MeanIntervals } from "./mean-intervals";
-import { addToTally, createTally, type RatioTally } from "./ratio-tally";
-import type { ScreenDay } from "./types";
+import { createTally, type Clusters, type RatioTally } from "./ratio-tally";
 
 /** Below this many traversals no median is given, */
 export const LEAST_FOR_MEDIAN = 5;
@@ -18,39 +17,18 @@ export interface DelayLevel {
   stops: Float64Array;
 }
 
-export function createLevel(units: number): DelayLevel {
+export function createLevel(units: number, clusters: Clusters): DelayLevel {
   const zeros = (): Float64Array => new Float64Array(units);
-  return { delay: createTally(units), sumSq: zeros(), stopped: zeros(), stops: zeros() };
+  return { delay: createTally(units, clusters), sumSq: zeros(), stopped: zeros(), stops: zeros() };
 }
 
-/** Sums of the traversals of one cell. */
-export interface CellSums {
-  n: number;
-  delayS: number;
-  delaySq: number;
-  stopped: number;
-  stops: number;
-}
-
-export function sumCell(day: ScreenDay, cell: number): CellSums {
-  const from = day.offset[cell];
-  const to = day.offset[cell + 1];
-  const sums: CellSums = { n: to - from, delayS: 0, delaySq: 0, stopped: 0, stops: 0 };
-  for (let i = from; i < to; i++) {
-    const delayS = day.delayS[i];
-    sums.delayS += delayS;
-    sums.delaySq += delayS * delayS;
-    sums.stops += day.stops[i];
-    if (day.stops[i] > 0) sums.stopped += 1;
+/** Adds squares and stops of each unit to the unit that holds it; the tallies are rolled up cluster by cluster. O(units). */
+export function rollUp(from: DelayLevel, unitOf: Uint32Array, to: DelayLevel): void {
+  for (let u = 0; u < unitOf.length; u++) {
+    to.sumSq[unitOf[u]] += from.sumSq[u];
+    to.stopped[unitOf[u]] += from.stopped[u];
+    to.stops[unitOf[u]] += from.stops[u];
   }
-  return sums;
-}
-
-export function addCell(level: DelayLevel, unit: number, cell: CellSums): void {
-  addToTally(level.delay, unit, cell.n, cell.delayS);
-  level.sumSq[unit] += cell.delaySq;
-  level.stopped[unit] += cell.stopped;
-  level.stops[unit] += cell.stops;
 }
 
 export interface LevelFigures {

@@ -1,8 +1,10 @@
+import { createDistinctCounter } from "@/core/stats/distinct-counter";
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
-import { addCell, createLevel, sumCell, type DelayLevel } from "./delay-level";
+import { createLevel, rollUp, type DelayLevel } from "./delay-level";
 import { addLegQuarter, createReachLevel, type ReachLevel } from "./leg-level";
-import { closeDay, closeQuarter } from "./ratio-tally";
+import { isListed, prepareDay, type PreparedDay } from "./prepare-day";
+import { addOpenTo, clustersFor, closeDay, closeQuarter } from "./ratio-tally";
 import type { ScoreFilter, ScreenDay } from "./types";
 
 /** All that one screen adds up, by the dense numbers of the catalogue index. */
@@ -18,30 +20,42 @@ export interface GatheredScreen {
   distinct(from: number, to: number): number;
 }
 
-/** Two passes over the cells of the window: sums and counts, then places. O(traversals). */
+interface DayOfScreen {
+  slice: ScreenDay;
+  prepared: PreparedDay;
+}
+
+/** Two passes over the cells of the window: sums and counts, then places. O(cells + traversals of the window). */
 export function gatherScreen(days: readonly ScreenDay[], index: CatalogueIndex, filter: ScoreFilter): GatheredScreen {
   checkFilter(filter);
-  const ordered = [...days].sort((a, b) => a.day - b.day);
-  const movements = createLevel(index.movements.length);
-  const legs = createLevel(index.legs.length);
-  const junctions = createLevel(index.junctions.length);
-  const queues = createReachLevel(index.legs.length);
+  const ordered = [...days].sort((a, b) => a.day - b.day).map((slice): DayOfScreen => ({ slice, prepared: prepareDay(slice, index) }));
+  const clusters = clustersFor(days.length);
+  const movements = createLevel(index.movements.length, clusters);
+  const legs = createLevel(index.legs.length, clusters);
+  const junctions = createLevel(index.junctions.length, clusters);
+  const queues = createReachLevel(index.legs.length, clusters);
   const offset = new Uint32Array(index.movements.length + 1);
+  const isChosen = chosenTurns(index, filter);
   for (const day of ordered) {
-    eachCell(day, index, filter, (u, cell, isNewQuarter) => {
-      if (isNewQuarter) for (const level of [movements, legs, junctions]) closeQuarter(level.delay);
-      const sums = sumCell(day, cell);
-      addCell(movements, u, sums);
-      addCell(legs, index.legOf[u], sums);
-      addCell(junctions, index.junctionOf[u], sums);
-      offset[u + 1] += sums.n;
-    });
-    for (const level of [movements, legs, junctions]) closeDay(level.delay);
-    gatherLegs(day, index, filter, queues);
+    for (let quarter = filter.fromQuarter; quarter < filter.toQuarter; quarter++) {
+      addCells(day, quarter, isChosen, movements, offset);
+      addLegs(day, quarter, queues);
+      if (clusters === "quarters") closeCluster(closeQuarter);
+    }
+    closeCluster(closeDay);
   }
+  rollUp(movements, index.legOf, legs);
+  rollUp(movements, index.junctionOf, junctions);
   for (let u = 0; u < index.movements.length; u++) offset[u + 1] += offset[u];
-  const { delayS, vehicle } = place(ordered, index, filter, offset);
-  return { movements, legs, junctions, queues, offset, delayS, distinct: (from, to) => countDistinct(vehicle, from, to) };
+  const { delayS, vehicle } = place(ordered, filter, isChosen, offset);
+  const counter = createDistinctCounter(longestStretch(index, offset));
+  return { movements, legs, junctions, queues, offset, delayS, distinct: (from, to) => counter.count(vehicle, from, to) };
+
+  function closeCluster(close: typeof closeDay): void {
+    addOpenTo(movements.delay, index.legOf, legs.delay);
+    addOpenTo(movements.delay, index.junctionOf, junctions.delay);
+    for (const tally of [movements.delay, legs.delay, junctions.delay, queues.spill]) close(tally);
+  }
 }
 
 function checkFilter({ fromQuarter, toQuarter }: ScoreFilter): void {
@@ -50,69 +64,58 @@ function checkFilter({ fromQuarter, toQuarter }: ScoreFilter): void {
   }
 }
 
-type CellVisitor = (unit: number, cell: number, isNewQuarter: boolean) => void;
+/** 1 for the movements of the chosen turn. */
+function chosenTurns(index: CatalogueIndex, { turn }: ScoreFilter): Uint8Array {
+  const wanted = turn === null ? -1 : TURNS.indexOf(turn);
+  return index.turnOf.map((own) => (wanted < 0 || own === wanted ? 1 : 0));
+}
 
-/** Cells of the window and turn, in order of quarter; movements that the catalogue lacks are passed over. */
-function eachCell(day: ScreenDay, index: CatalogueIndex, filter: ScoreFilter, visit: CellVisitor): void {
-  const turn = filter.turn === null ? -1 : TURNS.indexOf(filter.turn);
-  let lastQuarter = -1;
-  for (let c = firstAt(day.quarter, filter.fromQuarter); c < day.cells && day.quarter[c] < filter.toQuarter; c++) {
-    const unit = index.movementByKey.get(day.movement[c]);
-    if (unit === undefined || (turn >= 0 && index.turnOf[unit] !== turn)) continue;
-    visit(unit, c, day.quarter[c] !== lastQuarter);
-    lastQuarter = day.quarter[c];
+function addCells({ slice, prepared }: DayOfScreen, quarter: number, isChosen: Uint8Array, level: DelayLevel, counts: Uint32Array): void {
+  const { base, total } = level.delay.open;
+  for (let c = prepared.quarterStart[quarter]; c < prepared.quarterStart[quarter + 1]; c++) {
+    const u = prepared.unit[c];
+    if (!isListed(u) || isChosen[u] === 0) continue;
+    const n = slice.offset[c + 1] - slice.offset[c];
+    base[u] += n;
+    total[u] += prepared.delayS[c];
+    level.sumSq[u] += prepared.delaySq[c];
+    level.stopped[u] += prepared.stopped[c];
+    level.stops[u] += prepared.stops[c];
+    counts[u + 1] += n;
   }
 }
 
-function gatherLegs(day: ScreenDay, index: CatalogueIndex, filter: ScoreFilter, queues: ReachLevel): void {
-  let lastQuarter = -1;
-  for (let k = firstAt(day.legQuarter, filter.fromQuarter); k < day.legQuarters && day.legQuarter[k] < filter.toQuarter; k++) {
-    const unit = index.legByKey.get(day.leg[k]);
-    if (unit === undefined) continue;
-    if (day.legQuarter[k] !== lastQuarter) closeQuarter(queues.spill);
-    lastQuarter = day.legQuarter[k];
-    addLegQuarter(queues, unit, {
-      reachM: day.reachM[k],
-      reachEstimateM: day.reachEstimateM[k],
-      spilledS: day.spilledS[k],
-      observedS: day.observedS[k],
-    });
+function addLegs({ slice, prepared }: DayOfScreen, quarter: number, queues: ReachLevel): void {
+  for (let k = prepared.legQuarterStart[quarter]; k < prepared.legQuarterStart[quarter + 1]; k++) {
+    if (isListed(prepared.legUnit[k])) addLegQuarter(queues, prepared.legUnit[k], slice, k);
   }
-  closeDay(queues.spill);
 }
 
-function place(days: readonly ScreenDay[], index: CatalogueIndex, filter: ScoreFilter, offset: Uint32Array): { delayS: Float32Array; vehicle: Uint32Array } {
-  const total = offset[index.movements.length];
+function place(days: DayOfScreen[], filter: ScoreFilter, isChosen: Uint8Array, offset: Uint32Array): { delayS: Float32Array; vehicle: Uint32Array } {
+  const total = offset[offset.length - 1];
   const next = offset.slice();
   const delayS = new Float32Array(total);
   const vehicle = new Uint32Array(total);
-  for (const day of days) {
-    eachCell(day, index, filter, (u, cell) => {
-      const from = day.offset[cell];
-      const to = day.offset[cell + 1];
-      delayS.set(day.delayS.subarray(from, to), next[u]);
-      vehicle.set(day.vehicle.subarray(from, to), next[u]);
-      next[u] += to - from;
-    });
+  for (const { slice, prepared } of days) {
+    const end = prepared.quarterStart[filter.toQuarter];
+    for (let c = prepared.quarterStart[filter.fromQuarter]; c < end; c++) {
+      const u = prepared.unit[c];
+      if (!isListed(u) || isChosen[u] === 0) continue;
+      let at = next[u];
+      for (let i = slice.offset[c]; i < slice.offset[c + 1]; i++, at++) {
+        delayS[at] = slice.delayS[i];
+        vehicle[at] = slice.vehicle[i];
+      }
+      next[u] = at;
+    }
   }
   return { delayS, vehicle };
 }
 
-function countDistinct(vehicle: Uint32Array, from: number, to: number): number {
-  const sorted = vehicle.slice(from, to).sort();
-  let count = 0;
-  for (let i = 0; i < sorted.length; i++) if (i === 0 || sorted[i] !== sorted[i - 1]) count++;
-  return count;
-}
-
-/** First index whose value is at least `least`; the column ascends. */
-function firstAt(column: Uint8Array, least: number): number {
-  let low = 0;
-  let high = column.length;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    if (column[middle] < least) low = middle + 1;
-    else high = middle;
+function longestStretch(index: CatalogueIndex, offset: Uint32Array): number {
+  let longest = 0;
+  for (let j = 0; j < index.junctions.length; j++) {
+    longest = Math.max(longest, offset[index.junctionOffset[j + 1]] - offset[index.junctionOffset[j]]);
   }
-  return low;
+  return longest;
 }

@@ -1,8 +1,9 @@
-import { quantileSorted } from "@/core/stats/quantile";
+import { quantileInPlace } from "@/core/stats/quantile-in-place";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Estimate } from "@/core/types";
 import { clusterVariance } from "./cluster-variance";
-import { addToTally, createTally, type RatioTally } from "./ratio-tally";
+import { addToTally, createTally, type Clusters, type RatioTally } from "./ratio-tally";
+import type { ScreenDay } from "./types";
 
 const QUARTER_S = 900;
 
@@ -13,22 +14,20 @@ export interface ReachLevel {
   reachEstimateM: number[][];
 }
 
-export function createReachLevel(units: number): ReachLevel {
+/** The columns of one entry for a leg and quarter. */
+type LegColumns = Pick<ScreenDay, "reachM" | "reachEstimateM" | "spilledS" | "observedS">;
+
+export function createReachLevel(units: number, clusters: Clusters): ReachLevel {
   const lists = (): number[][] => Array.from({ length: units }, () => []);
-  return { spill: createTally(units), reachM: lists(), reachEstimateM: lists() };
+  return { spill: createTally(units, clusters), reachM: lists(), reachEstimateM: lists() };
 }
 
-export interface LegQuarterFigures {
-  reachM: number;
-  reachEstimateM: number;
-  spilledS: number;
-  observedS: number;
-}
-
-export function addLegQuarter(level: ReachLevel, unit: number, figures: LegQuarterFigures): void {
-  if (!Number.isNaN(figures.reachM)) level.reachM[unit].push(figures.reachM);
-  if (!Number.isNaN(figures.reachEstimateM)) level.reachEstimateM[unit].push(figures.reachEstimateM);
-  if (figures.observedS > 0 && !Number.isNaN(figures.spilledS)) addToTally(level.spill, unit, figures.observedS, figures.spilledS);
+/** Adds entry k; what is missing in it is left out. */
+export function addLegQuarter(level: ReachLevel, unit: number, columns: LegColumns, k: number): void {
+  const { reachM, reachEstimateM, spilledS, observedS } = columns;
+  if (!Number.isNaN(reachM[k])) level.reachM[unit].push(reachM[k]);
+  if (!Number.isNaN(reachEstimateM[k])) level.reachEstimateM[unit].push(reachEstimateM[k]);
+  if (observedS[k] > 0 && !Number.isNaN(spilledS[k])) addToTally(level.spill, unit, observedS[k], spilledS[k]);
 }
 
 /**
@@ -47,8 +46,16 @@ export function spillEstimate(level: ReachLevel, unit: number): Estimate {
 
 /** Quantile with the interval of Woodruff (Journal of the American Statistical Association 47, 1952). */
 export function quantileEstimate(values: number[], p: number): Estimate {
+  const scratch = Float32Array.from(values);
+  const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
   if (values.length === 0) return { value: NaN, low: NaN, high: NaN };
-  const sorted = Float64Array.from(values).sort();
-  const { low, high } = wilsonInterval(p, sorted.length);
-  return { value: quantileSorted(sorted, p), low: quantileSorted(sorted, low), high: quantileSorted(sorted, high) };
+  const { low, high } = wilsonInterval(p, values.length);
+  return { value: at(p), low: at(low), high: at(high) };
+}
+
+/** Median and 95th percentile of what was observed; NaN of nothing. */
+export function reachQuantiles(values: number[]): { reachP50M: number; reachP95M: number } {
+  const scratch = Float32Array.from(values);
+  const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
+  return { reachP50M: at(0.5), reachP95M: at(0.95) };
 }

@@ -1,112 +1,111 @@
+/** What hangs together: the members of one day, or, where days are too few to tell, of one quarter of an hour. */
+export type Clusters = "days" | "quarters";
+
+/** Fewer days than this cannot speak for the spread between days; neighbouring quarters are compared instead. */
+export const LEAST_DAYS_FOR_DAY_CLUSTERS = 3;
+
+export function clustersFor(days: number): Clusters {
+  return days >= LEAST_DAYS_FOR_DAY_CLUSTERS ? "days" : "quarters";
+}
+
 /**
  * Sums for ratios total / base of many units (seconds of delay by vehicles, seconds spilled by seconds seen), together
  * with what their variance under clustering needs. Fed in order of day, then quarter: `addToTally` any number of times,
  * `closeQuarter` after each quarter, `closeDay` after each day.
  */
 export interface RatioTally {
+  clusters: Clusters;
   base: Float64Array;
   total: Float64Array;
-  /** Clusters with any base. */
+  /** Days, and clusters, with any base. */
   days: Uint32Array;
-  quarters: Uint32Array;
-  /** Sums over days of total², total × base, base². */
-  dayTT: Float64Array;
-  dayTB: Float64Array;
-  dayBB: Float64Array;
-  /** The same of the differences between neighbouring quarters of one day, and how many there are. */
-  stepTT: Float64Array;
-  stepTB: Float64Array;
-  stepBB: Float64Array;
+  count: Uint32Array;
+  /** Sum over clusters of base². */
+  baseSq: Float64Array;
+  /**
+   * Sums of squares and products of (total, base): of the days themselves, or of the differences between neighbouring
+   * quarters of one day, of which there are `steps`.
+   */
+  tt: Float64Array;
+  tb: Float64Array;
+  bb: Float64Array;
   steps: Uint32Array;
-  quarterBB: Float64Array;
-  open: { day: OpenClusters; quarter: OpenClusters; lastBase: Float64Array; lastTotal: Float64Array };
+  /** The cluster that is being filled, the one before it on the same day, and whether the day has any base yet. */
+  open: { base: Float64Array; total: Float64Array; lastBase: Float64Array; lastTotal: Float64Array; isSeen: Uint8Array };
 }
 
-interface OpenClusters {
-  touched: number[];
-  base: Float64Array;
-  total: Float64Array;
-}
-
-export function createTally(units: number): RatioTally {
+export function createTally(units: number, clusters: Clusters): RatioTally {
   const zeros = (): Float64Array => new Float64Array(units);
   return {
+    clusters,
     base: zeros(),
     total: zeros(),
     days: new Uint32Array(units),
-    quarters: new Uint32Array(units),
-    dayTT: zeros(),
-    dayTB: zeros(),
-    dayBB: zeros(),
-    stepTT: zeros(),
-    stepTB: zeros(),
-    stepBB: zeros(),
+    count: new Uint32Array(units),
+    baseSq: zeros(),
+    tt: zeros(),
+    tb: zeros(),
+    bb: zeros(),
     steps: new Uint32Array(units),
-    quarterBB: zeros(),
-    open: {
-      day: { touched: [], base: zeros(), total: zeros() },
-      quarter: { touched: [], base: zeros(), total: zeros() },
-      lastBase: zeros(),
-      lastTotal: zeros(),
-    },
+    open: { base: zeros(), total: zeros(), lastBase: zeros(), lastTotal: zeros(), isSeen: new Uint8Array(units) },
   };
 }
 
 /** Base must be positive. */
 export function addToTally(tally: RatioTally, unit: number, base: number, total: number): void {
-  addToCluster(tally.open.quarter, unit, base, total);
+  tally.open.base[unit] += base;
+  tally.open.total[unit] += total;
 }
 
-function addToCluster(cluster: OpenClusters, unit: number, base: number, total: number): void {
-  if (cluster.base[unit] === 0) cluster.touched.push(unit);
-  cluster.base[unit] += base;
-  cluster.total[unit] += total;
-}
-
-export function closeQuarter(tally: RatioTally): void {
-  const { quarter, day, lastBase, lastTotal } = tally.open;
-  for (const u of quarter.touched) {
-    const b = quarter.base[u];
-    const t = quarter.total[u];
-    if (lastBase[u] > 0) {
-      const stepB = b - lastBase[u];
-      const stepT = t - lastTotal[u];
-      tally.stepTT[u] += stepT * stepT;
-      tally.stepTB[u] += stepT * stepB;
-      tally.stepBB[u] += stepB * stepB;
-      tally.steps[u] += 1;
-    }
-    lastBase[u] = b;
-    lastTotal[u] = t;
-    tally.quarters[u] += 1;
-    tally.quarterBB[u] += b * b;
-    addToCluster(day, u, b, t);
+/** Adds what is open in `from` to the units that `unitOf` names: movements to their legs, say. O(units). */
+export function addOpenTo(from: RatioTally, unitOf: Uint32Array, tally: RatioTally): void {
+  for (let u = 0; u < unitOf.length; u++) {
+    if (from.open.base[u] > 0) addToTally(tally, unitOf[u], from.open.base[u], from.open.total[u]);
   }
-  clear(quarter);
 }
 
-/** Also closes the quarter that is open. */
+/** O(units); nothing to do where days are the clusters. */
+export function closeQuarter(tally: RatioTally): void {
+  if (tally.clusters === "quarters") closeCluster(tally);
+}
+
+/** Also closes the quarter that is open. O(units). */
 export function closeDay(tally: RatioTally): void {
-  closeQuarter(tally);
-  const { day, lastBase } = tally.open;
-  for (const u of day.touched) {
-    const b = day.base[u];
-    const t = day.total[u];
+  closeCluster(tally);
+  const { lastBase, isSeen } = tally.open;
+  for (let u = 0; u < isSeen.length; u++) tally.days[u] += isSeen[u];
+  lastBase.fill(0);
+  isSeen.fill(0);
+}
+
+function closeCluster(tally: RatioTally): void {
+  const { base, total, lastBase, lastTotal, isSeen } = tally.open;
+  const isDay = tally.clusters === "days";
+  for (let u = 0; u < base.length; u++) {
+    const b = base[u];
+    if (!(b > 0)) continue;
+    const t = total[u];
     tally.base[u] += b;
     tally.total[u] += t;
-    tally.days[u] += 1;
-    tally.dayTT[u] += t * t;
-    tally.dayTB[u] += t * b;
-    tally.dayBB[u] += b * b;
-    lastBase[u] = 0;
+    tally.baseSq[u] += b * b;
+    tally.count[u] += 1;
+    isSeen[u] = 1;
+    if (isDay) addSquares(tally, u, t, b);
+    else {
+      if (lastBase[u] > 0) {
+        addSquares(tally, u, t - lastTotal[u], b - lastBase[u]);
+        tally.steps[u] += 1;
+      }
+      lastBase[u] = b;
+      lastTotal[u] = t;
+    }
+    base[u] = 0;
+    total[u] = 0;
   }
-  clear(day);
 }
 
-function clear(cluster: OpenClusters): void {
-  for (const u of cluster.touched) {
-    cluster.base[u] = 0;
-    cluster.total[u] = 0;
-  }
-  cluster.touched.length = 0;
+function addSquares(tally: RatioTally, u: number, t: number, b: number): void {
+  tally.tt[u] += t * t;
+  tally.tb[u] += t * b;
+  tally.bb[u] += b * b;
 }

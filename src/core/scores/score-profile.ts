@@ -1,8 +1,7 @@
-import { quantile } from "@/core/stats/quantile";
 import type { Estimate } from "@/core/types";
-import { addCell, createLevel, figuresOf, sumCell } from "./delay-level";
-import { addLegQuarter, createReachLevel, spillEstimate } from "./leg-level";
-import { closeDay } from "./ratio-tally";
+import { createLevel, figuresOf, type DelayLevel } from "./delay-level";
+import { addLegQuarter, createReachLevel, reachQuantiles, spillEstimate } from "./leg-level";
+import { addToTally, clustersFor, closeDay } from "./ratio-tally";
 import type { ScreenDay } from "./types";
 
 const QUARTERS = 96;
@@ -29,21 +28,12 @@ export interface ProfileOf {
 export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): ProfileQuarter[] {
   const movements = new Set(of.movements);
   const legs = new Set(of.legs);
-  const level = createLevel(QUARTERS);
-  const queues = createReachLevel(QUARTERS);
+  const clusters = clustersFor(days.length);
+  const level = createLevel(QUARTERS, clusters);
+  const queues = createReachLevel(QUARTERS, clusters);
   for (const day of [...days].sort((a, b) => a.day - b.day)) {
-    for (let c = 0; c < day.cells; c++) {
-      if (movements.has(day.movement[c])) addCell(level, day.quarter[c], sumCell(day, c));
-    }
-    for (let k = 0; k < day.legQuarters; k++) {
-      if (!legs.has(day.leg[k])) continue;
-      addLegQuarter(queues, day.legQuarter[k], {
-        reachM: day.reachM[k],
-        reachEstimateM: day.reachEstimateM[k],
-        spilledS: day.spilledS[k],
-        observedS: day.observedS[k],
-      });
-    }
+    for (let c = 0; c < day.cells; c++) if (movements.has(day.movement[c])) addCell(level, day, c);
+    for (let k = 0; k < day.legQuarters; k++) if (legs.has(day.leg[k])) addLegQuarter(queues, day.legQuarter[k], day, k);
     for (const tally of [level.delay, queues.spill]) closeDay(tally);
   }
   const figures = figuresOf(level, new Uint8Array(QUARTERS));
@@ -52,7 +42,18 @@ export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): Profile
     vehicles: figures.vehicles(quarter),
     days: figures.days(quarter),
     delay: figures.delay(quarter),
-    reachP95M: quantile(queues.reachM[quarter], 0.95),
+    reachP95M: reachQuantiles(queues.reachM[quarter]).reachP95M,
     spill: spillEstimate(queues, quarter),
   }));
+}
+
+function addCell(level: DelayLevel, day: ScreenDay, cell: number): void {
+  const quarter = day.quarter[cell];
+  for (let i = day.offset[cell]; i < day.offset[cell + 1]; i++) {
+    const delayS = day.delayS[i];
+    addToTally(level.delay, quarter, 1, delayS);
+    level.sumSq[quarter] += delayS * delayS;
+    level.stops[quarter] += day.stops[i];
+    if (day.stops[i] > 0) level.stopped[quarter] += 1;
+  }
 }

@@ -1,12 +1,11 @@
 import { competitionRanks } from "@/core/stats/competition-ranks";
 import { rankIntervals } from "@/core/stats/rank-draws";
-import { quantile } from "@/core/stats/quantile";
 import { TURNS, type Estimate } from "@/core/types";
 import { indexCatalogue, type CatalogueIndex } from "./catalogue-index";
 import { delayQuantiles, figuresOf } from "./delay-level";
 import { evidenceOf } from "./evidence";
 import { gatherScreen, type GatheredScreen } from "./gather-screen";
-import { quantileEstimate, spillEstimate } from "./leg-level";
+import { quantileEstimate, reachQuantiles, spillEstimate } from "./leg-level";
 import { shrinkByGroup, type ShrunkUnits } from "./shrink-by-group";
 import type { Catalogue, JunctionScore, LegScore, MovementScore, ScoreFilter, ScreenDay, ScreenScores } from "./types";
 
@@ -72,8 +71,7 @@ function scoreLegs(index: CatalogueIndex, gathered: GatheredScreen): LegScore[] 
       leg: key,
       vehicles: sample.vehicles,
       delay: sample.delay,
-      reachP50M: quantile(gathered.queues.reachM[u], 0.5),
-      reachP95M: quantile(gathered.queues.reachM[u], 0.95),
+      ...reachQuantiles(gathered.queues.reachM[u]),
       reachEstimateP95M: quantileEstimate(gathered.queues.reachEstimateM[u], 0.95),
       spill: spillEstimate(gathered.queues, u),
       evidence: evidenceOf(sample),

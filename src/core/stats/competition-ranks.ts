@@ -7,7 +7,7 @@ export function competitionRanks(values: ArrayLike<number>): Float64Array {
 }
 
 /** How many of the ascending values are strictly greater than x. O(log n). */
-export function countAbove(sorted: Float64Array, x: number): number {
+function countAbove(sorted: Float64Array, x: number): number {
   let low = 0;
   let high = sorted.length;
   while (low < high) {

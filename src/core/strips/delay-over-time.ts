@@ -1,5 +1,5 @@
 import { meanIntervals } from "@/core/scores/mean-intervals";
-import { addToTally, closeDay, createTally } from "@/core/scores/ratio-tally";
+import { addToTally, clustersFor, closeDay, createTally } from "@/core/scores/ratio-tally";
 import type { TrackSet } from "./track-set";
 
 /** Mean control delay in even steps of local time; NaN where nobody passed or one vehicle says nothing about a mean. */
@@ -19,7 +19,8 @@ export interface DelayOverTime {
  */
 export function delayOverTime(set: TrackSet, crossingS: Float32Array, fromS: number, toS: number, stepS: number, include?: Uint8Array): DelayOverTime {
   const steps = Math.max(0, Math.ceil((toS - fromS) / stepS));
-  const tally = createTally(steps);
+  const days = set.day.reduce((count, day, i) => count + (i === 0 || day !== set.day[i - 1] ? 1 : 0), 0);
+  const tally = createTally(steps, clustersFor(days));
   const sumSq = new Float64Array(steps);
   const vehicles = new Uint32Array(steps);
   for (let i = 0; i < set.tracks; i++) {

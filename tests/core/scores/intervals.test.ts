@@ -2,12 +2,12 @@ import { describe, expect, it } from "vitest";
 import { clusterVariance } from "@/core/scores/cluster-variance";
 import { evidenceOf } from "@/core/scores/evidence";
 import { meanIntervals } from "@/core/scores/mean-intervals";
-import { addToTally, closeDay, closeQuarter, createTally, type RatioTally } from "@/core/scores/ratio-tally";
+import { addToTally, closeDay, closeQuarter, clustersFor, createTally, type RatioTally } from "@/core/scores/ratio-tally";
 import { normalRandom, seededRandom } from "@/core/stats/random";
 
 /** One unit; each day a list of quarters, each quarter [base, total] or null where nothing was seen. */
 function tallyOf(days: ([number, number] | null)[][]): RatioTally {
-  const tally = createTally(1);
+  const tally = createTally(1, clustersFor(days.length));
   for (const day of days) {
     for (const quarter of day) {
       if (quarter) addToTally(tally, 0, quarter[0], quarter[1]);
@@ -65,7 +65,7 @@ function coverage(world: World, seed: number): number {
   const normal = normalRandom(random);
   const shock = (cv: number): number => Math.exp(cv * normal() - (cv * cv) / 2);
   const truth = Array.from({ length: 40 }, () => 15 + 45 * random());
-  const tally = createTally(40);
+  const tally = createTally(40, clustersFor(world.days));
   const sumSq = new Float64Array(40);
   for (let day = 0; day < world.days; day++) {
     const ofDay = truth.map((mean) => mean * shock(world.dayCv));
@@ -110,7 +110,7 @@ describe("meanIntervals", () => {
   });
 
   it("does not take a few equal delays for certainty", () => {
-    const tally = createTally(2);
+    const tally = createTally(2, "quarters");
     const sumSq = Float64Array.of(3 * 40 * 40, 0);
     for (let k = 0; k < 3; k++) addToTally(tally, 0, 1, 40);
     for (const delayS of [0, 5, 30, 60, 80, 10, 45]) {
@@ -124,7 +124,7 @@ describe("meanIntervals", () => {
   });
 
   it("gives nothing for a unit that nobody passed", () => {
-    const { value, low, high } = meanIntervals(createTally(1), new Float64Array(1), new Uint8Array(1));
+    const { value, low, high } = meanIntervals(createTally(1, "days"), new Float64Array(1), new Uint8Array(1));
     expect([value[0], low[0], high[0]]).toEqual([NaN, NaN, NaN]);
   });
 });
