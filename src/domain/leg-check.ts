@@ -1,5 +1,6 @@
 import { z } from "zod";
-import type { Origin } from "@/core/types";
+import type { Origin, Turn } from "@/core/types";
+import type { ExitView } from "./junction";
 
 /** A leg in the list of what an engineer should look at, most doubtful first. */
 export interface LegToCheck {
@@ -12,6 +13,37 @@ export interface LegToCheck {
   storageM: number | null;
   origin: Origin;
   locked: boolean;
+}
+
+/** A leg with all that an engineer may settle about it. */
+export interface LegOfCheck {
+  id: number;
+  name: string;
+  bearingDeg: number;
+  /** East and north metres from the junction, from the stop line upstream. */
+  line: [number, number][];
+  lengthM: number;
+  storageM: number | null;
+  freeSpeedMs: number | null;
+  speedLimitMs: number | null;
+  lanes: number | null;
+  upstream: { junctionId: number; name: string } | null;
+  origin: Origin;
+  stopLineOrigin: Origin | "default";
+  locked: boolean;
+  support: number;
+  doubts: string[];
+}
+
+/** How far the pings around a junction are matched to its changed legs; null: all of them. */
+export type Rematch = "waiting" | "running" | "failed" | null;
+
+export interface LegCheckView {
+  junction: { id: number; code: string; name: string };
+  legs: LegOfCheck[];
+  exits: ExitView[];
+  movements: { id: number; legId: number; exitId: number; turn: Turn; turnDeg: number }[];
+  rematch: Rematch;
 }
 
 /** Pings near a junction as they were seen: a sample that shows where vehicles drive, without saying which vehicle. */

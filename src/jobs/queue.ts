@@ -9,8 +9,12 @@ export interface Queue {
    * Throws a ZodError for a payload of the wrong shape.
    */
   enqueue<P extends object>(job: JobDefinition<P>, payload: NoInfer<P>, options?: { db?: Db }): Promise<boolean>;
+  /** How far the newest jobs are whose payload holds `part`; null where none waits, runs or has failed last. */
+  stateOf<P extends object>(job: JobDefinition<P>, part: NoInfer<Partial<P>>): Promise<JobState | null>;
   stop(): Promise<void>;
 }
+
+export type JobState = "waiting" | "running" | "failed";
 
 /** A queue that can only be filled. Its tables are made by `prepareQueues`. */
 export function openQueue(db: Db): Queue {
@@ -27,6 +31,15 @@ export function openQueue(db: Db): Queue {
         ...(options.db && { db: executorOf(options.db) }),
       });
       return id !== null;
+    },
+    async stateOf(job, part) {
+      const { rows } = await db.execute<{ state: string }>(
+        sql`select state::text as state from pgboss.job where name = ${job.name} and data @> ${JSON.stringify(part)}::jsonb order by created_on desc, id limit 100`,
+      );
+      const states = rows.map((row) => row.state);
+      if (states.includes("active")) return "running";
+      if (states.includes("created") || states.includes("retry")) return "waiting";
+      return states[0] === "failed" ? "failed" : null;
     },
     async stop() {
       if (started) await boss.stop({ graceful: false, close: false });

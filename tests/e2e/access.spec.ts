@@ -39,6 +39,7 @@ const ROUTES: Record<string, Who> = {
   "GET /api/junctions": ["engineer", "technician", "admin"],
   "GET /api/junctions/[junctionId]": ["engineer", "technician", "admin"],
   "GET /api/junctions/[junctionId]/cloud": ["engineer", "admin"],
+  "GET /api/junctions/[junctionId]/legs": ["engineer", "admin"],
   "GET /api/legs": ["engineer", "admin"],
   "GET /api/legs/[legId]": ["engineer", "technician", "admin"],
   "GET /api/legs/[legId]/tracks": ["engineer", "technician", "admin"],
@@ -50,6 +51,7 @@ const ROUTES: Record<string, Who> = {
   "GET /api/uploads/[uploadId]": ["engineer", "admin"],
   "GET /api/uploads/[uploadId]/detected": ["engineer"],
   "GET /api/uploads/[uploadId]/rejects": ["engineer", "admin"],
+  "DELETE /api/uploads/[uploadId]": ["engineer"],
   "POST /api/uploads": ["engineer"],
   "POST /api/uploads/[uploadId]/start": ["engineer"],
 };

@@ -1,12 +1,14 @@
 import { Readable } from "node:stream";
-import { count, eq } from "drizzle-orm";
+import { count, eq, sql } from "drizzle-orm";
 import { beforeAll, describe, expect, it } from "vitest";
 import { auditEvents, junctions, legs, movements, traversals } from "@/db/schema";
 import { ScreenQuery } from "@/domain/screen";
 import type { UploadKind } from "@/domain/upload";
+import { reprocessLegs as reprocessJob } from "@/jobs/definitions/reprocess-legs";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
 import { reprocessLegs } from "@/services/ingest/reprocess-legs";
 import { editLeg } from "@/services/legs/edit-leg";
+import { getLegCheck } from "@/services/legs/get-leg-check";
 import { listLegsToCheck } from "@/services/legs/list-legs-to-check";
 import { addLeg, mergeLegs } from "@/services/legs/redraw-legs";
 import { getJunction } from "@/services/junctions/get-junction";
@@ -41,6 +43,23 @@ beforeAll(async () => {
 });
 
 describe("leg check", () => {
+  it("shows one junction's legs, turns and exits, and says when its pings are being matched anew", async () => {
+    const check = await getLegCheck(engineer, { junctionId });
+    expect(check).toMatchObject({ junction: { code: "X1" }, rematch: null });
+    expect(check.legs).toHaveLength(4);
+    expect(check.legs[0]).toMatchObject({ locked: false, origin: "derived", speedLimitMs: null, lanes: null });
+    for (const leg of check.legs) expect(check.movements.filter((movement) => movement.legId === leg.id).length).toBeGreaterThan(0);
+    expect(check.exits.length).toBeGreaterThanOrEqual(4);
+    await job.queue.enqueue(reprocessJob, { junctionIds: [junctionId] });
+    expect((await getLegCheck(engineer, { junctionId })).rematch).toBe("waiting");
+    await job.db.execute(sql`update pgboss.job set state = 'active', started_on = now() where name = 'reprocess-legs'`);
+    expect((await getLegCheck(engineer, { junctionId })).rematch).toBe("running");
+    await job.db.execute(sql`update pgboss.job set state = 'failed' where name = 'reprocess-legs'`);
+    expect((await getLegCheck(engineer, { junctionId })).rematch).toBe("failed");
+    await job.db.execute(sql`delete from pgboss.job where name = 'reprocess-legs'`);
+    await expect(getLegCheck(engineer, { junctionId: "none" })).rejects.toThrow("Junction none does not exist");
+  });
+
   it("lists every leg with the sentences that make it doubtful", async () => {
     const list = await listLegsToCheck(engineer);
     expect(list).toHaveLength(4);
@@ -49,7 +68,7 @@ describe("leg check", () => {
 
   it("matching anew without a change gives the same traversals and delay", async () => {
     const before = { perLeg: await perLeg(), view: await getJunction(engineer, { junctionId, when: ScreenQuery.parse({ period: "all" }) }) };
-    await reprocessLegs(job, { junctionId });
+    await reprocessLegs(job, { junctionIds: [junctionId] });
     expect(await perLeg()).toEqual(before.perLeg);
     const after = await getJunction(engineer, { junctionId, when: ScreenQuery.parse({ period: "all" }) });
     expect(after.score?.vehicles).toBe(before.view.score?.vehicles);
@@ -59,7 +78,7 @@ describe("leg check", () => {
   it("keeps a leg's new name and limits through the next upload", async () => {
     const [leg] = await legRows();
     await editLeg(engineer, { legId: leg.id, name: "Mill Lane inbound", speedLimitKmh: 50, storageM: 120 });
-    await reprocessLegs(job, { junctionId });
+    await reprocessLegs(job, { junctionIds: [junctionId] });
     await upload("pings", "tuesday.csv", crossingPings({ startMs: Date.parse("2026-03-04T08:00:00Z") }));
     const [kept] = await job.db.select().from(legs).where(eq(legs.id, leg.id));
     expect(kept).toMatchObject({ name: "Mill Lane inbound", storageM: 120, locked: true, doubts: [] });
@@ -82,7 +101,7 @@ describe("leg check", () => {
     expect(await legRows()).toHaveLength(rows.length + 1);
     await mergeLegs(engineer, { keepId: rows[0].id, dropId: added.legId });
     await mergeLegs(engineer, { keepId: rows[0].id, dropId: rows[3].id });
-    await reprocessLegs(job, { junctionId });
+    await reprocessLegs(job, { junctionIds: [junctionId] });
     expect((await legRows()).map((leg) => leg.id)).toEqual(rows.slice(0, 3).map((leg) => leg.id));
     expect((await perLeg()).has(rows[3].id)).toBe(false);
     expect(await job.db.select({ n: count() }).from(movements).where(eq(movements.legId, rows[3].id))).toEqual([{ n: 0 }]);

@@ -30,6 +30,7 @@ import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 
 /** Pings farther than this from the changed junctions take no part in their legs or in those of their neighbours, degrees. */
 const NEAR_LAT_DEG = 0.02;
+const CELLS_PER_ROW = 100_000;
 
 interface Job {
   network: Network;
@@ -40,11 +41,11 @@ interface Job {
   timeZone: string;
 }
 
-/** Matches the stored pings around one junction anew, file by file; figures elsewhere stay as they are. Safe to run twice. */
-export async function reprocessLegs(ctx: Context, input: { junctionId: number }, run?: { signal: AbortSignal }): Promise<void> {
+/** Matches the stored pings around some junctions anew, file by file; figures elsewhere stay as they are. Safe to run twice. */
+export async function reprocessLegs(ctx: Context, input: { junctionIds: number[] }, run?: { signal: AbortSignal }): Promise<void> {
   if (ctx.actor.type !== "job") throw new AppError("forbidden", "Legs are matched anew by the worker only.");
   await withAdvisoryLock(ctx.db, INGEST_LOCK, async () => {
-    const job = await prepare(ctx, input.junctionId);
+    const job = await prepare(ctx, input.junctionIds);
     if (!job) return;
     const files = await ctx.db
       .select({ id: uploads.id, storageKey: uploads.storageKey, mapping: uploads.mapping })
@@ -63,29 +64,35 @@ export async function reprocessLegs(ctx: Context, input: { junctionId: number },
   });
 }
 
-async function prepare(ctx: Context, junctionId: number): Promise<Job | null> {
+async function prepare(ctx: Context, junctionIds: number[]): Promise<Job | null> {
   const { driveSide, timeZone } = await getSettings(ctx);
   const points = await readJunctionPoints(ctx.db);
   const stored = await readNetwork(ctx.db, points, driveSide);
-  const home = points.findIndex((point) => point.key === junctionId);
-  if (!stored || home < 0) return null;
+  const wanted = new Set(junctionIds);
+  const home = new Set(points.flatMap((point, i) => (wanted.has(point.key) ? [i] : [])));
+  if (!stored || home.size === 0) return null;
   const network = relistMovements(stored);
   const touched = Uint8Array.from(network.legs, (leg) =>
-    leg.junction === home || (leg.upstreamExit >= 0 && network.exits[leg.upstreamExit].junction === home) ? 1 : 0,
+    home.has(leg.junction) || (leg.upstreamExit >= 0 && home.has(network.exits[leg.upstreamExit].junction)) ? 1 : 0,
   );
-  const near = new Set([home]);
+  const near = new Set(home);
   network.legs.forEach((leg, l) => touched[l] && near.add(leg.junction));
   const keys = await bulkTransaction(ctx.db, (tx) => storeNetwork(tx, network, points.map((point) => point.key)));
-  return { network, keys, touched, timeZone, choose: (batch) => chooseNear(batch, [...near].map((i) => points[i])) };
+  return { network, keys, touched, timeZone, choose: nearOnly([...near].map((i) => points[i])) };
 }
 
-function chooseNear(batch: PingColumns, points: readonly KeyedPoint[]): PingColumns {
-  const lonDeg = NEAR_LAT_DEG / Math.cos((points[0].lat * Math.PI) / 180);
+/** Keeps the pings of the cells, NEAR_LAT_DEG high, that the junctions lie in or beside. */
+function nearOnly(points: readonly KeyedPoint[]): Job["choose"] {
+  const lonDeg = NEAR_LAT_DEG / Math.max(0.05, Math.cos((points[0].lat * Math.PI) / 180));
+  const cellOf = (lat: number, lon: number, up = 0, right = 0) => (Math.floor(lat / NEAR_LAT_DEG) + up) * CELLS_PER_ROW + Math.floor(lon / lonDeg) + right;
+  const steps = [-1, 0, 1];
+  const cells = new Set(points.flatMap(({ lat, lon }) => steps.flatMap((up) => steps.map((right) => cellOf(lat, lon, up, right)))));
+  return (batch) => chosenRows(batch, (i) => cells.has(cellOf(batch.lat[i], batch.lon[i])));
+}
+
+function chosenRows(batch: PingColumns, isChosen: (i: number) => boolean): PingColumns {
   const chosen: number[] = [];
-  for (let i = 0; i < batch.length; i++) {
-    const isNear = points.some((point) => Math.abs(batch.lat[i] - point.lat) < NEAR_LAT_DEG && Math.abs(batch.lon[i] - point.lon) < lonDeg);
-    if (isNear) chosen.push(i);
-  }
+  for (let i = 0; i < batch.length; i++) if (isChosen(i)) chosen.push(i);
   const some = emptyColumns(chosen.length);
   some.length = chosen.length;
   for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) {

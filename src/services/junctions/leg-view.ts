@@ -11,7 +11,7 @@ export function pairsOf(line: readonly number[]): [number, number][] {
   return pairs;
 }
 
-function lengthOf(line: readonly number[]): number {
+export function lengthOf(line: readonly number[]): number {
   let length = 0;
   for (let i = 2; i + 1 < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
   return length;

@@ -28,7 +28,7 @@ export async function afterLegChange(
 ): Promise<void> {
   await recordAudit(db, ctx, { action: change.action, subject: change.subject, detail: change.detail });
   await raiseDataVersion(db);
-  if (change.rematch) await ctx.queue.enqueue(reprocessLegs, { junctionId: change.junctionId }, { db });
+  if (change.rematch) await ctx.queue.enqueue(reprocessLegs, { junctionIds: [change.junctionId] }, { db });
 }
 
 export async function junctionName(db: Db, junctionId: number): Promise<string> {
