@@ -54,7 +54,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
   small: [
     {
       ...PM, kind: "starved-left", junctionId: "VM130", approachBearingDeg: 13, turn: "left", saturation: 0.85,
-      expectation: "The left turn from Harbour Road gets too little green: mean delay above 80 s.",
+      expectation: "The left turn from Harbour Road gets too little green: mean delay above 50 s.",
     },
     {
       ...PM, kind: "bad-offset", junctionId: "VM138", approachBearingDeg: 185, turn: "through", offsetShift: 0.67,
@@ -65,8 +65,8 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
       expectation: "Harbour Road outbound cannot discharge at Quay Street: the queue fills the block and stands back through the two junctions behind.",
     },
     {
-      ...PM, kind: "oversaturated", junctionId: "VM104", approachBearingDeg: NaN, turn: "all", saturation: 1.0,
-      expectation: "A long pedestrian stage leaves every leg short of green: mean delay of the junction above 60 s.",
+      ...PM, kind: "oversaturated", junctionId: "VM104", approachBearingDeg: NaN, turn: "all", saturation: 0.97,
+      expectation: "A long pedestrian stage leaves every leg short of green: mean delay of the junction above 50 s.",
     },
     {
       ...PM, kind: "noisy", junctionId: "VM174", approachBearingDeg: NaN, turn: "all",

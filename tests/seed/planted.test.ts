@@ -75,9 +75,9 @@ describe("a PM peak of the small city, every vehicle counted", () => {
     for (const value of heldS(withoutFaults)) expect(value).toBeLessThan(60);
   });
 
-  it("delays every leg of the oversaturated junction beyond 60 s on average", () => {
-    expect(meanDelayS(withFaults, movementsOf("oversaturated"))).toBeGreaterThan(60);
-    expect(meanDelayS(withoutFaults, movementsOf("oversaturated"))).toBeLessThan(40);
+  it("delays the vehicles of the oversaturated junction beyond 50 s on average", () => {
+    expect(meanDelayS(withFaults, movementsOf("oversaturated"))).toBeGreaterThan(50);
+    expect(meanDelayS(withoutFaults, movementsOf("oversaturated"))).toBeLessThan(25);
   });
 
   it("leaves the noisy junction fine and little used", () => {
