@@ -27,15 +27,15 @@ export function ReportView({ rows }: { rows: RankedJunction[] }) {
   };
 
   return (
-    <div className="lg:grid lg:grid-cols-[minmax(0,1fr)_minmax(20rem,34rem)]">
+    <div className="print:block lg:grid lg:grid-cols-[minmax(0,1fr)_minmax(20rem,34rem)]">
       <div className="px-2 py-3 sm:px-4">
-        <Button className="mb-2 lg:hidden" aria-pressed={isMapOpen} onClick={() => setMapOpen(!isMapOpen)}>
+        <Button className="mb-2 lg:hidden print:hidden" aria-pressed={isMapOpen} onClick={() => setMapOpen(!isMapOpen)}>
           {isMapOpen ? "Hide the map" : "Show the map"}
         </Button>
         {isMapOpen && !isWide ? <div className="relative mb-3 h-[60dvh] border border-rule">{map()}</div> : null}
         <ReportTable rows={rows} selected={selected} onSelect={select} />
       </div>
-      <div className="hidden border-l border-rule lg:block">
+      <div className="hidden border-l border-rule lg:block print:hidden">
         <div className="sticky top-0 h-dvh">{isWide ? map() : null}</div>
       </div>
     </div>

@@ -7,6 +7,7 @@ import { useCallback, useEffect, useMemo, useRef, useState, useSyncExternalStore
 import { Layer, Map, Source, type MapMouseEvent, type MapRef } from "react-map-gl/maplibre";
 import type { RankedJunction } from "@/domain/screen";
 import type { Units } from "@/ui/format";
+import { Failed } from "@/ui/primitives/states";
 import { BaseMapLayers } from "./base-map-layers";
 import { baseMapFor, baseMapQuery } from "./base-map";
 import type { HoverStore } from "./hover-store";
@@ -38,6 +39,7 @@ const NOBODY: ReadonlySet<number> = new Set();
 
 export default function CityMap({ rows, shownIds, selected, hover, units, locale, noteOf, onSelect }: CityMapProps) {
   const [map, setMap] = useState<MapRef | null>(null);
+  const [hasFailed, setFailed] = useState(false);
   const [view, setView] = useState({ metresPerPx: 20, centreLon: 0 });
   const { data: anyBaseMap, isPending } = useQuery(baseMapQuery());
 
@@ -64,6 +66,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
   };
 
   if (!bounds) return null;
+  if (hasFailed) return <Failed title="The map could not be drawn." message="It needs WebGL, which this browser does not offer or has switched off. The list holds the same figures." />;
   return (
     <div className="absolute inset-0" role="group" aria-label="Map of the junctions. The list holds the same figures.">
       <Map
@@ -81,6 +84,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
           event.target.keyboard.disableRotation();
           event.target.getCanvas().setAttribute("aria-label", "Map; arrow keys move it, plus and minus zoom");
         }}
+        onError={() => setFailed(map === null)}
         ref={setMap}
         onIdle={onMove}
         onMove={onMove}

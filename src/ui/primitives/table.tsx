@@ -38,10 +38,10 @@ export interface SortButtonProps {
   numeric?: boolean;
 }
 
+/** The mark hangs in the gap to the right, so that figures and heads stay in line. */
 export function SortButton({ label, dir, onSort, numeric }: SortButtonProps) {
-  const alignment = numeric ? "flex-row-reverse text-right" : "text-left";
   return (
-    <button type="button" onClick={onSort} className={classNames("inline-flex min-h-6 items-end gap-0.5 leading-tight hover:text-ink", alignment, dir && "font-semibold text-ink")}>
+    <button type="button" onClick={onSort} className={classNames("relative inline-flex min-h-6 items-end leading-tight hover:text-ink", numeric ? "text-right" : "text-left", dir && "font-semibold text-ink")}>
       <span>{label}</span>
       {dir ? <SortMark dir={dir} /> : null}
     </button>
@@ -50,7 +50,7 @@ export function SortButton({ label, dir, onSort, numeric }: SortButtonProps) {
 
 function SortMark({ dir }: { dir: "asc" | "desc" }) {
   return (
-    <svg aria-hidden="true" width="7" height="12" viewBox="0 0 7 12" className="mb-0.5 shrink-0">
+    <svg aria-hidden="true" width="7" height="12" viewBox="0 0 7 12" className="absolute -right-2 bottom-0.5">
       <path d={dir === "asc" ? "M3.5 1v10M.8 4 3.5 1l2.7 3" : "M3.5 1v10M.8 8l2.7 3 2.7-3"} fill="none" stroke="#C43E1C" strokeWidth="1.5" />
     </svg>
   );

@@ -12,13 +12,14 @@ export function RankingHead({ units, query, onSort }: { units: Units; query: Scr
   return (
     <div role="rowgroup" className="sticky top-0 z-10 border-b border-ink bg-sheet">
       <div role="row" aria-rowindex={1} className={classNames(GRID, "border-l-4 border-l-transparent pb-1 pr-1 pt-2 text-sm leading-tight text-ink-soft")}>
-        {Object.entries(screenLooks(units)).map(([id, look]) => {
+        {Object.entries(screenLooks(units, query.sort)).map(([id, look]) => {
           const { sort } = look;
           const dir = sort !== null && query.sort === sort ? (query.dir ?? defaultDirection(sort)) : null;
           return (
             <div
               key={id}
               role="columnheader"
+              title={look.says}
               aria-sort={sort === null ? undefined : dir === null ? "none" : dir === "asc" ? "ascending" : "descending"}
               className={classNames(SHOWN_FROM[look.width], "min-w-0 items-end px-1.5", look.numeric && "justify-end text-right")}
             >

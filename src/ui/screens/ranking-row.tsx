@@ -16,7 +16,7 @@ export const SHOWN_FROM: Record<Width, string> = {
 export const GRID =
   "grid grid-cols-[2.4rem_minmax(0,1fr)_3.3rem_2.9rem_3.3rem] @xl:grid-cols-[2.6rem_minmax(0,1.4fr)_minmax(0,1fr)_3rem_4.6rem_2.9rem_3.3rem_3.4rem] @[44rem]:grid-cols-[2.5rem_3.6rem_minmax(0,1.2fr)_minmax(0,1fr)_2.8rem_4.4rem_2.3rem_2.9rem_3.1rem_3.1rem_3.3rem_3.3rem]";
 
-const LOOKS = screenLooks("metric");
+const LOOKS = screenLooks("metric", "rank");
 
 export interface RankingRowProps {
   row: Row<typeof SCREEN_FEATURES, RankedJunction>;

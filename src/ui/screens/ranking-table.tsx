@@ -28,7 +28,8 @@ const KEY_STEPS: Record<string, number> = { ArrowDown: 1, ArrowUp: -1, PageDown:
 export function RankingTable({ rows: data, query, maxDelayS, lastRank, selected, onSelect, onHover, onSort }: RankingTableProps) {
   const { settings, locale } = useCity();
   const list = useRef<HTMLDivElement>(null);
-  const columns = useMemo(() => screenColumns({ units: settings.units, locale, maxDelayS, lastRank }), [settings.units, locale, maxDelayS, lastRank]);
+  const { units } = settings;
+  const columns = useMemo(() => screenColumns({ units, locale, maxDelayS, lastRank, sort: query.sort }), [units, locale, maxDelayS, lastRank, query.sort]);
   const table = useTable({ features: SCREEN_FEATURES, columns, data, manualSorting: true, getRowId: (row) => String(row.junctionId) });
   const rows = table.getRowModel().rows;
   const view = useRowWindow(list, rows.length);
@@ -47,7 +48,7 @@ export function RankingTable({ rows: data, query, maxDelayS, lastRank, selected,
 
   return (
     <div role="table" aria-label="Junctions, ranked" aria-rowcount={rows.length + 1} className="@container font-table text-[0.97rem]">
-      <RankingHead units={settings.units} query={query} onSort={(sort) => onSort(sortAfter(query, sort))} />
+      <RankingHead units={units} query={query} onSort={(sort) => onSort(sortAfter(query, sort))} />
       <div ref={list} role="rowgroup" onKeyDown={onKeyDown} style={{ paddingTop: view.start * view.rowPx, paddingBottom: (rows.length - view.end) * view.rowPx }}>
         {drawn.map((row, at) => {
           const index = view.start + at;

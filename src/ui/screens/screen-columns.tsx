@@ -20,6 +20,8 @@ export type Width = "always" | "middle" | "wide";
 
 export interface ColumnLook {
   head: string;
+  /** Read out and shown on pointing, where the head alone is short. */
+  says?: string;
   sort: SortKey | null;
   width: Width;
   numeric?: boolean;
@@ -31,28 +33,38 @@ export interface ColumnScale {
   locale: string;
   maxDelayS: number;
   lastRank: number;
+  sort: SortKey;
 }
 
 const helper = createColumnHelper<typeof SCREEN_FEATURES, RankedJunction>();
 
-export function screenLooks(units: Units): Record<string, ColumnLook> {
+/** Measures without a column of their own take the last one while the list is ordered by them. */
+const GUESTS: Partial<Record<SortKey, ColumnLook>> = {
+  p95: { head: "95th pct. s/veh", says: "95th percentile of delay, seconds per vehicle", sort: "p95", width: "wide", numeric: true },
+  hours: { head: "delay seen h", says: "hours of delay of the vehicles seen", sort: "hours", width: "wide", numeric: true },
+  stops: { head: "stops /veh", says: "stops per vehicle", sort: "stops", width: "wide", numeric: true },
+};
+
+const VEHICLES: ColumnLook = { head: "vehicles seen", sort: "vehicles", width: "wide", numeric: true };
+
+export function screenLooks(units: Units, sort: SortKey): Record<string, ColumnLook> {
   return {
     rank: { head: "rank", sort: "rank", width: "always", numeric: true },
-    span: { head: "could be", sort: null, width: "wide" },
+    span: { head: "could be", says: "span of ranks that the sample allows", sort: null, width: "wide" },
     name: { head: "junction", sort: "name", width: "always" },
     worst: { head: "worst movement", sort: null, width: "middle" },
-    delay: { head: "delay s/veh", sort: "delay", width: "always", numeric: true },
-    interval: { head: "95 %", sort: null, width: "middle" },
-    los: { head: "LOS", sort: null, width: "always" },
-    reach: { head: `reach ${lengthUnit(units)}`, sort: "reach", width: "middle", numeric: true },
-    storage: { head: "storage", sort: "storage", width: "wide" },
-    spill: { head: "spills % of time", sort: "spill", width: "always", numeric: true },
+    delay: { head: "delay s/veh", says: "mean control delay, seconds per vehicle", sort: "delay", width: "always", numeric: true },
+    interval: { head: "95 %", says: "95 % interval of mean delay", sort: null, width: "middle" },
+    los: { head: "LOS", says: "level of service", sort: null, width: "always" },
+    reach: { head: `reach ${lengthUnit(units)}`, says: "95th percentile of observed reach on the fullest leg", sort: "reach", width: "middle", numeric: true },
+    storage: { head: "storage", says: "share of the storage that the reach takes", sort: "storage", width: "wide" },
+    spill: { head: "spills % of time", says: "share of time in which a leg spills back", sort: "spill", width: "always", numeric: true },
     evidence: { head: "evidence", sort: "evidence", width: "wide" },
-    vehicles: { head: "vehicles seen", sort: "vehicles", width: "wide", numeric: true },
+    last: GUESTS[sort] ?? VEHICLES,
   };
 }
 
-export function screenColumns({ units, locale, maxDelayS, lastRank }: ColumnScale) {
+export function screenColumns({ units, locale, maxDelayS, lastRank, sort }: ColumnScale) {
   return helper.columns([
     helper.display({ id: "rank", cell: ({ row: { original: row } }) => <span className="text-[1.05rem]">{row.rank ?? <NoRank />}</span> }),
     helper.display({ id: "span", cell: ({ row: { original: row } }) => <RankSpan rank={row.rank} low={row.rankLow} high={row.rankHigh} last={lastRank} /> }),
@@ -77,11 +89,18 @@ export function screenColumns({ units, locale, maxDelayS, lastRank }: ColumnScal
       cell: ({ row: { original: row } }) => <span className={classNames(row.spill && row.spill.value >= 0.1 && "font-semibold text-tail")}>{shareNumber(row.spill?.value, locale)}</span>,
     }),
     helper.display({ id: "evidence", cell: ({ row: { original: row } }) => <EvidenceBar evidence={row.evidence} /> }),
-    helper.display({ id: "vehicles", cell: ({ row: { original: row } }) => <span className="text-ink-soft">{formatNumber(row.vehicles, locale)}</span> }),
+    helper.display({ id: "last", cell: ({ row: { original: row } }) => <span className="text-ink-soft">{lastFigure(row, sort, locale)}</span> }),
   ]);
 }
 
 export type ScreenColumns = ReturnType<typeof screenColumns>;
+
+function lastFigure(row: RankedJunction, sort: SortKey, locale: string): string {
+  if (sort === "p95") return formatNumber(row.p95S, locale);
+  if (sort === "hours") return formatNumber(row.hoursSeen, locale, 1);
+  if (sort === "stops") return formatNumber(row.stopsPerVehicle, locale, 2);
+  return formatNumber(row.vehicles, locale);
+}
 
 function NoRank() {
   return (

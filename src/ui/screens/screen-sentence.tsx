@@ -1,7 +1,7 @@
 "use client";
 
 import type { ScreenQuery, ScreenResult } from "@/domain/screen";
-import { counted } from "@/ui/format";
+import { counted, formatNumber } from "@/ui/format";
 import { Sentence } from "@/ui/primitives/sentence";
 import { useCity } from "@/ui/shell/city";
 import { CorridorControl, EvidenceControl, MinDelayControl, MinSpillControl, MovementControl, SortControl } from "./filter-controls";
@@ -12,11 +12,13 @@ export function ScreenSentence(props: {
   query: ScreenQuery;
   onChange: (part: Partial<ScreenQuery>) => void;
   result: ScreenResult | undefined;
-  shown: number;
+  /** Null while the figures that were asked for are on their way. */
+  shown: number | null;
 }) {
   const { query, onChange, result } = props;
   const { settings, locale } = useCity();
-  const count = `${props.shown.toLocaleString(locale)} of ${counted(result?.total ?? 0, "junction", "junctions", locale)}`;
+  const total = counted(result?.total ?? 0, "junction", "junctions", locale);
+  const count = props.shown === null ? `counting ${total}` : `${formatNumber(props.shown, locale)} of ${total}`;
   const part = { query, onChange };
   return (
     <Sentence label="What is shown">

@@ -48,7 +48,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
     <div className="flex flex-1 flex-col lg:h-[calc(100dvh-3.3rem)] lg:min-h-[30rem] lg:flex-none">
       <h1 className="sr-only">Screen of {settings.cityName}</h1>
       <div className="border-b border-rule bg-paper px-4 py-2.5 sm:px-6">
-        <ScreenSentence query={query} onChange={change} result={result} shown={rows.length} />
+        <ScreenSentence query={query} onChange={change} result={result} shown={isPlaceholderData ? null : rows.length} />
       </div>
       {error && !result ? <Failed title="The ranking could not be read." message={error.message} onRetry={() => void refetch()} /> : null}
       {isPending ? <Loading title="Ranking the junctions" /> : null}

@@ -9,7 +9,7 @@ import { PersonMenu, type Person } from "./person-menu";
 export function DeskHeader({ places, person, cityName, home }: { places: Pick<Place, "href" | "label">[]; person: Person; cityName: string; home: string }) {
   const pathname = usePathname();
   return (
-    <header className="border-b border-ink bg-paper">
+    <header className="border-b border-ink bg-paper print:hidden">
       <a href="#content" className="sr-only focus:not-sr-only focus:absolute focus:left-3 focus:top-2 focus:z-40 focus:border focus:border-ink focus:bg-sheet focus:px-3 focus:py-1.5">
         Skip to the content
       </a>

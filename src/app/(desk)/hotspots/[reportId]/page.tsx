@@ -28,7 +28,7 @@ export default async function HotspotReportPage({ params }: { params: Promise<{ 
     <>
       <PageHead title={report.title} above={above}>
         <p className="mt-1.5 max-w-[60rem] text-lg text-ink-soft">{reportSentence(report.query, report.result, LOCALE)}</p>
-        <div className="mt-3">
+        <div className="mt-3 print:hidden">
           <ButtonLink href={`/api/hotspots/${report.id}/export`} download>
             Download as CSV
           </ButtonLink>
