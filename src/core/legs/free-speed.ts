@@ -4,7 +4,7 @@ import type { Network } from "@/core/types";
 
 /** The fastest of free drivers, and their ratio to a driver at the street's usual speed: wishes spread by about 8 %. */
 const FAST_QUANTILE = 0.95;
-const FAST_RATIO = 1.07;
+const FAST_RATIO = 1.08;
 const LEAST_SPEEDS = 8;
 /** Where no leg was measured, m/s. */
 const FALLBACK_MS = 13.9;
@@ -12,8 +12,12 @@ const FALLBACK_MS = 13.9;
 const SHORT_M = 90;
 const LONG_M = 240;
 const STREET_MOST = 40;
+/** A faster neighbour counts this much more: a leg that is never free must not tell its own free speed. */
+const FASTER_WEIGHT = 3;
 const CITY_WEIGHT = 8;
 const STRAIGHT_DEG = 30;
+/** Both directions of one street differ less in length, m. */
+const SAME_STREET_M = 40;
 
 /**
  * Free speed of each leg in m/s from speeds away from junctions. Short legs, where nobody reaches it, lean on the legs
@@ -35,7 +39,8 @@ export function estimateFreeSpeeds(network: Network, speeds: number[][]): Float6
     let sum = CITY_WEIGHT * city + (own[i] > 0 ? weight[i] * own[i] : 0);
     let total = CITY_WEIGHT + weight[i];
     for (const other of street[i]) {
-      const share = Math.min(STREET_MOST, weight[other]);
+      const isFaster = !(own[i] >= own[other]);
+      const share = Math.min(STREET_MOST, weight[other]) * (isFaster ? FASTER_WEIGHT : 1);
       if (share > 0) {
         sum += share * own[other];
         total += share;
@@ -45,12 +50,19 @@ export function estimateFreeSpeeds(network: Network, speeds: number[][]): Float6
   });
 }
 
-/** Legs that go on straight from or into each leg. */
+/** Legs that go on straight from or into each leg, and the other direction of its street. */
 function streetNeighbours(network: Network): number[][] {
   const street: number[][] = network.legs.map(() => []);
   const fedBy = new Map<number, number[]>();
   network.legs.forEach((leg, i) => {
     if (leg.upstreamExit >= 0) fedBy.set(leg.upstreamExit, [...(fedBy.get(leg.upstreamExit) ?? []), i]);
+  });
+  network.legs.forEach((leg, i) => {
+    const upstream = leg.upstreamExit >= 0 ? network.exits[leg.upstreamExit].junction : -1;
+    network.legs.forEach((other, k) => {
+      const isOtherWay = other.junction === upstream && other.upstreamExit >= 0 && network.exits[other.upstreamExit].junction === leg.junction;
+      if (isOtherWay && Math.abs(other.lengthM - leg.lengthM) < SAME_STREET_M) street[i].push(k);
+    });
   });
   for (const movement of network.movements) {
     const next = fedBy.get(movement.exit);
