@@ -22,7 +22,8 @@ if (unknown.length > 0 || (isWrite && (wanted.length > 0 || args.includes("--mai
   const rows = scenarios.flatMap((scenario) => {
     const recording = readRecording(scenario.id);
     process.stderr.write(`${scenario.id} ...\n`);
-    return samplings.map((sampling) => measureAccuracy(recording, sampling, HOLD_OUT.includes(scenario)));
+    const possible = samplings.filter(({ share }) => share * 100 in recording.oracle);
+    return possible.map((sampling) => measureAccuracy(recording, sampling, HOLD_OUT.includes(scenario)));
   });
   if (isWrite) writeAccuracy(rows);
   process.stdout.write(accuracyText(rows));

@@ -49,7 +49,7 @@ function recordTruth(measured: Measured): RecordedTruth {
   const { id, recordedShare } = measured.scenario;
   const oracle: RecordedTruth["oracle"] = {};
   for (const share of ORACLE_SHARES.filter((candidate) => candidate <= recordedShare)) {
-    oracle[share * 100] = measureTruth(measured, (vehicle) => isSampled(id, vehicle, share), false);
+    oracle[share * 100] = measureTruth(measured, (vehicle) => isSampled(id, vehicle, share), share === 1);
   }
   return {
     truth: measureTruth(measured, () => true, true),

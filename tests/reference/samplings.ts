@@ -21,7 +21,9 @@ export const MAIN_SAMPLINGS: Sampling[] = [
   { ...BASE, name: "5 %, 30 s, legs known", share: 0.05, intervalS: 30, legsKnown: true },
 ];
 
+/** Beyond them; the whole traffic only where every vehicle was recorded. */
 export const MORE_SAMPLINGS: Sampling[] = [
+  { ...BASE, name: "100 %, 5 s", share: 1, intervalS: 5 },
   { ...BASE, name: "20 %, 1 s", share: 0.2, intervalS: 1 },
   { ...BASE, name: "10 %, 10 s", share: 0.1, intervalS: 10 },
   { ...BASE, name: "2 %, 10 s", share: 0.02, intervalS: 10 },
