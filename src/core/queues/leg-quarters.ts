@@ -33,10 +33,20 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
       presenceTo: presence.offset[leg + 1],
     };
     for (const startMs of quartersOf(presence, leg)) {
+      passOver(view, startMs, chosen);
       rows.push({ leg, startMs, ...quarterFigures(view, startMs, chosen, scratch) });
     }
   }
   return columnsOf(rows);
+}
+
+/** Moves the view past what was over, memory and sight included, before the quarter began: quarters come in order. */
+function passOver(view: LegView, startMs: number, options: QueueOptions): void {
+  const { standings, presence } = view;
+  const standingMs = startMs - options.memoryS * 1000;
+  const presentMs = startMs - options.sightS * 1000;
+  while (view.standingFrom < view.standingTo && standings.toMs[view.standingFrom] < standingMs) view.standingFrom++;
+  while (view.presenceFrom < view.presenceTo && presence.toMs[view.presenceFrom] < presentMs) view.presenceFrom++;
 }
 
 /** Starts of the quarters in which any vehicle was on the leg, ascending. */

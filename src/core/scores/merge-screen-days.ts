@@ -1,11 +1,7 @@
 import type { ScreenDay } from "./types";
 
-interface Row {
-  slice: ScreenDay;
-  movement: number;
-  quarter: number;
-  at: number;
-}
+/** Slices are never changed once made: the same ones merge to the same. */
+const merged = new WeakMap<ScreenDay, { slices: readonly ScreenDay[]; result: ScreenDay }>();
 
 /**
  * One slice from several of the same local day, as from different uploads. A traversal that is in more than one
@@ -22,41 +18,59 @@ export function mergeScreenDays(slices: readonly ScreenDay[]): ScreenDay {
     }
   }
   if (slices.length === 1) return slices[0];
-  return { day, methodVersion, ...mergedCells(slices), ...mergedLegs(slices) };
+  const known = merged.get(slices[0]);
+  if (known && known.slices.length === slices.length && known.slices.every((slice, k) => slice === slices[k])) return known.result;
+  const result = { day, methodVersion, ...mergedCells(slices), ...mergedLegs(slices) };
+  merged.set(slices[0], { slices: [...slices], result });
+  return result;
 }
 
 function mergedCells(slices: readonly ScreenDay[]) {
-  const rows: Row[] = [];
-  for (const slice of slices) {
-    for (let c = 0; c < slice.cells; c++) {
-      const [movement, quarter] = [slice.movement[c], slice.quarter[c]];
-      for (let at = slice.offset[c]; at < slice.offset[c + 1]; at++) rows.push({ slice, movement, quarter, at });
-    }
-  }
-  rows.sort((a, b) => a.quarter - b.quarter || a.movement - b.movement || vehicle(a) - vehicle(b) || delay(a) - delay(b));
-  const kept = rows.filter((row, k) => k === 0 || !isSameCell(row, rows[k - 1]) || vehicle(row) !== vehicle(rows[k - 1]) || delay(row) !== delay(rows[k - 1]));
-  const starts = kept.flatMap((row, k) => (k === 0 || !isSameCell(row, kept[k - 1]) ? [k] : []));
+  const rows = flatten(slices);
+  const { quarter, movement, vehicle, delayS } = rows;
+  const isSameCell = (a: number, b: number): boolean => quarter[a] === quarter[b] && movement[a] === movement[b];
+  const order = Uint32Array.from(quarter, (_, i) => i).sort(
+    (a, b) => quarter[a] - quarter[b] || movement[a] - movement[b] || vehicle[a] - vehicle[b] || delayS[a] - delayS[b],
+  );
+  const kept = order.filter((i, k) => {
+    const last = order[k - 1];
+    return k === 0 || !isSameCell(i, last) || vehicle[i] !== vehicle[last] || delayS[i] !== delayS[last];
+  });
+  const starts: number[] = [];
+  for (let k = 0; k < kept.length; k++) if (k === 0 || !isSameCell(kept[k], kept[k - 1])) starts.push(k);
   return {
     cells: starts.length,
-    movement: Uint32Array.from(starts, (k) => kept[k].movement),
-    quarter: Uint8Array.from(starts, (k) => kept[k].quarter),
+    movement: Uint32Array.from(starts, (k) => movement[kept[k]]),
+    quarter: Uint8Array.from(starts, (k) => quarter[kept[k]]),
     offset: Uint32Array.from([...starts, kept.length]),
-    delayS: Float32Array.from(kept, delay),
-    stops: Uint8Array.from(kept, (row) => row.slice.stops[row.at]),
-    vehicle: Uint32Array.from(kept, vehicle),
+    delayS: Float32Array.from(kept, (i) => delayS[i]),
+    stops: Uint8Array.from(kept, (i) => rows.stops[i]),
+    vehicle: Uint32Array.from(kept, (i) => vehicle[i]),
   };
 }
 
-function isSameCell(a: Row, b: Row): boolean {
-  return a.quarter === b.quarter && a.movement === b.movement;
-}
-
-function vehicle(row: Row): number {
-  return row.slice.vehicle[row.at];
-}
-
-function delay(row: Row): number {
-  return row.slice.delayS[row.at];
+/** One entry for each traversal of each slice. */
+function flatten(slices: readonly ScreenDay[]) {
+  const length = slices.reduce((sum, slice) => sum + slice.delayS.length, 0);
+  const rows = {
+    quarter: new Uint8Array(length),
+    movement: new Uint32Array(length),
+    vehicle: new Uint32Array(length),
+    delayS: new Float32Array(length),
+    stops: new Uint8Array(length),
+  };
+  let from = 0;
+  for (const slice of slices) {
+    for (let c = 0; c < slice.cells; c++) {
+      rows.quarter.fill(slice.quarter[c], from + slice.offset[c], from + slice.offset[c + 1]);
+      rows.movement.fill(slice.movement[c], from + slice.offset[c], from + slice.offset[c + 1]);
+    }
+    rows.vehicle.set(slice.vehicle, from);
+    rows.delayS.set(slice.delayS, from);
+    rows.stops.set(slice.stops, from);
+    from += slice.delayS.length;
+  }
+  return rows;
 }
 
 const LEG_FIGURES = ["reachM", "reachEstimateM", "spilledS", "observedS"] as const;
