@@ -54,7 +54,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
       {isPending ? <Loading title="Ranking the junctions" /> : null}
       {result && result.total === 0 ? <ScreenEmpty kind="no-junctions" onChange={change} /> : null}
       {result && result.total > 0 ? (
-        <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(18rem,1fr)_minmax(30rem,max(47rem,41%))] lg:grid-rows-[minmax(0,1fr)]">
+        <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(24rem,1fr)_minmax(30rem,max(47rem,41%))] lg:grid-rows-[minmax(0,1fr)]">
           <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
             {isWide || isMapOpen ? (
               <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
