@@ -65,7 +65,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
       expectation: "Harbour Road outbound cannot discharge at Quay Street: the queue fills the block and stands back through the two junctions behind.",
     },
     {
-      ...PM, kind: "oversaturated", junctionId: "VM104", approachBearingDeg: NaN, turn: "all", saturation: 0.97,
+      ...PM, kind: "oversaturated", junctionId: "VM104", approachBearingDeg: NaN, turn: "all", saturation: 0.95,
       expectation: "A long pedestrian stage leaves every leg short of green: mean delay of the junction above 50 s.",
     },
     {

@@ -18,7 +18,7 @@ export function placeTimesInto(lanes: LaneState, lane: number, vehicle: number, 
   out[places] = entryS;
   out[0] = exitS;
   const isAlone = vehicle === 0 || lanes.exitS[base + ((vehicle - 1) & RING_MASK)] + REACTION_S < entryS;
-  if (isAlone && exitS - entryS <= (places * stepS) / pace(lanes.vehicle[own]) + 0.02) return false;
+  if (isAlone && exitS - entryS <= (places * stepS) / pace(lanes.vehicle[own]) + 1e-6) return false;
   const ownStepS = stepS / pace(lanes.vehicle[own]);
   for (let j = places - 1; j >= 0; j--) {
     const ahead = vehicle - j;
