@@ -11,5 +11,6 @@ export function factsText(facts: StripFacts, units: Units, locale: string): stri
   const reach = facts.reachM === null ? null : `${kind} ${formatLength(facts.reachM, units, locale)}${facts.storageM === null ? "" : ` of ${formatLength(facts.storageM, units, locale)}`}`;
   const spill = facts.spill === null ? null : `spills back ${formatShare(facts.spill.value, locale)} of the time`;
   const seen = `${counted(facts.vehicles, "vehicle", "vehicles", locale)} seen on ${counted(facts.days, "day", "days", locale)}`;
-  return `${[delay, reach, spill, seen].filter(Boolean).join("; ")}.`;
+  const every = facts.medianIntervalS === null ? null : `a ping every ${formatSeconds(facts.medianIntervalS, locale)}`;
+  return `${[delay, reach, spill, seen, every].filter(Boolean).join("; ")}.`;
 }

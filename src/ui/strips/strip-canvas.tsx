@@ -1,7 +1,7 @@
 "use client";
 
 import { useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from "react";
-import { cellAt } from "@/core/strips/strip";
+import { cellAt, cellCentre } from "@/core/strips/strip";
 import { StripOverlay } from "./strip-overlay";
 import { drawPicture, loadFaces } from "./draw-picture";
 import type { StripWords } from "./draw-lines";
@@ -27,7 +27,8 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
   const canvas = useRef<HTMLCanvasElement>(null);
   const { width, windowHeight, ratio } = useBoxWidth(box);
   const layout = useMemo(() => layoutStrip(width, stripHeight(windowHeight)), [width, windowHeight]);
-  const [cursor, setCursor] = useState<number | null>(null);
+  // A place, not a cell: it stays where it is when the cells are cut anew.
+  const [cursor, setCursor] = useState<{ tS: number; sM: number } | null>(null);
   const [spoken, setSpoken] = useState("");
 
   useEffect(() => {
@@ -44,7 +45,9 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
     };
   }, [picture, words, layout, width, ratio]);
 
-  const known = cursor !== null && cursor < picture.speeds.length ? cursor : null;
+  const { spec } = picture.strip;
+  const under = cursor === null ? -1 : cellAt(spec, cursor.tS, cursor.sM);
+  const known = under >= 0 ? under : null;
 
   function onPointer(event: PointerEvent<HTMLDivElement>) {
     const frame = event.currentTarget.getBoundingClientRect();
@@ -54,8 +57,7 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
     if (isAside) return setCursor(null);
     const scales = scalesOf(plot, picture.window);
     const s = y <= plot.top + plot.height ? scales.sOf(y) : picture.window.bottomM;
-    const cell = cellAt(picture.strip.spec, scales.tOf(x), Math.min(s, picture.window.topM - 0.01));
-    setCursor(cell >= 0 ? cell : null);
+    setCursor({ tS: scales.tOf(x), sM: Math.min(s, picture.window.topM - 0.01) });
   }
 
   function onKey(event: KeyboardEvent) {
@@ -64,7 +66,7 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
     if (!move || event.altKey || event.ctrlKey || event.metaKey) return;
     event.preventDefault();
     const next = known === null ? firstCell(picture) : moveCursor(picture, known, move, event.shiftKey ? BIG_STEP : 1);
-    setCursor(next);
+    setCursor(cellCentre(spec, next));
     setSpoken(readOutText(readOut(picture, next, reads)));
   }
 

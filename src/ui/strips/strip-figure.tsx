@@ -66,7 +66,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
         above: `${settings.cityName}: ${view.junction.name}`,
         title: legTitle(view.leg),
         caption,
-        facts: factsText(drawn.facts, units, locale),
+        facts: `${factsText(drawn.facts, units, locale)} Method version ${view.basis.methodVersion}.`,
         free: `free, ${formatSpeed(drawn.picture.freeMs, units, locale)}`,
         tail: query.day === undefined ? "tail line, 95th percentile of observed reach" : "tail line, farthest reach observed",
         cautions: [...CAUTIONS],
