@@ -53,7 +53,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
   ],
   small: [
     {
-      ...PM, kind: "starved-left", junctionId: "VM130", approachBearingDeg: 13, turn: "left", saturation: 0.85,
+      ...PM, kind: "starved-left", junctionId: "VM130", approachBearingDeg: 10, turn: "left", saturation: 0.85,
       expectation: "The left turn from Harbour Road gets too little green: mean delay above 50 s.",
     },
     {
