@@ -11,6 +11,7 @@ import { createPingGrid } from "@/core/legs/ping-grid";
 import { keepUsed } from "@/core/legs/prune";
 import { refineDraft } from "@/core/legs/refine-draft";
 import { findSeeds } from "@/core/legs/seeds";
+import { dropTwins } from "@/core/legs/twins";
 import { traceArm } from "@/core/legs/trace";
 import { measureUsage } from "@/core/legs/usage";
 import { createGraph } from "@/core/match/graph";
@@ -43,7 +44,7 @@ function proposeLegs(
   const isSparse = trips.medianIntervalS > LEARNING.sparseIntervalS;
   const reach = isSparse ? claimRings(frame, index, PASSAGES.reachM) : null;
   const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse));
-  const derived = joinArms(arms, frame);
+  const derived = dropTwins(joinArms(arms, frame));
   const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;
   return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
 }
