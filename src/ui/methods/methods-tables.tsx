@@ -3,6 +3,7 @@ import { SIGNALISED_LOS } from "@/core/stats/level-of-service";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { LosSquare } from "@/ui/primitives/los-square";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
+import { ACCURACY_BOUNDS } from "./accuracy-bounds";
 
 export function LosTable() {
   return (
@@ -111,6 +112,35 @@ export function IntervalTable() {
             <Td>{row.delay}</Td>
             <Td>{row.stops}</Td>
             <Td>{row.queues}</Td>
+          </tr>
+        ))}
+      </tbody>
+    </RuledTable>
+  );
+}
+
+export function AccuracyTable() {
+  return (
+    <RuledTable caption="Error against known truth, at most" className="min-w-[40rem]">
+      <thead>
+        <tr>
+          <Th>vehicles seen</Th>
+          <Th>a ping every</Th>
+          <Th numeric>mean delay of a movement</Th>
+          <Th numeric>of which our own</Th>
+          <Th numeric>share stopping</Th>
+          <Th numeric>farthest reach of a leg</Th>
+        </tr>
+      </thead>
+      <tbody>
+        {ACCURACY_BOUNDS.map((bound) => (
+          <tr key={bound.sampling}>
+            <Td>{bound.share}</Td>
+            <Td>{bound.every}</Td>
+            <Td numeric>{bound.delayS} s</Td>
+            <Td numeric>{bound.ownS} s</Td>
+            <Td numeric>{bound.stopShare === null ? "not claimed" : `${Math.round(bound.stopShare * 100)} points`}</Td>
+            <Td numeric>{bound.reachM === null ? "not claimed" : `${bound.reachM} m`}</Td>
           </tr>
         ))}
       </tbody>
