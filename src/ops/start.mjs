@@ -10,7 +10,7 @@ import { anyFreePort, freePortFrom } from "./setup/ports.mjs";
 import { startPostgres } from "./setup/postgres-server.mjs";
 import { startProcess, waitForAnswer } from "./setup/processes.mjs";
 import { step } from "./setup/progress.mjs";
-import { run, SetupError } from "./setup/run.mjs";
+import { endRunning, run, SetupError } from "./setup/run.mjs";
 import { takeRun } from "./setup/run-record.mjs";
 import { cloneSecrets } from "./setup/secrets.mjs";
 
@@ -28,6 +28,7 @@ async function stop(code) {
   if (isStopping) return;
   isStopping = true;
   if (undo.length > 1) process.stdout.write("\nStopping.\n");
+  await endRunning();
   for (const action of undo.reverse()) {
     await Promise.resolve(action()).catch((error) => console.error(error.message));
   }
@@ -137,9 +138,9 @@ async function main() {
 
   const settings = await settingsFor(mode, secrets, databaseUrl);
   const programs = await bundlePrograms(root);
-  const closingLines = await prepare(programs, settings.env);
-  if (isDev) placeMapWorker(root);
-  else await ensureWebBuild(root);
+  placeMapWorker(root);
+  // One waits for the database, the other for the compiler: side by side they take little longer than the longer one.
+  const [closingLines] = await Promise.all([prepare(programs, settings.env), isDev || ensureWebBuild(root)]);
   await startWeb(record, settings);
   startWorker(record, programs, settings.env);
   record.noteAddress(settings.baseUrl);

@@ -1,10 +1,23 @@
 import { spawn } from "node:child_process";
+import { once } from "node:events";
 import { createInterface } from "node:readline";
 
 const KEPT_LINES = 40;
 
 /** A failure that a person can read as it stands: no stack is printed for it. */
 export class SetupError extends Error {}
+
+const running = new Set();
+
+/** Ends the commands that still run, and waits for them: nothing may work on a database that is being stopped. */
+export async function endRunning() {
+  await Promise.all(
+    [...running].map((child) => {
+      child.kill("SIGTERM");
+      return once(child, "close");
+    }),
+  );
+}
 
 /**
  * Runs a command to its end, quietly; its last lines are in the error when it fails.
@@ -19,6 +32,8 @@ export function run(command, args, { env, cwd, uid, gid, input, onLine } = {}) {
       env: { ...process.env, NO_COLOR: "1", ...env },
       stdio: [input === undefined ? "ignore" : "pipe", "pipe", "pipe"],
     });
+    running.add(child);
+    for (const end of ["close", "error"]) child.on(end, () => running.delete(child));
     const lines = [];
     const keep = (line) => {
       lines.push(line);
