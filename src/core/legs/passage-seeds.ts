@@ -18,9 +18,11 @@ export const PASSAGES = Object.freeze({
   backM: 15,
   fastestMs: 30,
   movingMs: 2.5,
-  /** Another junction this near to the ray makes it ambiguous. */
+  /** Another junction this near to the ray lies in between. */
   besideM: 25,
   standingWeight: 0.6,
+  /** Weight of a moving ping behind another junction: it may have turned there. */
+  behindWeight: 0.35,
 });
 
 /** Called for each direction: role is inbound or outbound, bearing that of travel. */
@@ -70,8 +72,11 @@ function look(
   const sign = inbound ? 1 : -1;
   const isMoving = trips.speedMs[i] >= PASSAGES.movingMs;
   const cos = isMoving ? sign * alignment(trips.headingDeg[i], ux, uy) : wayAlignment(trips, plane, i, inbound ? from : to - 1, inbound ? -1 : 1, ux, uy);
-  if (!(cos >= (isMoving ? COS_HEADING : COS_STANDING)) || isBeside(frame, j, x, y, r)) return;
-  sink(j, inbound, bearingDeg(sign * ux, sign * uy), isMoving ? 1 : PASSAGES.standingWeight, trip);
+  if (!(cos >= (isMoving ? COS_HEADING : COS_STANDING))) return;
+  const isBehind = isBeside(frame, j, x, y, r);
+  if (isBehind && !isMoving) return;
+  const weight = isBehind ? PASSAGES.behindWeight : isMoving ? 1 : PASSAGES.standingWeight;
+  sink(j, inbound, bearingDeg(sign * ux, sign * uy), weight, trip);
 }
 
 function alignment(headingDeg: number, ux: number, uy: number): number {
