@@ -31,12 +31,17 @@ function delaySentence({ delay, worst }: RankedJunction): string {
   return worst ? `${mean}; ${TURNING[worst.turn]} ${legPlace(worst.from)}, ${Math.round(worst.delayS)} s.` : `${mean}.`;
 }
 
+/** Upper ends below this share need no words. */
+const UNSEEN_SPILL_TOLD = 0.05;
+
 function queueSentence({ reachM, storageM, spill }: RankedJunction, { units, locale }: { units: Units; locale: string }): string {
   if (reachM === null) return "How far its queues reach, this sample cannot say.";
   const room = storageM ? ` of the ${formatLength(storageM, units, locale)} it has` : "";
   const reach = `On the fullest leg the queue reaches ${formatLength(reachM, units, locale)}${room} (95th percentile of what was seen)`;
   if (!spill || formatShare(spill.value, locale) === NO_FIGURE) return `${reach}.`;
-  return spill.value > 0 ? `${reach} and spills back ${formatShare(spill.value, locale)} of the time.` : `${reach}; no spillback was seen.`;
+  if (spill.value > 0) return `${reach} and spills back ${formatShare(spill.value, locale)} of the time.`;
+  const mostly = spill.high >= UNSEEN_SPILL_TOLD ? `, though up to ${formatShare(spill.high, locale)} of the time could have gone unseen` : "";
+  return `${reach}; no spillback was seen${mostly}.`;
 }
 
 function standingSentence({ rank, rankLow, rankHigh, delay, shrunkDelayS }: RankedJunction): string {

@@ -2,7 +2,7 @@
 
 import { createColumnHelper, rowSortingFeature, tableFeatures } from "@tanstack/react-table";
 import type { RankedJunction, SortKey } from "@/domain/screen";
-import { formatNumber, formatSeconds, lengthNumber, lengthUnit, NO_FIGURE, shareNumber, type Units } from "@/ui/format";
+import { formatNumber, formatSeconds, formatShare, lengthNumber, lengthUnit, NO_FIGURE, shareNumber, type Units } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { IntervalMark } from "@/ui/primitives/interval-mark";
@@ -35,6 +35,9 @@ export interface ColumnScale {
   lastRank: number;
   sort: SortKey;
 }
+
+/** Share of time from which a leg's spillback is marked. */
+const MUCH_SPILL = 0.1;
 
 const helper = createColumnHelper<typeof SCREEN_FEATURES, RankedJunction>();
 
@@ -86,7 +89,7 @@ export function screenColumns({ units, locale, maxDelayS, lastRank, sort }: Colu
     helper.display({ id: "storage", cell: ({ row: { original: row } }) => <StorageBar reachM={row.reachM} storageM={row.storageM} /> }),
     helper.display({
       id: "spill",
-      cell: ({ row: { original: row } }) => <span className={classNames(row.spill && row.spill.value >= 0.1 && "font-semibold text-tail")}>{shareNumber(row.spill?.value, locale)}</span>,
+      cell: ({ row: { original: row } }) => <Spill row={row} locale={locale} />,
     }),
     helper.display({ id: "evidence", cell: ({ row: { original: row } }) => <EvidenceBar evidence={row.evidence} /> }),
     helper.display({ id: "last", cell: ({ row: { original: row } }) => <span className="text-ink-soft">{lastFigure(row, sort, locale)}</span> }),
@@ -107,6 +110,16 @@ function NoRank() {
     <span className="text-ink-soft" title="Not ranked: no evidence">
       <span aria-hidden="true">·</span>
       <span className="sr-only">not ranked</span>
+    </span>
+  );
+}
+
+function Spill({ row: { spill }, locale }: { row: RankedJunction; locale: string }) {
+  const isMuch = spill !== null && spill.value >= MUCH_SPILL;
+  const interval = spill ? `95 % interval ${formatShare(spill.low, locale)} to ${formatShare(spill.high, locale)}` : undefined;
+  return (
+    <span className={classNames(isMuch && "font-semibold text-tail")} title={interval}>
+      {shareNumber(spill?.value, locale)}
     </span>
   );
 }

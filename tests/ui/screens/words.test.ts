@@ -34,6 +34,12 @@ describe("explanation of a junction", () => {
     expect(explainJunction({ ...unseen, vehicles: 1 }, CITY)).toContain("Only 1 vehicle was seen");
   });
 
+  it("does not take unseen spillback for none", () => {
+    const told = (high: number) => explainJunction({ ...ROW, spill: { value: 0, low: 0, high } }, CITY);
+    expect(told(0.234)).toContain("no spillback was seen, though up to 23 % of the time could have gone unseen.");
+    expect(told(0.02)).toContain("no spillback was seen.");
+  });
+
   it("says when the sample cannot tell the reach, and speaks feet where the city does", () => {
     expect(explainJunction({ ...ROW, reachM: null }, CITY)).toContain("this sample cannot say");
     expect(explainJunction(ROW, { ...CITY, units: "us" })).toContain("879 ft of the 1,017 ft");
