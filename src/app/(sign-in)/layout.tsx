@@ -12,7 +12,7 @@ export default function SignInLayout({ children }: { children: ReactNode }) {
         </p>
         <div className="flex w-full max-w-md flex-1 flex-col justify-center gap-6 pb-16">{children}</div>
       </main>
-      <div className="hidden bg-paper pt-24 lg:block">
+      <div className="hidden bg-paper lg:block">
         <QueueDrawing />
       </div>
     </div>

@@ -4,7 +4,7 @@ import { RuledTable, Td, Th } from "@/ui/primitives/table";
 
 export function AuditTable({ events, locale, timeZone }: { events: AuditView[]; locale: string; timeZone: string }) {
   return (
-    <RuledTable caption="What was done, by whom and when">
+    <RuledTable caption="What was done, by whom and when" className="min-w-[44rem]">
       <thead>
         <tr>
           <Th>when</Th>

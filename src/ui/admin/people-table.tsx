@@ -5,7 +5,7 @@ import { PersonRow } from "./person-row";
 
 export function PeopleTable({ people, actions }: { people: PersonView[]; actions: PeopleActions }) {
   return (
-    <RuledTable caption="People with an account">
+    <RuledTable caption="People with an account" className="min-w-[52rem]">
       <thead>
         <tr>
           <Th>name</Th>

@@ -50,7 +50,7 @@ export function PersonRow({ person, actions }: { person: PersonView; actions: Pe
           person.role
         ) : (
           <span className="flex items-center gap-2">
-            <Select aria-label={`Role of ${person.name}`} className="max-w-36" value={role} disabled={isBusy} onChange={(event) => setRole(event.target.value as Role)}>
+            <Select aria-label={`Role of ${person.name}`} className="w-36" value={role} disabled={isBusy} onChange={(event) => setRole(event.target.value as Role)}>
               {ROLES.map((choice) => (
                 <option key={choice}>{choice}</option>
               ))}
