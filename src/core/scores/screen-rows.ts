@@ -1,4 +1,5 @@
 import { QUARTER_MS } from "@/core/queues/options";
+import { mean } from "@/core/stats/mean";
 import { quantile } from "@/core/stats/quantile";
 import { TURNS, type LegQuarters, type Network, type Traversals, type Turn } from "@/core/types";
 import { LEAST_FOR_P95 } from "./delay-level";
@@ -97,7 +98,6 @@ function rowOf(group: Group, network: Network, traversals: Traversals, queue: Le
   const delays = members.map((i) => traversals.delayS[i]);
   const stops = members.map((i) => traversals.stops[i]);
   const n = members.length;
-  const sum = (values: number[]): number => values.reduce((total, value) => total + value, 0);
   return {
     junction: leg.junction,
     leg: group.leg,
@@ -105,10 +105,10 @@ function rowOf(group: Group, network: Network, traversals: Traversals, queue: Le
     turn: TURNS[group.turn],
     startMs: Number.isNaN(group.startMs) ? null : group.startMs,
     vehicles: n,
-    meanDelayS: sum(delays) / n,
+    meanDelayS: mean(delays),
     p95DelayS: n >= LEAST_FOR_P95 ? quantile(delays, 0.95) : NaN,
     stopShare: stops.filter((s) => s > 0).length / n,
-    stopsPerVehicle: sum(stops) / n,
+    stopsPerVehicle: mean(stops),
     queueReachM: queue ? queue.reachM : NaN,
     spillbackShare: queue && queue.observedS > 0 ? queue.spilledS / queue.observedS : NaN,
   };

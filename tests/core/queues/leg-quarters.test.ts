@@ -157,6 +157,20 @@ describe("what the sample does not see", () => {
     expect(Math.abs(penetrationFromQueues(oneLeg(), traversalsOf(courses)) - 0.2)).toBeLessThan(0.04);
   });
 
+  it("is not misled by legs of two lanes, which show twice the share", () => {
+    const network = oneLeg();
+    const courses: TestCourse[] = [];
+    const one = shockwaveCourses(0.1).courses;
+    const two = shockwaveCourses(0.2).courses;
+    for (let leg = 0; leg < 10; leg++) {
+      network.legs[leg] = { ...network.legs[0], id: `L${leg}` };
+      network.movements[leg] = { ...network.movements[0], id: `L${leg}>E`, leg };
+      courses.push(...(leg < 4 ? one : two).map((c) => ({ ...c, movement: leg })));
+    }
+    const share = penetrationFromQueues(network, traversalsOf(courses));
+    expect(Math.abs(share - 0.1)).toBeLessThan(0.03);
+  });
+
   it("says nothing of the share from a handful of queues", () => {
     expect(penetrationFromQueues(oneLeg(), traversalsOf([stopping(START, 8, 40)]))).toBeNaN();
   });
