@@ -15,29 +15,44 @@ export const TUNING: Scenario[] = [
     id: "town",
     title: "irregular town of bent streets, gaps and diagonals, the simulator's own drivers",
     seed: 404, columns: 6, rows: 4, spacingM: 190, jitterM: 42, gapShare: 0.18, diagonalShare: 0.35,
-    perHour: 210, cycleS: 84, vehicles: "default",
+    perHour: 210, cycleS: 84, signalShare: 1, oneWayColumns: [], oneWayRows: [], vehicles: "default",
   }),
   mirrorScenario(
     townScenario({
       id: "left", title: "", seed: 505, columns: 4, rows: 4, spacingM: 230, jitterM: 55, gapShare: 0.12, diagonalShare: 0.3,
-      perHour: 200, cycleS: 90, vehicles: "calm",
+      perHour: 200, cycleS: 90, signalShare: 1, oneWayColumns: [], oneWayRows: [], vehicles: "calm",
     }),
     "left",
     "irregular town with left-hand driving",
   ),
+  townScenario({
+    id: "centre",
+    title: "dense city centre: blocks of 70 to 130 m, one-way streets, every second crossing without a signal",
+    seed: 919, columns: 7, rows: 6, spacingM: 98, jitterM: 22, gapShare: 0.12, diagonalShare: 0.12,
+    perHour: 235, cycleS: 72, signalShare: 0.6, oneWayColumns: [2, 3], oneWayRows: [2, 3], vehicles: "default",
+  }),
 ];
 
 /** Kept aside while the core was tuned. */
 export const HOLD_OUT: Scenario[] = [
   leftArterial(),
   oddBScenario(),
+  leftCentre(),
   townScenario({
     id: "town-b",
     title: "another irregular town, denser and busier",
     seed: 818, columns: 5, rows: 5, spacingM: 160, jitterM: 34, gapShare: 0.14, diagonalShare: 0.25,
-    perHour: 250, cycleS: 76, vehicles: "calm",
+    perHour: 250, cycleS: 76, signalShare: 1, oneWayColumns: [], oneWayRows: [], vehicles: "calm",
   }),
 ];
+
+function leftCentre(): Scenario {
+  const options = {
+    id: "centre-left", title: "", seed: 1021, columns: 6, rows: 6, spacingM: 105, jitterM: 26, gapShare: 0.15, diagonalShare: 0.15,
+    perHour: 200, cycleS: 80, signalShare: 0.65, oneWayColumns: [2, 3], oneWayRows: [0, 3], vehicles: "calm" as const,
+  };
+  return mirrorScenario(townScenario(options), "centre-left", "dense city centre with one-way streets, left-hand driving");
+}
 
 function leftArterial(): Scenario {
   const { scenario, bays } = arterialBScenario();

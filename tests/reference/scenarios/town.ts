@@ -16,6 +16,11 @@ export interface TownOptions {
   gapShare: number;
   diagonalShare: number;
   perHour: number;
+  /** Share of the crossings that have a signal; the rest give way. */
+  signalShare: number;
+  /** Lattice lines of one-way traffic, alternating in direction; two lanes wide. */
+  oneWayColumns: number[];
+  oneWayRows: number[];
   cycleS: number;
   vehicles: Scenario["vehicles"];
 }
@@ -24,7 +29,7 @@ export interface TownOptions {
 const LEAST_ANGLE_DEG = 40;
 const FRINGE_M = 290;
 
-/** An irregular town: a bent lattice with gaps and diagonals, signals where three streets and more meet. */
+/** An irregular town: a bent lattice with gaps, diagonals and one-way streets, signals where three streets and more meet. */
 export function townScenario(options: TownOptions): Scenario {
   const random = createRandom(options.seed);
   const kit = new StreetKit();
@@ -41,14 +46,15 @@ export function townScenario(options: TownOptions): Scenario {
     for (let j = 0; j < options.rows; j++) {
       for (const [di, dj] of [[1, 0], [0, 1]]) {
         const isGap = random.next() < options.gapShare && lanesOf(i, j, di === 1) === 1;
-        if (isInside(i + di, j + dj) && !isGap) kit.twoWay(at(i, j), at(i + di, j + dj), { lanes: lanesOf(i, j, di === 1) });
+        if (isInside(i + di, j + dj) && !isGap) layStreet(kit, options, at(i, j), at(i + di, j + dj), di === 1 ? { row: j } : { column: i }, lanesOf(i, j, di === 1));
       }
       if (random.next() < options.diagonalShare && isInside(i + 1, j + 1)) tryDiagonal(kit, at(i, j), at(i + 1, j + 1));
     }
   }
   const flows = addFringe(kit, options, at, lanesOf);
   const degree = (node: NodeSpec) => kit.edges.filter((edge) => edge.to === node.id).length;
-  for (const node of kit.nodes) if (node.kind === "priority" && degree(node) >= 3) node.kind = "signal";
+  const isCrossing = (node: NodeSpec) => node.kind === "priority" && new Set([...neighbours(kit, node)]).size >= 3 && degree(node) >= 2;
+  for (const node of kit.nodes) if (isCrossing(node) && random.next() < options.signalShare) node.kind = "signal";
   kit.traffic(flows, true);
   return {
     id: options.id,
@@ -73,6 +79,22 @@ export function townScenario(options: TownOptions): Scenario {
     recordedShare: 0.2,
     vehicles: options.vehicles,
   };
+}
+
+function neighbours(kit: StreetKit, node: NodeSpec): string[] {
+  return kit.edges.filter((edge) => edge.to === node.id || edge.from === node.id).map((edge) => (edge.to === node.id ? edge.from : edge.to));
+}
+
+/** +1 where a lattice line runs one-way towards higher indices, -1 towards lower ones, 0 where it goes both ways. */
+function directionOf(options: TownOptions, line: { row?: number; column?: number }): number {
+  const place = line.row !== undefined ? options.oneWayRows.indexOf(line.row) : options.oneWayColumns.indexOf(line.column ?? -1);
+  return place < 0 ? 0 : place % 2 === 0 ? 1 : -1;
+}
+
+function layStreet(kit: StreetKit, options: TownOptions, from: string, to: string, line: { row?: number; column?: number }, lanes: number) {
+  const direction = directionOf(options, line);
+  if (direction === 0) kit.twoWay(from, to, { lanes });
+  else kit.oneWay(direction > 0 ? from : to, direction > 0 ? to : from, { lanes: 2 });
 }
 
 function tryDiagonal(kit: StreetKit, from: string, to: string) {
@@ -100,8 +122,11 @@ function addFringe(
     if (!node) return;
     const id = kit.node(`X${i}${j}${isRow ? "r" : "c"}`, node.x + dx * FRINGE_M, node.y + dy * FRINGE_M, "end");
     const lanes = lanesOf(i, j, isRow);
-    kit.twoWay(id, node.id, { lanes });
-    flows[id] = options.perHour * (lanes === 2 ? 2 : 1);
+    const direction = directionOf(options, isRow ? { row: j } : { column: i });
+    const isInwards = direction * (dx + dy) < 0;
+    if (direction === 0) kit.twoWay(id, node.id, { lanes });
+    else kit.oneWay(isInwards ? id : node.id, isInwards ? node.id : id, { lanes: 2 });
+    flows[id] = options.perHour * (lanes === 2 || direction !== 0 ? 2 : 1);
   };
   for (let j = 0; j < options.rows; j++) {
     if (j % 2 === 1) lead(0, j, -1, 0.12, true);
