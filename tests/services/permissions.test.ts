@@ -21,6 +21,7 @@ const NEEDS: Record<string, Permission> = {
   getCoverage: "coverage.view",
   getJunction: "junction.view",
   getLegStrip: "strip.view",
+  getLegCheck: "leg.view",
   getPingCloud: "leg.view",
   getReport: "hotspots.view",
   getTracks: "strip.view",

@@ -102,6 +102,7 @@ function JunctionBody({ view, when }: { view: JunctionView; when: WhenQuery }) {
 function Above({ view, when }: { view: JunctionView; when: WhenQuery }) {
   const { locale } = useCity();
   const maySeeScreen = useCan("screen.view");
+  const mayCheckLegs = useCan("leg.view");
   const suffix = whenQueryToParams(when).toString();
   const facts = [
     view.code,
@@ -115,6 +116,11 @@ function Above({ view, when }: { view: JunctionView; when: WhenQuery }) {
       <Link className="text-link" href={maySeeScreen ? `/screen${suffix ? `?${suffix}&` : "?"}at=${view.id}` : "/junctions"}>
         {maySeeScreen ? "On the screen" : "All junctions"}
       </Link>
+      {mayCheckLegs ? (
+        <Link className="text-link ml-4" href={`/data/legs/${view.id}`}>
+          Check its legs
+        </Link>
+      ) : null}
       <span className="ml-4">{facts.join(" · ")}</span>
       {view.notes ? <span className="block">{view.notes}</span> : null}
     </>

@@ -1,6 +1,7 @@
 "use client";
 
 import { useQuery, useQueryClient } from "@tanstack/react-query";
+import Link from "next/link";
 import { useEffect, useRef, type ReactNode } from "react";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";
 import { useCan, useCity } from "@/ui/shell/city";
@@ -15,6 +16,7 @@ export function DataView() {
   const coverage = useQuery(coverageQuery());
   const { locale } = useCity();
   const canSend = useCan("upload.create");
+  const mayCheckLegs = useCan("leg.view");
   return (
     <>
       <PageHead title="Data">{coverage.data ? <p className="mt-1 text-[1.05rem] text-ink-soft">{coverageSentence(coverage.data, locale)}</p> : null}</PageHead>
@@ -35,6 +37,17 @@ export function DataView() {
             {coverage.isError ? <Failed title="Coverage could not be read." message={coverage.error.message} onRetry={() => void coverage.refetch()} /> : null}
             {coverage.data ? <CoveragePanel coverage={coverage.data} /> : null}
           </Part>
+          {mayCheckLegs ? (
+            <Part title="Legs">
+              <p className="max-w-xl">
+                Legs are found in the pings or drawn in a file.{" "}
+                <Link className="text-link" href="/data/legs">
+                  Check the legs
+                </Link>
+                , those in doubt first.
+              </p>
+            </Part>
+          ) : null}
         </div>
       </div>
     </>

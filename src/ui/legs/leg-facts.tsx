@@ -1,0 +1,60 @@
+"use client";
+
+import Link from "next/link";
+import type { LegCheckView, LegOfCheck } from "@/domain/leg-check";
+import { formatLength, formatNumber, formatSpeed } from "@/ui/format";
+import { TurnArrow } from "@/ui/screens/turn-arrow";
+import { TURN_WORDS } from "@/ui/screens/phrases";
+import { useCity } from "@/ui/shell/city";
+import { originWords, stopLineWords } from "./leg-words";
+
+/** What is known of a leg, and what is doubtful about it. */
+export function LegFacts({ leg, movements }: { leg: LegOfCheck; movements: LegCheckView["movements"] }) {
+  const { settings, locale } = useCity();
+  const turns = movements.filter((movement) => movement.legId === leg.id);
+  const facts: [string, React.ReactNode][] = [
+    ["line", originWords(leg.origin)],
+    ["stop line", stopLineWords(leg.stopLineOrigin)],
+    ["seen by", `${formatNumber(leg.support, locale)} vehicles`],
+    ["followed for", formatLength(leg.lengthM, settings.units, locale)],
+    ["storage", formatLength(leg.storageM, settings.units, locale)],
+    ["free speed", formatSpeed(leg.freeSpeedMs, settings.units, locale)],
+    ["speed limit", formatSpeed(leg.speedLimitMs, settings.units, locale)],
+    ["lanes", formatNumber(leg.lanes, locale)],
+    ["comes from", leg.upstream ? <Link className="text-link" href={`/data/legs/${leg.upstream.junctionId}`}>{leg.upstream.name}</Link> : "no known junction"],
+    ["turns", <Turns key="turns" turns={turns} />],
+  ];
+  return (
+    <>
+      {leg.doubts.length > 0 ? (
+        <ul aria-label="Doubts" className="flex flex-col gap-1 border-l-[3px] border-tail pl-3">
+          {leg.doubts.map((doubt) => (
+            <li key={doubt}>{doubt}</li>
+          ))}
+        </ul>
+      ) : null}
+      <dl className="grid grid-cols-[auto_minmax(0,1fr)] gap-x-4 gap-y-0.5 font-table text-[0.95rem]">
+        {facts.map(([name, value]) => (
+          <div key={name} className="contents">
+            <dt className="text-ink-soft">{name}</dt>
+            <dd>{value}</dd>
+          </div>
+        ))}
+      </dl>
+    </>
+  );
+}
+
+function Turns({ turns }: { turns: LegCheckView["movements"] }) {
+  const { locale } = useCity();
+  if (turns.length === 0) return <>none seen</>;
+  return (
+    <span className="flex flex-wrap gap-x-4">
+      {turns.map((turn) => (
+        <span key={turn.id} className="whitespace-nowrap">
+          <TurnArrow turn={turn.turn} /> {TURN_WORDS[turn.turn]} {formatNumber(Math.abs(turn.turnDeg), locale)}°
+        </span>
+      ))}
+    </span>
+  );
+}
