@@ -16,10 +16,13 @@ const root = fileURLToPath(new URL("../..", import.meta.url)).replace(/\/$/, "")
 const results = join(root, ".data/test");
 const modules = join(root, "node_modules");
 
+/** A log in a file is read without colours. */
+const PLAIN = process.stdout.isTTY ? {} : { NO_COLOR: "1", FORCE_COLOR: undefined };
+
 /** Runs a Node program with its output shown; answers its exit code. A signal to us ends it too. */
 function show(program, args, env = {}) {
   return new Promise((resolve) => {
-    const child = spawn(process.execPath, [join(modules, program), ...args], { cwd: root, stdio: ["ignore", "inherit", "inherit"], env: { ...process.env, ...env } });
+    const child = spawn(process.execPath, [join(modules, program), ...args], { cwd: root, stdio: ["ignore", "inherit", "inherit"], env: { ...process.env, ...PLAIN, ...env } });
     child.on("close", (code, signal) => resolve(signal ? 1 : code));
   });
 }
