@@ -17,8 +17,7 @@ export function ScreenSentence(props: {
 }) {
   const { query, onChange, result } = props;
   const { settings, locale } = useCity();
-  const total = counted(result?.total ?? 0, "junction", "junctions", locale);
-  const count = props.shown === null ? `counting ${total}` : `${formatNumber(props.shown, locale)} of ${total}`;
+  const count = countPhrase(result?.total, props.shown, locale);
   const part = { query, onChange };
   return (
     <Sentence label="What is shown">
@@ -32,4 +31,10 @@ export function ScreenSentence(props: {
       , <SortControl {...part} />.
     </Sentence>
   );
+}
+
+function countPhrase(total: number | undefined, shown: number | null, locale: string): string {
+  if (total === undefined) return "junctions not counted";
+  const all = counted(total, "junction", "junctions", locale);
+  return shown === null ? `counting ${all}` : `${formatNumber(shown, locale)} of ${all}`;
 }

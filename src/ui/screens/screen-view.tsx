@@ -7,7 +7,8 @@ import type { ActionResult } from "@/domain/errors";
 import type { RankedJunction, ScreenQuery } from "@/domain/screen";
 import { applyScreenFilter } from "@/domain/screen-filter";
 import { createHoverStore } from "@/ui/map/hover-store";
-import { Failed, Loading } from "@/ui/primitives/states";
+import { RequestFailed } from "@/ui/primitives/request-failed";
+import { Loading } from "@/ui/primitives/states";
 import { useMediaQuery } from "@/ui/primitives/use-media-query";
 import { useCity } from "@/ui/shell/city";
 import { movementName } from "./explain";
@@ -50,7 +51,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
       <div className="border-b border-rule bg-paper px-4 py-2.5 sm:px-6">
         <ScreenSentence query={query} onChange={change} result={result} shown={isPlaceholderData ? null : rows.length} />
       </div>
-      {error && !result ? <Failed title="The ranking could not be read." message={error.message} onRetry={() => void refetch()} /> : null}
+      {error && !result ? <RequestFailed title="The ranking could not be read." error={error} onRetry={() => void refetch()} /> : null}
       {isPending ? <Loading title="Ranking the junctions" /> : null}
       {result && result.total === 0 ? <ScreenEmpty kind="no-junctions" onChange={change} /> : null}
       {result && result.total > 0 ? (
