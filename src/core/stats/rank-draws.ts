@@ -8,12 +8,14 @@ export interface RankIntervals {
 }
 
 const BUCKETS = 8192;
+/** Up to so many units are compared one by one, which costs no more than the buckets. */
+const FEW = 64;
 
 /**
  * Interval of each unit's rank (1 for the largest) by draws from independent normal posteriors, as league tables
  * need it (Goldstein and Spiegelhalter, JRSS A 159, 1996). `tail` is cut off at each end. The same seed gives the
- * same answer. Drawn values closer than 1/8192 of their span share a rank. O(draws × (units + 8192)); memory
- * units × units × 2 bytes.
+ * same answer. With more than 64 units, drawn values closer than 1/8192 of their span share a rank.
+ * O(draws × (units + 8192)); memory units × units × 2 bytes.
  */
 export function rankIntervals(
   value: ArrayLike<number>,
@@ -36,10 +38,19 @@ export function rankIntervals(
       if (x < least) least = x;
       if (x > most) most = x;
     }
-    countAboveBuckets(drawn, least, most, above);
-    for (let i = 0; i < units; i++) counts[i * units + above[bucketOf(drawn[i], least, most) + 1]] += 1;
+    if (units > FEW) countAboveBuckets(drawn, least, most, above);
+    for (let i = 0; i < units; i++) {
+      const better = units > FEW ? above[bucketOf(drawn[i], least, most) + 1] : countAbove(drawn, drawn[i]);
+      counts[i * units + better] += 1;
+    }
   }
   return summarise(counts, units, draws, tail);
+}
+
+function countAbove(drawn: Float64Array, x: number): number {
+  let above = 0;
+  for (const other of drawn) if (other > x) above++;
+  return above;
 }
 
 function bucketOf(x: number, least: number, most: number): number {

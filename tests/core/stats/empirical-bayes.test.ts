@@ -51,6 +51,12 @@ describe("ranks", () => {
     expect([...sure.high]).toEqual([1, 3, 2]);
   });
 
+  it("are exact for many units, too", () => {
+    const values = Array.from({ length: 150 }, (_, i) => (i * 37) % 150);
+    const { low, high, expected } = rankIntervals(values, new Float64Array(150), { draws: 10, seed: 1 });
+    values.forEach((value, i) => expect([low[i], high[i], expected[i]]).toEqual([150 - value, 150 - value, expect.closeTo(150 - value, 9)]));
+  });
+
   it("cover the true rank about 95 times in 100", () => {
     const normal = normalRandom(seededRandom(11));
     let covered = 0;
