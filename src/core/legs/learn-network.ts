@@ -33,7 +33,9 @@ export function learnFromTrips(
   const kept = keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
-  return withMovements(junctions, legs, exits, options);
+  const tripsBetween = (leg: number, exit: number): number =>
+    usage.movement.get(kept.legFrom[leg] * network.exits.length + kept.exitFrom[exit]) ?? 0;
+  return withMovements(junctions, legs, exits, options, tripsBetween);
 }
 
 function proposeLegs(
@@ -49,9 +51,11 @@ function proposeLegs(
   return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
 }
 
-function withMovements(junctions: JunctionPoint[], legs: Leg[], exits: Exit[], options: CoreOptions): Network {
+function withMovements(
+  junctions: JunctionPoint[], legs: Leg[], exits: Exit[], options: CoreOptions, tripsBetween?: (leg: number, exit: number) => number,
+): Network {
   const base = { junctions, legs, exits, driveSide: options.driveSide };
-  return { ...base, movements: listMovements(base) };
+  return { ...base, movements: listMovements(base, tripsBetween) };
 }
 
 function claimRings(frame: Frame, index: JunctionIndex, radiusM: number): ReturnType<JunctionIndex["claim"]> {

@@ -11,11 +11,17 @@ const LEAST_SHARE = 0.01;
 /** Speeds from which on a leg's own free speed replaces one learned earlier. */
 const PLENTY_SPEEDS = 60;
 
+/** What stays of a draft, and which draft leg and exit each one was. */
+export interface Kept extends Joined {
+  legFrom: number[];
+  exitFrom: number[];
+}
+
 /**
  * Drops legs and exits that matched traffic does not use, except drawn and carried ones, and sets stop line, support,
  * free speed and storage of the rest.
  */
-export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Joined {
+export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Kept {
   const busiest = new Float64Array(draft.junctions.length);
   draft.legs.forEach((leg, i) => (busiest[leg.junction] = Math.max(busiest[leg.junction], usage.leg[i])));
   const isUsed = (n: number, junction: number): boolean => n >= Math.max(LEAST_TRIPS, LEAST_SHARE * busiest[junction]);
@@ -34,7 +40,13 @@ export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Jo
     const isFed = leg.upstreamExit >= 0 && (usage.fed[i] > 0 || carried.has(leg.id) || leg.origin !== "derived");
     return settleLeg(leg, isFed ? keptExit[leg.upstreamExit] : -1, usage, i, free[i], carried.has(leg.id));
   });
-  return placeBoxEdges(legs.filter((_, i) => stays[i]), exits);
+  const placed = placeBoxEdges(legs.filter((_, i) => stays[i]), exits);
+  const numbers = (count: number): number[] => Array.from({ length: count }, (_, i) => i);
+  return {
+    ...placed,
+    legFrom: numbers(draft.legs.length).filter((i) => stays[i]),
+    exitFrom: numbers(draft.exits.length).filter((i) => keptExit[i] >= 0),
+  };
 }
 
 function settleLeg(leg: Leg, upstreamExit: number, usage: Usage, i: number, freeSpeedMs: number, isCarried: boolean): Leg {

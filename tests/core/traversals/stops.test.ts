@@ -1,52 +1,39 @@
 import { describe, expect, it } from "vitest";
-import { createCourse, type Course } from "@/core/traversals/course";
+import { createCourse, KNOTS } from "@/core/traversals/course";
+import { fillGaps } from "@/core/traversals/fill-gaps";
 import { summariseStops } from "@/core/traversals/stops";
-
-function courseOf(rows: [seconds: number, distance: number, kmh: number][]): Course {
-  const course = createCourse(rows.length);
-  course.length = rows.length;
-  rows.forEach(([s, d, kmh], i) => {
-    course.tMs[i] = s * 1000;
-    course.distanceM[i] = d;
-    course.speedMs[i] = kmh / 3.6;
-  });
-  return course;
-}
+import { courseOf } from "./courses";
 
 describe("stops", () => {
   it("counts one stop while the vehicle only creeps: below 5 km/h until above 10 km/h", () => {
     const course = courseOf([[0, 0, 40], [5, 40, 4], [10, 42, 8], [15, 48, 3], [20, 50, 12], [25, 90, 40]]);
-    const seen = summariseStops(course, 0, 25_000, 14, 0, 200);
-    expect(seen.stops).toBe(1);
-    expect(seen.firstStopAtM).toBe(40);
-    expect(seen.inferred).toBe(false);
-    expect(seen.hasLongSteps).toBe(false);
+    const seen = summariseStops(course, 0, 25_000, 0, 200);
+    expect(seen).toMatchObject({ stops: 1, firstStopAtM: 40, inferred: false, hasLongSteps: false });
+    // Standing or creeping from the ping at 5 s to the last slow one at 15 s.
+    expect(seen.stoppedS).toBe(5);
   });
 
   it("counts a second stop after 10 km/h was passed", () => {
     const course = courseOf([[0, 0, 40], [5, 40, 0], [10, 60, 20], [15, 90, 0], [20, 110, 30]]);
-    expect(summariseStops(course, 0, 20_000, 14, 0, 200).stops).toBe(2);
-  });
-
-  // 200 m at 10 m/s are 20 s; braking and speeding up lose 10 / 5.2 + 10 / 3.8 = 4.55 s; 40 s leave 15.45 s of standing.
-  it("infers a stop between pings that the time cannot explain otherwise", () => {
-    const seen = summariseStops(courseOf([[0, 0, 36], [40, 200, 36]]), 0, 40_000, 10, 0, 300);
-    expect(seen.stops).toBe(1);
-    expect(seen.inferred).toBe(true);
-    expect(seen.stoppedS).toBeCloseTo(15.445, 2);
-    expect(seen.firstStopAtM).toBeNaN();
-  });
-
-  it("infers none where slow driving explains the time", () => {
-    const seen = summariseStops(courseOf([[0, 0, 36], [24, 200, 36]]), 0, 24_000, 10, 0, 300);
-    expect(seen.stops).toBe(0);
-    expect(seen.hasLongSteps).toBe(true);
+    expect(summariseStops(course, 0, 20_000, 0, 200).stops).toBe(2);
   });
 
   it("counts only between the two times and places only on the stretch", () => {
     const course = courseOf([[0, 0, 0], [5, 0, 0], [10, 50, 40], [15, 100, 0], [20, 150, 40]]);
-    const seen = summariseStops(course, 10_000, 20_000, 14, 90, 200);
-    expect(seen.stops).toBe(1);
-    expect(seen.firstStopAtM).toBe(100);
+    expect(summariseStops(course, 10_000, 20_000, 90, 200)).toMatchObject({ stops: 1, firstStopAtM: 100 });
+  });
+
+  it("says that a stop was inferred, and that steps were long enough to hide one", () => {
+    const filled = createCourse(16);
+    fillGaps(courseOf([[0, 0, 36], [40, 200, 36]], 10), [150], filled);
+    const seen = summariseStops(filled, 0, 40_000, 0, 300);
+    expect(seen).toMatchObject({ stops: 1, inferred: true, hasLongSteps: true });
+  });
+
+  it("gives no place to a stop that kinematics cannot place", () => {
+    const filled = createCourse(16);
+    fillGaps(courseOf([[0, 0, 36], [60, 400, 36]], 10), [390], filled);
+    expect(filled.kind.slice(0, filled.length)).toContain(KNOTS.unplaced);
+    expect(summariseStops(filled, 0, 60_000, 0, 500).firstStopAtM).toBeNaN();
   });
 });
