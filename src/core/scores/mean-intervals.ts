@@ -20,8 +20,8 @@ export interface MeanIntervals {
 }
 
 /**
- * Mean delay of each unit with a 95 % interval that holds for traversals which hang together by day, queue and
- * vehicle. `sumSq` are the sums of squared delays, `group` the peers (a small whole number for each unit).
+ * Mean delay of each unit with a 95 % interval that holds for traversals which hang together by day and queue; how
+ * many vehicles they are of counts in the evidence grade. `sumSq` are the sums of squared delays, `group` the peers (a small whole number for each unit).
  *
  * Three steps, each shrinking a variance to that of peers as Smyth does (Statistical Applications in Genetics and
  * Molecular Biology 3, 2004): spread of single delays to the peers' spread; design effect 1 + (m - 1) ρ with the
