@@ -7,6 +7,7 @@ import { penetrationFromQueues } from "@/core/queues/penetration";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
 import { localQuarter } from "@/core/scores/local-time";
 import { encodeScreenDay } from "@/core/scores/screen-day-codec";
+import { keepSettledReferences } from "@/core/traversals/settled";
 import type { Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
@@ -86,6 +87,7 @@ async function matchAndStore(
   const network = learnNetwork(await learningSample(store), points, index, { driveSide: settings.driveSide }, prior);
   const matched = await matchAll(network, store, index, counts, progress);
   setReferences(network, matched.traversals);
+  if (prior) keepSettledReferences(network, matched.traversals, prior);
 
   await progress.tell("score", 0.2, counts.rowsRead);
   const vehicleHash = vehicleHashes(await vehicleKey(ctx.db), names);
