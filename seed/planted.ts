@@ -39,7 +39,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
       expectation: "Out of step with its neighbours: platoons going east on Coast Road arrive on red. Mean delay of the through movement above 22 s; in step it would be below 10 s.",
     },
     {
-      ...PM, kind: "spillback-chain", junctionId: "VM126", approachBearingDeg: 189, turn: "through", saturation: 1.18, upstreamIds: ["VM127", "VM128"],
+      ...PM, kind: "spillback-chain", junctionId: "VM126", approachBearingDeg: 189, turn: "through", saturation: 1.19, upstreamIds: ["VM127", "VM128"],
       expectation: "Harbour Road outbound cannot discharge at Quay Street: the queue fills the block and stands back through the two junctions behind.",
     },
     {
@@ -53,7 +53,7 @@ export const PLANTED: Record<CityScale, PlantedProblem[]> = {
   ],
   small: [
     {
-      ...PM, kind: "starved-left", junctionId: "VM130", approachBearingDeg: 10, turn: "left", saturation: 0.85,
+      ...PM, kind: "starved-left", junctionId: "VM130", approachBearingDeg: 10, turn: "left", saturation: 0.88,
       expectation: "The left turn from Harbour Road gets too little green: mean delay above 50 s.",
     },
     {

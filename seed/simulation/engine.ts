@@ -5,7 +5,7 @@ import { createTraffic, routeOf, SLOT_S, turnAfter, type SimulationInput, type S
 /** Vehicles about to enter may queue for so long in front of the lane; beyond, they try again later. */
 const ENTRY_QUEUE_S = 20;
 /** Whoever sees no way into a full street for so long drives round it. */
-const DETOUR_S = 60;
+const DETOUR_S = 35;
 /** Whoever is shut in for so long gives up and parks: keeps a standstill from locking the city. */
 const GIVE_UP_S = 300;
 const SWEEP_SLOTS = 20;

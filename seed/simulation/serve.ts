@@ -66,8 +66,10 @@ function cross(traffic: Traffic, lane: number, trip: number, route: Route, arriv
     holdFor(traffic, lane, target, slotStartS);
     return false;
   }
-  const isTooLate = room > atS && (room >= slotEndS || clock.nextGreenS(movement, room) > room);
-  if (isTooLate) {
+  const isAfterGreen = room > atS && clock.nextGreenS(movement, room) > room;
+  if (isAfterGreen || (room > atS && room >= slotEndS)) {
+    // Room that comes after the green is no room: the driver counts the wait from now.
+    if (isAfterGreen && Number.isNaN(lanes.blockedSinceS[lane])) lanes.blockedSinceS[lane] = slotStartS;
     calendar.schedule(lane, Math.max(room, slotEndS));
     return false;
   }
