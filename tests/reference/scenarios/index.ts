@@ -1,4 +1,5 @@
 import { arterialBScenario, arterialScenario } from "./arterial";
+import { compoundScenario } from "./compound";
 import { gridScenario } from "./grid";
 import { mirrorScenario } from "./mirror";
 import { oddScenario } from "./odd";
@@ -11,6 +12,7 @@ export const TUNING: Scenario[] = [
   gridScenario(),
   arterialScenario(),
   oddScenario(),
+  compoundScenario(),
   townScenario({
     id: "town",
     title: "irregular town of bent streets, gaps and diagonals, the simulator's own drivers",

@@ -28,8 +28,8 @@ export class StreetKit {
     return part;
   }
 
-  node(id: string, x: number, y: number, kind: NodeSpec["kind"]): string {
-    this.nodes.push({ id, x: x + this.originX, y: y + this.originY, kind });
+  node(id: string, x: number, y: number, kind: NodeSpec["kind"], controller?: string): string {
+    this.nodes.push({ id, x: x + this.originX, y: y + this.originY, kind, controller });
     return id;
   }
 

@@ -8,6 +8,8 @@ export interface NodeSpec {
   /** Only signals become junctions of the city's list; the rest are bends, side streets, street ends. */
   kind: "signal" | "priority" | "end";
   name?: string;
+  /** Signals with the same controller run one program. */
+  controller?: string;
 }
 
 export interface EdgeSpec {

@@ -6,9 +6,9 @@ import { runProgram } from "./programs";
 
 /** Writes the scenario's streets as plain XML and has netconvert build the network; returns its path. */
 export function writeNetwork(scenario: Scenario, folder: string): string {
-  const nodes = scenario.nodes.map(({ id, x, y, kind }) => {
+  const nodes = scenario.nodes.map(({ id, x, y, kind, controller }) => {
     const type = kind === "signal" ? "traffic_light" : kind === "end" ? "dead_end" : "priority";
-    return `<node id="${id}" x="${x.toFixed(2)}" y="${y.toFixed(2)}" type="${type}"/>`;
+    return `<node id="${id}" x="${x.toFixed(2)}" y="${y.toFixed(2)}" type="${type}"${controller ? ` tl="${controller}"` : ""}/>`;
   });
   const edges = scenario.edges.map((edge) => edgeXml(scenario, edge));
   const connections = (scenario.connections ?? []).map(
