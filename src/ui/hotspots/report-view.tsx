@@ -4,6 +4,7 @@ import dynamic from "next/dynamic";
 import { useMemo, useState } from "react";
 import type { RankedJunction } from "@/domain/screen";
 import { createHoverStore } from "@/ui/map/hover-store";
+import { MapBoundary } from "@/ui/map/map-boundary";
 import { Button } from "@/ui/primitives/button";
 import { Loading } from "@/ui/primitives/states";
 import { useMediaQuery } from "@/ui/primitives/use-media-query";
@@ -42,6 +43,10 @@ export function ReportView({ rows }: { rows: RankedJunction[] }) {
   );
 
   function map() {
-    return <CityMap rows={rows} shownIds={ids} selected={selected} hover={hover} units={settings.units} locale={locale} noteOf={() => null} onSelect={select} />;
+    return (
+      <MapBoundary>
+        <CityMap rows={rows} shownIds={ids} selected={selected} hover={hover} units={settings.units} locale={locale} noteOf={() => null} onSelect={select} />
+      </MapBoundary>
+    );
   }
 }

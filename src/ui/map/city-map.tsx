@@ -39,6 +39,7 @@ const NOBODY: ReadonlySet<number> = new Set();
 
 export default function CityMap({ rows, shownIds, selected, hover, units, locale, noteOf, onSelect }: CityMapProps) {
   const [map, setMap] = useState<MapRef | null>(null);
+  const [isLoaded, setLoaded] = useState(false);
   const [hasFailed, setFailed] = useState(false);
   const [view, setView] = useState({ metresPerPx: 20, centreLon: 0 });
   const { data: anyBaseMap, isPending } = useQuery(baseMapQuery());
@@ -55,9 +56,10 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
   const chosen = byId.get(selected ?? -1);
   const legsOf = useCallback((ids: ReadonlySet<number>) => new Set([...ids].flatMap((id) => byId.get(id)?.needles.map((needle) => needle.legId) ?? [])), [byId]);
   const strong = useMemo(() => (chosen ? new Set([chosen.junctionId]) : NOBODY), [chosen]);
-  useFeatureFlag(map, "dots", "shown", shownIds);
-  useFeatureFlag(map, "needles", "shown", useMemo(() => legsOf(shownIds), [legsOf, shownIds]));
-  useFeatureFlag(map, "needles", "strong", useMemo(() => legsOf(strong), [legsOf, strong]));
+  const loaded = isLoaded ? map : null;
+  useFeatureFlag(loaded, "dots", "shown", shownIds);
+  useFeatureFlag(loaded, "needles", "shown", useMemo(() => legsOf(shownIds), [legsOf, shownIds]));
+  useFeatureFlag(loaded, "needles", "strong", useMemo(() => legsOf(strong), [legsOf, strong]));
   useFollowSelection(map, chosen);
 
   const junctionAt = (event: MapMouseEvent): number | null => (map ? nearestJunction(map, event, byId, shownIds) : null);
@@ -80,6 +82,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
         minZoom={8}
         fadeDuration={0}
         onLoad={(event) => {
+          setLoaded(true);
           event.target.touchZoomRotate.disableRotation();
           event.target.keyboard.disableRotation();
           event.target.getCanvas().setAttribute("aria-label", "Map; arrow keys move it, plus and minus zoom");

@@ -7,6 +7,7 @@ import type { ActionResult } from "@/domain/errors";
 import type { RankedJunction, ScreenQuery } from "@/domain/screen";
 import { applyScreenFilter } from "@/domain/screen-filter";
 import { createHoverStore } from "@/ui/map/hover-store";
+import { MapBoundary } from "@/ui/map/map-boundary";
 import { RequestFailed } from "@/ui/primitives/request-failed";
 import { Loading } from "@/ui/primitives/states";
 import { useMediaQuery } from "@/ui/primitives/use-media-query";
@@ -58,7 +59,9 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
         <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(24rem,1fr)_minmax(30rem,max(47rem,41%))] lg:grid-rows-[minmax(0,1fr)]">
           <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
             {isWide || isMapOpen ? (
-              <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
+              <MapBoundary>
+                <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
+              </MapBoundary>
             ) : null}
           </div>
           <div className="flex min-h-0 flex-col" aria-busy={isPlaceholderData}>
