@@ -52,7 +52,7 @@ export interface MovementView {
   referenceS: number | null;
   referenceSource: ReferenceSource;
   referenceN: number;
-  /** Between which distances from the stop line the delay is counted, metres upstream and downstream. */
+  /** Where the delay is counted: metres upstream of the stop line, and metres down the exit from its beginning. */
   cordonUpM: number;
   cordonDownM: number;
   evidence: Evidence;

@@ -27,8 +27,8 @@ export function StripFigure({ drawn }: { drawn: DrawnStrip }) {
   const caption = captionOf(query, view, { days: daysPhrase(query, view.basis, locale), hours, cellS: picture.strip.spec.cellS }, units, locale);
   const label = `Speed on the ${legTitle(view.leg).toLowerCase()}, time across and distance to the stop line upwards. Arrow keys move from cell to cell and read it out, Shift moves ten at once.`;
   return (
-    <figure aria-label="Strip">
-      <div className="flex flex-wrap items-start justify-between gap-x-6 pt-4">
+    <figure aria-label="Strip" className="flex flex-col">
+      <div className="order-last flex flex-wrap items-start justify-between gap-x-6 pt-2 sm:order-none sm:pt-4">
         <StripLegend freeMs={picture.freeMs} isTypical={isTypical} hasStorage={view.leg.storageM !== null} />
         <TakeAlong drawn={drawn} words={words} caption={caption} />
       </div>

@@ -56,7 +56,10 @@ export function includeTurn(set: TrackSet, movements: MovementView[], turn: Stri
   return Uint8Array.from(set.movement, (id) => (turn === "any" || chosen.has(id) ? 1 : 0));
 }
 
-/** Reference time by distance over the movements that the tracks took, s/m; the free speed's where none is known. */
+/**
+ * Reference time by distance over the movements that the tracks took, s/m; the free speed's where none is known.
+ * A track ends at its exit cordon, so that its last point tells how long the way through the junction is.
+ */
 export function referencePace(set: TrackSet, include: Uint8Array, movements: MovementView[], freeMs: number): number {
   const byId = new Map(movements.map((movement) => [movement.id, movement]));
   let seconds = 0;
@@ -65,7 +68,7 @@ export function referencePace(set: TrackSet, include: Uint8Array, movements: Mov
     const movement = include[i] === 1 ? byId.get(set.movement[i]) : undefined;
     if (!movement || movement.referenceS === null) continue;
     seconds += movement.referenceS;
-    metres += movement.cordonUpM + movement.cordonDownM;
+    metres += movement.cordonUpM - set.sM[set.offset[i + 1] - 1];
   }
   return metres > 0 ? seconds / metres : 1 / freeMs;
 }

@@ -87,8 +87,8 @@ describe("picture", () => {
   });
 
   it("has a reference pace weighed by the movements that were driven", () => {
-    // Two vehicles of 31 s and one of 62 s over 310 m each.
-    expect(referencePace(set, Uint8Array.of(1, 1, 1), view.movements, 10)).toBeCloseTo(124 / 930, 9);
+    // Two vehicles of 31 s and one of 62 s, each from the cordon at 250 m to the end of its track at -40 m.
+    expect(referencePace(set, Uint8Array.of(1, 1, 1), view.movements, 10)).toBeCloseTo(124 / 870, 9);
     expect(referencePace(set, Uint8Array.of(0, 0, 0), view.movements, 10)).toBe(0.1);
   });
 
