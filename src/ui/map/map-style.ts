@@ -119,7 +119,7 @@ export const DOT_LAYER = {
   id: "dots",
   type: "circle",
   paint: {
-    "circle-radius": ["interpolate", ["linear"], ["zoom"], 11, shown(1.1, 1), 13, shown(2.2, 1.6), 15, shown(4.5, 3), 17, shown(7, 5)],
+    "circle-radius": ["interpolate", ["linear"], ["zoom"], 11, shown(1.1, 1), 13, shown(2.2, 1.6), 15, shown(3.6, 2.6), 17, shown(6, 4.5)],
     "circle-color": ["case", ["has", "rank"], COLORS.sheet, NO_DATA_COLOR],
     "circle-stroke-width": ["interpolate", ["linear"], ["zoom"], 11, 0.7, 14, 1.4],
     "circle-stroke-color": shown(COLORS.ink, "#A9A393"),
