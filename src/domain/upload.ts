@@ -1,6 +1,6 @@
 import { z } from "zod";
 
-export const UPLOAD_KINDS = ["pings", "junctions"] as const;
+export const UPLOAD_KINDS = ["pings", "junctions", "legs"] as const;
 export type UploadKind = (typeof UPLOAD_KINDS)[number];
 
 /** Received files wait for a person to settle their mapping; waiting ones for a worker. */
@@ -26,16 +26,30 @@ export const JUNCTION_FIELDS = [
   "last_retimed",
   "notes",
 ] as const;
+export const LEG_FIELDS = ["junction_id", "name", "speed_limit_kmh", "storage_m", "lanes"] as const;
 export type PingField = (typeof PING_FIELDS)[number];
 /** Fields without which a file cannot be read. */
 export const PING_NEEDS = ["vehicle_id", "timestamp", "lat", "lon"] as const satisfies readonly PingField[];
 export const JUNCTION_NEEDS = ["junction_id", "name", "lat", "lon"] as const satisfies readonly JunctionField[];
+export const LEG_NEEDS = ["junction_id"] as const satisfies readonly LegField[];
 export type JunctionField = (typeof JUNCTION_FIELDS)[number];
+export type LegField = (typeof LEG_FIELDS)[number];
 
-/** What the mapping must name: points of GeoJSON carry their own position. */
+const FIELDS: Record<UploadKind, readonly string[]> = { pings: PING_FIELDS, junctions: JUNCTION_FIELDS, legs: LEG_FIELDS };
+const NEEDS: Record<UploadKind, readonly string[]> = { pings: PING_NEEDS, junctions: JUNCTION_NEEDS, legs: LEG_NEEDS };
+
+/** What a mapping may name: features of GeoJSON carry their own position. */
+export function fieldsOf(kind: UploadKind, format: "csv" | "geojson"): readonly string[] {
+  return withoutPosition(FIELDS[kind], format);
+}
+
+/** What it must name. */
 export function neededFields(kind: UploadKind, format: "csv" | "geojson"): readonly string[] {
-  const needs: readonly string[] = kind === "pings" ? PING_NEEDS : JUNCTION_NEEDS;
-  return format === "csv" ? needs : needs.filter((field) => field !== "lat" && field !== "lon");
+  return withoutPosition(NEEDS[kind], format);
+}
+
+function withoutPosition(fields: readonly string[], format: "csv" | "geojson"): readonly string[] {
+  return format === "csv" ? fields : fields.filter((field) => field !== "lat" && field !== "lon");
 }
 
 /** How to read a file: what detection proposes, the person corrects, and a supplier's next file starts from. */
@@ -63,7 +77,7 @@ export interface IngestProgress {
   rowsRead: number;
 }
 
-export const REJECT_REASONS = ["columns", "vehicle", "time", "position", "speed", "heading", "duplicate", "name"] as const;
+export const REJECT_REASONS = ["columns", "vehicle", "time", "position", "speed", "heading", "duplicate", "name", "line", "far", "junction"] as const;
 export type RejectReason = (typeof REJECT_REASONS)[number];
 
 export const REJECT_SENTENCES: Record<RejectReason, string> = {
@@ -73,8 +87,11 @@ export const REJECT_SENTENCES: Record<RejectReason, string> = {
   position: "Latitude or longitude is missing or out of range.",
   speed: "The speed cannot be read or is negative.",
   heading: "The heading cannot be read.",
-  duplicate: "The identifier stands in the file more than once.",
+  duplicate: "It stands in the file more than once.",
   name: "The identifier or the name is empty.",
+  line: "The feature is no line of at least two points, or a coordinate is out of range.",
+  far: "The line does not end at its junction. Lines are drawn towards the stop line.",
+  junction: "No junction with this identifier is loaded.",
 };
 
 export interface RejectedRow {
@@ -115,6 +132,10 @@ export interface IngestReport {
   /** Of a junctions file. */
   created?: number;
   updated?: number;
+  /** Of a file of leg lines. */
+  legsDrawn?: number;
+  legsReplaced?: number;
+  junctionsTouched?: number;
 }
 
 /** What the first bytes of a file tell: a mapping to start from and rows to look at. */

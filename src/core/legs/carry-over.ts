@@ -7,7 +7,7 @@ import type { Joined } from "@/core/legs/join";
 import type { Exit, JunctionPoint, Leg, Network } from "@/core/types";
 
 /** A derived and an earlier leg of one junction within this angle are the same leg. */
-const SAME_LEG_DEG = 20;
+export const SAME_LEG_DEG = 20;
 
 /** Legs and exits with the earlier ones among them; `carried` holds the ids that stay even when no traffic used them. */
 export interface Carried extends Joined {

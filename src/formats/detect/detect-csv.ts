@@ -1,4 +1,4 @@
-import { DELIMITERS, JUNCTION_FIELDS, PING_FIELDS, type FileMapping, type UploadKind } from "@/domain/upload";
+import { DELIMITERS, fieldsOf, type FileMapping, type UploadKind } from "@/domain/upload";
 import { CsvScanner } from "../csv/csv-scanner";
 import { fieldText } from "../csv/field";
 import { byteOf } from "../fields";
@@ -58,8 +58,7 @@ function shapeWith(
 
 /** Without a header the columns are taken to stand in the order of the description. */
 function columnsByPlace(count: number, kind: UploadKind): Record<string, number> {
-  const fields: readonly string[] = kind === "pings" ? PING_FIELDS : JUNCTION_FIELDS;
-  return Object.fromEntries(fields.slice(0, count).map((field, i) => [field, i]));
+  return Object.fromEntries(fieldsOf(kind, "csv").slice(0, count).map((field, i) => [field, i]));
 }
 
 /** Known names count most, then rows of equal width, then width. */

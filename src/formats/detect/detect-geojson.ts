@@ -1,4 +1,4 @@
-import { JUNCTION_FIELDS, PING_FIELDS, type UploadKind } from "@/domain/upload";
+import { fieldsOf, type UploadKind } from "@/domain/upload";
 import { FeatureScanner } from "../geojson/feature-scanner";
 import { pointFeature, propertyText, type PointFeature } from "../geojson/point-feature";
 import { unusable } from "../unusable";
@@ -32,8 +32,7 @@ export function geojsonShape(bytes: Uint8Array, kind: UploadKind, isWhole: boole
 
 /** Latitude and longitude come from the geometry. */
 function propertiesOf(header: string[], kind: UploadKind): Record<string, string> {
-  const fields: readonly string[] = kind === "pings" ? PING_FIELDS : JUNCTION_FIELDS;
   const numbers = columnsFromHeader(header, kind);
-  const named = fields.filter((field) => field !== "lat" && field !== "lon" && numbers[field] !== undefined);
+  const named = fieldsOf(kind, "geojson").filter((field) => numbers[field] !== undefined);
   return Object.fromEntries(named.map((field) => [field, header[numbers[field]]]));
 }

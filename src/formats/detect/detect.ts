@@ -34,6 +34,7 @@ export function detect(firstBytes: Uint8Array, fileName: string, kind: UploadKin
   if (bytes.length === 0) throw refuseEmpty(fileName);
   const undecoded = refuseBinary(bytes);
   const isGeojson = firstVisible(bytes) === 123;
+  if (kind === "legs" && !isGeojson) throw unusable(`${fileName} is no GeoJSON. Leg lines come as GeoJSON with one LineString for each leg.`);
   const remarks: string[] = [];
   // One may be a letter that was cut in two at the end.
   if (undecoded > 1) remarks.push("Some letters are not UTF-8 and will look wrong: save the file as UTF-8.");

@@ -1,4 +1,4 @@
-import type { JUNCTION_FIELDS, PING_FIELDS, SpeedUnit, UploadKind } from "@/domain/upload";
+import type { JUNCTION_FIELDS, LEG_FIELDS, PING_FIELDS, SpeedUnit, UploadKind } from "@/domain/upload";
 
 /** Names under which columns arrive, in the order in which they are preferred; compared by `plainName`. */
 const PING_SYNONYMS: Record<(typeof PING_FIELDS)[number], readonly string[]> = {
@@ -23,6 +23,16 @@ const JUNCTION_SYNONYMS: Record<(typeof JUNCTION_FIELDS)[number], readonly strin
   last_retimed: ["last_retimed", "retimed", "last_timing", "retimed_on"],
   notes: ["notes", "note", "remarks", "comment", "comments"],
 };
+
+const LEG_SYNONYMS: Record<(typeof LEG_FIELDS)[number], readonly string[]> = {
+  junction_id: JUNCTION_SYNONYMS.junction_id,
+  name: ["name", "leg_name", "leg", "approach", "street", "description", "title"],
+  speed_limit_kmh: ["speed_limit_kmh", "speed_limit", "limit", "maxspeed", "max_speed"],
+  storage_m: ["storage_m", "storage", "storage_length", "storage_length_m"],
+  lanes: ["lanes", "lane_count", "number_of_lanes"],
+};
+
+const SYNONYMS: Record<UploadKind, Record<string, readonly string[]>> = { pings: PING_SYNONYMS, junctions: JUNCTION_SYNONYMS, legs: LEG_SYNONYMS };
 
 /** Units at the end of a name: `speed_kmh`, `Time (ms)`. */
 const UNIT_ENDINGS = ["kmh", "kph", "km_h", "mph", "mi_h", "ms", "mps", "m_s", "kn", "kt", "kts", "knot", "knots", "deg", "degrees", "s", "sec", "seconds", "millis", "utc", "iso", "local"];
@@ -57,7 +67,7 @@ export function columnsFromHeader(header: readonly string[], kind: UploadKind): 
       taken.add(found);
     }
   };
-  const fields = Object.entries(kind === "pings" ? PING_SYNONYMS : JUNCTION_SYNONYMS);
+  const fields = Object.entries(SYNONYMS[kind]);
   for (const [field] of fields) assign(field, [field]);
   for (const [field, synonyms] of fields) assign(field, synonyms);
   return columns;

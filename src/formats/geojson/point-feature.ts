@@ -27,7 +27,7 @@ export function propertyText(properties: Record<string, unknown>, name: string |
   return typeof value === "number" || typeof value === "boolean" ? String(value) : "";
 }
 
-function parsedObject(text: string): Record<string, unknown> | null {
+export function parsedObject(text: string): Record<string, unknown> | null {
   try {
     return asObject(JSON.parse(text));
   } catch {
@@ -35,6 +35,6 @@ function parsedObject(text: string): Record<string, unknown> | null {
   }
 }
 
-function asObject(value: unknown): Record<string, unknown> | null {
+export function asObject(value: unknown): Record<string, unknown> | null {
   return typeof value === "object" && value !== null && !Array.isArray(value) ? (value as Record<string, unknown>) : null;
 }

@@ -1,10 +1,11 @@
 import { and, eq } from "drizzle-orm";
 import { uploads } from "@/db/schema";
 import { AppError } from "@/domain/errors";
-import type { FileMapping } from "@/domain/upload";
+import type { FileMapping, UploadKind } from "@/domain/upload";
 import type { Context } from "../context";
 import { failUpload } from "./finish-upload";
 import { ingestJunctions } from "./ingest-junctions";
+import { ingestLegs } from "./ingest-legs";
 import { ingestPings } from "./ingest-pings";
 
 const OUR_FAULT = "Reading the file failed on our side; nothing of it was kept. Start it again, and tell your administrator if it fails again.";
@@ -30,8 +31,7 @@ export async function ingestUpload(ctx: Context, input: { uploadId: string }, ru
   await ctx.db.update(uploads).set({ state: "reading", failure: null }).where(eq(uploads.id, upload.id));
   const ready = { id: upload.id, storageKey: upload.storageKey, mapping: upload.mapping satisfies FileMapping };
   try {
-    if (upload.kind === "junctions") await ingestJunctions(ctx, ready);
-    else await ingestPings(ctx, ready, run?.signal);
+    await ingestKind(ctx, upload.kind, ready, run?.signal);
   } catch (error) {
     if (error instanceof AppError) return failUpload(ctx, upload.id, error.message, null, null);
     if (run?.isLast && !run.signal.aborted) {
@@ -39,6 +39,19 @@ export async function ingestUpload(ctx: Context, input: { uploadId: string }, ru
     }
     if (run?.signal.aborted) await waitAgain(ctx, upload.id);
     throw error;
+  }
+}
+
+async function ingestKind(ctx: Context, kind: UploadKind, upload: { id: string; storageKey: string; mapping: FileMapping }, signal?: AbortSignal): Promise<void> {
+  switch (kind) {
+    case "junctions":
+      return ingestJunctions(ctx, upload);
+    case "legs":
+      return ingestLegs(ctx, upload);
+    case "pings":
+      return ingestPings(ctx, upload, signal);
+    default:
+      return kind satisfies never;
   }
 }
 

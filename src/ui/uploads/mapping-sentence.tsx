@@ -50,6 +50,7 @@ interface Props {
 /** How the file will be read, in words; each phrase can be changed. */
 export function MappingSentence({ kind, mapping, gzip, onChange, onReshape }: Props) {
   const packed = gzip ? "Packed with gzip, then " : "";
+  const features = kind === "legs" ? "lines" : "points";
   return (
     <Sentence label="How the file is read">
       {mapping.format === "csv" ? (
@@ -61,7 +62,7 @@ export function MappingSentence({ kind, mapping, gzip, onChange, onReshape }: Pr
           <Pick name="Decimal mark" choices={DECIMAL_CHOICES} value={mapping.decimal} onChoose={(decimal) => onChange({ decimal })} />
         </>
       ) : (
-        `${packed}${packed ? "points" : "Points"} of GeoJSON`
+        `${packed}${packed ? features : capital(features)} of GeoJSON`
       )}
       {kind === "pings" ? (
         <>
@@ -82,6 +83,10 @@ export function MappingSentence({ kind, mapping, gzip, onChange, onReshape }: Pr
       .
     </Sentence>
   );
+}
+
+function capital(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
 }
 
 function Pick<T extends string>({ name, choices, value, onChoose }: { name: string; choices: readonly Choice<T>[]; value: T; onChoose: (value: T) => void }) {

@@ -1,4 +1,4 @@
-import { JUNCTION_FIELDS, neededFields, PING_FIELDS, type FileMapping, type UploadKind } from "@/domain/upload";
+import { neededFields, type FileMapping, type UploadKind } from "@/domain/upload";
 
 /** What a field is called above a column. */
 const FIELD_NAMES: Record<string, string> = {
@@ -17,16 +17,13 @@ const FIELD_NAMES: Record<string, string> = {
   cycle_s: "cycle length, s",
   last_retimed: "last retimed",
   notes: "notes",
+  speed_limit_kmh: "speed limit, km/h",
+  storage_m: "storage, m",
+  lanes: "lanes",
 };
 
 export function fieldName(field: string): string {
   return FIELD_NAMES[field] ?? field;
-}
-
-/** The fields that a file of this kind may hold; points of GeoJSON have their position from the geometry. */
-export function fieldsOf(kind: UploadKind, format: FileMapping["format"]): readonly string[] {
-  const fields: readonly string[] = kind === "pings" ? PING_FIELDS : JUNCTION_FIELDS;
-  return format === "csv" ? fields : fields.filter((field) => field !== "lat" && field !== "lon");
 }
 
 /** How a mapping names column `at` of the preview. */

@@ -1,10 +1,10 @@
 "use client";
 
-import type { Detection, FileMapping, UploadKind } from "@/domain/upload";
+import { fieldsOf, type Detection, type FileMapping, type UploadKind } from "@/domain/upload";
 import { Select } from "@/ui/primitives/field";
 import { classNames } from "@/ui/primitives/class-names";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
-import { fieldName, fieldOfColumn, fieldsOf } from "./mapping-state";
+import { fieldName, fieldOfColumn } from "./mapping-state";
 
 interface Props {
   kind: UploadKind;

@@ -10,7 +10,23 @@ export function reportWords(report: IngestReport, kind: UploadKind, locale: stri
   const figure = (value: number) => formatNumber(value, locale);
   const rejected = rejectedCount(report);
   const rows = `${counted(report.rowsRead, "row was", "rows were", locale)} read: ${figure(report.accepted)} accepted, ${rejected === 0 ? "none" : figure(rejected)} rejected.`;
-  return kind === "junctions" ? [rows, ...junctionWords(report, locale)] : [rows, ...pingWords(report, locale, timeZone)];
+  switch (kind) {
+    case "junctions":
+      return [rows, ...junctionWords(report, locale)];
+    case "legs":
+      return [rows, ...legWords(report, locale)];
+    case "pings":
+      return [rows, ...pingWords(report, locale, timeZone)];
+    default:
+      return kind satisfies never;
+  }
+}
+
+function legWords({ legsDrawn, legsReplaced, junctionsTouched }: IngestReport, locale: string): string[] {
+  if (legsDrawn === undefined) return [];
+  const at = counted(junctionsTouched ?? 0, "junction", "junctions", locale);
+  const drawn = `${counted(legsDrawn, "leg", "legs", locale)} at ${at} ${legsDrawn === 1 ? "is" : "are"} drawn now; ${legsReplaced ? counted(legsReplaced, "earlier one was", "earlier ones were", locale) : "none was"} replaced.`;
+  return [drawn, "At these junctions no leg is found in pings any more. Pings that were read in before are matched to the drawn legs anew."];
 }
 
 function junctionWords({ created, updated }: IngestReport, locale: string): string[] {

@@ -13,6 +13,7 @@ import { sendFile } from "./send-file";
 const KIND_WORDS: Record<UploadKind, { label: string; fields: string }> = {
   pings: { label: "Pings of vehicles", fields: "vehicle, time, latitude, longitude; speed and heading where the supplier has them" },
   junctions: { label: "Junctions of the city", fields: "identifier, name, latitude, longitude; corridor, district, cycle length, last retimed, notes if you keep them" },
+  legs: { label: "Leg lines drawn by the city", fields: "GeoJSON lines drawn towards the stop line, each with its junction's identifier; name, speed limit, storage, lanes if you know them" },
 };
 
 /** Chooses a file and sends it; what is in it is settled on the next page. */
@@ -58,7 +59,7 @@ export function SendForm({ firstKind }: { firstKind: UploadKind }) {
       </fieldset>
       <FileChooser file={file} onChoose={setFile} describedBy={`${id}-formats`} />
       <p id={`${id}-formats`} className="text-sm text-ink-soft">
-        CSV with comma, semicolon or tab, or GeoJSON points; UTF-8; packed with gzip if you like. You see the first rows and confirm the columns before anything is read.
+        CSV with comma, semicolon or tab, or GeoJSON; UTF-8; packed with gzip if you like. You see the first rows and confirm the columns before anything is read.
       </p>
       {share === null ? (
         <Button type="submit" tone="strong" className="self-start">

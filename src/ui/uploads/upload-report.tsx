@@ -1,4 +1,4 @@
-import type { IngestReport, UploadView } from "@/domain/upload";
+import type { IngestReport, UploadKind, UploadView } from "@/domain/upload";
 import { formatNumber, formatSeconds } from "@/ui/format";
 import { ButtonLink } from "@/ui/primitives/button";
 import { Caution } from "@/ui/primitives/caution";
@@ -18,6 +18,11 @@ export function UploadReport({ upload, report }: { upload: UploadView; report: I
           <p key={sentence}>{sentence}</p>
         ))}
         {report.remarks?.map((remark) => <p key={remark}>{remark}</p>)}
+        {upload.kind === "legs" && upload.state === "done" ? (
+          <ButtonLink href="/data/legs" className="mt-3 self-start">
+            Check the legs
+          </ButtonLink>
+        ) : null}
         {upload.kind === "pings" && upload.state === "done" ? (
           <div className="mt-3 flex flex-col gap-3">
             <ButtonLink href="/screen" tone="strong" className="self-start">
@@ -43,19 +48,26 @@ function Figures({ report, kind }: { report: IngestReport; kind: UploadView["kin
     ["accepted", number(report.accepted)],
     ["rejected", number(rejectedCount(report))],
   ];
-  const isIn = report.traversals !== undefined || report.created !== undefined;
-  const figures: [string, string][] = !isIn
-    ? rows
-    : kind === "junctions"
-      ? [...rows, ["new junctions", number(report.created)], ["brought up to date", number(report.updated)]]
-      : [
-          ...rows,
-          ["vehicles", number(report.vehicles)],
-          ["trips", number(report.trips)],
-          ["traversals", number(report.traversals)],
-          ["junctions covered", report.junctionsTotal === undefined ? "–" : `${number(report.junctionsCovered)} of ${number(report.junctionsTotal)}`],
-          ["ping every (median)", formatSeconds(report.medianIntervalS, locale)],
-        ];
+  const isIn = report.traversals !== undefined || report.created !== undefined || report.legsDrawn !== undefined;
+  const ofKind: Record<UploadKind, [string, string][]> = {
+    junctions: [
+      ["new junctions", number(report.created)],
+      ["brought up to date", number(report.updated)],
+    ],
+    legs: [
+      ["legs drawn", number(report.legsDrawn)],
+      ["legs replaced", number(report.legsReplaced)],
+      ["junctions touched", number(report.junctionsTouched)],
+    ],
+    pings: [
+      ["vehicles", number(report.vehicles)],
+      ["trips", number(report.trips)],
+      ["traversals", number(report.traversals)],
+      ["junctions covered", report.junctionsTotal === undefined ? "–" : `${number(report.junctionsCovered)} of ${number(report.junctionsTotal)}`],
+      ["ping every (median)", formatSeconds(report.medianIntervalS, locale)],
+    ],
+  };
+  const figures = isIn ? [...rows, ...ofKind[kind]] : rows;
   return (
     <dl className="grid grid-cols-2 gap-x-6 gap-y-4 border-b border-rule bg-paper px-4 py-5 sm:px-6 md:grid-cols-4 xl:grid-cols-8">
       {figures.map(([name, value]) => (

@@ -2,7 +2,7 @@ import type { IngestStep, UploadKind, UploadState, UploadView } from "@/domain/u
 import { formatNumber } from "@/ui/format";
 import { rejectedCount } from "./report-words";
 
-export const KIND_NAMES: Record<UploadKind, string> = { pings: "pings", junctions: "junctions" };
+export const KIND_NAMES: Record<UploadKind, string> = { pings: "pings", junctions: "junctions", legs: "leg lines" };
 
 export const STATE_NAMES: Record<UploadState, string> = {
   received: "columns to confirm",
@@ -44,6 +44,7 @@ function doneWords({ kind, report }: UploadView, locale: string): string {
   const rejected = rejectedCount(report);
   const rows = `${formatNumber(report.accepted, locale)} rows accepted, ${formatNumber(rejected, locale)} rejected`;
   if (kind === "junctions") return `${rows}; ${formatNumber(report.created ?? 0, locale)} junctions new.`;
+  if (kind === "legs") return `${rows}; ${formatNumber(report.legsDrawn ?? 0, locale)} legs drawn.`;
   return `${rows}; ${formatNumber(report.traversals ?? 0, locale)} traversals.`;
 }
 

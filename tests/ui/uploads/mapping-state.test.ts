@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
-import type { FileMapping } from "@/domain/upload";
-import { fieldList, fieldOfColumn, fieldsOf, missingFields, remembered, withColumnAs } from "@/ui/uploads/mapping-state";
+import { fieldsOf, type FileMapping } from "@/domain/upload";
+import { fieldList, fieldOfColumn, missingFields, remembered, withColumnAs } from "@/ui/uploads/mapping-state";
 
 const HEADER = ["id", "when", "y", "x"];
 const CSV: FileMapping = {

@@ -46,4 +46,13 @@ describe("a report in words", () => {
       "1 junction is new, 0 were known before and brought up to date.",
     ]);
   });
+
+  it("tells of drawn legs: how many, where, what they replaced", () => {
+    const report = { rowsRead: 3, accepted: 2, rejected: { junction: 1 }, samples: [], legsDrawn: 2, legsReplaced: 1, junctionsTouched: 1 };
+    expect(reportWords(report, "legs", "en-GB", "UTC")).toEqual([
+      "3 rows were read: 2 accepted, 1 rejected.",
+      "2 legs at 1 junction are drawn now; 1 earlier one was replaced.",
+      "At these junctions no leg is found in pings any more. Pings that were read in before are matched to the drawn legs anew.",
+    ]);
+  });
 });
