@@ -1,0 +1,88 @@
+import { describe, expect, it } from "vitest";
+import { stripQueryFromParams, type LegStripView, type MovementView } from "@/domain/junction";
+import { delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-delay";
+import { factsText } from "@/ui/strips/facts-text";
+import { pooledStopShare } from "@/ui/strips/strip-facts";
+import { captionOf, cellsPhrase, legTitle, shapePhrase, weekdayPhrase } from "@/ui/strips/strip-phrases";
+import { figuresParams, tracksParams } from "@/ui/strips/queries";
+
+describe("sentence of a strip", () => {
+  const view = {} as LegStripView;
+  const parts = { days: "weekdays, 2 to 6 March 2026", hours: "PM peak, 16:00 to 18:30", cellS: 120 };
+
+  it("says in plain words what is drawn", () => {
+    const query = stripQueryFromParams({ shape: "waves", wave: "15" });
+    expect(captionOf(query, view, parts, "metric", "en-GB")).toBe(
+      "A typical day of weekdays, 2 to 6 March 2026, PM peak, 16:00 to 18:30, all movements, cells of 10 m by 2 min along a wave of 15 km/h, as measured.",
+    );
+  });
+
+  it("names a single day", () => {
+    expect(weekdayPhrase("2026-03-03", "en-GB")).toBe("Tuesday 3 March 2026");
+    expect(captionOf(stripQueryFromParams({ day: "2026-03-03" }), view, parts, "metric", "en-GB")).toMatch(/^Tuesday 3 March 2026, PM peak/);
+  });
+
+  it("speaks of feet and miles an hour where the city does", () => {
+    expect(cellsPhrase(10, 45, "us", "en-US")).toBe("33 ft by 45 s");
+    expect(shapePhrase({ shape: "waves", wave: 15 }, "us")).toBe("along a wave of 9.3 mph");
+  });
+
+  it("titles a leg by where it comes from", () => {
+    expect(legTitle({ name: "from the south, northbound" } as LegStripView["leg"])).toBe("Leg from the south, northbound");
+    expect(legTitle({ name: "Leg of the ferry" } as LegStripView["leg"])).toBe("Leg of the ferry");
+  });
+});
+
+describe("what is fetched", () => {
+  it("does not change with the cells, nor the tracks with the movement", () => {
+    const plain = stripQueryFromParams({ period: "am", day: "2026-03-03" });
+    const fine = stripQueryFromParams({ period: "am", day: "2026-03-03", cellM: "5", shape: "waves", paths: "shown", turn: "left" });
+    expect(tracksParams(fine)).toBe(tracksParams(plain));
+    expect(tracksParams(plain)).toBe("period=am&day=2026-03-03");
+    expect(figuresParams({ ...fine, turn: "any" })).toBe(figuresParams(plain));
+  });
+});
+
+describe("axis of the delay", () => {
+  it("reaches the bound of C at least and leaves an absurdly wide band out", () => {
+    expect(delayTop([10], [12])).toBe(40);
+    expect(delayTop([100], [110])).toBeCloseTo(116.6, 9);
+    expect(delayTop([100], [900])).toBeCloseTo(169.6, 9);
+    expect(delayTop([], [])).toBe(40);
+  });
+
+  it("has the bounds of the Highway Capacity Manual, Exhibit 19-8, as far as they show", () => {
+    expect(losBands(60).map((band) => [band.letter, band.fromS, band.toS])).toEqual([["A", 0, 10], ["B", 10, 20], ["C", 20, 35], ["D", 35, 55], ["E", 55, 60]]);
+  });
+
+  it("keeps letters apart by moving the upper ones up", () => {
+    expect(spreadUpwards([95, 90, 50], 19, 100)).toEqual([94.5, 75.5, 50]);
+  });
+
+  it("breaks the curve where nobody passed", () => {
+    const values = Float64Array.of(5, NaN, 6, 7);
+    const runs = runsOf({ fromS: 0, stepS: 900, vehicles: new Uint32Array(4), meanS: values, lowS: values, highS: values });
+    expect(runs.map((run) => run.map((point) => point.tS))).toEqual([[450], [2250, 3150]]);
+  });
+});
+
+describe("figures under a strip", () => {
+  const movement = (vehicles: number, share: number | null) => ({ vehicles, stopShare: share === null ? null : { value: share, low: 0, high: 1 } }) as MovementView;
+
+  it("pool the share stopping by vehicles, with Wilson's interval", () => {
+    const pooled = pooledStopShare([movement(10, 0.5), movement(10, 1), movement(0, null)]);
+    // 15 of 20.
+    expect(pooled?.value).toBe(0.75);
+    // Wilson 95 % of 15/20: 0.5313 to 0.8881 (the complement of 5/20, 0.1119 to 0.4687).
+    expect(pooled?.low).toBeCloseTo(0.5313, 4);
+    expect(pooled?.high).toBeCloseTo(0.8881, 4);
+    expect(pooledStopShare([movement(0, null)])).toBeNull();
+  });
+
+  it("are said in one line, what cannot be said left out or said so", () => {
+    const facts = { stopShare: null, reachKind: "95th", storageM: 310, days: 19, medianIntervalS: 5 } as const;
+    const text = factsText({ ...facts, delay: { value: 82, low: 74, high: 91 }, reachM: 268, spill: { value: 0.11, low: 0, high: 1 }, vehicles: 412 }, "metric", "en-GB");
+    expect(text).toBe("Mean delay 82 s (95 % interval 74 to 91); 95th percentile of reach 268 m of 310 m; spills back 11 % of the time; 412 vehicles seen on 19 days; a ping every 5 s.");
+    expect(factsText({ ...facts, delay: null, reachM: null, spill: null, vehicles: 1, days: 1, medianIntervalS: null }, "metric", "en-GB")).toBe("Mean delay cannot be said; 1 vehicle seen on 1 day.");
+  });
+});
