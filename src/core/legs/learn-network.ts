@@ -17,7 +17,8 @@ import { measureUsage } from "@/core/legs/usage";
 import { createGraph } from "@/core/match/graph";
 import type { CoreOptions } from "@/core/options";
 import type { Trips } from "@/core/pings/trips";
-import type { Exit, JunctionPoint, Leg, Network } from "@/core/types";
+import { AS_STRAIGHT_DEG, AS_STRAIGHT_SPARSE_DEG } from "@/core/traversals/turns";
+import type { JunctionPoint, Network } from "@/core/types";
 
 /**
  * Stage 4 on cleaned pings: derives legs and exits of every junction, lets drawn lines and earlier legs take their
@@ -28,34 +29,31 @@ export function learnFromTrips(
 ): Network {
   const frame = createFrame(junctions, LEARNING.traceMostM + 200);
   const draft = proposeLegs(trips, frame, index, options, prior);
-  const network = withMovements(junctions, draft.legs, draft.exits, options);
+  const drafted = { junctions, legs: draft.legs, exits: draft.exits, driveSide: options.driveSide };
+  const network: Network = { ...drafted, movements: listMovements(drafted) };
   const usage = measureUsage(trips, createGraph(network, index));
   const kept = keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
   const tripsBetween = (leg: number, exit: number): number =>
     usage.movement.get(kept.legFrom[leg] * network.exits.length + kept.exitFrom[exit]) ?? 0;
-  return withMovements(junctions, legs, exits, options, tripsBetween);
+  const asStraightDeg = isSparse(trips) ? AS_STRAIGHT_SPARSE_DEG : AS_STRAIGHT_DEG;
+  const base = { junctions, legs, exits, driveSide: options.driveSide };
+  return { ...base, movements: listMovements(base, tripsBetween, asStraightDeg) };
 }
+
+const isSparse = (trips: Trips): boolean => trips.medianIntervalS > LEARNING.sparseIntervalS;
 
 function proposeLegs(
   trips: Trips, frame: Frame, index: JunctionIndex, options: CoreOptions, prior: Network | undefined,
 ): Carried {
   const rings = claimRings(frame, index, LEARNING.ringOuterM);
   const grid = createPingGrid(trips, frame, LEARNING.traceMostM);
-  const isSparse = trips.medianIntervalS > LEARNING.sparseIntervalS;
-  const reach = isSparse ? claimRings(frame, index, PASSAGES.reachM) : null;
-  const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse));
+  const reach = isSparse(trips) ? claimRings(frame, index, PASSAGES.reachM) : null;
+  const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse(trips)));
   const derived = dropTwins(joinArms(arms, frame));
   const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;
   return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
-}
-
-function withMovements(
-  junctions: JunctionPoint[], legs: Leg[], exits: Exit[], options: CoreOptions, tripsBetween?: (leg: number, exit: number) => number,
-): Network {
-  const base = { junctions, legs, exits, driveSide: options.driveSide };
-  return { ...base, movements: listMovements(base, tripsBetween) };
 }
 
 function claimRings(frame: Frame, index: JunctionIndex, radiusM: number): ReturnType<JunctionIndex["claim"]> {

@@ -6,14 +6,16 @@ import type { Movement, Network } from "@/core/types";
  * Every pair of a leg and an exit of one junction as a movement, with its turn and its cordons. `trips` says how many
  * went from a leg to an exit, by their indices, where that is known.
  */
-export function listMovements(network: Omit<Network, "movements">, trips?: (leg: number, exit: number) => number): Movement[] {
+export function listMovements(
+  network: Omit<Network, "movements">, trips?: (leg: number, exit: number) => number, asStraightDeg?: number,
+): Movement[] {
   const exitsOf: number[][] = network.junctions.map(() => []);
   network.exits.forEach((exit, i) => exitsOf[exit.junction].push(i));
   const room = exitRoom(network);
   const movements: Movement[] = [];
   network.legs.forEach((leg, l) => {
     const exits = exitsOf[leg.junction];
-    const names = nameTurns(leg, exits.map((e) => network.exits[e]), trips && exits.map((e) => trips(l, e)));
+    const names = nameTurns(leg, exits.map((e) => network.exits[e]), trips && exits.map((e) => trips(l, e)), asStraightDeg);
     exits.forEach((e, n) => {
       movements.push({
         id: `${leg.id}>${network.exits[e].id}`,

@@ -1,6 +1,7 @@
 import { placeBoxEdges } from "@/core/legs/box-edges";
 import type { Joined } from "@/core/legs/join";
 import { estimateFreeSpeeds } from "@/core/legs/free-speed";
+import { findShortcuts } from "@/core/legs/shortcuts";
 import { placeStopLines } from "@/core/legs/stop-lines";
 import type { Usage } from "@/core/legs/usage";
 import type { Leg, Network } from "@/core/types";
@@ -8,6 +9,9 @@ import type { Leg, Network } from "@/core/types";
 /** A leg or exit stays when this many trips, and this share of its junction's busiest leg, used it. */
 const LEAST_TRIPS = 2;
 const LEAST_SHARE = 0.01;
+/** Between junctions this near matched paths may run over streets that do not exist: pings must have been seen on them. */
+const SHORT_LINK_M = 45;
+const SHORT_LINK_SEEN = 2;
 /** Speeds from which on a leg's own free speed replaces one learned earlier. */
 const PLENTY_SPEEDS = 60;
 
@@ -24,8 +28,11 @@ export interface Kept extends Joined {
 export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Kept {
   const busiest = new Float64Array(draft.junctions.length);
   draft.legs.forEach((leg, i) => (busiest[leg.junction] = Math.max(busiest[leg.junction], usage.leg[i])));
+  const shortcuts = findShortcuts(draft, usage);
   const isUsed = (n: number, junction: number): boolean => n >= Math.max(LEAST_TRIPS, LEAST_SHARE * busiest[junction]);
-  const stays = draft.legs.map((leg, i) => leg.origin !== "derived" || carried.has(leg.id) || isUsed(usage.leg[i], leg.junction));
+  const isReal = (leg: Leg, i: number): boolean =>
+    isUsed(usage.leg[i], leg.junction) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
+  const stays = draft.legs.map((leg, i) => leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i));
   const needed = new Set(draft.legs.filter((leg, i) => stays[i] && usage.fed[i] > 0).map((leg) => leg.upstreamExit));
   const keptExit = new Int32Array(draft.exits.length).fill(-1);
   const exits = draft.exits.flatMap((exit, i) => {

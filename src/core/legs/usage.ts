@@ -1,4 +1,4 @@
-import { signedTurnDeg } from "@/core/geometry/angles";
+import { angleBetweenDeg, signedTurnDeg } from "@/core/geometry/angles";
 import { eastM, northM } from "@/core/geometry/plane";
 import { projectPoint } from "@/core/geometry/polyline";
 import { OFFSET_BIN_M } from "@/core/legs/refine";
@@ -14,6 +14,8 @@ export interface Usage {
   exit: Uint32Array;
   /** Trips that drove from a leg's upstream exit onto the leg. */
   fed: Uint32Array;
+  /** Trips with a moving ping on each leg's own street that points along it. */
+  seenOn: Uint32Array;
   /** Trips by leg and exit: key leg * exits + exit. */
   movement: Map<number, number>;
   /** Moving speeds on each leg away from junctions, m/s. */
@@ -39,6 +41,7 @@ const STANDING_MS = 1;
 const MOVING_MS = 3;
 const ACROSS_DEG = 45;
 const HEAD_PAST_LINE_M = 12;
+const ALONG_DEG = 40;
 
 /** Matches all trips and counts. O(pings). */
 export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
@@ -51,6 +54,7 @@ export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
     leg: new Uint32Array(network.legs.length),
     exit: new Uint32Array(network.exits.length),
     fed: new Uint32Array(network.legs.length),
+    seenOn: new Uint32Array(network.legs.length),
     movement: new Map(),
     speeds: network.legs.map(() => []),
     heads: network.legs.map(() => []),
@@ -79,6 +83,7 @@ function countPassages(links: number[], graph: StreetGraph, usage: Usage): void 
 
 function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage): void {
   let head = NaN;
+  let seenStep = -1;
   for (let c = 0; c < chain.pings.length; c++) {
     const k = chain.step[c];
     if (c > 0 && chain.step[c - 1] !== k) {
@@ -91,6 +96,10 @@ function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage
     const speed = trips.speedMs[i];
     if (speed >= MOVING_MS) addOffset(trips, i, link, graph, usage);
     if (leg < 0) continue;
+    if (seenStep !== k && speed >= MOVING_MS && angleBetweenDeg(trips.headingDeg[i], graph.network.legs[leg].bearingDeg) < ALONG_DEG) {
+      seenStep = k;
+      usage.seenOn[leg] += 1;
+    }
     const toLine = graph.stopAt[link] - chain.position[c];
     if (speed < STANDING_MS) head = toLine;
     const isClear = toLine > CLEAR_M && chain.position[c] > CLEAR_OF_START_M;
