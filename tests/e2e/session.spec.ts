@@ -1,5 +1,5 @@
 import { encode } from "next-auth/jwt";
-import { expect, signInAs, test, userIdOf } from "@tests/support/browser";
+import { expect, onDatabase, signInAs, test, userIdOf } from "@tests/support/browser";
 
 const HOUR_MS = 3_600_000;
 const url = () => process.env.E2E_URL ?? "";
@@ -10,6 +10,8 @@ async function cookie(claims: Record<string, unknown>, secret = process.env.NEXT
 
 test("a session ends after its hours, however often it was used", async ({ page, context }) => {
   const userId = await userIdOf("engineer@varnmouth.example");
+  // The account is younger than the session that is made up here.
+  await onDatabase("update users set sessions_valid_from = now() - interval '1 day' where id = $1", [userId]);
   await context.addCookies([await cookie({ userId, signedInAtMs: Date.now() - 11.9 * HOUR_MS })]);
   await page.goto("/screen");
   await expect(page).toHaveURL(/\/screen/);

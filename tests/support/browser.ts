@@ -32,11 +32,16 @@ export async function signInAs(context: BrowserContext, role: Role): Promise<voi
 }
 
 export async function userIdOf(email: string): Promise<string> {
+  const [{ id }] = await onDatabase<{ id: string }>("select id from users where email = $1", [email]);
+  return id;
+}
+
+/** One statement on the database of the running application. */
+export async function onDatabase<R extends object>(statement: string, values: unknown[] = []): Promise<R[]> {
   const client = new Client({ connectionString: process.env.DATABASE_URL });
   await client.connect();
   try {
-    const { rows } = await client.query<{ id: string }>("select id from users where email = $1", [email]);
-    return rows[0].id;
+    return (await client.query<R>(statement, values)).rows;
   } finally {
     await client.end();
   }
