@@ -58,10 +58,10 @@ function JunctionBody({ view, when }: { view: JunctionView; when: WhenQuery }) {
           <p className="max-w-[38rem] min-w-64 flex-1">{explainJunction(view.score, city)}</p>
         </section>
       ) : null}
-      <div className="grid gap-x-10 gap-y-8 px-4 py-5 sm:px-6 md:grid-cols-2 xl:grid-cols-[minmax(0,1fr)_minmax(0,1fr)_minmax(0,1.35fr)]">
+      <div className="grid gap-x-10 gap-y-8 px-4 py-5 sm:px-6 sm:grid-cols-2 xl:grid-cols-[minmax(0,1fr)_minmax(0,1fr)_minmax(0,1.35fr)]">
         <MovementPlan view={view} />
         <TailPlan view={view} when={when} />
-        <section aria-labelledby="by-time" className="min-w-0 md:col-span-2 xl:col-span-1">
+        <section aria-labelledby="by-time" className="min-w-0 sm:col-span-2 xl:col-span-1">
           <h2 id="by-time" className="text-[1.05rem] font-medium">
             Delay by time of day
           </h2>

@@ -17,6 +17,9 @@ const COLUMNS = 10;
 /** Least width of the shared axis of the intervals. */
 const LEAST_AXIS_S = 60;
 
+/** Share of time from which spillback is marked, as in the ranked list. */
+const MUCH_SPILL = 0.1;
+
 const REFERENCE_WORDS: Record<ReferenceSource, string> = {
   unstopped: "from vehicles that did not stop",
   shrunk: "from few vehicles that did not stop, steadied by those of the same turn",
@@ -83,7 +86,7 @@ function LegRow({ leg, href }: { leg: LegView; href: string }) {
   const queue =
     leg.reachP95M === null
       ? "reach cannot be said"
-      : `reach ${formatLength(leg.reachP95M, units, locale)}${leg.storageM === null ? "" : ` of ${formatLength(leg.storageM, units, locale)}`}`;
+      : `reach ${formatLength(leg.reachP95M, units, locale)}${leg.storageM === null ? "" : ` of ${formatLength(leg.storageM, units, locale)}`}, median ${formatLength(leg.reachP50M, units, locale)}`;
   const spill = leg.spill === null ? "spillback cannot be said" : `spills back ${formatShare(leg.spill.value, locale)} of the time (${formatNumber(leg.spill.low * 100, locale)} to ${formatNumber(leg.spill.high * 100, locale)})`;
   return (
     <tr>
@@ -96,7 +99,7 @@ function LegRow({ leg, href }: { leg: LegView; href: string }) {
             {queue}
             {leg.reachP95M !== null && leg.storageM !== null ? <StorageBar reachM={leg.reachP95M} storageM={leg.storageM} /> : null}
           </span>
-          <span className={leg.spill !== null && leg.spill.value >= 0.05 ? "font-medium text-tail" : "text-ink-soft"}>{spill}</span>
+          <span className={leg.spill !== null && leg.spill.value >= MUCH_SPILL ? "font-medium text-tail" : "text-ink-soft"}>{spill}</span>
           {leg.reachEstimateP95M ? (
             <span className="text-ink-soft" title="A model of the vehicles that were not seen, not an observation">
               with the unseen tail about {formatLength(leg.reachEstimateP95M.value, units, locale)}

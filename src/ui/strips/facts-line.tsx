@@ -7,6 +7,9 @@ import { classNames } from "@/ui/primitives/class-names";
 import { useCity } from "@/ui/shell/city";
 import type { StripFacts } from "./strip-facts";
 
+/** Share of time from which spillback is marked, as in the ranked list. */
+const MUCH_SPILL = 0.1;
+
 /** The figures under a strip, each with its interval, and what they rest on. */
 export function FactsLine({ facts, fromMin, toMin, children }: { facts: StripFacts; fromMin: number; toMin: number; children?: ReactNode }) {
   const { settings, locale } = useCity();
@@ -29,7 +32,7 @@ export function FactsLine({ facts, fromMin, toMin, children }: { facts: StripFac
             term="spills back"
             figure={formatShare(facts.spill?.value, locale)}
             after={facts.spill ? `of the time, ${spanOf(facts.spill, percent)}` : "cannot be said"}
-            isHot={facts.spill !== null && facts.spill.value >= 0.05}
+            isHot={facts.spill !== null && facts.spill.value >= MUCH_SPILL}
           />
           <Fact term={facts.days === 1 ? "seen on 1 day" : `seen on ${facts.days} days`} figure={formatNumber(facts.vehicles, locale)} after={`${facts.vehicles === 1 ? "vehicle" : "vehicles"}${every}`} />
         </dl>
