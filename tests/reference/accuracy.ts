@@ -86,11 +86,33 @@ export function accuracyText(rows: AccuracyRow[]): string {
     "Delay, stops: mean absolute error per movement, weighted by vehicles. Reach: of the legs that the sample used, against the true maximum.",
     "Scenarios marked * were kept aside while the method was tuned.",
     "",
+    ...summaryLines(rows),
+    "",
     `| ${HEAD.join(" | ")} |`,
     `|${HEAD.map(() => "---|").join("")}`,
     ...cells.map((line) => `| ${line.join(" | ")} |`),
     "",
   ].join("\n");
+}
+
+/** One line for each sampling: the mean over scenarios, and all intervals together. */
+function summaryLines(rows: AccuracyRow[]): string[] {
+  const head = ["sampling", "scenarios", "delay error above the oracle s: mean", "worst", "turns: mean", "in 95 % interval", "figures missed"];
+  const lines = [...new Set(rows.map((row) => row.sampling))].map((sampling) => {
+    const own = rows.filter((row) => row.sampling === sampling);
+    const sum = (value: (row: AccuracyRow) => number) => own.reduce((total, row) => total + value(row), 0);
+    const excess = (row: AccuracyRow) => row.scores.delayMaeS.ours - row.scores.delayMaeS.oracle;
+    return [
+      sampling,
+      own.length.toString(),
+      (sum(excess) / own.length).toFixed(2),
+      Math.max(...own.map(excess)).toFixed(2),
+      (sum((row) => row.scores.turnsRight) / own.length).toFixed(3),
+      `${((100 * sum((row) => row.intervalsInside)) / sum((row) => row.intervals)).toFixed(1)} %`,
+      sum((row) => row.missed.length).toString(),
+    ];
+  });
+  return [head, head.map(() => "---"), ...lines].map((line) => `| ${line.join(" | ")} |`);
 }
 
 function rowCells({ scenario, isHoldOut, sampling, scores, intervals, intervalsInside, missed }: AccuracyRow): string[] {
