@@ -1,7 +1,7 @@
 import type { LegQuarters, Network, Traversals } from "@/core/types";
 import { createScratch, type LegView } from "./moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
-import { presenceByLeg, type Presence } from "./presence";
+import { presenceByLeg, quartersSeen, type Presence } from "./presence";
 import { quarterFigures, type QuarterFigures } from "./quarter-figures";
 import { findStandings, standingsByLeg } from "./standings";
 import { seenPerMetre } from "./unseen-tail";
@@ -19,6 +19,7 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
   const offset = standingsByLeg(standings, network.legs.length);
   const perMetre = seenPerMetre(standings, offset, chosen);
   const presence = presenceByLeg(network, traversals);
+  const seenQuarters = quartersSeen(presence);
   const scratch = createScratch(standings.length);
   const rows: (QuarterFigures & { leg: number; startMs: number })[] = [];
   for (let leg = 0; leg < network.legs.length; leg++) {
@@ -29,8 +30,10 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
       standingFrom: offset[leg],
       standingTo: offset[leg + 1],
       presence,
+      presenceAll: presence.offset[leg],
       presenceFrom: presence.offset[leg],
       presenceTo: presence.offset[leg + 1],
+      seenQuarters,
     };
     for (const startMs of quartersOf(presence, leg)) {
       passOver(view, startMs, chosen);

@@ -13,8 +13,12 @@ export interface LegView {
   standingFrom: number;
   standingTo: number;
   presence: Presence;
+  /** First of the leg's, and first that is not over yet. */
+  presenceAll: number;
   presenceFrom: number;
   presenceTo: number;
+  /** Starts of the quarters in which the sample saw anything at all: others say nothing of the flow. */
+  seenQuarters: ReadonlySet<number>;
 }
 
 /** Standings remembered at one moment, and their places in ascending order; reused from moment to moment. */
@@ -37,8 +41,8 @@ export type MomentVisitor = (tMs: number, reachM: number, tailM: number) => void
  */
 export function eachMoment(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch, visit: MomentVisitor): number {
   const endMs = startMs + QUARTER_MS;
-  const { observedS, arrivals } = observe(leg, startMs, endMs, options.sightS * 1000);
-  const growthMs = tailGrowthMs(arrivals / observedS, leg.perMetre, options);
+  const observedS = observedSeconds(leg, startMs, endMs, options.sightS * 1000);
+  const growthMs = tailGrowthMs(othersPerSecond(leg, startMs), leg.perMetre, options);
   const stepMs = options.stepS * 1000;
   let next = leg.standingFrom;
   scratch.count = 0;
@@ -54,21 +58,42 @@ export function eachMoment(leg: LegView, startMs: number, options: QueueOptions,
   return observedS;
 }
 
-/** Seconds of the quarter for which a vehicle can speak, and how many vehicles came on the leg in it. */
-function observe(leg: LegView, startMs: number, endMs: number, sightMs: number): { observedS: number; arrivals: number } {
+/** Seconds of the quarter for which a vehicle can speak. */
+function observedSeconds(leg: LegView, startMs: number, endMs: number, sightMs: number): number {
   let observedMs = 0;
-  let arrivals = 0;
   let seenUntil = startMs;
   for (let k = leg.presenceFrom; k < leg.presenceTo && leg.presence.fromMs[k] - sightMs < endMs; k++) {
-    const fromMs = leg.presence.fromMs[k];
-    if (fromMs >= startMs && fromMs < endMs) arrivals++;
-    const from = Math.max(seenUntil, fromMs - sightMs);
+    const from = Math.max(seenUntil, leg.presence.fromMs[k] - sightMs);
     const to = Math.min(endMs, leg.presence.toMs[k] + sightMs);
     if (to <= from) continue;
     observedMs += to - from;
     seenUntil = to;
   }
-  return { observedS: observedMs / 1000, arrivals };
+  return observedMs / 1000;
+}
+
+/**
+ * Vehicles of the sample that come on the leg a second, in this quarter and its neighbours, beside the one whose
+ * queue is looked at: one is left out, since without it nobody would look.
+ */
+function othersPerSecond(leg: LegView, startMs: number): number {
+  let quarters = 0;
+  for (const start of [startMs - QUARTER_MS, startMs, startMs + QUARTER_MS]) if (leg.seenQuarters.has(start)) quarters++;
+  const first = firstAtLeast(leg.presence.fromMs, leg.presenceAll, leg.presenceTo, startMs - QUARTER_MS);
+  const last = firstAtLeast(leg.presence.fromMs, leg.presenceAll, leg.presenceTo, startMs + 2 * QUARTER_MS);
+  return quarters === 0 ? 0 : Math.max(0, last - first - 1) / ((quarters * QUARTER_MS) / 1000);
+}
+
+/** First index in from..to whose value is at least `least`; the column ascends there. */
+function firstAtLeast(column: Float64Array, from: number, to: number, least: number): number {
+  let low = from;
+  let high = to;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (column[middle] < least) low = middle + 1;
+    else high = middle;
+  }
+  return low;
 }
 
 /** Takes in standings that have begun by `tMs` and drops those that ended more than the memory ago. */

@@ -1,4 +1,5 @@
 import type { Network, Traversals } from "@/core/types";
+import { QUARTER_MS } from "./options";
 
 /** Spans of time in which vehicles were on a leg: entries offset[leg] to offset[leg + 1], by beginning. */
 export interface Presence {
@@ -26,4 +27,11 @@ export function presenceByLeg(network: Network, traversals: Traversals): Presenc
     fromMs: Float64Array.from(order, (i) => startOf[i]),
     toMs: Float64Array.from(order, (i) => traversals.stopLineMs[i]),
   };
+}
+
+/** Starts of the quarters in which any vehicle came on any leg. O(spans). */
+export function quartersSeen(presence: Presence): Set<number> {
+  const seen = new Set<number>();
+  for (const fromMs of presence.fromMs) seen.add(Math.floor(fromMs / QUARTER_MS) * QUARTER_MS);
+  return seen;
 }

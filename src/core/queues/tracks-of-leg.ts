@@ -1,6 +1,6 @@
 import type { LegView } from "./moments";
 import type { QueueOptions } from "./options";
-import type { Presence } from "./presence";
+import { quartersSeen, type Presence } from "./presence";
 import { addStandings, standingsOf, stopsOfTrack, type Standing, type TrackColumns } from "./standings";
 import { seenPerMetre } from "./unseen-tail";
 
@@ -31,5 +31,8 @@ export function viewOfTracks(tracks: TrackColumns, from: number, to: number, sto
   };
   const standings = standingsOf(found);
   const [perMetre] = seenPerMetre(standings, Uint32Array.of(0, standings.length), options);
-  return { storageM, perMetre, standings, standingFrom: 0, standingTo: standings.length, presence, presenceFrom: 0, presenceTo: spans.length };
+  return {
+    storageM, perMetre, standings, standingFrom: 0, standingTo: standings.length,
+    presence, presenceAll: 0, presenceFrom: 0, presenceTo: spans.length, seenQuarters: quartersSeen(presence),
+  };
 }

@@ -152,6 +152,15 @@ describe("what the sample does not see", () => {
     q.reachEstimateM.forEach((estimate, k) => expect(estimate).toBeGreaterThanOrEqual(q.reachM[k]));
   });
 
+  it("does not fill a leg from the few that a thin sample sees stand", () => {
+    // One vehicle in most quarters: that somebody was looked at says nothing of how many others came.
+    const lone = Array.from({ length: 8 }, (_, k) => stopping(START + k * QUARTER_MS + 60_000, 30, 45));
+    const pair = [stopping(START + 8 * QUARTER_MS + 60_000, 8, 40), stopping(START + 8 * QUARTER_MS + 62_000, 60, 40)];
+    const q = quarters([...lone, ...pair], 100);
+    expect(Math.max(...q.spilledS)).toBe(0);
+    expect(Math.max(...q.reachEstimateM.subarray(0, 8))).toBeLessThan(40);
+  });
+
   it("gives the share of vehicles seen", () => {
     const { courses } = shockwaveCourses(0.2);
     expect(Math.abs(penetrationFromQueues(oneLeg(), traversalsOf(courses)) - 0.2)).toBeLessThan(0.04);
