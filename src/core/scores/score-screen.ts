@@ -38,7 +38,7 @@ export function scoreScreen(days: readonly ScreenDay[], catalogue: Catalogue, fi
 
 function scoreMovements(index: CatalogueIndex, gathered: GatheredScreen): MovementScore[] {
   const figures = figuresOf(gathered.movements, index.turnOf);
-  const shrunk = shrinkByGroup(figures.intervals, index.turnOf, TURNS.length);
+  const shrunk = shrinkByGroup(figures.intervals, gathered.movements.delay.base, index.turnOf, TURNS.length);
   return index.movements.map(({ key }, u) => {
     const sample = {
       vehicles: figures.vehicles(u),
@@ -82,7 +82,7 @@ function scoreLegs(index: CatalogueIndex, gathered: GatheredScreen): LegScore[] 
 function scoreJunctions(index: CatalogueIndex, gathered: GatheredScreen, movements: MovementScore[], legs: LegScore[]): { scores: JunctionScore[]; shrunk: ShrunkUnits } {
   const group = new Uint8Array(index.junctions.length);
   const figures = figuresOf(gathered.junctions, group);
-  const shrunk = shrinkByGroup(figures.intervals, group, 1);
+  const shrunk = shrinkByGroup(figures.intervals, gathered.junctions.delay.base, group, 1);
   const legsOf: number[][] = index.junctions.map(() => []);
   index.junctionOfLeg.forEach((j, leg) => legsOf[j].push(leg));
   const scores = index.junctions.map((junction, u): JunctionScore => {
@@ -144,9 +144,9 @@ function greatestSpill(candidates: number[], legs: LegScore[], gathered: Gathere
 /** Ranks by shrunk mean delay, 1 for the worst; junctions without evidence stay unranked. */
 function rankJunctions(scores: JunctionScore[], shrunk: ShrunkUnits, options: ScoreOptions): void {
   const ranked = scores.flatMap((score, u) => (score.evidence === "none" ? [] : [u]));
-  const value = ranked.map((u) => shrunk.value[u]);
+  const value = ranked.map((u) => shrunk.log[u]);
   const ranks = competitionRanks(value);
-  const { low, high } = rankIntervals(value, ranked.map((u) => shrunk.sd[u]), { draws: options.rankDraws, seed: options.seed });
+  const { low, high } = rankIntervals(value, ranked.map((u) => shrunk.logSd[u]), { draws: options.rankDraws, seed: options.seed });
   ranked.forEach((u, k) => {
     scores[u].rank = ranks[k];
     scores[u].rankLow = Math.min(low[k], ranks[k]);

@@ -86,6 +86,13 @@ describe("scoreScreen", () => {
     expect(junctions[0].rank).toBe(1);
   });
 
+  it("does not draw a well observed junction out of its own interval, however far it stands from the others", () => {
+    const { junctions } = scoreScreen(city([150, ...Array.from({ length: 30 }, (_, k) => 12 + k)], 25), catalogueOf(31), ALL_DAY);
+    expect(junctions[0].shrunk.value).toBeGreaterThan(junctions[0].delay.low);
+    expect(junctions[0].shrunk.value).toBeLessThan(junctions[0].delay.value);
+    expect(junctions[0]).toMatchObject({ rank: 1, rankLow: 1, rankHigh: 1 });
+  });
+
   it("ranks by shrunk delay, with an interval that holds the rank and is wide where junctions are alike", () => {
     const { junctions } = scoreScreen(city([80, 30, 30.5, 31, 31.5, 8], 15), catalogueOf(6), ALL_DAY);
     expect(junctions[0]).toMatchObject({ rank: 1, rankLow: 1, rankHigh: 1 });
