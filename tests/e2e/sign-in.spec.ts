@@ -16,7 +16,11 @@ test("a person signs in with the form, comes to the page that was asked for, and
   await page.getByRole("button", { name: "Sign in" }).click();
   await expect(page.getByRole("heading", { name: "Invite a person" })).toBeVisible();
 
-  await page.getByRole("button", { name: /Varnmouth, admin/ }).click();
+  // The page is there before it listens; a person would press again, too.
+  await expect(async () => {
+    await page.getByRole("button", { name: /Varnmouth, admin/ }).click();
+    await expect(page.getByRole("button", { name: "Sign out" })).toBeVisible({ timeout: 2000 });
+  }).toPass();
   await page.getByRole("button", { name: "Sign out" }).click();
   await expect(page).toHaveURL(/\/sign-in$/);
   await page.goto("/admin/people");
