@@ -142,6 +142,9 @@ function paramsBesideDefaults(query: Record<string, unknown>, defaults: Record<s
   return params;
 }
 
+/** A strip of more tracks than this would not be drawn any better; of more, the newest days are shown. */
+export const MOST_TRACKS = 20_000;
+
 /** All about a leg but its tracks, which travel as bytes. */
 export interface LegStripView {
   junction: { id: number; code: string; name: string };

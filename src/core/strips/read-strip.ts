@@ -16,22 +16,22 @@ export function stripDelayS(strip: Strip, paceSPerM: number, vehicles: number): 
 }
 
 /**
- * Where along the leg the delay arises: excess over the reference pace in each row, seconds per vehicle that
- * passed the row (its distance by the row's length); NaN in rows that nobody passed. O(cells).
+ * Where along the leg the delay arises: excess over the reference pace in each row, seconds per vehicle, so
+ * that the rows add up to the leg's delay. Vehicles are those of the row that most passed: its distance by
+ * its length. NaN in rows without a vehicle. O(cells).
  */
 export function delayByRow(strip: Strip, paceSPerM: number): Float32Array {
   const { rows, columns, cellM } = strip.spec;
-  const out = new Float32Array(rows).fill(NaN);
+  const time = new Float64Array(rows);
+  const distance = new Float64Array(rows);
   for (let row = 0; row < rows; row++) {
-    let time = 0;
-    let distance = 0;
     for (let cell = row * columns; cell < (row + 1) * columns; cell++) {
-      time += strip.timeS[cell];
-      distance += strip.distanceM[cell];
+      time[row] += strip.timeS[cell];
+      distance[row] += strip.distanceM[cell];
     }
-    if (distance > 0) out[row] = (time / distance - paceSPerM) * cellM;
   }
-  return out;
+  const vehicles = Math.max(0, ...distance) / cellM;
+  return Float32Array.from(time, (seconds, row) => (seconds > 0 && vehicles > 0 ? (seconds - paceSPerM * distance[row]) / vehicles : NaN));
 }
 
 /**

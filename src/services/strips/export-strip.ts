@@ -52,8 +52,8 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
         query.cellS,
         query.cellM,
         waveKmh,
-        view.basis.firstDate,
-        view.basis.lastDate,
+        query.day ?? view.basis.firstDate,
+        query.day ?? view.basis.lastDate,
         view.basis.methodVersion,
       ];
     }

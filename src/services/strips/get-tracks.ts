@@ -1,9 +1,9 @@
-import { and, asc, eq, inArray, sql } from "drizzle-orm";
+import { and, asc, desc, eq, inArray, sql } from "drizzle-orm";
 import { z } from "zod";
 import { encodeTrackSet } from "@/core/strips/track-set";
 import { legs, movements, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
-import { StripQuery } from "@/domain/junction";
+import { MOST_TRACKS, StripQuery } from "@/domain/junction";
 import { dayFromIso, msFromLocal } from "@/domain/local-time";
 import { requirePermission, type Context } from "../context";
 import { windowOf } from "../screens/score-city";
@@ -12,8 +12,6 @@ import { chosenDates } from "./chosen-dates";
 
 export const GetTracks = z.object({ legId: z.coerce.number().int().positive(), query: StripQuery });
 
-/** A strip of more tracks than this would not be drawn any better. */
-const MOST_TRACKS = 20_000;
 /** Tracks that reach into the window from before it, or leave the leg after it, belong on the strip. */
 const LEAD_IN_MIN = 15;
 
@@ -50,7 +48,7 @@ export async function getTracks(ctx: Context, input: z.input<typeof GetTracks>):
         sql`${localMinute(settings.timeZone)} < ${window.toMin + LEAD_IN_MIN}`,
       ),
     )
-    .orderBy(asc(traversals.localDay), asc(traversals.enterAt), asc(traversals.vehicle))
+    .orderBy(desc(traversals.localDay), asc(traversals.enterAt), asc(traversals.vehicle))
     .limit(MOST_TRACKS);
   return encodeTrackSet(
     rows.map((row) => ({

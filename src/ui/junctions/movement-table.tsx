@@ -2,7 +2,6 @@
 
 import Link from "next/link";
 import { whenQueryToParams, type ExitView, type JunctionView, type LegView, type MovementView, type WhenQuery } from "@/domain/junction";
-import type { ReferenceSource } from "@/core/types";
 import { formatLength, formatNumber, formatSeconds, formatShare, shareNumber } from "@/ui/format";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { IntervalMark } from "@/ui/primitives/interval-mark";
@@ -11,6 +10,7 @@ import { StorageBar } from "@/ui/primitives/storage-bar";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
 import { TurnArrow } from "@/ui/screens/turn-arrow";
 import { useCity } from "@/ui/shell/city";
+import { REFERENCE_SHORT, REFERENCE_WORDS } from "@/ui/strips/reference-words";
 import { movementWords } from "./movement-words";
 
 const COLUMNS = 10;
@@ -19,14 +19,6 @@ const LEAST_AXIS_S = 60;
 
 /** Share of time from which spillback is marked, as in the ranked list. */
 const MUCH_SPILL = 0.1;
-
-const REFERENCE_WORDS: Record<ReferenceSource, string> = {
-  unstopped: "from vehicles that did not stop",
-  shrunk: "from few vehicles that did not stop, steadied by those of the same turn",
-  "free-speed": "from free speed and the turn's geometry",
-};
-
-const REFERENCE_SHORT: Record<ReferenceSource, string> = { unstopped: "unstopped", shrunk: "few unstopped", "free-speed": "free speed" };
 
 /** One row for each movement under its leg; what is known of the leg's queue stands with the leg. */
 export function MovementTable({ view, when }: { view: JunctionView; when: WhenQuery }) {

@@ -4,6 +4,7 @@ import type { ReactNode } from "react";
 import { formatClockRange, formatLength, formatNumber, formatSeconds, formatShare, NO_FIGURE } from "@/ui/format";
 import type { EstimateView } from "@/domain/screen";
 import { classNames } from "@/ui/primitives/class-names";
+import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { useCity } from "@/ui/shell/city";
 import type { StripFacts } from "./strip-facts";
 
@@ -20,7 +21,7 @@ export function FactsLine({ facts, fromMin, toMin, children }: { facts: StripFac
   return (
     <section aria-label="Figures" className="border-t border-rule bg-paper px-4 py-4 sm:px-6">
       <div className="flex flex-wrap items-start gap-x-12 gap-y-4">
-        <dl className="flex flex-wrap gap-x-10 gap-y-4">
+        <dl className="flex flex-wrap gap-x-9 gap-y-4">
           <Fact term={`${formatClockRange(fromMin, toMin)}, mean delay`} figure={formatSeconds(facts.delay && Math.max(0, facts.delay.value), locale)} after={spanOf(facts.delay, seconds)} />
           {facts.stopShare ? <Fact term="must stop" figure={formatShare(facts.stopShare.value, locale)} after={spanOf(facts.stopShare, percent)} /> : null}
           <Fact
@@ -35,6 +36,14 @@ export function FactsLine({ facts, fromMin, toMin, children }: { facts: StripFac
             isHot={facts.spill !== null && facts.spill.value >= MUCH_SPILL}
           />
           <Fact term={facts.days === 1 ? "seen on 1 day" : `seen on ${facts.days} days`} figure={formatNumber(facts.vehicles, locale)} after={`${facts.vehicles === 1 ? "vehicle" : "vehicles"}${every}`} />
+          {facts.evidence ? (
+            <div className="font-table">
+              <dt className="text-[0.92rem] text-ink-soft">evidence</dt>
+              <dd className="flex min-h-9 items-center font-medium">
+                <EvidenceBar evidence={facts.evidence} withWord />
+              </dd>
+            </div>
+          ) : null}
         </dl>
         {children ? <div className="max-w-sm min-w-60 flex-1 lg:ml-auto">{children}</div> : null}
       </div>

@@ -12,5 +12,6 @@ export function factsText(facts: StripFacts, units: Units, locale: string): stri
   const spill = facts.spill === null ? null : `spills back ${formatShare(facts.spill.value, locale)} of the time`;
   const seen = `${counted(facts.vehicles, "vehicle", "vehicles", locale)} seen on ${counted(facts.days, "day", "days", locale)}`;
   const every = facts.medianIntervalS === null ? null : `a ping every ${formatSeconds(facts.medianIntervalS, locale)}`;
-  return `${[delay, reach, spill, seen, every].filter(Boolean).join("; ")}.`;
+  const evidence = facts.evidence === null ? null : `evidence: ${facts.evidence}`;
+  return `${[delay, reach, spill, seen, every, evidence].filter(Boolean).join("; ")}.`;
 }

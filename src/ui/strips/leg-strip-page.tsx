@@ -3,13 +3,15 @@
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { useState } from "react";
-import { stripQueryFromParams, stripQueryToParams, whenQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
+import { MOST_TRACKS, stripQueryFromParams, stripQueryToParams, whenQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
 import { Caution } from "@/ui/primitives/caution";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";
+import { useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
 import { DelayTable } from "./delay-table";
 import { FactsLine } from "./facts-line";
 import { legStripQuery, tracksQuery } from "./queries";
+import { referenceSentence } from "./reference-words";
 import { StripFigure } from "./strip-figure";
 import { legTitle } from "./strip-phrases";
 import { StripSentence } from "./strip-sentence";
@@ -53,19 +55,30 @@ export function LegStripPage({ legId }: { legId: number }) {
 
 function StripBody({ shown }: { shown: DrawnStrip }) {
   const { picture, facts, view, query } = shown;
+  const { locale } = useCity();
   if (picture.set.tracks === 0) return <NothingSeen query={query} view={view} />;
   return (
     <>
       <div className="flex-1">
         <StripFigure drawn={shown} />
+        {picture.set.tracks >= MOST_TRACKS ? (
+          <p className="px-4 pb-3 text-sm text-ink-soft sm:px-6">More vehicles were seen than a strip can show: the newest {MOST_TRACKS.toLocaleString(locale)} are drawn. Choose fewer days or hours for the others.</p>
+        ) : null}
       </div>
       <FactsLine facts={facts} fromMin={view.basis.fromMin} toMin={view.basis.toMin}>
         <Caution />
+        <ReferenceNote shown={shown} />
         {view.leg.doubts.length > 0 ? <Doubts doubts={view.leg.doubts} /> : null}
       </FactsLine>
       <DelayTable picture={picture} />
     </>
   );
+}
+
+function ReferenceNote({ shown: { view, query } }: { shown: DrawnStrip }) {
+  const { locale } = useCity();
+  const sentence = referenceSentence(view.movements, query.turn, locale);
+  return sentence ? <p className="mt-2 text-sm text-ink-soft">{sentence}</p> : null;
 }
 
 function Crumbs({ view, query }: { view: LegStripView; query: StripQuery }) {

@@ -1,6 +1,7 @@
 import { delayOverTime } from "@/core/strips/delay-over-time";
 import { spillShare, type DayReaches } from "@/core/strips/reach-of-days";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
+import type { Evidence } from "@/core/types";
 import type { LegStripView, MovementView } from "@/domain/junction";
 import { estimateView, type EstimateView } from "@/domain/screen";
 import type { StripPicture } from "./strip-picture";
@@ -17,6 +18,8 @@ export interface StripFacts {
   vehicles: number;
   days: number;
   medianIntervalS: number | null;
+  /** Null for a single day: the grade is of the days together. */
+  evidence: Evidence | null;
 }
 
 /** Share stopping over several movements, each share counted by its vehicles, with Wilson's interval. */
@@ -40,6 +43,7 @@ export function typicalFacts(view: LegStripView, turn: string): StripFacts {
     vehicles: view.leg.vehicles,
     days: view.basis.days,
     medianIntervalS: view.basis.medianIntervalS,
+    evidence: view.leg.evidence,
   };
 }
 
@@ -61,5 +65,6 @@ export function dayFacts(view: LegStripView, picture: StripPicture, reaches: Day
     vehicles: whole.vehicles[0],
     days: 1,
     medianIntervalS: view.basis.medianIntervalS,
+    evidence: null,
   };
 }

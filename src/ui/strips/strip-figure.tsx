@@ -9,6 +9,7 @@ import { daysPhrase, windowPhrase } from "@/ui/screens/phrases";
 import { useCan, useCity } from "@/ui/shell/city";
 import type { StripWords } from "./draw-lines";
 import { factsText } from "./facts-text";
+import { referenceSentence } from "./reference-words";
 import { download, pictureBlob } from "./save-picture";
 import { StripCanvas } from "./strip-canvas";
 import { StripLegend } from "./strip-legend";
@@ -28,7 +29,7 @@ export function StripFigure({ drawn }: { drawn: DrawnStrip }) {
   const label = `Speed on the ${legTitle(view.leg).toLowerCase()}, time across and distance to the stop line upwards. Arrow keys move from cell to cell and read it out, Shift moves ten at once.`;
   return (
     <figure aria-label="Strip" className="flex flex-col">
-      <div className="order-last flex flex-wrap items-start justify-between gap-x-6 pt-2 sm:order-none sm:pt-4">
+      <div className="order-last flex flex-wrap items-start justify-between gap-x-2 pt-2 sm:order-none sm:pt-4 xl:flex-nowrap">
         <StripLegend freeMs={picture.freeMs} isTypical={isTypical} hasStorage={view.leg.storageM !== null} />
         <TakeAlong drawn={drawn} words={words} caption={caption} />
       </div>
@@ -69,7 +70,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
         facts: `${factsText(drawn.facts, units, locale)} Method version ${view.basis.methodVersion}.`,
         free: `free, ${formatSpeed(drawn.picture.freeMs, units, locale)}`,
         tail: query.day === undefined ? "tail line, 95th percentile of observed reach" : "tail line, farthest reach observed",
-        cautions: [...CAUTIONS],
+        cautions: [referenceSentence(view.movements, query.turn, locale), ...CAUTIONS].filter((line): line is string => line !== null),
       });
       download(blob, `strip-${view.junction.code}-${view.leg.id}${query.day ? `-${query.day}` : ""}.png`);
     } catch (error) {
@@ -79,7 +80,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
 
   const params = stripQueryToParams({ ...query, cellS: drawn.picture.strip.spec.cellS }).toString();
   return (
-    <div className="flex flex-wrap gap-2 px-4 pb-3 sm:px-6">
+    <div className="flex shrink-0 flex-wrap gap-2 px-4 pb-3 sm:px-6">
       <Button onClick={() => void savePicture()}>Save picture</Button>
       {mayExport ? (
         <ButtonLink href={`/api/legs/${view.leg.id}/export?${params}`} download>

@@ -34,6 +34,7 @@ describe("delay read off a strip", () => {
     const byRow = delayByRow(strip, 1 / 13);
     expect(sum(byRow.subarray(0, 6))).toBeCloseTo(0, 1);
     expect(byRow[6]).toBeGreaterThan(byRow[20]);
+    expect(sum(byRow)).toBeCloseTo(stripDelayS(strip, 1 / 13, tracks.length), 2);
   });
 
   it("says nothing without vehicles", () => {

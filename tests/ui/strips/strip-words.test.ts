@@ -4,6 +4,7 @@ import { delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-dela
 import { factsText } from "@/ui/strips/facts-text";
 import { pooledStopShare } from "@/ui/strips/strip-facts";
 import { captionOf, cellsPhrase, legTitle, shapePhrase, weekdayPhrase } from "@/ui/strips/strip-phrases";
+import { referenceSentence } from "@/ui/strips/reference-words";
 import { figuresParams, tracksParams } from "@/ui/strips/queries";
 
 describe("sentence of a strip", () => {
@@ -30,6 +31,19 @@ describe("sentence of a strip", () => {
   it("titles a leg by where it comes from", () => {
     expect(legTitle({ name: "from the south, northbound" } as LegStripView["leg"])).toBe("Leg from the south, northbound");
     expect(legTitle({ name: "Leg of the ferry" } as LegStripView["leg"])).toBe("Leg of the ferry");
+  });
+});
+
+describe("reference of the delays", () => {
+  const movement = (turn: string, referenceS: number | null, referenceSource: string, vehicles = 9) => ({ turn, referenceS, referenceSource, vehicles }) as MovementView;
+
+  it("is said with its source, movements of one source together", () => {
+    const all = [movement("left", 23.4, "shrunk"), movement("through", 20, "unstopped"), movement("right", 22, "unstopped"), movement("uturn", 30, "free-speed", 0)];
+    expect(referenceSentence(all, "any", "en-GB")).toBe(
+      "Delay is the time beyond what an undelayed vehicle needs: left 23 s (from few vehicles that did not stop, steadied by those of the same turn); through 20 s, right 22 s (from vehicles that did not stop).",
+    );
+    expect(referenceSentence(all, "right", "en-GB")).toMatch(/: right 22 s/);
+    expect(referenceSentence([movement("left", null, "shrunk")], "any", "en-GB")).toBeNull();
   });
 });
 
@@ -80,9 +94,9 @@ describe("figures under a strip", () => {
   });
 
   it("are said in one line, what cannot be said left out or said so", () => {
-    const facts = { stopShare: null, reachKind: "95th", storageM: 310, days: 19, medianIntervalS: 5 } as const;
+    const facts = { stopShare: null, reachKind: "95th", storageM: 310, days: 19, medianIntervalS: 5, evidence: "fair" } as const;
     const text = factsText({ ...facts, delay: { value: 82, low: 74, high: 91 }, reachM: 268, spill: { value: 0.11, low: 0, high: 1 }, vehicles: 412 }, "metric", "en-GB");
-    expect(text).toBe("Mean delay 82 s (95 % interval 74 to 91); 95th percentile of reach 268 m of 310 m; spills back 11 % of the time; 412 vehicles seen on 19 days; a ping every 5 s.");
-    expect(factsText({ ...facts, delay: null, reachM: null, spill: null, vehicles: 1, days: 1, medianIntervalS: null }, "metric", "en-GB")).toBe("Mean delay cannot be said; 1 vehicle seen on 1 day.");
+    expect(text).toBe("Mean delay 82 s (95 % interval 74 to 91); 95th percentile of reach 268 m of 310 m; spills back 11 % of the time; 412 vehicles seen on 19 days; a ping every 5 s; evidence: fair.");
+    expect(factsText({ ...facts, delay: null, reachM: null, spill: null, vehicles: 1, days: 1, medianIntervalS: null, evidence: null }, "metric", "en-GB")).toBe("Mean delay cannot be said; 1 vehicle seen on 1 day.");
   });
 });

@@ -1,0 +1,25 @@
+import type { ReferenceSource, Turn } from "@/core/types";
+import type { MovementView } from "@/domain/junction";
+import { formatSeconds } from "@/ui/format";
+
+/** Where a reference time comes from, in full and for a table. */
+export const REFERENCE_WORDS: Record<ReferenceSource, string> = {
+  unstopped: "from vehicles that did not stop",
+  shrunk: "from few vehicles that did not stop, steadied by those of the same turn",
+  "free-speed": "from free speed and the turn's geometry",
+};
+
+export const REFERENCE_SHORT: Record<ReferenceSource, string> = { unstopped: "unstopped", shrunk: "few unstopped", "free-speed": "free speed" };
+
+const TURNING: Record<Turn, string> = { left: "left", through: "through", right: "right", uturn: "U-turn" };
+
+/** What the delays of a strip are counted against; movements with one source are said together. */
+export function referenceSentence(movements: MovementView[], turn: Turn | "any", locale: string): string | null {
+  const known = movements.filter((movement) => movement.vehicles > 0 && movement.referenceS !== null && (turn === "any" || movement.turn === turn));
+  if (known.length === 0) return null;
+  const parts = [...new Set(known.map((movement) => movement.referenceSource))].map((source) => {
+    const times = known.filter((movement) => movement.referenceSource === source).map((movement) => `${TURNING[movement.turn]} ${formatSeconds(movement.referenceS, locale)}`);
+    return `${times.join(", ")} (${REFERENCE_WORDS[source]})`;
+  });
+  return `Delay is the time beyond what an undelayed vehicle needs: ${parts.join("; ")}.`;
+}
