@@ -6,13 +6,13 @@ import { planScale, type PlanScale, type Point } from "@/ui/junctions/plan-geome
 import { NorthArrow, ScaleBar } from "@/ui/junctions/plan-parts";
 import { useCity } from "@/ui/shell/city";
 import { paintCanvas } from "@/ui/strips/paint-canvas";
-import { useBoxWidth } from "@/ui/strips/use-box-width";
 import type { CloudStyle } from "./cloud-colors";
 import { drawCloud } from "./draw-cloud";
 import { LegMark, LegTarget } from "./leg-mark";
 import { shiftAt } from "./leg-shape";
 import { StopLineHandle } from "./stop-line-handle";
 import { TurnArrows } from "./turn-arrows";
+import { useBoxSize, type BoxSize } from "./use-box-size";
 
 const SIZE = 640;
 const MARGIN = 4;
@@ -38,18 +38,23 @@ export interface CheckPlanProps {
 
 /** The junction to scale: pings below, legs with stop line, storage and turns above, lines being drawn on top. */
 export function CheckPlan(props: CheckPlanProps) {
-  const { view, cloud, style, radiusM, selected, preview, lines, mayEdit } = props;
+  const { cloud, style, radiusM, selected, preview, lines, mayEdit } = props;
   const { settings } = useCity();
   const box = useRef<HTMLDivElement>(null);
   const drawing = useRef<SVGSVGElement>(null);
+  const size = useBoxSize(box);
   const scale = planScale(radiusM, SIZE, MARGIN);
-  const leg = view.legs.find((candidate) => candidate.id === selected) ?? null;
+  // Words stay as large on a small screen: the drawing is scaled, they are not.
+  const perPx = size.width > 0 ? SIZE / Math.min(size.width, size.height) : 1;
+  const view = preview ? withLine(props.view, selected, preview) : props.view;
+  const leg = view.legs.find((candidate) => candidate.id === selected);
+  const known = props.view.legs.find((candidate) => candidate.id === selected);
   const inOrder = [...view.legs].sort((a, b) => Number(a.id === selected) - Number(b.id === selected));
 
   function placeOf(event: { clientX: number; clientY: number }): Point {
     const frame = (drawing.current as SVGSVGElement).getBoundingClientRect();
-    const perPx = SIZE / frame.width / scale.perM;
-    return [(event.clientX - frame.left - frame.width / 2) * perPx, (frame.top + frame.height / 2 - event.clientY) * perPx];
+    const metres = SIZE / Math.min(frame.width, frame.height) / scale.perM;
+    return [(event.clientX - frame.left - frame.width / 2) * metres, (frame.top + frame.height / 2 - event.clientY) * metres];
   }
 
   function onPointerDown(event: PointerEvent) {
@@ -57,8 +62,8 @@ export function CheckPlan(props: CheckPlanProps) {
   }
 
   return (
-    <div ref={box} className="relative aspect-square w-full max-w-[min(100%,calc(100dvh-11rem))] min-w-0 border border-rule bg-sheet max-lg:max-w-full">
-      <CloudCanvas box={box} cloud={cloud} style={style} radiusM={radiusM} />
+    <div ref={box} className="relative aspect-square w-full min-w-0 overflow-hidden border border-rule bg-sheet lg:aspect-auto lg:h-[calc(100dvh-17rem)] lg:min-h-[28rem]">
+      <CloudCanvas size={size} cloud={cloud} style={style} radiusM={radiusM} />
       <svg
         ref={drawing}
         viewBox={`0 0 ${SIZE} ${SIZE}`}
@@ -70,33 +75,41 @@ export function CheckPlan(props: CheckPlanProps) {
       >
         <circle cx={scale.x(0)} cy={scale.y(0)} r="3.5" fill="#FFFDF8" stroke="#16213A" strokeWidth="1.5" />
         {inOrder.map((one) => (
-          <LegMark key={one.id} leg={one} line={one.id === selected && preview ? preview : one.line} scale={scale} isSelected={one.id === selected} radiusM={radiusM} />
+          <LegMark key={one.id} leg={one} scale={scale} isSelected={one.id === selected} radiusM={radiusM} perPx={perPx} />
         ))}
         <TurnArrows view={view} scale={scale} selected={selected} />
         {lines ? null : inOrder.map((one) => <LegTarget key={one.id} leg={one} scale={scale} onSelect={() => props.onSelect(one.id)} />)}
-        {leg && mayEdit && !lines ? (
-          <StopLineHandle leg={leg} line={preview ?? leg.line} scale={scale} shiftM={props.shiftM} onShift={props.onShift} shiftOf={(event) => shiftAt(leg.line, placeOf(event))} />
+        {leg && known && mayEdit && !lines ? (
+          <StopLineHandle leg={leg} scale={scale} perPx={perPx} shiftM={props.shiftM} onShift={props.onShift} shiftOf={(event) => shiftAt(known.line, placeOf(event))} />
         ) : null}
         {lines?.map((line, i) => <DrawnLine key={i} line={line} scale={scale} color={DRAWN_COLORS[i]} isActive={i === props.active} />)}
-        <NorthArrow size={SIZE} />
-        <ScaleBar scale={scale} units={settings.units} />
+        <g transform={`scale(${perPx.toFixed(3)})`}>
+          <NorthArrow size={SIZE / perPx} />
+          <ScaleBar scale={{ ...scale, size: SIZE / perPx, perM: scale.perM / perPx }} units={settings.units} />
+        </g>
       </svg>
     </div>
   );
 }
 
-function CloudCanvas({ box, cloud, style, radiusM }: { box: React.RefObject<HTMLDivElement | null>; cloud: PingCloud | undefined; style: CloudStyle; radiusM: number }) {
+function withLine(view: LegCheckView, legId: number | null, line: Point[]): LegCheckView {
+  return { ...view, legs: view.legs.map((leg) => (leg.id === legId ? { ...leg, line } : leg)) };
+}
+
+function CloudCanvas({ size, cloud, style, radiusM }: { size: BoxSize; cloud: PingCloud | undefined; style: CloudStyle; radiusM: number }) {
   const canvas = useRef<HTMLCanvasElement>(null);
-  const { width, ratio } = useBoxWidth(box);
+  const { width, height, ratio } = size;
   useEffect(() => {
     if (width === 0) return;
+    const side = Math.min(width, height);
     const frame = requestAnimationFrame(() =>
-      paintCanvas(canvas.current, width, width, ratio, (ctx) => {
-        if (cloud) drawCloud(ctx, cloud, planScale(radiusM, width, (MARGIN * width) / SIZE), style);
+      paintCanvas(canvas.current, width, height, ratio, (ctx) => {
+        ctx.translate((width - side) / 2, (height - side) / 2);
+        if (cloud) drawCloud(ctx, cloud, planScale(radiusM, side, (MARGIN * side) / SIZE), style);
       }),
     );
     return () => cancelAnimationFrame(frame);
-  }, [cloud, style, radiusM, width, ratio]);
+  }, [cloud, style, radiusM, width, height, ratio]);
   return <canvas ref={canvas} aria-hidden="true" className="absolute inset-0 size-full" />;
 }
 

@@ -12,7 +12,6 @@ export function drawCloud(ctx: CanvasRenderingContext2D, cloud: PingCloud, scale
   ctx.lineWidth = 1.3;
   for (let i = 0; i < cloud.eastM.length; i++) {
     const [x, y] = [scale.x(cloud.eastM[i]), scale.y(cloud.northM[i])];
-    if (x < 0 || y < 0 || x > scale.size || y > scale.size) continue;
     const heading = cloud.headingDeg[i];
     const color = style === "direction" ? directionColor(heading) : pingSpeedColor(cloud.speedMs[i]);
     if (heading === null) {

@@ -59,7 +59,7 @@ export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Pr
       </Field>
       <Field
         label={`Move the stop line, ${lengthUnit(units)}`}
-        hint={`Upstream is positive. It will be ${shiftWords(shiftM, (m) => formatLength(m, units, locale))}; you can also drag it on the plan.`}
+        hint={shiftM === 0 ? "Upstream is positive; you can also drag it on the plan." : `It goes ${shiftWords(shiftM, (m) => formatLength(m, units, locale))}.`}
         error={isTooShort ? "Too little of the leg would remain." : server.stopLineShiftM}
       >
         {(told) => <ShiftInput {...told} shiftM={shiftM} onShift={onShift} />}

@@ -21,7 +21,7 @@ import { shiftedLine } from "./leg-shape";
 import { FIRST_RADIUS, PlanTools, RADII_M } from "./plan-tools";
 import { legCheckQuery, pingCloudQuery } from "./queries";
 import { RematchNote } from "./rematch-note";
-import { useDrawing } from "./use-drawing";
+import { useDrawing, type Drawing } from "./use-drawing";
 
 const CODEC: AddressCodec<{ leg: number | null }> = {
   fromParams: (params: RawParams) => ({ leg: typeof params.leg === "string" && /^\d{1,9}$/.test(params.leg) ? Number(params.leg) : null }),
@@ -88,6 +88,11 @@ function Check({ view, actions }: { view: LegCheckView; actions: LegActions }) {
     change({ leg: legId });
   }
 
+  function draw(drawing: Drawing) {
+    setShiftM(0);
+    drawn.begin(drawing);
+  }
+
   async function refresh() {
     // Names and figures of the legs stand on many pages.
     await client.invalidateQueries();
@@ -132,7 +137,7 @@ function Check({ view, actions }: { view: LegCheckView; actions: LegActions }) {
           <>
             {leg ? <LegPicker legs={view.legs} selected={leg.id} onSelect={select} /> : <NoLegs mayEdit={mayEdit} />}
             {mayEdit ? (
-              <Button className="self-start" onClick={() => drawn.begin({ kind: "add" })}>
+              <Button className="self-start" onClick={() => draw({ kind: "add" })}>
                 Add a leg
               </Button>
             ) : null}
@@ -146,7 +151,7 @@ function Check({ view, actions }: { view: LegCheckView; actions: LegActions }) {
                 shiftM={shiftM}
                 isTooShort={shiftM !== 0 && preview === null}
                 onShift={setShiftM}
-                onDraw={drawn.begin}
+                onDraw={draw}
                 onSaved={refresh}
               />
             ) : null}

@@ -4,18 +4,21 @@ import { lineLength, pathOf, placeOn, stretchOf, type PlanScale, type Point } fr
 import { COLORS } from "@/ui/scales";
 
 const STOP_HALF_M = 5;
-const LABEL_ROOM = 78;
+const LABEL_ROOM_PX = 78;
+const LETTER_PX = 15;
 
 interface Props {
   leg: LegOfCheck;
-  line: Point[];
   scale: PlanScale;
   isSelected: boolean;
   radiusM: number;
+  /** Drawing units for a pixel of the page. */
+  perPx: number;
 }
 
 /** One leg: centreline (broken where it is doubtful), stop line, storage, name. */
-export function LegMark({ leg, line, scale, isSelected, radiusM }: Props) {
+export function LegMark({ leg, scale, isSelected, radiusM, perPx }: Props) {
+  const { line } = leg;
   const color = isSelected ? COLORS.pick : COLORS.ink;
   const path = pathOf(line, scale);
   const dash = leg.doubts.length > 0 ? "9 6" : undefined;
@@ -25,7 +28,7 @@ export function LegMark({ leg, line, scale, isSelected, radiusM }: Props) {
       <path d={path} fill="none" stroke={color} strokeWidth={isSelected ? 3.25 : 1.75} strokeDasharray={dash} />
       {leg.storageM !== null && leg.storageM <= lineLength(line) + 30 ? <Bar line={line} atM={leg.storageM} scale={scale} color={color} width={1.75} dash="4 3" /> : null}
       <Bar line={line} atM={0} scale={scale} color={color} width={isSelected ? 4.5 : 3.5} />
-      <Name leg={leg} line={line} scale={scale} color={color} radiusM={radiusM} />
+      <Name leg={leg} scale={scale} color={color} radiusM={radiusM} perPx={perPx} />
     </g>
   );
 }
@@ -38,13 +41,15 @@ function Bar({ line, atM, scale, color, width, dash }: { line: Point[]; atM: num
 }
 
 /** Near the place where the leg leaves the plan, kept inside it. */
-function Name({ leg, line, scale, color, radiusM }: { leg: LegOfCheck; line: Point[]; scale: PlanScale; color: string; radiusM: number }) {
+function Name({ leg, scale, color, radiusM, perPx }: Omit<Props, "isSelected"> & { color: string }) {
+  const { line } = leg;
+  const room = LABEL_ROOM_PX * perPx;
   const inside = stretchOf(line, 0, Math.min(lineLength(line), radiusM * 0.82));
   const [east, north] = inside[inside.length - 1];
-  const x = Math.min(scale.size - LABEL_ROOM, Math.max(LABEL_ROOM, scale.x(east)));
-  const y = Math.min(scale.size - 34, Math.max(26, scale.y(north) - 12));
+  const x = Math.min(scale.size - room, Math.max(room, scale.x(east)));
+  const y = Math.min(scale.size - 34, Math.max(26 * perPx, scale.y(north) - 12 * perPx));
   return (
-    <text x={x} y={y} textAnchor="middle" fontSize="15" fontWeight="600" fill={color} stroke={COLORS.sheet} strokeWidth="4.5" paintOrder="stroke">
+    <text x={x} y={y} textAnchor="middle" fontSize={LETTER_PX * perPx} fontWeight="600" fill={color} stroke={COLORS.sheet} strokeWidth={4.5 * perPx} paintOrder="stroke">
       {shortLegName(leg)}
     </text>
   );

@@ -51,7 +51,7 @@ function CloudKey({ style }: { style: CloudStyle }) {
   if (style === "hidden") return null;
   if (style === "direction") {
     return (
-      <span className="inline-flex items-center gap-3 text-ink-soft">
+      <span className="inline-flex flex-wrap items-center gap-x-3 text-ink-soft">
         {DIRECTION_RING.slice(0, 4).map(({ from }, i) => (
           <span key={from} className="inline-flex items-center gap-1">
             <svg aria-hidden="true" width="14" height="14" viewBox="-7 -7 14 14">

@@ -3,7 +3,7 @@
 import type { KeyboardEvent, PointerEvent } from "react";
 import type { LegOfCheck } from "@/domain/leg-check";
 import { formatLength } from "@/ui/format";
-import { placeOn, type PlanScale, type Point } from "@/ui/junctions/plan-geometry";
+import { placeOn, type PlanScale } from "@/ui/junctions/plan-geometry";
 import { COLORS } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";
 import { LEAST_SHIFT_M, MOST_SHIFT_M } from "./leg-shape";
@@ -11,19 +11,20 @@ import { LEAST_SHIFT_M, MOST_SHIFT_M } from "./leg-shape";
 const STEPS: Record<string, number> = { ArrowUp: 1, ArrowRight: 1, ArrowDown: -1, ArrowLeft: -1, PageUp: 5, PageDown: -5 };
 
 interface Props {
-  leg: LegOfCheck;
   /** As it is drawn now, the move included. */
-  line: Point[];
+  leg: LegOfCheck;
   scale: PlanScale;
+  /** Drawing units for a pixel of the page. */
+  perPx: number;
   shiftM: number;
   onShift: (shiftM: number) => void;
   shiftOf: (event: PointerEvent) => number;
 }
 
 /** The selected leg's stop line to take hold of: dragged along the leg, or moved by the arrow keys. */
-export function StopLineHandle({ leg, line, scale, shiftM, onShift, shiftOf }: Props) {
+export function StopLineHandle({ leg, scale, perPx, shiftM, onShift, shiftOf }: Props) {
   const { settings, locale } = useCity();
-  const { at } = placeOn(line, 0);
+  const { at } = placeOn(leg.line, 0);
 
   function onKey(event: KeyboardEvent) {
     const step = event.key === "Home" ? -shiftM : STEPS[event.key];
@@ -51,8 +52,8 @@ export function StopLineHandle({ leg, line, scale, shiftM, onShift, shiftOf }: P
       onPointerMove={onPointerMove}
       data-testid="stop-line"
     >
-      <circle cx={scale.x(at[0])} cy={scale.y(at[1])} r="16" fill="transparent" />
-      <circle cx={scale.x(at[0])} cy={scale.y(at[1])} r="6.5" fill={COLORS.sheet} stroke={COLORS.pick} strokeWidth="2.5" />
+      <circle cx={scale.x(at[0])} cy={scale.y(at[1])} r={16 * perPx} fill="transparent" />
+      <circle cx={scale.x(at[0])} cy={scale.y(at[1])} r={6.5 * perPx} fill={COLORS.sheet} stroke={COLORS.pick} strokeWidth={2.5 * perPx} />
     </g>
   );
 }
