@@ -78,7 +78,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "spillback",
     term: "Spillback",
     meaning: [
-      `Share of the time for which the sample can speak about the leg in which its queue fills ${QUEUE.spillShare * 100} % or more of the storage length, the distance to the junction behind. A vehicle speaks for the leg while it is on it and ${QUEUE.sightS} s before and after.`,
+      `Share of the time for which the sample can speak about the leg in which its queue fills ${QUEUE.spillShare * 100} % or more of the storage length, the distance to the junction behind. Where the unseen end of the queue is expected counts with it. A vehicle speaks for the leg while it is on it and ${QUEUE.sightS} s before and after.`,
     ],
     formula: "queue storage ratio = reach / storage length",
     source: "Queue storage ratio: Highway Capacity Manual, 7th edition, chapter 31.",
@@ -105,7 +105,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "rank",
     term: "Rank, and where it could be",
     meaning: [
-      "Junctions are ranked by mean delay after shrinkage: a mean that rests on few vehicles is drawn towards the city’s, so that five unlucky vehicles do not top the list. Equal values share the better rank. Filters choose among the junctions and never change a rank.",
+      "Junctions are ranked by mean delay after shrinkage: a mean that rests on few vehicles is drawn towards the city’s, by ratio rather than by seconds (on log(delay + 10 s)), so that five unlucky vehicles do not top the list and a well observed bad junction keeps its place. Equal values share the better rank. Filters choose among the junctions and never change a rank.",
       `Its interval comes from ${DEFAULT_SCORE_OPTIONS.rankDraws.toLocaleString("en-GB")} seeded draws of all junctions at once. Where two spans overlap, the sample does not settle which junction is worse.`,
     ],
     source: "Empirical Bayes with the variance of DerSimonian and Laird, Controlled Clinical Trials 7, 1986. Rank intervals: Goldstein and Spiegelhalter, JRSS A 159, 1996.",
