@@ -15,6 +15,11 @@ export const FILLING = Object.freeze({
   slackM: 4,
   /** Vehicles drive at this share of the free speed when nothing tells better. */
   driveShare: 0.9,
+  /** Over short steps, speeds that must have dipped below this count as a stop, m/s; longer steps hide too much. */
+  dipBelowMs: 0.3,
+  dipMostStepS: 6.5,
+  /** Past a stop line vehicles are slow because they turn, m. */
+  turningM: 45,
   /** A vehicle that waits for a signal does not stand farther past the line than this, m. */
   pastLineM: 4,
 });
@@ -34,7 +39,8 @@ export function fillGaps(from: Course, lines: ArrayLike<number>, to: Course): vo
     while (line < lines.length && lines[line] + FILLING.pastLineM < from.distanceM[i]) line += 1;
     const seconds = (from.tMs[i + 1] - from.tMs[i]) / 1000;
     const isKnown = from.speedMs[i] >= 0 && from.speedMs[i + 1] >= 0;
-    if (seconds >= FILLING.leastStepS && isKnown) fillStep(from, i, line < lines.length ? lines[line] : Infinity, to);
+    const passed = line > 0 ? lines[line - 1] : -Infinity;
+    if (seconds >= FILLING.leastStepS && isKnown) fillStep(from, i, passed, line < lines.length ? lines[line] : Infinity, to);
   }
 }
 
@@ -47,13 +53,13 @@ function put(to: Course, tMs: number, distanceM: number, speedMs: number, freeMs
   to.kind[n] = kind;
 }
 
-function fillStep(from: Course, i: number, line: number, to: Course): void {
+function fillStep(from: Course, i: number, passed: number, line: number, to: Course): void {
   const v0 = from.speedMs[i];
   const v1 = from.speedMs[i + 1];
   if (v0 < stopMs && v1 < stopMs) return;
   if (v0 < stopMs) setOff(from, i, to);
   else if (v1 < stopMs) comeToStand(from, i, to);
-  else hiddenStop(from, i, line, to);
+  else hiddenStop(from, i, passed, line, to);
 }
 
 /** From a stand at ping i: waits, speeds up to the next ping's speed, drives on. */
@@ -87,7 +93,7 @@ function comeToStand(from: Course, i: number, to: Course): void {
 }
 
 /** A stop between two moving pings, upstream of the stop line where that leaves room. */
-function hiddenStop(from: Course, i: number, line: number, to: Course): void {
+function hiddenStop(from: Course, i: number, passed: number, line: number, to: Course): void {
   const seconds = (from.tMs[i + 1] - from.tMs[i]) / 1000;
   const step = from.distanceM[i + 1] - from.distanceM[i];
   const v0 = from.speedMs[i];
@@ -95,12 +101,12 @@ function hiddenStop(from: Course, i: number, line: number, to: Course): void {
   const brakeM = (v0 * v0) / (2 * brakeMs2);
   const reachM = (v1 * v1) / (2 * speedUpMs2);
   const rest = step - brakeM - reachM;
-  if (rest < -FILLING.slackM) return;
+  if (rest < -FILLING.slackM) return dip(from, i, passed, to);
   const drive = Math.max(v0, v1, FILLING.driveShare * from.freeMs[i]);
   const speedUpS = Math.max(0, drive - Math.max(v0, v1)) / speedUpMs2 / 2;
   const driveS = Math.max(0, rest) / drive + (rest > 2 * drive ? speedUpS : 0);
   const standS = seconds - v0 / brakeMs2 - v1 / speedUpMs2 - driveS;
-  if (standS < FILLING.leastStandS) return;
+  if (standS < FILLING.leastStandS) return dip(from, i, passed, to);
   const earliest = from.distanceM[i] + Math.min(brakeM, step);
   const latest = Math.max(earliest, from.distanceM[i + 1] - reachM);
   const last = line + FILLING.pastLineM >= earliest ? Math.min(latest, line + FILLING.pastLineM) : latest;
@@ -113,4 +119,29 @@ function hiddenStop(from: Course, i: number, line: number, to: Course): void {
   put(to, offMs, place, 0, from.freeMs[i], kind);
   const upMs = offMs + (v1 / speedUpMs2) * 1000;
   if (place + reachM + 1 < from.distanceM[i + 1] && upMs < from.tMs[i + 1]) put(to, upMs, place + reachM, v1, from.freeMs[i], kind);
+}
+
+/**
+ * A moment of (nearly) standing between two moving pings a few seconds apart: the lowest speed of a course that brakes
+ * and speeds up over the whole step, at rates in the usual ratio.
+ */
+function dip(from: Course, i: number, passed: number, to: Course): void {
+  const seconds = (from.tMs[i + 1] - from.tMs[i]) / 1000;
+  if (seconds > FILLING.dipMostStepS) return;
+  const v0 = from.speedMs[i];
+  const v1 = from.speedMs[i + 1];
+  const step = from.distanceM[i + 1] - from.distanceM[i];
+  let lowest = (2 * step) / seconds - (v0 + v1) / 2;
+  let brakeS = seconds / 2;
+  for (let round = 0; round < 3; round++) {
+    const braking = Math.max(0, v0 - lowest) / brakeMs2;
+    const speeding = Math.max(0, v1 - lowest) / speedUpMs2;
+    if (braking + speeding <= 0) return;
+    brakeS = (seconds * braking) / (braking + speeding);
+    lowest = (2 * step - brakeS * v0 - (seconds - brakeS) * v1) / seconds;
+  }
+  if (!(lowest < FILLING.dipBelowMs) || v0 - lowest > 1.5 * brakeMs2 * brakeS) return;
+  const moved = Math.min(step, Math.max(0, (brakeS * (v0 + Math.max(0, lowest))) / 2));
+  if (from.distanceM[i] + moved < passed + FILLING.turningM) return;
+  put(to, from.tMs[i] + brakeS * 1000, from.distanceM[i] + moved, Math.max(0, lowest), from.freeMs[i], KNOTS.placed);
 }
