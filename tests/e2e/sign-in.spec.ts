@@ -42,6 +42,7 @@ test("an unknown account and a wrong password are answered alike", async ({ page
 test("an administrator invites a person, who takes it up by mail, is given another role, and is shut out", async ({ page, browser, signIn, expectAccessible }) => {
   await signIn("admin");
   await page.goto("/admin/people");
+  await expect(page.getByRole("button", { name: "Invite" })).toBeEnabled();
   await page.getByLabel("E-mail address").fill("nell.brook@varnmouth.example");
   await page.getByLabel("Name").fill("Nell Brook");
   await page.getByLabel("Role", { exact: true }).selectOption("reader");
@@ -93,6 +94,7 @@ test("an administrator changes a period and the city keeps it", async ({ page, s
   await signIn("admin");
   await page.goto("/admin/settings");
   await expectAccessible();
+  await expect(page.getByRole("button", { name: "Save settings" })).toBeEnabled();
   await page.getByLabel("evening to").selectOption({ label: "22:30" });
   await page.getByRole("button", { name: "Save settings" }).click();
   await expect(page.getByText("Saved.")).toBeVisible();
