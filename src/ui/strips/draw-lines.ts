@@ -131,7 +131,21 @@ function drawSideLabel(ctx: CanvasRenderingContext2D, layout: StripLayout, text:
   ctx.fillStyle = isFirst ? COLORS.ink : COLORS.inkSoft;
   ctx.textAlign = "left";
   ctx.textBaseline = "alphabetic";
-  ctx.fillText(text, left, y, layout.width - left - 4);
+  wrapWords(text, layout.width - left - 4, (line) => ctx.measureText(line).width).forEach((line, k) => ctx.fillText(line, left, y + k * 18));
+}
+
+/** Lines of whole words, each as long as the width allows. */
+export function wrapWords(text: string, width: number, widthOf: (line: string) => number): string[] {
+  const lines: string[] = [];
+  let line = "";
+  for (const word of text.split(" ")) {
+    const longer = line === "" ? word : `${line} ${word}`;
+    if (line !== "" && widthOf(longer) > width) {
+      lines.push(line);
+      line = word;
+    } else line = longer;
+  }
+  return line === "" ? lines : [...lines, line];
 }
 
 /** A label inside the plot, on a piece of sheet. */

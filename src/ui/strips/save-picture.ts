@@ -1,6 +1,6 @@
 import { COLORS } from "@/ui/scales";
 import { shadeOf } from "./draw-cells";
-import { FONT, type StripWords } from "./draw-lines";
+import { FONT, wrapWords, type StripWords } from "./draw-lines";
 import { drawPicture, loadFaces } from "./draw-picture";
 import { layoutStrip } from "./strip-layout";
 import type { StripPicture } from "./strip-picture";
@@ -30,7 +30,8 @@ export async function pictureBlob(picture: StripPicture, words: StripWords, told
   const canvas = document.createElement("canvas");
   const ctx = canvas.getContext("2d");
   if (!ctx) throw new Error("This browser cannot draw pictures.");
-  const cautions = wrap(ctx, told.cautions.join(" "), WIDTH - 2 * MARGIN, `15px ${FONT}`);
+  ctx.font = `15px ${FONT}`;
+  const cautions = wrapWords(told.cautions.join(" "), WIDTH - 2 * MARGIN, (line) => ctx.measureText(line).width);
   const height = HEAD + layout.height + 66 + cautions.length * LINE + MARGIN / 2;
   canvas.width = WIDTH * RATIO;
   canvas.height = Math.round(height * RATIO);
@@ -105,18 +106,4 @@ function drawKey(ctx: CanvasRenderingContext2D, left: number, y: number, told: P
   x += 26;
   say("no vehicle seen");
   ctx.textBaseline = "alphabetic";
-}
-
-function wrap(ctx: CanvasRenderingContext2D, text: string, width: number, font: string): string[] {
-  ctx.font = font;
-  const lines: string[] = [];
-  let line = "";
-  for (const word of text.split(" ")) {
-    const longer = line === "" ? word : `${line} ${word}`;
-    if (line !== "" && ctx.measureText(longer).width > width) {
-      lines.push(line);
-      line = word;
-    } else line = longer;
-  }
-  return line === "" ? lines : [...lines, line];
 }

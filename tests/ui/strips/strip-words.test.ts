@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { stripQueryFromParams, type LegStripView, type MovementView } from "@/domain/junction";
 import { delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-delay";
+import { wrapWords } from "@/ui/strips/draw-lines";
 import { factsText } from "@/ui/strips/facts-text";
 import { pooledStopShare } from "@/ui/strips/strip-facts";
 import { captionOf, cellsPhrase, legTitle, shapePhrase, weekdayPhrase } from "@/ui/strips/strip-phrases";
@@ -54,6 +55,13 @@ describe("what is fetched", () => {
     expect(tracksParams(fine)).toBe(tracksParams(plain));
     expect(tracksParams(plain)).toBe("period=am&day=2026-03-03");
     expect(figuresParams({ ...fine, turn: "any" })).toBe(figuresParams(plain));
+  });
+});
+
+describe("labels", () => {
+  it("break between words where the room ends, and never inside one", () => {
+    expect(wrapWords("Harbour Road / Custom House Lane behind", 20, (line) => line.length)).toEqual(["Harbour Road /", "Custom House Lane", "behind"]);
+    expect(wrapWords("Unbreakable", 3, (line) => line.length)).toEqual(["Unbreakable"]);
   });
 });
 
