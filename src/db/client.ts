@@ -16,5 +16,7 @@ export function openDatabase(url: string, options: { max?: number } = {}): Datab
   const pool = new Pool({ connectionString: url, max: options.max ?? 10 });
   // An idle client that loses its server must not take the process down; the next query reports it.
   pool.on("error", () => undefined);
+  // The same for one that is in use between two queries, as in a transaction or while it holds a lock.
+  pool.on("connect", (client) => client.on("error", () => undefined));
   return { db: drizzle(pool, { schema }), pool, close: () => pool.end() };
 }

@@ -1,4 +1,4 @@
-export const ERROR_CODES = ["invalid", "unauthenticated", "forbidden", "not_found", "conflict", "too_many", "internal"] as const;
+export const ERROR_CODES = ["invalid", "unauthenticated", "forbidden", "not_found", "conflict", "too_many", "full", "internal"] as const;
 export type ErrorCode = (typeof ERROR_CODES)[number];
 
 /** A refusal that a person may read: the message is a sentence that says what and where. */

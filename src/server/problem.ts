@@ -20,6 +20,7 @@ export const STATUS_OF_CODE: Record<ErrorCode, number> = {
   not_found: 404,
   conflict: 409,
   too_many: 429,
+  full: 507,
   internal: 500,
 };
 

@@ -3,6 +3,7 @@ import { uploads } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import type { FileMapping, UploadKind } from "@/domain/upload";
 import type { Context } from "../context";
+import { orNoRoom } from "../no-room";
 import { failUpload } from "./finish-upload";
 import { ingestJunctions } from "./ingest-junctions";
 import { ingestLegs } from "./ingest-legs";
@@ -32,7 +33,8 @@ export async function ingestUpload(ctx: Context, input: { uploadId: string }, ru
   const ready = { id: upload.id, storageKey: upload.storageKey, mapping: upload.mapping satisfies FileMapping };
   try {
     await ingestKind(ctx, upload.kind, ready, run?.signal);
-  } catch (error) {
+  } catch (thrown) {
+    const error = orNoRoom(thrown);
     if (error instanceof AppError) return failUpload(ctx, upload.id, error.message, null, null);
     if (run?.isLast && !run.signal.aborted) {
       await failUpload(ctx, upload.id, OUR_FAULT, null, null);

@@ -1,4 +1,4 @@
-import { mkdtemp, open, readFile, rm, type FileHandle } from "node:fs/promises";
+import { mkdtemp, open, rm, type FileHandle } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { PingColumns } from "@/core/types";
@@ -111,7 +111,7 @@ interface Spill {
 
 interface BucketFile {
   file: FileHandle;
-  path: string;
+  pings: number;
   view: DataView;
   filled: number;
 }
@@ -120,9 +120,11 @@ async function openSpill(): Promise<Spill> {
   const folder = await mkdtemp(join(tmpdir(), "tailmark-pings-"));
   const files: BucketFile[] = [];
   for (let i = 0; i < BUCKETS; i++) {
-    const path = join(folder, `${i}.pings`);
-    files.push({ file: await open(path, "w"), path, view: new DataView(new ArrayBuffer(BUFFER_PINGS * BYTES_PER_PING)), filled: 0 });
+    const file = await open(join(folder, `${i}.pings`), "w+");
+    files.push({ file, pings: 0, view: new DataView(new ArrayBuffer(BUFFER_PINGS * BYTES_PER_PING)), filled: 0 });
   }
+  // Without names the files go with the process, however it ends.
+  await rm(folder, { recursive: true, force: true });
   return {
     async add(batch) {
       for (let i = 0; i < batch.length; i++) {
@@ -133,20 +135,32 @@ async function openSpill(): Promise<Spill> {
     },
     async read(index) {
       await flush(files[index]);
-      const bytes = await readFile(files[index].path);
-      return readPings(new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength));
+      const bytes = new Uint8Array(files[index].pings * BYTES_PER_PING);
+      await fill(bytes, files[index].file);
+      return readPings(new DataView(bytes.buffer));
     },
     async close() {
       for (const { file } of files) await file.close();
-      await rm(folder, { recursive: true, force: true });
     },
   };
 }
 
 async function flush(bucket: BucketFile): Promise<void> {
   if (bucket.filled === 0) return;
-  await bucket.file.write(new Uint8Array(bucket.view.buffer, 0, bucket.filled * BYTES_PER_PING));
+  const bytes = new Uint8Array(bucket.view.buffer, 0, bucket.filled * BYTES_PER_PING);
+  const end = bucket.pings * BYTES_PER_PING;
+  for (let done = 0; done < bytes.length; ) done += (await bucket.file.write(bytes, done, bytes.length - done, end + done)).bytesWritten;
+  bucket.pings += bucket.filled;
   bucket.filled = 0;
+}
+
+/** The file from its beginning; one read stops at 2 GiB, and may stop earlier. */
+async function fill(bytes: Uint8Array, file: FileHandle): Promise<void> {
+  for (let at = 0; at < bytes.length; ) {
+    const { bytesRead } = await file.read(bytes, at, Math.min(bytes.length - at, 2 ** 30), at);
+    if (bytesRead === 0) throw new Error("A file of pings on the disk ends too early.");
+    at += bytesRead;
+  }
 }
 
 function writePing(view: DataView, at: number, batch: PingColumns, i: number): void {

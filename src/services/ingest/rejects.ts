@@ -1,4 +1,3 @@
-import { once } from "node:events";
 import { PassThrough, Readable } from "node:stream";
 import { REJECT_SENTENCES, type RejectedRow } from "@/domain/upload";
 import { csvText, type Cell } from "@/formats/csv/write-csv";
@@ -18,19 +17,25 @@ export function openRejects(ctx: Context, uploadId: string): RejectWriter {
   const key = `uploads/${uploadId}-rejected.csv`;
   let rows: PassThrough | null = null;
   let stored: Promise<number> | null = null;
+  let failure: unknown;
 
   function start(): PassThrough {
     const stream = new PassThrough({ objectMode: true });
     stored = ctx.storage.put(key, Readable.from(csvText(HEADER, stream as AsyncIterable<Cell[]>)));
     // A full disk must reach the one who adds rows, not only the one who finishes.
-    stored.catch((error: Error) => stream.destroy(error));
+    stored.catch((error: unknown) => {
+      failure = error;
+      stream.destroy();
+    });
     return stream;
   }
 
   return {
     async add(row) {
       rows ??= start();
-      if (!rows.write([row.line, row.reason, REJECT_SENTENCES[row.reason], row.text])) await once(rows, "drain");
+      const hasRoom = rows.write([row.line, row.reason, REJECT_SENTENCES[row.reason], row.text]);
+      if (!hasRoom) await drained(rows);
+      if (failure) throw failure;
     },
     async finish() {
       if (!rows) return null;
@@ -45,6 +50,18 @@ export function openRejects(ctx: Context, uploadId: string): RejectWriter {
       await ctx.storage.remove(key);
     },
   };
+}
+
+/** Resolves as well when nobody will ever drain it. */
+function drained(stream: PassThrough): Promise<void> {
+  if (stream.destroyed) return Promise.resolve();
+  return new Promise((resolve) => {
+    const done = () => {
+      stream.off("drain", done).off("close", done);
+      resolve();
+    };
+    stream.on("drain", done).on("close", done);
+  });
 }
 
 export async function storeRejects(ctx: Context, uploadId: string, rows: readonly RejectedRow[]): Promise<string | null> {

@@ -7,6 +7,7 @@ import { UPLOAD_KINDS, type Detection } from "@/domain/upload";
 import { detect } from "@/formats/detect/detect";
 import { recordAudit } from "../audit/record-audit";
 import { requirePermission, type Context } from "../context";
+import { orNoRoom } from "../no-room";
 
 export const ReceiveUpload = z.object({
   kind: z.enum(UPLOAD_KINDS),
@@ -42,7 +43,9 @@ export async function receiveUpload(ctx: Context, input: ReceiveUpload, content:
       yield chunk;
     }
   }
-  const bytes = await ctx.storage.put(storageKey, watched());
+  const bytes = await ctx.storage.put(storageKey, watched()).catch((error: unknown) => {
+    throw orNoRoom(error);
+  });
   if (bytes === 0) {
     await ctx.storage.remove(storageKey);
     throw new AppError("invalid", `The file ${name} is empty.`);
