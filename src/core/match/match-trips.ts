@@ -177,7 +177,7 @@ function collectChains(
       continue;
     }
     const at = n * MATCHING.candidates + c;
-    const joined: boolean = chain !== null && strays <= MATCHING.bridgePings && append(chain, graph, router, trips, work, last, n, at, strays);
+    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, router, trips, work, last, n, at, strays);
     if (!joined) {
       if (chain && chain.pings.length > 1) visit(chain);
       chain = { trip, links: [work.near.link[at]], pings: [work.ping[n]], step: [0], position: [work.near.position[at]] };
@@ -186,6 +186,13 @@ function collectChains(
     last = n;
   }
   if (chain && chain.pings.length > 1) visit(chain);
+}
+
+/** Whether a vehicle hardly moved between two states: stray pings in between are the noise of a long wait. */
+function isWaiting(trips: Trips, work: Work, before: number, n: number): boolean {
+  const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[before]]) / 1000;
+  const chord = Math.hypot(work.x[n] - work.x[before], work.y[n] - work.y[before]);
+  return chord < MATCHING.waitingM && seconds < MATCHING.waitingMostS;
 }
 
 /** Adds a place to a chain; after stray pings only where the way fits the time and the chord. */

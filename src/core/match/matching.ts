@@ -2,7 +2,7 @@
 export const MATCHING = Object.freeze({
   /** Lateral spread of pings around a link's line, and the farthest that counts, m. */
   sideSpreadM: 7,
-  sideLimitM: 24,
+  sideLimitM: 30,
   /** Spread of headings along a link, and inside a junction's box, degrees; cost at most headingMostCost. */
   headingSpreadDeg: 18,
   boxHeadingSpreadDeg: 35,
@@ -36,4 +36,7 @@ export const MATCHING = Object.freeze({
   thinS: 2.9,
   /** Two trusted stretches may be joined over this many stray pings. */
   bridgePings: 2,
+  /** More where the vehicle moved less than this over them, m, within this time, s. */
+  waitingM: 60,
+  waitingMostS: 180,
 });
