@@ -1,11 +1,11 @@
 /** Run before web and worker: tables, queues, first accounts, demo city. Lines that begin with "> " are for the person who started it. */
 import { openDatabase } from "@/db/client";
-import { env } from "@/env";
+import { env, type Env } from "@/env";
 import { inviteFirstAdmin, seedDemoAccounts } from "./accounts";
 import { migrateDatabase } from "./migrate-database";
 import { seedCity } from "./seed";
 
-const settings = env();
+const settings = readSettings();
 await migrateDatabase(settings.DATABASE_URL, "drizzle");
 const database = openDatabase(settings.DATABASE_URL, { max: 4 });
 try {
@@ -19,4 +19,14 @@ try {
   }
 } finally {
   await database.close();
+}
+
+/** A setting that is missing or wrong is told in its sentence; where in the code it was noticed helps nobody. */
+function readSettings(): Env {
+  try {
+    return env();
+  } catch (error) {
+    console.error(error instanceof Error ? error.message : error);
+    process.exit(1);
+  }
 }

@@ -50,12 +50,10 @@ async function settingsFor(mode, secrets, databaseUrl) {
     TAILMARK_MODE: mode,
     DATABASE_URL: databaseUrl,
     DATA_DIR: dataDir,
-    BASE_URL: baseUrl,
-    NEXTAUTH_URL: baseUrl,
     NEXT_TELEMETRY_DISABLED: "1",
     KEPT_MAIL_PORT: process.env.KEPT_MAIL_PORT || String(await anyFreePort()),
-    // Production names its own secret or is refused; elsewhere each clone has one.
-    ...(mode !== "production" && { NEXTAUTH_SECRET: process.env.NEXTAUTH_SECRET || secrets.session }),
+    // Production names its own secret and address or is refused; elsewhere each clone has them.
+    ...(mode !== "production" && { NEXTAUTH_SECRET: process.env.NEXTAUTH_SECRET || secrets.session, BASE_URL: baseUrl }),
   };
   return { port, baseUrl, env, readyUrl: `http://${shownHost}:${port}/sign-in` };
 }
@@ -111,6 +109,7 @@ async function prepare(programs, env) {
   const lines = [];
   await step("Preparing the data", (say) =>
     run(process.execPath, ["--enable-source-maps", programs.prepare], {
+      what: "Preparing the data",
       cwd: root,
       env,
       onLine(line) {

@@ -40,7 +40,7 @@ export async function ensureWebBuild(root) {
   const isFresh = existsSync(join(root, ".next/BUILD_ID")) && existsSync(stamp) && readFileSync(stamp, "utf8") === hash;
   if (isFresh) return;
   await step("Building the pages", () =>
-    run(process.execPath, [join(root, "node_modules/next/dist/bin/next"), "build"], { cwd: root, env: { NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" } }),
+    run(process.execPath, [join(root, "node_modules/next/dist/bin/next"), "build"], { what: "The build", cwd: root, env: { NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" } }),
   );
   writeFileSync(stamp, hash);
 }

@@ -21,9 +21,9 @@ export async function endRunning() {
 
 /**
  * Runs a command to its end, quietly; its last lines are in the error when it fails.
- * `onLine` sees every line of its output as it comes.
+ * `onLine` sees every line of its output as it comes; `what` names it to the person.
  */
-export function run(command, args, { env, cwd, uid, gid, input, onLine } = {}) {
+export function run(command, args, { what, env, cwd, uid, gid, input, onLine } = {}) {
   return new Promise((resolve, reject) => {
     const child = spawn(command, args, {
       cwd,
@@ -49,7 +49,7 @@ export function run(command, args, { env, cwd, uid, gid, input, onLine } = {}) {
     child.on("error", (error) => reject(new SetupError(`${command} cannot be run: ${error.message}`)));
     child.on("close", (code, signal) => {
       if (code === 0) resolve(lines);
-      else reject(new SetupError(`${command} ${args[0] ?? ""} failed (${signal ?? `code ${code}`}).\n${lines.join("\n")}`));
+      else reject(new SetupError(`${what ?? `${command} ${args[0] ?? ""}`} failed (${signal ?? `code ${code}`}).\n${lines.join("\n")}`));
     });
   });
 }
