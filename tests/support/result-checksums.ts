@@ -51,3 +51,12 @@ async function slices(db: Db): Promise<string[]> {
     return JSON.stringify([name, day, named, plain]);
   });
 }
+
+/** As before the first file of pings: nothing learned, nothing stored, the files waiting for their start. */
+export async function forgetResults(db: Db): Promise<void> {
+  const { rows } = await db.execute<{ name: string }>(sql`select inhrelid::regclass::text as name from pg_inherits where inhparent = 'traversals'::regclass`);
+  for (const { name } of rows) await db.execute(sql.raw(`drop table ${name}`));
+  await db.execute(sql`truncate screen_days, ping_clouds, movements, legs, exits`);
+  await db.execute(sql`update uploads set state = 'received', report = null, rejects_key = null, finished_at = null where kind = 'pings'`);
+  await db.execute(sql`delete from pgboss.job`);
+}

@@ -14,7 +14,7 @@ import { startUpload } from "@/services/uploads/start-upload";
 import { openFolderStorage } from "@/storage/folder-storage";
 import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
 import { testContext, testPlace, type TestContext } from "@tests/support/database";
-import { resultChecksums } from "@tests/support/result-checksums";
+import { forgetResults, resultChecksums } from "@tests/support/result-checksums";
 import { startWorkerProcess, type WorkerProcess } from "@tests/support/worker-process";
 
 /** `KILLS=25 npx vitest run …` for a long look; the moments are spread over the whole of a reading. */
@@ -38,15 +38,6 @@ function dayOfPings(day: number): string {
 }
 
 const stateOf = async (uploadId: string) => (await job.db.execute<{ state: string }>(sql`select state from uploads where id = ${uploadId}`)).rows[0].state;
-
-/** As before the first file of pings: nothing learned, nothing stored, the files waiting for their start. */
-async function forgetResults(): Promise<void> {
-  const { rows } = await job.db.execute<{ name: string }>(sql`select inhrelid::regclass::text as name from pg_inherits where inhparent = 'traversals'::regclass`);
-  for (const { name } of rows) await job.db.execute(sql.raw(`drop table ${name}`));
-  await job.db.execute(sql`truncate screen_days, ping_clouds, movements, legs, exits`);
-  await job.db.execute(sql`update uploads set state = 'received', report = null, rejects_key = null, finished_at = null where kind = 'pings'`);
-  await job.db.execute(sql`delete from pgboss.job`);
-}
 
 /** Jobs of a dead worker are taken up after a grace and a pause; the test does not wait for either, nor counts the runs. */
 async function skipWaiting(): Promise<void> {
@@ -104,7 +95,7 @@ describe("a worker that is killed in the middle of a file, again and again", () 
       const undisturbed = await resultChecksums(job.db);
       expect(undisturbed.traversals.rows).toBe(800 * FILES);
       await worker.stop();
-      await forgetResults();
+      await forgetResults(job.db);
 
       const random = seededRandom(KILLS);
       let interrupted = 0;
