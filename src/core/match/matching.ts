@@ -21,7 +21,7 @@ export const MATCHING = Object.freeze({
   joinCost: 3,
   /** Cost of passing a junction, and of turning round in one. */
   junctionCost: 0.3,
-  uturnCost: 3,
+  uturnCost: 5,
   /** Moving back along a link is free up to this noise, m; then costs one for each backSpreadM. */
   backFreeM: 8,
   backSpreadM: 4,

@@ -6,6 +6,8 @@ import type { Trips } from "@/core/pings/trips";
 const HEADING_MIN_SPEED_MS = 1.5;
 /** A displacement tells a direction once it is well above the position noise, m. */
 const HEADING_MIN_STEP_M = 12;
+/** Pings looked at on either side of a standstill. */
+const STANDING_LOOKS = 6;
 /** Longest time between the two pings whose displacement may stand for a heading, s. */
 const HEADING_MAX_STEP_S = 45;
 
@@ -26,17 +28,21 @@ export function fillMotion(trips: Trips): void {
   }
 }
 
-/** Gives the pings of a standstill the direction from the last moving ping before it to the first after it. */
+/** Gives the pings of a standstill the direction from where the vehicle came from to where it went on, 12 m or more away. */
 function faceStanding(trips: Trips, from: number, to: number): void {
   const plane = planeAt(trips.lat[from], trips.lon[from]);
+  const step = (i: number, k: number): [number, number] => [
+    eastM(plane, trips.lon[k]) - eastM(plane, trips.lon[i]), northM(plane, trips.lat[k]) - northM(plane, trips.lat[i]),
+  ];
   for (let a = from; a < to; a++) {
     if (!Number.isNaN(trips.headingDeg[a])) continue;
     let b = a;
     while (b + 1 < to && Number.isNaN(trips.headingDeg[b + 1])) b += 1;
-    const before = Math.max(from, a - 1);
-    const after = Math.min(to - 1, b + 1);
-    const dx = eastM(plane, trips.lon[after]) - eastM(plane, trips.lon[before]);
-    const dy = northM(plane, trips.lat[after]) - northM(plane, trips.lat[before]);
+    let before = Math.max(from, a - 1);
+    while (before > from && a - before < STANDING_LOOKS && Math.hypot(...step(a, before)) < HEADING_MIN_STEP_M) before -= 1;
+    let after = Math.min(to - 1, b + 1);
+    while (after < to - 1 && after - b < STANDING_LOOKS && Math.hypot(...step(b, after)) < HEADING_MIN_STEP_M) after += 1;
+    const [dx, dy] = step(before, after);
     if (Math.hypot(dx, dy) >= HEADING_MIN_STEP_M) trips.headingDeg.fill(bearingDeg(dx, dy), a, b + 1);
     a = b;
   }
