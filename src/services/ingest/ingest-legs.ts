@@ -11,6 +11,7 @@ import { readLegs, type DrawnLeg, type LegsRead } from "@/formats/legs/read-legs
 import { reprocessLegs } from "@/jobs/definitions/reprocess-legs";
 import { raiseDataVersion } from "../catalogue/catalogue";
 import type { Context } from "../context";
+import { noteLegEdit } from "../legs/leg-edits";
 import { getSettings } from "../settings/get-settings";
 import { failUpload, finishUpload } from "./finish-upload";
 import { INGEST_LOCK, readJunctionPoints, readNetwork, storeNetwork, type KeyedPoint } from "./network-rows";
@@ -37,13 +38,15 @@ export async function ingestLegs(ctx: Context, upload: LegsUpload): Promise<void
 
 async function redraw(ctx: Context, uploadId: string, points: KeyedPoint[], read: LegsRead, rejectsKey: string | null): Promise<void> {
   const { driveSide } = await getSettings(ctx);
-  const nothing: Network = { junctions: points.map(({ id, lat, lon }) => ({ id, lat, lon })), legs: [], exits: [], movements: [], driveSide };
-  const known = (await readNetwork(ctx.db, points, driveSide)) ?? nothing;
-  const redrawn = redrawNetwork(known, read.legs.map(givenLeg));
+  const hasPings = await holdsPings(ctx.db);
   const named = new Set(read.legs.map((leg) => leg.junctionId));
   const touched = points.filter((point) => named.has(point.id)).map((point) => point.key);
-  const hasPings = await holdsPings(ctx.db);
+  const nothing: Network = { junctions: points.map(({ id, lat, lon }) => ({ id, lat, lon })), legs: [], exits: [], movements: [], driveSide };
   await bulkTransaction(ctx.db, async (tx) => {
+    // Changes by hand wait until the lines are in.
+    await noteLegEdit(tx);
+    const known = (await readNetwork(tx, points, driveSide)) ?? nothing;
+    const redrawn = redrawNetwork(known, read.legs.map(givenLeg));
     await storeNetwork(tx, redrawn.network, points.map((point) => point.key));
     await dropReplaced(tx, touched, redrawn);
     await storeLanes(tx, read.legs, redrawn);

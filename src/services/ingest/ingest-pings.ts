@@ -20,6 +20,7 @@ import { VehicleNames } from "@/formats/vehicle-names";
 import { createH3Index } from "@/geo/h3-index";
 import { raiseDataVersion } from "../catalogue/catalogue";
 import type { Context } from "../context";
+import { legEdits, LegsChanged, requireSameLegs } from "../legs/leg-edits";
 import { getSettings } from "../settings/get-settings";
 import { failUpload, finishUpload } from "./finish-upload";
 import { joinTraversals } from "./join-traversals";
@@ -35,6 +36,7 @@ import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 /** Enough vehicles to learn the streets from; the rest only passes over them. */
 const LEARNING_PINGS = 4_000_000;
 const CLOUDS_PER_STATEMENT = 200;
+const MOST_RUNS = 5;
 
 interface Totals {
   pings: number;
@@ -60,12 +62,23 @@ export async function ingestPings(ctx: Context, upload: PingUpload, signal?: Abo
       const report: IngestReport = { ...counts };
       return await failUpload(ctx, upload.id, "No row of the file could be read as a ping; the report says why.", report, rejectsKey);
     }
-    await withAdvisoryLock(ctx.db, INGEST_LOCK, () => matchAndStore(ctx, upload, store, names, counts, rejectsKey, progress));
+    await withAdvisoryLock(ctx.db, INGEST_LOCK, () => untilLegsStay(() => matchAndStore(ctx, upload, store, names, counts, rejectsKey, progress)));
   } catch (error) {
     await rejects.abandon();
     throw error;
   } finally {
     await store.close();
+  }
+}
+
+/** Legs that an engineer changes while a file is matched to them win: it is matched once more. */
+async function untilLegsStay(work: () => Promise<void>): Promise<void> {
+  for (let run = 1; ; run++) {
+    try {
+      return await work();
+    } catch (error) {
+      if (!(error instanceof LegsChanged) || run === MOST_RUNS) throw error;
+    }
   }
 }
 
@@ -82,6 +95,7 @@ async function matchAndStore(
   const points = await readJunctionPoints(ctx.db);
   if (points.length === 0) throw new AppError("invalid", "Load the city's junctions first: pings are matched to them.");
   const index = createH3Index();
+  const seen = await legEdits(ctx.db);
   const prior = await readNetwork(ctx.db, points, settings.driveSide);
   await progress.tell("learn legs", 0.1, counts.rowsRead);
   const network = learnNetwork(await learningSample(store), points, index, { driveSide: settings.driveSide }, prior);
@@ -106,6 +120,7 @@ async function matchAndStore(
   await progress.tell("store", 0.1, counts.rowsRead);
   const report = reportOf(counts, matched, traversals, network, penetration);
   await bulkTransaction(ctx.db, async (tx, client) => {
+    await requireSameLegs(tx, seen);
     await tx.delete(traversalTable).where(eq(traversalTable.uploadId, upload.id));
     await tx.delete(screenDays).where(eq(screenDays.uploadId, upload.id));
     const keys = await storeNetwork(tx, network, points.map((point) => point.key));

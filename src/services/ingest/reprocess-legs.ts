@@ -17,8 +17,10 @@ import { AppError } from "@/domain/errors";
 import { offsetTable } from "@/domain/local-time";
 import { VehicleNames } from "@/formats/vehicle-names";
 import { createH3Index } from "@/geo/h3-index";
+import { reprocessLegs as reprocessJob } from "@/jobs/definitions/reprocess-legs";
 import { raiseDataVersion } from "../catalogue/catalogue";
 import type { Context } from "../context";
+import { legEdits, LegsChanged, requireSameLegs } from "../legs/leg-edits";
 import { getSettings } from "../settings/get-settings";
 import { filterTraversals, joinTraversals } from "./join-traversals";
 import { dropKnown } from "./known-traversals";
@@ -33,6 +35,8 @@ const NEAR_LAT_DEG = 0.02;
 const CELLS_PER_ROW = 100_000;
 
 interface Job {
+  /** Changes of legs by hand when the network was read. */
+  legEdits: number;
   network: Network;
   keys: NetworkKeys;
   /** 1 for each leg that the change touches: the junction's own and those that it feeds. */
@@ -41,31 +45,43 @@ interface Job {
   timeZone: string;
 }
 
-/** Matches the stored pings around some junctions anew, file by file; figures elsewhere stay as they are. Safe to run twice. */
+/**
+ * Matches the stored pings around some junctions anew, file by file; figures elsewhere stay as they are. Safe to run twice.
+ * Where somebody changes a leg in the meantime, the work is queued again from its beginning.
+ */
 export async function reprocessLegs(ctx: Context, input: { junctionIds: number[] }, run?: { signal: AbortSignal }): Promise<void> {
   if (ctx.actor.type !== "job") throw new AppError("forbidden", "Legs are matched anew by the worker only.");
-  await withAdvisoryLock(ctx.db, INGEST_LOCK, async () => {
-    const job = await prepare(ctx, input.junctionIds);
-    if (!job) return;
-    const files = await ctx.db
-      .select({ id: uploads.id, storageKey: uploads.storageKey, mapping: uploads.mapping })
-      .from(uploads)
-      .where(and(eq(uploads.kind, "pings"), eq(uploads.state, "done")))
-      .orderBy(asc(uploads.createdAt), asc(uploads.id));
-    for (const file of files) {
-      run?.signal.throwIfAborted();
-      if (file.mapping) await rematchUpload(ctx, { ...file, mapping: file.mapping }, job);
-    }
-    await bulkTransaction(ctx.db, async (tx) => {
-      const points = await readJunctionPoints(tx);
-      await storeNetwork(tx, job.network, points.map((point) => point.key));
-      await raiseDataVersion(tx);
-    });
+  try {
+    await withAdvisoryLock(ctx.db, INGEST_LOCK, () => rematchFiles(ctx, input.junctionIds, run?.signal));
+  } catch (error) {
+    if (!(error instanceof LegsChanged)) throw error;
+    await ctx.queue.enqueue(reprocessJob, { junctionIds: input.junctionIds });
+  }
+}
+
+async function rematchFiles(ctx: Context, junctionIds: number[], signal: AbortSignal | undefined): Promise<void> {
+  const job = await prepare(ctx, junctionIds);
+  if (!job) return;
+  const files = await ctx.db
+    .select({ id: uploads.id, storageKey: uploads.storageKey, mapping: uploads.mapping })
+    .from(uploads)
+    .where(and(eq(uploads.kind, "pings"), eq(uploads.state, "done")))
+    .orderBy(asc(uploads.createdAt), asc(uploads.id));
+  for (const file of files) {
+    signal?.throwIfAborted();
+    if (file.mapping) await rematchUpload(ctx, { ...file, mapping: file.mapping }, job);
+  }
+  await bulkTransaction(ctx.db, async (tx) => {
+    await requireSameLegs(tx, job.legEdits);
+    const points = await readJunctionPoints(tx);
+    await storeNetwork(tx, job.network, points.map((point) => point.key));
+    await raiseDataVersion(tx);
   });
 }
 
 async function prepare(ctx: Context, junctionIds: number[]): Promise<Job | null> {
   const { driveSide, timeZone } = await getSettings(ctx);
+  const seen = await legEdits(ctx.db);
   const points = await readJunctionPoints(ctx.db);
   const stored = await readNetwork(ctx.db, points, driveSide);
   const wanted = new Set(junctionIds);
@@ -77,8 +93,11 @@ async function prepare(ctx: Context, junctionIds: number[]): Promise<Job | null>
   );
   const near = new Set(home);
   network.legs.forEach((leg, l) => touched[l] && near.add(leg.junction));
-  const keys = await bulkTransaction(ctx.db, (tx) => storeNetwork(tx, network, points.map((point) => point.key)));
-  return { network, keys, touched, timeZone, choose: nearOnly([...near].map((i) => points[i])) };
+  const keys = await bulkTransaction(ctx.db, async (tx) => {
+    await requireSameLegs(tx, seen);
+    return storeNetwork(tx, network, points.map((point) => point.key));
+  });
+  return { legEdits: seen, network, keys, touched, timeZone, choose: nearOnly([...near].map((i) => points[i])) };
 }
 
 /** Keeps the pings of the cells, NEAR_LAT_DEG high, that the junctions lie in or beside. */
@@ -150,6 +169,7 @@ async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals
   const fresh = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
   const touchedKeys = [...keys.legs].filter((_, l) => touched[l] === 1);
   await bulkTransaction(ctx.db, async (tx, client) => {
+    await requireSameLegs(tx, job.legEdits);
     await tx
       .delete(traversalTable)
       .where(

@@ -4,6 +4,7 @@ import { legs } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { EditLeg } from "@/domain/leg-check";
 import { requirePermission, type Context } from "../context";
+import { noteLegEdit } from "./leg-edits";
 import { afterLegChange, junctionName, lockLeg, type StoredLeg } from "./leg-rows";
 
 /** Changes what an engineer knows better than the pings; whatever is given stays through later uploads. */
@@ -11,6 +12,7 @@ export async function editLeg(ctx: Context, input: EditLeg): Promise<{ rematchin
   requirePermission(ctx, "leg.edit");
   const edit = EditLeg.parse(input);
   return ctx.db.transaction(async (tx) => {
+    await noteLegEdit(tx);
     const leg = await lockLeg(tx, edit.legId);
     const changes = changesOf(leg, edit);
     await tx.update(legs).set(changes).where(eq(legs.id, leg.id));

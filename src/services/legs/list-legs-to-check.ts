@@ -3,6 +3,9 @@ import { junctions, legs } from "@/db/schema";
 import type { LegToCheck } from "@/domain/leg-check";
 import { requirePermission, type Context } from "../context";
 
+/** Twice what a city of 1,500 junctions has. */
+const MOST_LEGS = 12_000;
+
 /** Doubtful legs first, those that more traffic uses before the others. */
 export async function listLegsToCheck(ctx: Context): Promise<LegToCheck[]> {
   requirePermission(ctx, "leg.view");
@@ -24,6 +27,6 @@ export async function listLegsToCheck(ctx: Context): Promise<LegToCheck[]> {
     .from(legs)
     .innerJoin(junctions, eq(junctions.id, legs.junctionId))
     .orderBy(desc(doubtful), desc(legs.support), asc(junctions.name), asc(legs.id))
-    .limit(5000);
+    .limit(MOST_LEGS);
   return rows.map(({ junctionId, code, junctionName, ...leg }) => ({ ...leg, junction: { id: junctionId, code, name: junctionName } }));
 }

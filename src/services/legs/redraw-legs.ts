@@ -6,6 +6,7 @@ import type { Db } from "@/db/client";
 import { AppError } from "@/domain/errors";
 import { AddLeg, MergeLegs, SplitLeg } from "@/domain/leg-check";
 import { requirePermission, type Context } from "../context";
+import { noteLegEdit } from "./leg-edits";
 import { afterLegChange, junctionName, lockLeg, settleLegs, type StoredLeg } from "./leg-rows";
 
 /** Two legs that are one street in truth: the second goes, its vehicles are matched to the first. */
@@ -13,6 +14,7 @@ export async function mergeLegs(ctx: Context, input: MergeLegs): Promise<void> {
   requirePermission(ctx, "leg.edit");
   const { keepId, dropId } = MergeLegs.parse(input);
   await ctx.db.transaction(async (tx) => {
+    await noteLegEdit(tx);
     const keep = await lockLeg(tx, keepId);
     const drop = await lockLeg(tx, dropId);
     if (keep.junctionId !== drop.junctionId) throw new AppError("invalid", "Only two legs of one junction can be merged.");
@@ -28,6 +30,7 @@ export async function splitLeg(ctx: Context, input: SplitLeg): Promise<{ legId: 
   requirePermission(ctx, "leg.edit");
   const { legId, first, second } = SplitLeg.parse(input);
   return ctx.db.transaction(async (tx) => {
+    await noteLegEdit(tx);
     const leg = await lockLeg(tx, legId);
     await tx.update(legs).set({ ...shapeOf(first.flat()), stopLineOrigin: "set" }).where(eq(legs.id, leg.id));
     const added = await insertLeg(tx, leg, second.flat(), null);
@@ -43,6 +46,7 @@ export async function addLeg(ctx: Context, input: AddLeg): Promise<{ legId: numb
   requirePermission(ctx, "leg.edit");
   const { junctionId, name, line } = AddLeg.parse(input);
   return ctx.db.transaction(async (tx) => {
+    await noteLegEdit(tx);
     const junction = await junctionName(tx, junctionId);
     const added = await insertLeg(tx, { junctionId, storageM: null, freeSpeedMs: null, upstreamExitId: null }, line.flat(), name);
     await settleLegs(tx, junctionId);
