@@ -5,8 +5,8 @@ const THROUGH_MOST_DEG = 45;
 const UTURN_LEAST_DEG = 155;
 /** Two exits whose turns differ by less, with well and with sparsely seen streets, are about as straight: then much more traffic decides. */
 export const AS_STRAIGHT_DEG = 8;
-export const AS_STRAIGHT_SPARSE_DEG = 16;
-const MORE_TRAFFIC = 3;
+export const AS_STRAIGHT_SPARSE_DEG = 24;
+const MORE_TRAFFIC = 4;
 
 /**
  * Signed turns and their names from one leg to each exit of its junction: the straightest exit within 45 degrees is
