@@ -28,6 +28,8 @@ export const LEARNING = Object.freeze({
   gapM: 70,
   sparseGapM: 120,
   traceMostM: 800,
+  /** Corners that one trace may go round. */
+  mostBends: 3,
   /** A seed is worth this many points, also where no ping lies on its trace. */
   leastPoints: 5,
   /** A trace ends at another junction whose point it passes within this distance. */

@@ -1,6 +1,7 @@
 import { angleBetweenDeg } from "@/core/geometry/angles";
 import { eastM, latAt, lonAt, northM, type Plane } from "@/core/geometry/plane";
 import { lengthOf, slice } from "@/core/geometry/polyline";
+import { findBend } from "@/core/legs/bend";
 import type { Frame } from "@/core/legs/frame";
 import { LEARNING } from "@/core/legs/learning";
 import { pingsAround, type PingGrid } from "@/core/legs/ping-grid";
@@ -48,8 +49,22 @@ export function traceArm(seed: Seed, frame: Frame, grid: PingGrid, isSparse: boo
   let supported = 1;
   let gap = 0;
   let meets = -1;
+  let bends = 0;
   const gapM = isSparse ? LEARNING.sparseGapM : LEARNING.gapM;
-  for (let far = LEARNING.stepM; far <= LEARNING.traceMostM && gap <= gapM; far += LEARNING.stepM) {
+  for (let far = LEARNING.stepM; far <= LEARNING.traceMostM; far += LEARNING.stepM) {
+    if (gap > gapM) {
+      const [endX, endY, endUx, endUy] = lastDirection(line.slice(0, 2 * supported));
+      const mayBend = supported > 2 && bends < LEARNING.mostBends;
+      const bend = mayBend ? findBend(grid, plane, scratch, sign, endX, endY, endUx, endUy) : null;
+      if (!bend) break;
+      bends += 1;
+      [x, y, ux, uy] = [bend.x, bend.y, bend.ux, bend.uy];
+      line.length = 2 * supported;
+      line.push(x, y);
+      supported = line.length / 2;
+      far -= gap;
+      gap = 0;
+    }
     meets = junctionAhead(frame, seed.junction, x, y, ux, uy);
     if (meets >= 0) break;
     x += LEARNING.stepM * ux;
@@ -70,6 +85,14 @@ export function traceArm(seed: Seed, frame: Frame, grid: PingGrid, isSparse: boo
   }
   const line2 = meets >= 0 ? cutAtBox(line, frame, seed.junction, meets) : line.slice(0, 2 * Math.max(supported, LEARNING.leastPoints));
   return { junction: seed.junction, inbound: seed.inbound, support: seed.support, line: line2, meets };
+}
+
+/** Last point of a line and the direction of its last 20 m. */
+function lastDirection(line: number[]): [number, number, number, number] {
+  const n = line.length;
+  const back = Math.max(0, n - 6);
+  const length = Math.hypot(line[n - 2] - line[back], line[n - 1] - line[back + 1]) || 1;
+  return [line[n - 2], line[n - 1], (line[n - 2] - line[back]) / length, (line[n - 1] - line[back + 1]) / length];
 }
 
 /** Blends the old direction with that of the last 20 m of the line and of the pings' headings. */
