@@ -19,8 +19,16 @@ const Env = z.object({
   NEXTAUTH_SECRET: z.string().min(32),
   /** Address under which people reach the application; links in mail start with it. */
   BASE_URL: z.url({ protocol: /^https?$/ }).transform((url) => url.replace(/\/+$/, "")),
-  /** Folder of uploads and, in demo and tests, of kept mail. */
+  /** Folder of uploads, where no bucket is named, and, in demo and tests, of kept mail. */
   DATA_DIR: z.string().default(".data").transform((path) => resolve(path)),
+  /** Bucket of an S3-compatible store that keeps the uploads instead of the folder; web and workers may then run on several machines. */
+  S3_BUCKET: z.string().regex(/^[a-z0-9][a-z0-9.-]{1,61}[a-z0-9]$/, "is not the name of a bucket").optional(),
+  /** Address of that store; unset for Amazon's own. */
+  S3_ENDPOINT: z.url({ protocol: /^https?$/ }).optional(),
+  S3_REGION: z.string().min(1).default("us-east-1"),
+  /** Keys of the store; unset where the machine's own role opens it. */
+  S3_ACCESS_KEY_ID: z.string().optional(),
+  S3_SECRET_ACCESS_KEY: z.string().optional(),
   /** Mail server. Unset outside production: mail is kept in a folder by a local stand-in. */
   SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
   /** Port on loopback of that stand-in. */
@@ -50,6 +58,7 @@ export function readEnv(raw: RawEnv): Env {
     throw new Error(`The environment is not usable. ${faults.join("; ")}`);
   }
   refuseDefaults(parsed.data);
+  refuseHalfBucket(parsed.data);
   return parsed.data;
 }
 
@@ -67,6 +76,15 @@ function refuseDefaults(env: Env): void {
     throw new Error("NEXTAUTH_SECRET is the development default; production needs a secret of its own.");
   }
   if (!env.SMTP_URL) throw new Error("SMTP_URL is missing; production needs a mail server.");
+}
+
+function refuseHalfBucket(env: Env): void {
+  if (env.S3_BUCKET === undefined && (env.S3_ENDPOINT ?? env.S3_ACCESS_KEY_ID ?? env.S3_SECRET_ACCESS_KEY) !== undefined) {
+    throw new Error("S3_BUCKET is missing; the other S3 settings have no effect without it.");
+  }
+  if ((env.S3_ACCESS_KEY_ID === undefined) !== (env.S3_SECRET_ACCESS_KEY === undefined)) {
+    throw new Error("S3_ACCESS_KEY_ID and S3_SECRET_ACCESS_KEY go together: give both or neither.");
+  }
 }
 
 let current: Env | undefined;

@@ -35,6 +35,14 @@ describe("the environment", () => {
     expect(() => readEnv({ ...PRODUCTION, NEXTAUTH_SECRET: "short" })).toThrow("NEXTAUTH_SECRET");
   });
 
+  it("takes a bucket only with its name and with both keys or none", () => {
+    const bucket = { S3_BUCKET: "city-files", S3_ENDPOINT: "https://store.example" };
+    expect(readEnv(bucket)).toMatchObject({ ...bucket, S3_REGION: "us-east-1" });
+    expect(() => readEnv({ S3_ENDPOINT: "https://store.example" })).toThrow("S3_BUCKET is missing");
+    expect(() => readEnv({ ...bucket, S3_ACCESS_KEY_ID: "k" })).toThrow("give both or neither");
+    expect(() => readEnv({ S3_BUCKET: "Not a bucket" })).toThrow("S3_BUCKET: is not the name of a bucket");
+  });
+
   it("names every value that is wrong, in one sentence", () => {
     expect(() => readEnv({ DATABASE_URL: "mysql://x", SESSION_HOURS: "0" })).toThrow(/DATABASE_URL: .*; SESSION_HOURS: /);
   });

@@ -16,7 +16,7 @@ import { ingestUpload } from "@/services/ingest/ingest-upload";
 import { writeSettings } from "@/services/settings/get-settings";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
-import { openFolderStorage } from "@/storage/folder-storage";
+import { openStorage } from "@/storage/open-storage";
 
 export interface SeedOptions {
   database: Database;
@@ -45,7 +45,7 @@ export async function seedCity({ database, settings, say }: SeedOptions): Promis
     actor: { type: "job", job: "demo city" },
     db,
     now: new Date(),
-    storage: openFolderStorage(join(settings.DATA_DIR, "storage")),
+    storage: openStorage(settings),
     queue,
     mailer,
     baseUrl: settings.BASE_URL,

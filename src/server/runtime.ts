@@ -5,7 +5,7 @@ import { openQueue } from "@/jobs/queue";
 import { keptMailFolder } from "@/mail/kept-mail";
 import { openMailer } from "@/mail/mailer";
 import type { Context } from "@/services/context";
-import { openFolderStorage } from "@/storage/folder-storage";
+import { openStorage } from "@/storage/open-storage";
 
 type Runtime = Omit<Context, "actor" | "now">;
 
@@ -22,7 +22,7 @@ function openRuntime(): Runtime {
   const { db } = openDatabase(settings.DATABASE_URL);
   return {
     db,
-    storage: openFolderStorage(`${settings.DATA_DIR}/storage`),
+    storage: openStorage(settings),
     queue: openQueue(db),
     mailer: openMailer({
       smtpUrl: smtpUrl(settings),

@@ -5,7 +5,7 @@ import { keptMailFolder } from "@/mail/kept-mail";
 import { startMailKeeper, type MailKeeper } from "@/mail/mail-keeper";
 import { openMailer } from "@/mail/mailer";
 import type { Context } from "@/services/context";
-import { openFolderStorage } from "@/storage/folder-storage";
+import { openStorage } from "@/storage/open-storage";
 import { handlers } from "./handlers";
 import { runJobs } from "./run-jobs";
 
@@ -14,7 +14,7 @@ const database = openDatabase(settings.DATABASE_URL, { max: 6 });
 const queue = openQueue(database.db);
 const keptFolder = keepsMail(settings) ? keptMailFolder(settings.DATA_DIR) : null;
 const mailer = openMailer({ smtpUrl: smtpUrl(settings), from: settings.MAIL_FROM, keptFolder });
-const storage = openFolderStorage(`${settings.DATA_DIR}/storage`);
+const storage = openStorage(settings);
 
 function contextFor(job: string): Context {
   return { actor: { type: "job", job }, db: database.db, now: new Date(), storage, queue, mailer, baseUrl: settings.BASE_URL };

@@ -1,0 +1,139 @@
+import { mkdtemp, readdir, rm } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { Readable } from "node:stream";
+import { buffer } from "node:stream/consumers";
+import { ListObjectsV2Command, S3Client } from "@aws-sdk/client-s3";
+import S3rver from "s3rver";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { readEnv } from "@/env";
+import { openStorage } from "@/storage/open-storage";
+import type { Storage } from "@/storage/storage";
+
+const BUCKET = "tailmark-files";
+const KEYS = { accessKeyId: "S3RVER", secretAccessKey: "S3RVER" };
+
+interface Place {
+  storage: Storage;
+  /** What a look into the place itself shows. */
+  listed(): Promise<string[]>;
+  close(): Promise<unknown>;
+}
+
+async function folderPlace(): Promise<Place> {
+  const dataDir = await mkdtemp(join(tmpdir(), "tailmark-storage-"));
+  const list = async () => (await readdir(join(dataDir, "storage"), { recursive: true, withFileTypes: true })).filter((entry) => entry.isFile());
+  return {
+    storage: openStorage(readEnv({ DATA_DIR: dataDir })),
+    listed: async () => (await list()).map((entry) => entry.name).sort(),
+    close: () => rm(dataDir, { recursive: true, force: true }),
+  };
+}
+
+/** The same settings as in front of a real store, answered by a local stand-in. */
+async function bucketPlace(): Promise<Place> {
+  const directory = await mkdtemp(join(tmpdir(), "tailmark-bucket-"));
+  const server = new S3rver({ address: "127.0.0.1", port: 0, silent: true, directory, configureBuckets: [{ name: BUCKET }] });
+  const { port } = await server.run();
+  const endpoint = `http://127.0.0.1:${port}`;
+  const storage = openStorage(
+    readEnv({ S3_BUCKET: BUCKET, S3_ENDPOINT: endpoint, S3_ACCESS_KEY_ID: KEYS.accessKeyId, S3_SECRET_ACCESS_KEY: KEYS.secretAccessKey }),
+  );
+  const client = new S3Client({ endpoint, region: "us-east-1", forcePathStyle: true, credentials: KEYS });
+  return {
+    storage,
+    async listed() {
+      const { Contents = [] } = await client.send(new ListObjectsV2Command({ Bucket: BUCKET }));
+      return Contents.map((object) => String(object.Key)).sort();
+    },
+    async close() {
+      client.destroy();
+      await server.close();
+      await rm(directory, { recursive: true, force: true });
+    },
+  };
+}
+
+const PLACES = { "a folder": folderPlace, "a bucket": bucketPlace };
+
+describe.each(Object.entries(PLACES))("files in %s", (_, openPlace) => {
+  let place: Place;
+  let storage: Storage;
+
+  beforeAll(async () => {
+    place = await openPlace();
+    storage = place.storage;
+  });
+
+  afterAll(() => place.close());
+
+  it("come back as the bytes that were given", async () => {
+    const bytes = Buffer.from(Array.from({ length: 300_000 }, (_, i) => i % 251));
+    expect(await storage.put("uploads/a1.csv", Readable.from([bytes.subarray(0, 1000), bytes.subarray(1000)]))).toBe(300_000);
+    expect(await storage.size("uploads/a1.csv")).toBe(300_000);
+    expect((await buffer(await storage.open("uploads/a1.csv"))).equals(bytes)).toBe(true);
+  });
+
+  it("may be larger than one part of a transfer", async () => {
+    const chunk = Buffer.from(Array.from({ length: 2 ** 20 }, (_, i) => (i * 31 + (i >> 8)) % 253));
+    async function* chunks() {
+      for (let i = 0; i < 12; i++) yield chunk.subarray(i);
+    }
+    const length = 12 * 2 ** 20 - 66;
+    expect(await storage.put("large", chunks())).toBe(length);
+    expect(await storage.size("large")).toBe(length);
+    const stored = await buffer(await storage.open("large"));
+    expect(stored.subarray(2 ** 20, 2 ** 20 + 1000).equals(chunk.subarray(1, 1001))).toBe(true);
+    expect(stored.subarray(-1000).equals(chunk.subarray(-1000))).toBe(true);
+  });
+
+  it("may come from an async generator, or be empty", async () => {
+    async function* chunks() {
+      yield new TextEncoder().encode("ab");
+      yield new TextEncoder().encode("cd");
+    }
+    expect(await storage.put("x", chunks())).toBe(4);
+    expect(String(await buffer(await storage.open("x")))).toBe("abcd");
+    expect(await storage.put("empty", Readable.from([]))).toBe(0);
+    expect(await storage.size("empty")).toBe(0);
+    expect((await buffer(await storage.open("empty"))).length).toBe(0);
+  });
+
+  it.each([10, 11 * 2 ** 20])("are not seen when they did not arrive whole, cut after %i bytes; the older one stays", async (cutAfter) => {
+    async function* broken() {
+      for (let sent = 0; sent < cutAfter; sent += 2 ** 20) yield new Uint8Array(Math.min(2 ** 20, cutAfter)).fill(97);
+      throw new Error("the line went dead");
+    }
+    await storage.put("kept", Readable.from([Buffer.from("old")]));
+    const before = await place.listed();
+    await expect(storage.put("kept", broken())).rejects.toThrow("the line went dead");
+    await expect(storage.put("new", broken())).rejects.toThrow("the line went dead");
+    expect(String(await buffer(await storage.open("kept")))).toBe("old");
+    expect(await storage.size("new")).toBeNull();
+    expect(await place.listed()).toEqual(before);
+  });
+
+  it("that are missing are named", async () => {
+    await expect(storage.open("nothing/here")).rejects.toThrow("Stored file nothing/here does not exist.");
+    expect(await storage.size("nothing/here")).toBeNull();
+    await storage.remove("nothing/here");
+  });
+
+  it("are gone when they are removed, and may be left in the middle of a reading", async () => {
+    await storage.put("short-lived", Readable.from([Buffer.alloc(2 ** 20, 98)]));
+    const stream = await storage.open("short-lived");
+    for await (const chunk of stream) {
+      expect((chunk as Buffer)[0]).toBe(98);
+      break;
+    }
+    await storage.remove("short-lived");
+    expect(await storage.size("short-lived")).toBeNull();
+  });
+
+  it.each(["../secrets.json", "/etc/passwd", "a/../../b", "a//b", "", ".hidden", "a/./b", "a\u0000b"])("never lie under the key %j", async (key) => {
+    await expect(storage.open(key)).rejects.toThrow(RangeError);
+    await expect(storage.size(key)).rejects.toThrow(RangeError);
+    await expect(storage.put(key, Readable.from([]))).rejects.toThrow(RangeError);
+    await expect(storage.remove(key)).rejects.toThrow(RangeError);
+  });
+});
