@@ -61,16 +61,21 @@ const Point = z.tuple([z.number().min(-2000).max(2000), z.number().min(-2000).ma
 const Line = z.array(Point).min(2, "A leg line needs at least two points.").max(200);
 const Name = z.string().trim().min(1, "Give the leg a name.").max(80);
 
+const FAR_SHIFT = "A stop line is moved by 60 m at most.";
+const ODD_LIMIT = "A speed limit lies between 5 and 150 km/h.";
+const ODD_STORAGE = "A storage length lies between 5 and 5,000 m.";
+const ODD_LANES = "A leg has 1 to 12 lanes.";
+
 export const EditLeg = z.object({
   legId: LegId,
   name: Name.optional(),
   /** Metres to move the stop line upstream; negative towards the junction. */
-  stopLineShiftM: z.number().min(-60).max(60).optional(),
+  stopLineShiftM: z.number().min(-60, FAR_SHIFT).max(60, FAR_SHIFT).optional(),
   /** Null takes the limit away. */
-  speedLimitKmh: z.number().min(5).max(150).nullable().optional(),
+  speedLimitKmh: z.number().min(5, ODD_LIMIT).max(150, ODD_LIMIT).nullable().optional(),
   /** Null goes back to what the street between the junctions gives. */
-  storageM: z.number().min(5).max(5000).nullable().optional(),
-  lanes: z.number().int().min(1).max(12).nullable().optional(),
+  storageM: z.number().min(5, ODD_STORAGE).max(5000, ODD_STORAGE).nullable().optional(),
+  lanes: z.number().int(ODD_LANES).min(1, ODD_LANES).max(12, ODD_LANES).nullable().optional(),
   locked: z.boolean().optional(),
 });
 export type EditLeg = z.infer<typeof EditLeg>;

@@ -1,6 +1,6 @@
 "use client";
 
-import { useState, type FormEvent } from "react";
+import { useEffect, useRef, useState, type FormEvent } from "react";
 import { counted, lengthUnit } from "@/ui/format";
 import { FormProblem } from "@/ui/forms/form-problem";
 import { useAction } from "@/ui/forms/use-action";
@@ -28,6 +28,9 @@ export function DrawForm({ view, drawing, controls, actions, onSaved }: Props) {
   const [name, setName] = useState("");
   const add = useAction(actions.add);
   const split = useAction(actions.split);
+  const heading = useRef<HTMLHeadingElement>(null);
+  // The button that led here is gone.
+  useEffect(() => heading.current?.focus(), []);
   const { lines, active } = controls;
   const isBusy = add.isBusy || split.isBusy;
   const isReady = lines.every((line) => line.length >= 2) && (drawing.kind === "split" || name.trim() !== "");
@@ -47,7 +50,7 @@ export function DrawForm({ view, drawing, controls, actions, onSaved }: Props) {
 
   return (
     <form onSubmit={save} noValidate className="flex flex-col gap-4" aria-label={drawing.kind === "add" ? "Add a leg" : "Split the leg"}>
-      <h2 className="text-lg">{drawing.kind === "add" ? "Add a leg" : `Split the leg ${leg?.name ?? ""}`}</h2>
+      <h2 ref={heading} tabIndex={-1} className="text-lg outline-none">{drawing.kind === "add" ? "Add a leg" : `Split the leg ${leg?.name ?? ""}`}</h2>
       <p>
         Click on the plan from the stop line upstream: the first point is the middle of the stop line, each next one lies farther back on the street.
         {drawing.kind === "split" ? " The first line keeps the leg's name and history, the second becomes a leg of its own." : ""}

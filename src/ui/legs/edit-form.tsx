@@ -28,13 +28,16 @@ interface Props {
 export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Props) {
   const { settings, locale } = useCity();
   const { units } = settings;
-  const [texts, setTexts] = useState<LegTexts>(() => textsOf(leg, units));
+  const [typed, setTyped] = useState<Partial<LegTexts>>({});
+  const [note, setNote] = useState("");
+  const texts: LegTexts = { ...textsOf(leg, units), ...typed };
   const [faults, setFaults] = useState<ReturnType<typeof typingFaults>>({});
   const { run, isBusy, problem, setProblem } = useAction(edit);
   const changes = changesOf(leg, texts, shiftM, units);
   const set = (part: Partial<LegTexts>) => {
-    setTexts((before) => ({ ...before, ...part }));
+    setTyped((before) => ({ ...before, ...part }));
     setProblem(null);
+    setNote("");
   };
   const server = problem?.fieldErrors ?? {};
 
@@ -42,8 +45,13 @@ export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Pr
     event.preventDefault();
     const found = typingFaults(texts);
     setFaults(found);
-    if (Object.keys(found).length > 0 || !changes) return;
-    if (await run(changes)) await onSaved();
+    if (isBusy || isTooShort || Object.keys(found).length > 0) return;
+    if (!changes) return setNote("Nothing is changed yet.");
+    setNote("");
+    if (!(await run(changes))) return;
+    await onSaved();
+    setTyped({});
+    setNote("The leg is saved.");
   }
 
   const number = (label: string, field: "speedLimit" | "storage" | "lanes", hint: string, error: string[] | undefined) => (
@@ -77,9 +85,15 @@ export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Pr
         </span>
       </label>
       <FormProblem problem={problem} />
-      <Button type="submit" tone="strong" className="self-start" disabled={isBusy || !changes || isTooShort}>
-        {isBusy ? "Saving…" : "Save the leg"}
-      </Button>
+      <div className="flex flex-wrap items-center gap-4">
+        {/* Not disabled while it works: it would lose the focus. */}
+        <Button type="submit" tone="strong" aria-disabled={isBusy || isTooShort}>
+          {isBusy ? "Saving…" : "Save the leg"}
+        </Button>
+        <p role="status" className="font-medium">
+          {note}
+        </p>
+      </div>
     </form>
   );
 }

@@ -1,32 +1,16 @@
 "use client";
 
-import { useQuery, useQueryClient } from "@tanstack/react-query";
+import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
-import { useState } from "react";
 import type { LegCheckView } from "@/domain/leg-check";
-import type { RawParams } from "@/domain/screen";
 import { counted } from "@/ui/format";
-import { Button } from "@/ui/primitives/button";
-import { Empty, Failed, Loading } from "@/ui/primitives/states";
-import { useCan, useCity } from "@/ui/shell/city";
+import { Failed, Loading } from "@/ui/primitives/states";
+import { useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
-import { useQueryAddress, type AddressCodec } from "@/ui/strips/use-query-address";
-import { CheckPlan } from "./check-plan";
-import type { CloudStyle } from "./cloud-colors";
-import { DrawForm } from "./draw-form";
+import { CheckDesk } from "./check-desk";
 import type { LegActions } from "./leg-actions";
-import { LegPanel } from "./leg-panel";
-import { LegPicker } from "./leg-picker";
-import { shiftedLine } from "./leg-shape";
-import { FIRST_RADIUS, PlanTools, RADII_M } from "./plan-tools";
-import { legCheckQuery, pingCloudQuery } from "./queries";
+import { legCheckQuery } from "./queries";
 import { RematchNote } from "./rematch-note";
-import { useDrawing, type Drawing } from "./use-drawing";
-
-const CODEC: AddressCodec<{ leg: number | null }> = {
-  fromParams: (params: RawParams) => ({ leg: typeof params.leg === "string" && /^\d{1,9}$/.test(params.leg) ? Number(params.leg) : null }),
-  toParams: ({ leg }) => new URLSearchParams(leg === null ? {} : { leg: String(leg) }),
-};
 
 /** One junction's legs over its pings, to look at and, for engineers, to put right. */
 export function LegCheckPage({ junctionId, actions }: { junctionId: number; actions: LegActions }) {
@@ -40,8 +24,13 @@ export function LegCheckPage({ junctionId, actions }: { junctionId: number; acti
           <HeadWords view={view} />
         </p>
       </PageHead>
-      <RematchNote rematch={view.rematch} />
-      <Check key={junctionId} view={view} actions={actions} />
+      <RematchNote key={junctionId} rematch={view.rematch} />
+      {error ? (
+        <p role="alert" className="border-b border-rule px-4 py-2.5 font-medium text-tail sm:px-6">
+          What is shown may be out of date: {error.message}
+        </p>
+      ) : null}
+      <CheckDesk key={junctionId} view={view} actions={actions} />
     </article>
   );
 }
@@ -68,112 +57,5 @@ function HeadWords({ view }: { view: LegCheckView }) {
     <>
       {counted(view.legs.length, "leg", "legs", locale)}, {doubtful === 0 ? "none in doubt" : `${doubtful} in doubt, drawn with broken lines`}.
     </>
-  );
-}
-
-function Check({ view, actions }: { view: LegCheckView; actions: LegActions }) {
-  const mayEdit = useCan("leg.edit");
-  const client = useQueryClient();
-  const { query, change } = useQueryAddress(CODEC);
-  const cloud = useQuery(pingCloudQuery(view.junction.id));
-  const [zoom, setZoom] = useState<number>(FIRST_RADIUS);
-  const [style, setStyle] = useState<CloudStyle>("direction");
-  const [shiftM, setShiftM] = useState(0);
-  const drawn = useDrawing();
-  const leg = view.legs.find((candidate) => candidate.id === query.leg) ?? view.legs[0] ?? null;
-  const preview = leg && shiftM !== 0 ? shiftedLine(leg.line, shiftM) : null;
-
-  function select(legId: number) {
-    setShiftM(0);
-    change({ leg: legId });
-  }
-
-  function draw(drawing: Drawing) {
-    setShiftM(0);
-    drawn.begin(drawing);
-  }
-
-  async function refresh() {
-    // Names and figures of the legs stand on many pages.
-    await client.invalidateQueries();
-    setShiftM(0);
-  }
-
-  return (
-    <div className="grid flex-1 items-start lg:grid-cols-[minmax(0,1fr)_minmax(22rem,27rem)]">
-      <section aria-label="Plan" className="flex min-w-0 flex-col gap-3 px-4 py-4 sm:px-6 lg:sticky lg:top-0">
-        <PlanTools zoom={zoom} onZoom={setZoom} style={style} onStyle={setStyle} pings={cloud.data ? cloud.data.eastM.length : null} />
-        {cloud.isError ? <CloudFailed message={cloud.error.message} onRetry={() => void cloud.refetch()} /> : null}
-        <CheckPlan
-          view={view}
-          cloud={cloud.data}
-          style={style}
-          radiusM={RADII_M[zoom]}
-          selected={leg?.id ?? null}
-          preview={preview}
-          shiftM={shiftM}
-          mayEdit={mayEdit}
-          lines={drawn.drawing ? drawn.lines : null}
-          active={drawn.active}
-          onSelect={select}
-          onShift={setShiftM}
-          onPoint={drawn.addPoint}
-        />
-      </section>
-      <div className="flex flex-col gap-5 border-rule px-4 py-4 sm:px-6 lg:min-h-full lg:border-l">
-        {drawn.drawing ? (
-          <DrawForm
-            view={view}
-            drawing={drawn.drawing}
-            controls={drawn}
-            actions={actions}
-            onSaved={async (legId) => {
-              await refresh();
-              drawn.end();
-              select(legId);
-            }}
-          />
-        ) : (
-          <>
-            {leg ? <LegPicker legs={view.legs} selected={leg.id} onSelect={select} /> : <NoLegs mayEdit={mayEdit} />}
-            {mayEdit ? (
-              <Button className="self-start" onClick={() => draw({ kind: "add" })}>
-                Add a leg
-              </Button>
-            ) : null}
-            {leg ? (
-              <LegPanel
-                key={leg.id}
-                view={view}
-                leg={leg}
-                actions={actions}
-                mayEdit={mayEdit}
-                shiftM={shiftM}
-                isTooShort={shiftM !== 0 && preview === null}
-                onShift={setShiftM}
-                onDraw={draw}
-                onSaved={refresh}
-              />
-            ) : null}
-          </>
-        )}
-      </div>
-    </div>
-  );
-}
-
-function NoLegs({ mayEdit }: { mayEdit: boolean }) {
-  return (
-    <Empty title="No leg of this junction is known yet.">
-      <p>Legs are found from moving vehicles: load pings that pass this junction{mayEdit ? ", or draw a leg yourself" : ""}.</p>
-    </Empty>
-  );
-}
-
-function CloudFailed({ message, onRetry }: { message: string; onRetry: () => void }) {
-  return (
-    <p role="alert" className="flex flex-wrap items-center gap-3 text-tail">
-      The pings could not be read: {message} <Button onClick={onRetry}>Try again</Button>
-    </p>
   );
 }

@@ -1,6 +1,5 @@
 "use client";
 
-import { useState } from "react";
 import type { LegCheckView, LegOfCheck } from "@/domain/leg-check";
 import { Button } from "@/ui/primitives/button";
 import { EditForm } from "./edit-form";
@@ -23,11 +22,6 @@ interface Props {
 
 /** The selected leg: facts and doubts for everyone, the forms for those who may change it. */
 export function LegPanel({ view, leg, actions, mayEdit, shiftM, isTooShort, onShift, onDraw, onSaved }: Props) {
-  const [saves, setSaves] = useState(0);
-  const saved = async () => {
-    await onSaved();
-    setSaves((before) => before + 1);
-  };
   const others = view.legs.filter((other) => other.id !== leg.id);
   return (
     <section aria-label={`Leg ${leg.name}`} className="flex flex-col gap-4 border-t border-ink pt-4">
@@ -35,14 +29,11 @@ export function LegPanel({ view, leg, actions, mayEdit, shiftM, isTooShort, onSh
       <LegFacts leg={leg} movements={view.movements} />
       {mayEdit ? (
         <>
-          <EditForm key={`edit-${saves}`} leg={leg} edit={actions.edit} shiftM={shiftM} isTooShort={isTooShort} onShift={onShift} onSaved={saved} />
-          <p role="status" className={saves > 0 ? "font-medium" : "sr-only"}>
-            {saves > 0 ? "The leg is saved." : ""}
-          </p>
+          <EditForm leg={leg} edit={actions.edit} shiftM={shiftM} isTooShort={isTooShort} onShift={onShift} onSaved={onSaved} />
           <details className="border-t border-rule pt-3">
             <summary className="cursor-pointer font-medium">Merge or split</summary>
             <div className="mt-3 flex flex-col gap-5">
-              {others.length > 0 ? <MergeForm key={`merge-${saves}`} leg={leg} others={others} merge={actions.merge} onSaved={saved} /> : null}
+              {others.length > 0 ? <MergeForm leg={leg} others={others} merge={actions.merge} onSaved={onSaved} /> : null}
               <div className="flex flex-col items-start gap-2">
                 <p>Two streets were taken for one: draw both.</p>
                 <Button onClick={() => onDraw({ kind: "split", legId: leg.id })}>Split the leg</Button>

@@ -16,7 +16,9 @@ export function MergeForm({ leg, others, merge, onSaved }: { leg: LegOfCheck; ot
 
   async function save(event: FormEvent) {
     event.preventDefault();
-    if (dropped && (await run({ keepId: leg.id, dropId: dropped.id }))) await onSaved();
+    if (!dropped || isBusy || !(await run({ keepId: leg.id, dropId: dropped.id }))) return;
+    await onSaved();
+    setDropId("");
   }
 
   return (
@@ -34,7 +36,7 @@ export function MergeForm({ leg, others, merge, onSaved }: { leg: LegOfCheck; ot
         )}
       </Field>
       <FormProblem problem={problem} />
-      <Button type="submit" className="self-start" disabled={isBusy || !dropped}>
+      <Button type="submit" className="self-start" aria-disabled={isBusy || !dropped}>
         {isBusy ? "Merging…" : "Merge the legs"}
       </Button>
     </form>
