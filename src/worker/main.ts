@@ -9,8 +9,11 @@ import { openStorage } from "@/storage/open-storage";
 import { handlers } from "./handlers";
 import { runJobs } from "./run-jobs";
 
+/** A job's own lock, the lock of the legs, its transaction and its progress: fewer, and jobs wait for each other for ever. */
+const CONNECTIONS_PER_JOB = 4;
+
 const settings = env();
-const database = openDatabase(settings.DATABASE_URL, { max: 6 });
+const database = openDatabase(settings.DATABASE_URL, { max: handlers.length * settings.WORKER_CONCURRENCY * CONNECTIONS_PER_JOB });
 const queue = openQueue(database.db);
 const keptFolder = keepsMail(settings) ? keptMailFolder(settings.DATA_DIR) : null;
 const mailer = openMailer({ smtpUrl: smtpUrl(settings), from: settings.MAIL_FROM, keptFolder });
