@@ -101,6 +101,13 @@ describe("ingest", () => {
     expect(await job.db.select({ id: legs.id, code: legs.code }).from(legs).orderBy(legs.id)).toEqual(before);
   });
 
+  it("gives no figure, not only no rank, where hardly anybody was seen", async () => {
+    await upload("pings", "few.csv", crossingPings({ startMs: Date.parse("2026-03-07T08:00:00Z"), vehicles: 4 }));
+    const { rows } = await rankJunctions(engineer, ScreenQuery.parse({ period: "all", days: "saturday" }));
+    expect(rows[0]).toMatchObject({ evidence: "none", vehicles: 4, days: 1, rank: null, delay: null, p95S: null, los: null, hoursSeen: null, reachM: null, spill: null });
+    expect(rows[0].needles.map(({ delayS, reachM }) => [delayS, reachM])).toEqual(Array(4).fill([null, null]));
+  });
+
   it("reports rejected rows with their lines and keeps the good ones", async () => {
     const lines = crossingPings({ startMs: Date.parse("2026-03-06T08:00:00Z"), vehicles: 40 }).split("\n");
     lines.splice(3, 0, "v1,not a time,45.6,-38.3,10,0", "v1,1772784000000,95.0,-38.3,10,0");

@@ -17,6 +17,8 @@ export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJu
   const score = scored.junctionScores.get(junction.id);
   const needles = needlesOf(junction.id, scored);
   if (!score || score.vehicles === 0) return { ...base, ...UNSEEN, needles };
+  // Too few to be ranked are too few for a figure, too: a published list must not tell of two vehicles.
+  if (score.evidence === "none") return { ...base, ...UNSEEN, vehicles: score.vehicles, days: score.days, needles };
   const delay = estimateView(score.delay);
   const worstLeg = scored.legScores.get(score.worstLeg);
   return {
@@ -72,7 +74,8 @@ function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["wors
 
 function needlesOf(junctionId: number, scored: ScoredCity): NeedleView[] {
   return (scored.catalogue.legsOfJunction.get(junctionId) ?? []).map((leg) => {
-    const score = scored.legScores.get(leg.id);
+    const known = scored.legScores.get(leg.id);
+    const score = known && known.evidence !== "none" ? known : undefined;
     return {
       legId: leg.id,
       lieDeg: (leg.bearingDeg + 180) % 360,
