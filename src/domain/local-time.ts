@@ -47,14 +47,10 @@ export function offsetTable(timeZone: string, fromMs: number, toMs: number): Off
       if (offsetMinAt(timeZone, middle) === after) high = middle;
       else low = middle;
     }
-    spans.push({ fromMs: Math.ceil(low / 60_000) * 60_000, offsetMin: after });
+    // Clocks change on whole minutes, and one of them lies in this last one.
+    spans.push({ fromMs: Math.floor(high / 60_000) * 60_000, offsetMin: after });
   }
   return spans;
-}
-
-/** Days since 1970-01-01 of the local calendar day. */
-export function localDayOf(timeZone: string, ms: number): number {
-  return Math.floor((ms + offsetMinAt(timeZone, ms) * 60_000) / DAY_MS);
 }
 
 export function isoFromDay(day: number): string {
@@ -68,13 +64,6 @@ export function dayFromIso(date: string): number {
 /** 0 is Sunday. */
 export function weekdayOf(day: number): number {
   return (((day + 4) % 7) + 7) % 7;
-}
-
-/** The moment at which the local clock shows that many minutes after midnight of the day. */
-export function msFromLocal(timeZone: string, day: number, minutes: number): number {
-  const wall = day * DAY_MS + minutes * 60_000;
-  const guess = wall - offsetMinAt(timeZone, wall) * 60_000;
-  return wall - offsetMinAt(timeZone, guess) * 60_000;
 }
 
 /** 990 becomes 16:30; 1440 becomes 24:00. */

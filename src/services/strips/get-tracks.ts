@@ -4,7 +4,7 @@ import { encodeTrackSet } from "@/core/strips/track-set";
 import { legs, movements, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { MOST_TRACKS, StripQuery } from "@/domain/junction";
-import { dayFromIso, msFromLocal } from "@/domain/local-time";
+import { dayFromIso } from "@/domain/local-time";
 import { requirePermission, type Context } from "../context";
 import { windowOf } from "../screens/score-city";
 import { getSettings } from "../settings/get-settings";
@@ -28,11 +28,11 @@ export async function getTracks(ctx: Context, input: z.input<typeof GetTracks>):
   const window = windowOf(settings, query);
   const dates = await chosenDates(ctx.db, query);
   if (dates.length === 0) return encodeTrackSet([]);
-  const midnights = new Map(dates.map((date) => [date, msFromLocal(settings.timeZone, dayFromIso(date), 0)]));
   const rows = await ctx.db
     .select({
       date: traversals.localDay,
-      enterMs: sql<number>`extract(epoch from ${traversals.enterAt}) * 1000`.mapWith(Number),
+      // By the clock on the wall, as the window is: on a day when clocks change, hours since midnight are others.
+      enterS: sql<number>`extract(epoch from (${traversals.enterAt} at time zone ${settings.timeZone}) - ${traversals.localDay})`.mapWith(Number),
       movement: traversals.movementId,
       delayS: traversals.delayS,
       track: traversals.track,
@@ -53,7 +53,7 @@ export async function getTracks(ctx: Context, input: z.input<typeof GetTracks>):
   return encodeTrackSet(
     rows.map((row) => ({
       day: dayFromIso(row.date),
-      enterS: (row.enterMs - (midnights.get(row.date) as number)) / 1000,
+      enterS: row.enterS,
       movement: row.movement,
       delayS: row.delayS,
       track: row.track,
