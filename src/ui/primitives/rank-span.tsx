@@ -8,7 +8,7 @@ export function RankSpan(props: { rank: number | null; low: number | null; high:
   if (rank === null || low === null || high === null) return <span className="text-ink-soft">–</span>;
   // Square roots give the first places room: they are the ones people argue about.
   const x = (value: number) => 3 + axisX(Math.sqrt(value - 1), Math.sqrt(Math.max(1, last - 1)), WIDTH - 6);
-  const words = low === high ? `rank ${rank} for certain` : `between rank ${low} and ${high}`;
+  const words = `rank ${rank}, 95 % interval ${low} to ${high}`;
   return (
     <span title={words}>
       <svg aria-hidden="true" width={WIDTH} height="12" viewBox={`0 0 ${WIDTH} 12`}>
