@@ -1,5 +1,4 @@
-import { angleBetweenDeg } from "@/core/geometry/angles";
-import { eastM, northM } from "@/core/geometry/plane";
+import { eastM } from "@/core/geometry/plane";
 import type { StreetGraph } from "@/core/match/graph";
 import { MATCHING } from "@/core/match/matching";
 
@@ -22,7 +21,8 @@ export function createCandidates(pings: number): Candidates {
   };
 }
 
-const DEG = 180 / Math.PI;
+/** Only across the 180th meridian does a plain difference of longitudes reach this far, m. */
+const HALF_TURN_M = 1e6;
 
 /** Writes the best places of one ping into row `n`, the nearest on each link; returns how many. */
 export function findCandidates(
@@ -40,24 +40,28 @@ export function findCandidates(
     const link = segments.link[segment];
     if (graph.home[link] !== plane) {
       plane = graph.home[link];
-      x = eastM(graph.planes[plane], lon);
-      y = northM(graph.planes[plane], lat);
+      const { lat0, lon0, metresPerLat, metresPerLon } = graph.planes[plane];
+      x = (lon - lon0) * metresPerLon;
+      y = (lat - lat0) * metresPerLat;
+      if (x > HALF_TURN_M || x < -HALF_TURN_M) x = eastM(graph.planes[plane], lon);
     }
     const px = x - segments.x0[segment];
     const py = y - segments.y0[segment];
     const ux = segments.ux[segment];
     const uy = segments.uy[segment];
+    const across = px * uy - py * ux;
+    if (across > MATCHING.sideLimitM || across < -MATCHING.sideLimitM) continue;
     const along = px * ux + py * uy;
     const within = Math.min(segments.lengthM[segment], Math.max(0, along));
     const beyond = along - within;
-    const across = px * uy - py * ux;
     const side2 = across * across + beyond * beyond;
     if (side2 > MATCHING.sideLimitM * MATCHING.sideLimitM) continue;
     const position = segments.at[segment] + within;
     let cost = (0.5 * side2) / (MATCHING.sideSpreadM * MATCHING.sideSpreadM);
     if (headingDeg >= 0) {
       const isInBox = position < 5 || position > graph.stopAt[link] - 5;
-      const angle = angleBetweenDeg(Math.atan2(ux, uy) * DEG, headingDeg);
+      const off = Math.abs(segments.bearingDeg[segment] - headingDeg) % 360;
+      const angle = off > 180 ? 360 - off : off;
       if (angle > MATCHING.headingLimitDeg && speedMs > MATCHING.headingMinSpeedMs) continue;
       const spread = isInBox ? MATCHING.boxHeadingSpreadDeg : MATCHING.headingSpreadDeg;
       const weight = speedMs > MATCHING.headingMinSpeedMs ? 0.5 : 0.2;

@@ -1,4 +1,4 @@
-import { signedTurnDeg } from "@/core/geometry/angles";
+import { bearingDeg, signedTurnDeg } from "@/core/geometry/angles";
 import { latAt, lonAt, planeAt, type Plane } from "@/core/geometry/plane";
 import { pointAt, reversed, slice } from "@/core/geometry/polyline";
 import type { ClaimIndex, JunctionIndex } from "@/core/index/junction-index";
@@ -41,6 +41,7 @@ export interface Segments {
   /** Unit vector of travel. */
   ux: Float64Array;
   uy: Float64Array;
+  bearingDeg: Float64Array;
   lengthM: Float64Array;
 }
 
@@ -102,7 +103,7 @@ function cutSegments(lines: Float64Array[], starts: Float64Array): Segments {
   const out: Segments = {
     link: new Int32Array(total), at: new Float64Array(total),
     x0: new Float64Array(total), y0: new Float64Array(total),
-    ux: new Float64Array(total), uy: new Float64Array(total), lengthM: new Float64Array(total),
+    ux: new Float64Array(total), uy: new Float64Array(total), bearingDeg: new Float64Array(total), lengthM: new Float64Array(total),
   };
   let n = 0;
   lines.forEach((line, link) => {
@@ -117,6 +118,7 @@ function cutSegments(lines: Float64Array[], starts: Float64Array): Segments {
       out.y0[n] = line[v + 1];
       out.ux[n] = length > 0 ? dx / length : 0;
       out.uy[n] = length > 0 ? dy / length : 0;
+      out.bearingDeg[n] = length > 0 ? bearingDeg(dx, dy) : 0;
       out.lengthM[n] = length;
       at += length;
     }
