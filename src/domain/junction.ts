@@ -91,7 +91,8 @@ export const StripQuery = WhenQuery.extend({
   /** A single day instead of the typical one. */
   day: z.iso.date().optional(),
   turn: ScreenQuery.shape.turn,
-  shape: z.enum(["rectangles", "waves"]).default("rectangles"),
+  /** Along the wave by default: travel times read off such cells are the nearer to the vehicles' own (tests/reference/strips). */
+  shape: z.enum(["rectangles", "waves"]).default("waves"),
   /** Backward wave speed, km/h. */
   wave: z.coerce.number().min(10).max(20).default(15),
   cellM: z.coerce.number().min(5).max(50).default(10),

@@ -4,20 +4,20 @@ import { stripQueryFromParams, stripQueryToParams, whenQueryFromParams, whenQuer
 describe("strip query in the address", () => {
   it("is the default view when the address says nothing", () => {
     const query = stripQueryFromParams({});
-    expect(query).toMatchObject({ period: "pm", days: "weekdays", turn: "any", shape: "rectangles", wave: 15, cellM: 10, cellS: 120, smooth: "off", paths: "hidden" });
+    expect(query).toMatchObject({ period: "pm", days: "weekdays", turn: "any", shape: "waves", wave: 15, cellM: 10, cellS: 120, smooth: "off", paths: "hidden" });
     expect(stripQueryToParams(query).toString()).toBe("");
   });
 
   it("comes back from the address as it went in", () => {
-    const params = { day: "2026-03-11", shape: "waves", wave: "18", cellM: "5", cellS: "30", paths: "shown", from: "420", to: "600" };
+    const params = { day: "2026-03-11", shape: "rectangles", wave: "18", cellM: "5", cellS: "30", paths: "shown", from: "420", to: "600" };
     const query = stripQueryFromParams(params);
     expect(stripQueryFromParams(Object.fromEntries(stripQueryToParams(query)))).toEqual(query);
     expect(Object.fromEntries(stripQueryToParams(query))).toEqual(params);
   });
 
   it("drops only the fields that cannot be read", () => {
-    const query = stripQueryFromParams({ wave: "25", day: "11 March", cellM: "20", shape: ["waves", "rectangles"] });
-    expect(query).toMatchObject({ wave: 15, cellM: 20, shape: "waves" });
+    const query = stripQueryFromParams({ wave: "25", day: "11 March", cellM: "20", shape: ["rectangles", "waves"] });
+    expect(query).toMatchObject({ wave: 15, cellM: 20, shape: "rectangles" });
     expect(query.day).toBeUndefined();
   });
 

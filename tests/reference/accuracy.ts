@@ -1,6 +1,7 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 
+import { MAIN_SAMPLINGS, type MeasuredAccuracy } from "@/ui/methods/accuracy";
 import { METHOD_VERSION } from "@/core/method-version";
 
 import type { Recording } from "./recording";
@@ -33,6 +34,7 @@ export interface AccuracyTable {
 
 const JSON_PATH = join(import.meta.dirname, "accuracy.json");
 const TEXT_PATH = join(import.meta.dirname, "accuracy.md");
+const PAGE_PATH = join(import.meta.dirname, "../../src/ui/methods/accuracy.json");
 
 export function measureAccuracy(recording: Recording, sampling: Sampling, isHoldOut: boolean): AccuracyRow {
   const run = runOnRecording(recording, sampling);
@@ -66,7 +68,31 @@ export function writeAccuracy(rows: AccuracyRow[]) {
   const lines = rows.map((row) => JSON.stringify(row)).join(",\n");
   writeFileSync(JSON_PATH, `{"methodVersion":${JSON.stringify(METHOD_VERSION)},"rows":[\n${lines}\n]}\n`);
   writeFileSync(TEXT_PATH, accuracyText(rows));
+  writeFileSync(PAGE_PATH, `[\n${rows.flatMap(pageLine).join(",\n")}\n]\n`);
 }
+
+/** What the methods page shows of a row; samplings that no accuracy is stated for are left out. */
+export function pageLine(row: AccuracyRow): string[] {
+  if (!MAIN_SAMPLINGS.some((sampling) => sampling === row.sampling)) return [];
+  const { scores } = row;
+  const shown: MeasuredAccuracy = {
+    network: row.scenario,
+    isKeptAside: row.isHoldOut,
+    sampling: row.sampling,
+    delayErrorS: toDigits(scores.delayMaeS.ours, 2),
+    sampleErrorS: toDigits(scores.delayMaeS.oracle, 2),
+    biasS: toDigits(scores.delayBiasS.ours, 2),
+    turnsRight: toDigits(scores.turnsRight, 3),
+    legsFound: toDigits(scores.legRecall, 3),
+    legsTrue: toDigits(scores.legPrecision, 3),
+    reachErrorM: toDigits(scores.reachMaeM.ours, 1),
+    sampleReachErrorM: toDigits(scores.reachMaeM.oracle, 1),
+    intervalsHold: row.intervals > 0 ? toDigits(row.intervalsInside / row.intervals, 3) : null,
+  };
+  return [JSON.stringify(shown)];
+}
+
+const toDigits = (value: number, digits: number) => Number(value.toFixed(digits));
 
 const HEAD = [
   "scenario", "sampling", "legs found / true", "turns", "count error",

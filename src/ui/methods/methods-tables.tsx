@@ -3,7 +3,7 @@ import { SIGNALISED_LOS } from "@/core/stats/level-of-service";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { LosSquare } from "@/ui/primitives/los-square";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
-import { ACCURACY_BOUNDS } from "./accuracy-bounds";
+import { MEASURED_ACCURACY, type MAIN_SAMPLINGS } from "./accuracy";
 
 export function LosTable() {
   return (
@@ -119,31 +119,45 @@ export function IntervalTable() {
   );
 }
 
-export function AccuracyTable() {
+export function AccuracyTable({ sampling }: { sampling: (typeof MAIN_SAMPLINGS)[number] }) {
+  const [share, every] = sampling.split(", ");
   return (
-    <RuledTable caption="Error against known truth, at most" className="min-w-[40rem]">
+    <RuledTable caption={`${share} of the vehicles, a ping every ${every}`} className="min-w-[46rem]">
       <thead>
         <tr>
-          <Th>vehicles seen</Th>
-          <Th>a ping every</Th>
-          <Th numeric>mean delay of a movement</Th>
-          <Th numeric>of which our own</Th>
-          <Th numeric>share stopping</Th>
-          <Th numeric>farthest reach of a leg</Th>
+          <Th>network</Th>
+          <Th numeric>error of a movement’s mean delay</Th>
+          <Th numeric>of the sample alone</Th>
+          <Th numeric>bias</Th>
+          <Th numeric>turns right</Th>
+          <Th numeric>legs found, of them true</Th>
+          <Th numeric>error of the farthest reach</Th>
+          <Th numeric>of the sample alone</Th>
+          <Th numeric>95 % intervals that hold</Th>
         </tr>
       </thead>
       <tbody>
-        {ACCURACY_BOUNDS.map((bound) => (
-          <tr key={bound.sampling}>
-            <Td>{bound.share}</Td>
-            <Td>{bound.every}</Td>
-            <Td numeric>{bound.delayS} s</Td>
-            <Td numeric>{bound.ownS} s</Td>
-            <Td numeric>{bound.stopShare === null ? "not claimed" : `${Math.round(bound.stopShare * 100)} points`}</Td>
-            <Td numeric>{bound.reachM === null ? "not claimed" : `${bound.reachM} m`}</Td>
+        {MEASURED_ACCURACY.filter((row) => row.sampling === sampling).map((row) => (
+          <tr key={row.network}>
+            <Th scope="row" className="whitespace-nowrap border-b-rule font-medium text-ink">
+              {row.network}
+              {row.isKeptAside ? " *" : ""}
+            </Th>
+            <Td numeric>{row.delayErrorS.toFixed(1)} s</Td>
+            <Td numeric>{row.sampleErrorS.toFixed(1)} s</Td>
+            <Td numeric>{row.biasS.toFixed(1)} s</Td>
+            <Td numeric>{percent(row.turnsRight, 1)}</Td>
+            <Td numeric>
+              {percent(row.legsFound, 1)}, {percent(row.legsTrue, 1)}
+            </Td>
+            <Td numeric>{Math.round(row.reachErrorM)} m</Td>
+            <Td numeric>{Math.round(row.sampleReachErrorM)} m</Td>
+            <Td numeric>{row.intervalsHold === null ? "–" : percent(row.intervalsHold, 0)}</Td>
           </tr>
         ))}
       </tbody>
     </RuledTable>
   );
 }
+
+const percent = (share: number, digits: number) => `${(share * 100).toFixed(digits)} %`;

@@ -36,7 +36,7 @@ function pictureOf(params: Record<string, string>) {
 const words = { units: "metric", locale: "en-GB", isTypical: true } as const;
 
 describe("read-out", () => {
-  const picture = pictureOf({ cellM: "50", cellS: "60" });
+  const picture = pictureOf({ shape: "rectangles", cellM: "50", cellS: "60" });
   // Column of 16:02, lowest row.
   const cell = 2;
 
