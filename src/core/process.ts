@@ -5,6 +5,7 @@ import { matchTrips } from "@/core/match/match-trips";
 import type { CoreOptions } from "@/core/options";
 import { cleanPings } from "@/core/pings/clean";
 import type { Trips } from "@/core/pings/trips";
+import { penetrationFromQueues } from "@/core/queues/penetration";
 import { createTraversalBuilder } from "@/core/traversals/columns";
 import { createExtractor } from "@/core/traversals/extract";
 import { setReferences } from "@/core/traversals/references";
@@ -52,7 +53,7 @@ export function matchTraversals(network: Network, pings: PingColumns, index: Jun
   return createMatcher(network, index)(pings);
 }
 
-/** Stages 2 to 6 on one batch in memory. */
+/** Stages 2 to 6 on one batch in memory, and the share of traffic that it shows. */
 export function processCity(
   pings: PingColumns, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
 ): CityResult {
@@ -60,7 +61,8 @@ export function processCity(
   const network = learnFromTrips(cleaned.trips, junctions, index, options, prior);
   const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network, index), pings);
   setReferences(network, matched.traversals);
-  return { network, traversals: matched.traversals, clean: matched.report, facts: matched.facts };
+  const facts = { ...matched.facts, penetration: penetrationFromQueues(network, matched.traversals) };
+  return { network, traversals: matched.traversals, clean: matched.report, facts };
 }
 
 function matchCleaned(

@@ -9,6 +9,9 @@ import type { Leg, Network } from "@/core/types";
 /** A leg or exit stays when this many trips, and this share of its junction's busiest leg, used it. */
 const LEAST_TRIPS = 2;
 const LEAST_SHARE = 0.01;
+/** At a junction with legs from earlier data a new one must be plain. */
+const NEW_LEAST_TRIPS = 5;
+const NEW_LEAST_SHARE = 0.06;
 /** Between junctions this near matched paths may run over streets that do not exist: pings must have been seen on them. */
 const SHORT_LINK_M = 45;
 const SHORT_LINK_SEEN = 2;
@@ -29,7 +32,11 @@ export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Ke
   const busiest = new Float64Array(draft.junctions.length);
   draft.legs.forEach((leg, i) => (busiest[leg.junction] = Math.max(busiest[leg.junction], usage.leg[i])));
   const shortcuts = findShortcuts(draft, usage);
-  const isUsed = (n: number, junction: number): boolean => n >= Math.max(LEAST_TRIPS, LEAST_SHARE * busiest[junction]);
+  const known = new Set(draft.legs.filter((leg) => carried.has(leg.id)).map((leg) => leg.junction));
+  const isUsed = (n: number, junction: number): boolean => {
+    const [trips, share] = known.has(junction) ? [NEW_LEAST_TRIPS, NEW_LEAST_SHARE] : [LEAST_TRIPS, LEAST_SHARE];
+    return n >= Math.max(trips, share * busiest[junction]);
+  };
   const isReal = (leg: Leg, i: number): boolean =>
     isUsed(usage.leg[i], leg.junction) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
   const stays = draft.legs.map((leg, i) => leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i));

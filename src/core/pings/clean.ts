@@ -94,6 +94,8 @@ function gather(pings: PingColumns, kept: Uint32Array, length: number, starts: n
     count,
     tripOffset: new Uint32Array(count + 1),
     tripVehicle: new Uint32Array(count),
+    tripIntervalS: new Float32Array(count),
+    tripHasSpeed: new Uint8Array(count),
     hasSpeed: false,
     hasHeading: false,
     medianIntervalS: NaN,

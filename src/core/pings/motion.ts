@@ -23,6 +23,7 @@ export function fillMotion(trips: Trips): void {
   trips.hasHeading = headings * 2 > trips.length;
   trips.medianIntervalS = medianInterval(trips);
   for (let k = 0; k < trips.count; k++) {
+    describeTrip(trips, k);
     fillTrip(trips, trips.tripOffset[k], trips.tripOffset[k + 1]);
     faceStanding(trips, trips.tripOffset[k], trips.tripOffset[k + 1]);
   }
@@ -70,6 +71,20 @@ function fillTrip(trips: Trips, from: number, to: number): void {
       trips.headingDeg[i] = tells && moving ? bearingDeg(dx, dy) : NaN;
     } else if (!moving) trips.headingDeg[i] = NaN;
   }
+}
+
+function describeTrip(trips: Trips, k: number): void {
+  const from = trips.tripOffset[k];
+  const to = trips.tripOffset[k + 1];
+  const steps = new Float64Array(Math.max(0, to - from - 1));
+  let speeds = 0;
+  for (let i = from; i < to; i++) {
+    if (Number.isFinite(trips.speedMs[i])) speeds += 1;
+    if (i > from) steps[i - from - 1] = (trips.tMs[i] - trips.tMs[i - 1]) / 1000;
+  }
+  steps.sort();
+  trips.tripIntervalS[k] = steps.length > 0 ? steps[steps.length >> 1] : NaN;
+  trips.tripHasSpeed[k] = speeds * 2 > to - from ? 1 : 0;
 }
 
 /** Median over at most about 20 000 intervals, taken evenly. */

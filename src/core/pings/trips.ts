@@ -14,6 +14,10 @@ export interface Trips {
   /** Pings of trip k are tripOffset[k] to tripOffset[k + 1] - 1. */
   tripOffset: Uint32Array;
   tripVehicle: Uint32Array;
+  /** Median seconds between the pings of each trip; NaN for a single ping. */
+  tripIntervalS: Float32Array;
+  /** 1 where most pings of a trip carry a reported speed. */
+  tripHasSpeed: Uint8Array;
   /** True where most pings carry a reported speed. */
   hasSpeed: boolean;
   hasHeading: boolean;

@@ -22,7 +22,10 @@ export const CROSSING = Object.freeze({
 });
 
 export interface Extractor {
-  /** Adds the traversals of one chain; returns how many passages were left out because they were cut off. */
+  /**
+   * Adds the traversals of one chain; returns how many passages were left out: those that began or ended inside the
+   * window of a junction, and the vehicles that ended or left the streets between the cordon and the stop line.
+   */
   addChain(chain: Chain): number;
 }
 
@@ -42,7 +45,6 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     }
     return found;
   };
-  const intervalS = trips.medianIntervalS;
   let seen: Course = createCourse(256);
   let course: Course = createCourse(1024);
   let trackMs = new Float64Array(0);
@@ -50,7 +52,8 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
 
   return {
     addChain(chain) {
-      if (chain.links.length < 2) return 0;
+      let cut = endsInWindow(chain, graph) ? 1 : 0;
+      if (chain.links.length < 2) return cut;
       const base = basesOf(chain, graph, box);
       const size = chain.pings.length;
       if (size > seen.tMs.length) {
@@ -63,7 +66,6 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       }
       fillCourse(seen, chain, base, trips, graph, box);
       fillGaps(seen, base.map((at, k) => at + graph.stopAt[chain.links[k]]), course);
-      let cut = 0;
       for (let k = 0; k + 1 < chain.links.length; k++) {
         const leg = graph.leg[chain.links[k]];
         const exit = graph.exit[chain.links[k + 1]];
@@ -85,6 +87,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     const end = course.distanceM[course.length - 1];
     if (begin > stopAt - CROSSING.seenBeforeM || end < stopAt + CROSSING.seenAfterM) return true;
     const free = graph.freeSpeedMs[link];
+    const intervalS = trips.tripIntervalS[chain.trip];
     let flags = 0;
     let enterMs = timeAt(course, enterAt);
     if (begin > enterAt) {
@@ -134,6 +137,13 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
   }
 }
 
+/** Whether a chain breaks off on a leg, between the cordon and the stop line. */
+function endsInWindow(chain: Chain, graph: StreetGraph): boolean {
+  const link = chain.links[chain.links.length - 1];
+  const toLine = graph.stopAt[link] - chain.position[chain.position.length - 1];
+  return graph.leg[link] >= 0 && toLine > 0 && toLine < CROSSING.cordonUpM;
+}
+
 /** Path distance at position 0 of each link of a chain. */
 function basesOf(chain: Chain, graph: StreetGraph, box: (leg: number, exit: number) => { lengthM: number }): Float64Array {
   const base = new Float64Array(chain.links.length);
@@ -171,7 +181,7 @@ function fillCourse(
   }
   course.length = n;
   smoothForward(course);
-  if (!trips.hasSpeed) estimateSpeeds(course);
+  if (trips.tripHasSpeed[chain.trip] === 0) estimateSpeeds(course);
 }
 
 /** Distance along the way through a box; outside its ends the given straight distance holds. */
