@@ -10,7 +10,8 @@ const MOST_SHIFT_M = 15;
 
 /**
  * Lets every exit begin abreast of the stop line of the leg on the same arm, where the junction's box ends, else at
- * the mean distance of the junction's stop lines. Legs that an exit feeds end upstream at the same place.
+ * the mean distance of the junction's stop lines. Legs that an exit feeds end upstream at the same place,
+ * and a storage length that was the leg's whole length follows.
  */
 export function placeBoxEdges(legs: Leg[], exits: Exit[]): { legs: Leg[]; exits: Exit[] } {
   const shifts = exits.map((exit) => edgeShift(exit, legs.filter((leg) => leg.junction === exit.junction)));
@@ -24,7 +25,8 @@ export function placeBoxEdges(legs: Leg[], exits: Exit[]): { legs: Leg[]; exits:
     const isFixed = leg.locked || leg.origin !== "derived";
     if (shift === 0 || isFixed || leg.lengthM - shift < LEAST_LENGTH_M) return leg;
     const line = slice(leg.line, 0, leg.lengthM - shift);
-    return { ...leg, line, lengthM: lengthOf(line) };
+    const lengthM = lengthOf(line);
+    return { ...leg, line, lengthM, storageM: leg.storageM === leg.lengthM ? lengthM : leg.storageM };
   });
   return { legs: movedLegs, exits: movedExits };
 }

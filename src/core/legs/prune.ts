@@ -1,10 +1,10 @@
 import { placeBoxEdges } from "@/core/legs/box-edges";
-import type { Joined } from "@/core/legs/join";
 import { estimateFreeSpeeds } from "@/core/legs/free-speed";
+import type { Joined } from "@/core/legs/join";
 import { findShortcuts } from "@/core/legs/shortcuts";
 import { placeStopLines } from "@/core/legs/stop-lines";
 import type { Usage } from "@/core/legs/usage";
-import type { Leg, Network } from "@/core/types";
+import type { Exit, Leg, Network } from "@/core/types";
 
 /** A leg or exit stays when this many trips, and this share of its junction's busiest leg, used it. */
 const LEAST_TRIPS = 2;
@@ -26,41 +26,56 @@ export interface Kept extends Joined {
 
 /**
  * Drops legs and exits that matched traffic does not use, except drawn and carried ones, and sets stop line, support,
- * free speed and storage of the rest.
+ * free speed and storage of the rest. O(legs and exits).
  */
 export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Kept {
+  const isUsed = usedTest(draft, usage, carried);
+  const legFrom = legsThatStay(draft, usage, carried, isUsed);
+  const exitFrom = exitsThatStay(draft, usage, carried, isUsed, legFrom);
+  const exitNow = new Int32Array(draft.exits.length).fill(-1);
+  exitFrom.forEach((from, n) => (exitNow[from] = n));
+  const free = estimateFreeSpeeds(draft, usage.speeds);
+  const placed = placeStopLines(draft.legs, usage, carried);
+  const legs = legFrom.map((i) => {
+    const leg = placed[i];
+    const isCarried = carried.has(leg.id);
+    const isFed = leg.upstreamExit >= 0 && (usage.fed[i] > 0 || isCarried || leg.origin !== "derived");
+    return settleLeg(leg, isFed ? exitNow[leg.upstreamExit] : -1, usage, i, free[i], isCarried);
+  });
+  const exits = exitFrom.map((i): Exit => {
+    const exit = draft.exits[i];
+    return { ...exit, support: Math.max(usage.exit[i], carried.has(exit.id) ? exit.support : 0) };
+  });
+  return { ...placeBoxEdges(legs, exits), legFrom, exitFrom };
+}
+
+/** Whether so many trips are enough at a junction. */
+function usedTest(draft: Network, usage: Usage, carried: Set<string>): (trips: number, junction: number) => boolean {
   const busiest = new Float64Array(draft.junctions.length);
   draft.legs.forEach((leg, i) => (busiest[leg.junction] = Math.max(busiest[leg.junction], usage.leg[i])));
-  const shortcuts = findShortcuts(draft, usage);
   const known = new Set(draft.legs.filter((leg) => carried.has(leg.id)).map((leg) => leg.junction));
-  const isUsed = (n: number, junction: number): boolean => {
-    const [trips, share] = known.has(junction) ? [NEW_LEAST_TRIPS, NEW_LEAST_SHARE] : [LEAST_TRIPS, LEAST_SHARE];
-    return n >= Math.max(trips, share * busiest[junction]);
+  return (trips, junction) => {
+    const [least, share] = known.has(junction) ? [NEW_LEAST_TRIPS, NEW_LEAST_SHARE] : [LEAST_TRIPS, LEAST_SHARE];
+    return trips >= Math.max(least, share * busiest[junction]);
   };
+}
+
+function legsThatStay(
+  draft: Network, usage: Usage, carried: Set<string>, isUsed: (trips: number, junction: number) => boolean,
+): number[] {
+  const shortcuts = findShortcuts(draft, usage);
   const isReal = (leg: Leg, i: number): boolean =>
     isUsed(usage.leg[i], leg.junction) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
-  const stays = draft.legs.map((leg, i) => leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i));
-  const needed = new Set(draft.legs.filter((leg, i) => stays[i] && usage.fed[i] > 0).map((leg) => leg.upstreamExit));
-  const keptExit = new Int32Array(draft.exits.length).fill(-1);
-  const exits = draft.exits.flatMap((exit, i) => {
-    if (!isUsed(usage.exit[i], exit.junction) && !carried.has(exit.id) && !needed.has(i)) return [];
-    keptExit[i] = 0;
-    return [{ ...exit, support: Math.max(usage.exit[i], carried.has(exit.id) ? exit.support : 0) }];
-  });
-  let next = 0;
-  for (let i = 0; i < keptExit.length; i++) if (keptExit[i] === 0) keptExit[i] = next++;
-  const free = estimateFreeSpeeds(draft, usage.speeds);
-  const legs = placeStopLines(draft.legs, usage, carried).map((leg, i) => {
-    const isFed = leg.upstreamExit >= 0 && (usage.fed[i] > 0 || carried.has(leg.id) || leg.origin !== "derived");
-    return settleLeg(leg, isFed ? keptExit[leg.upstreamExit] : -1, usage, i, free[i], carried.has(leg.id));
-  });
-  const placed = placeBoxEdges(legs.filter((_, i) => stays[i]), exits);
-  const numbers = (count: number): number[] => Array.from({ length: count }, (_, i) => i);
-  return {
-    ...placed,
-    legFrom: numbers(draft.legs.length).filter((i) => stays[i]),
-    exitFrom: numbers(draft.exits.length).filter((i) => keptExit[i] >= 0),
-  };
+  return draft.legs.flatMap((leg, i) => (leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i) ? [i] : []));
+}
+
+function exitsThatStay(
+  draft: Network, usage: Usage, carried: Set<string>, isUsed: (trips: number, junction: number) => boolean, legFrom: number[],
+): number[] {
+  const feeding = new Set(legFrom.filter((i) => usage.fed[i] > 0).map((i) => draft.legs[i].upstreamExit));
+  return draft.exits.flatMap((exit, i) =>
+    carried.has(exit.id) || feeding.has(i) || isUsed(usage.exit[i], exit.junction) ? [i] : [],
+  );
 }
 
 function settleLeg(leg: Leg, upstreamExit: number, usage: Usage, i: number, freeSpeedMs: number, isCarried: boolean): Leg {
