@@ -2,6 +2,7 @@ import { and, asc, eq, inArray, notInArray, or } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
 import { relistMovements } from "@/core/legs/relist";
 import { createMatcher, setReferences } from "@/core/process";
+import { keepSettledReferences } from "@/core/traversals/settled";
 import { legQuarters } from "@/core/queues/leg-quarters";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
 import { keepInScreenDay } from "@/core/scores/leave-out";
@@ -39,6 +40,8 @@ interface Job {
   legEdits: number;
   network: Network;
   keys: NetworkKeys;
+  /** Indices of the junctions whose legs were changed. */
+  home: ReadonlySet<number>;
   /** 1 for each leg that the change touches: the junction's own and those that it feeds. */
   touched: Uint8Array;
   choose: (batch: PingColumns) => PingColumns;
@@ -67,9 +70,10 @@ async function rematchFiles(ctx: Context, junctionIds: number[], signal: AbortSi
     .from(uploads)
     .where(and(eq(uploads.kind, "pings"), eq(uploads.state, "done")))
     .orderBy(asc(uploads.createdAt), asc(uploads.id));
+  let isFirst = true;
   for (const file of files) {
     signal?.throwIfAborted();
-    if (file.mapping) await rematchUpload(ctx, { ...file, mapping: file.mapping }, job);
+    if (file.mapping && (await rematchUpload(ctx, { ...file, mapping: file.mapping }, job, isFirst))) isFirst = false;
   }
   await bulkTransaction(ctx.db, async (tx) => {
     await requireSameLegs(tx, job.legEdits);
@@ -97,7 +101,7 @@ async function prepare(ctx: Context, junctionIds: number[]): Promise<Job | null>
     await requireSameLegs(tx, seen);
     return storeNetwork(tx, network, points.map((point) => point.key));
   });
-  return { legEdits: seen, network, keys, touched, timeZone, choose: nearOnly([...near].map((i) => points[i])) };
+  return { legEdits: seen, network, keys, home, touched, timeZone, choose: nearOnly([...near].map((i) => points[i])) };
 }
 
 /** Keeps the pings of the cells, NEAR_LAT_DEG high, that the junctions lie in or beside. */
@@ -120,7 +124,8 @@ function chosenRows(batch: PingColumns, isChosen: (i: number) => boolean): PingC
   return some;
 }
 
-async function rematchUpload(ctx: Context, upload: PingUpload, job: Job): Promise<void> {
+/** False where the file has no ping near the junctions. */
+async function rematchUpload(ctx: Context, upload: PingUpload, job: Job, isFirst: boolean): Promise<boolean> {
   const names = new VehicleNames();
   const store = openPingStore();
   try {
@@ -130,10 +135,11 @@ async function rematchUpload(ctx: Context, upload: PingUpload, job: Job): Promis
     for await (const bucket of store.buckets()) {
       parts.push(touchedOnly(match(bucket).traversals, job));
     }
-    if (parts.length === 0) return;
+    if (parts.length === 0) return false;
     const traversals = joinTraversals(parts);
-    setTouchedReferences(job, traversals);
+    setTouchedReferences(job, traversals, isFirst);
     await replace(ctx, upload.id, job, traversals, vehicleHashes(await vehicleKey(ctx.db), names));
+    return true;
   } finally {
     await store.close();
   }
@@ -143,10 +149,15 @@ function touchedOnly(all: Traversals, { network, touched }: Job): Traversals {
   return filterTraversals(all, (i) => touched[network.movements[all.movement[i]].leg] === 1);
 }
 
-/** Untouched movements have no traversals here: what they rest on stays. */
-function setTouchedReferences({ network, touched }: Job, traversals: Traversals): void {
-  const kept = network.movements.map(({ referenceS, referenceSource, referenceN }) => ({ referenceS, referenceSource, referenceN }));
+/**
+ * Untouched movements have no traversals here: what they rest on stays. On changed legs the first file begins afresh;
+ * each later one settles with those before it, as when the files first came in.
+ */
+function setTouchedReferences({ network, home, touched }: Job, traversals: Traversals, isFirst: boolean): void {
+  const kept = network.movements.map((movement) => ({ ...movement }));
+  const earlier = isFirst ? kept.filter((movement) => !home.has(network.legs[movement.leg].junction)) : kept;
   setReferences(network, traversals);
+  keepSettledReferences(network, traversals, { ...network, movements: earlier });
   network.movements.forEach((movement, m) => {
     if (!touched[movement.leg]) Object.assign(movement, kept[m]);
   });
