@@ -28,6 +28,10 @@ async function upload(kind: UploadKind, name: string, content: string | Buffer):
   return uploadId;
 }
 
+/** On the WGS 84 ellipsoid, near 45.6 N. */
+const metresPerLat = (lat: number) => 111_132.954 - 559.822 * Math.cos((2 * lat * Math.PI) / 180) + 1.175 * Math.cos((4 * lat * Math.PI) / 180);
+const metresPerLon = (lat: number) => 111_412.84 * Math.cos((lat * Math.PI) / 180) - 93.5 * Math.cos((3 * lat * Math.PI) / 180);
+
 const view = (uploadId: string) => getUpload(engineer, { uploadId });
 
 async function sums() {
@@ -86,6 +90,23 @@ describe("ingest", () => {
     expect((await sums()).rows).toBe(before.rows);
     const { sameAs } = await receiveUpload(engineer, { kind: "pings", name: "copy.csv" }, Readable.from([Buffer.from(crossingPings())]));
     expect(sameAs).not.toBeNull();
+  });
+
+  it("keeps streets where they are, and what a file has no column for, when it moves a junction", async () => {
+    const where = (rows: { line: number[] }[], lat: number, lon: number) =>
+      rows.map(({ line }) => [lat + line[1] / metresPerLat(lat), lon + line[0] / metresPerLon(lat)].map((degrees) => Math.round(degrees * 1e6)));
+    const before = await job.db.select().from(legs).orderBy(legs.id);
+    await upload("junctions", "moved.csv", "junction_id,name,lat,lon\nX1,Cross Street,45.6001,-38.3002\n");
+    const [junction] = await job.db.select().from(junctions);
+    expect(junction).toMatchObject({ name: "Cross Street", lat: 45.6001, lon: -38.3002, cycleS: 90, district: "North", corridorOrder: 1 });
+    expect(junction.corridorId).not.toBeNull();
+    const after = await job.db.select().from(legs).orderBy(legs.id);
+    // 0.0001 degrees of latitude are 11.1 m.
+    expect(after[0].line[1]).toBeCloseTo(before[0].line[1] - 11.1, 1);
+    expect(where(after, 45.6001, -38.3002)).toEqual(where(before, 45.6, -38.3));
+    await upload("junctions", "back.csv", JUNCTIONS_CSV);
+    const restored = await job.db.select().from(legs).orderBy(legs.id);
+    restored.forEach((leg, i) => expect(leg.line[0]).toBeCloseTo(before[i].line[0], 4));
   });
 
   it("changes nothing when a job runs twice", async () => {
