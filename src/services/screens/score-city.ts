@@ -34,6 +34,8 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
   if (!known) remembered.set(ctx.db, (known = new Map()));
   const hit = known.get(key);
   if (hit) return hit;
+  // Scores of former data hold on to their slices, and nobody asks for them again.
+  for (const [former, { catalogue: of }] of known) if (of.version < catalogue.version) known.delete(former);
 
   const data = await loadScreenDays(ctx.db, query);
   const scores = scoreScreen(data.days, catalogue.keys, {

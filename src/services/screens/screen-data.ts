@@ -4,6 +4,7 @@ import { decodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { ScreenDay } from "@/core/scores/types";
 import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
+import { AppError } from "@/domain/errors";
 import { dayFromIso, weekdayOf } from "@/domain/local-time";
 import type { DayType } from "@/domain/screen";
 
@@ -26,6 +27,8 @@ export interface DateChoice {
   since?: string;
   until?: string;
 }
+
+const MOST_RUNS = 5;
 
 /** Decoded slices stay in memory: a city's months are a few hundred megabytes, and every filter reads them. */
 const decoded = new WeakMap<object, Map<number, ScreenDay>>();
@@ -53,8 +56,7 @@ export function isChosenDay(day: number, choice: DateChoice): boolean {
 }
 
 export async function loadScreenDays(db: Db, choice: DateChoice): Promise<ScreenDays> {
-  const chosen = (await listSlices(db)).filter((slice) => isChosenDay(slice.day, choice));
-  const bySlice = await decodeSlices(db, chosen);
+  const { chosen, bySlice } = await readSlices(db, choice);
   const byDay = new Map<number, ScreenDay[]>();
   for (const slice of chosen) {
     const list = byDay.get(slice.day) ?? [];
@@ -71,16 +73,48 @@ export async function loadScreenDays(db: Db, choice: DateChoice): Promise<Screen
   };
 }
 
-async function decodeSlices(db: Db, slices: Slice[]): Promise<Map<number, ScreenDay>> {
+interface ChosenSlices {
+  chosen: Slice[];
+  bySlice: ReadonlyMap<number, ScreenDay>;
+}
+
+/** An upload or a leg that is matched anew replaces slices between the list and the reading: then the list is read afresh. */
+async function readSlices(db: Db, choice: DateChoice): Promise<ChosenSlices> {
+  for (let run = 1; ; run++) {
+    const all = await listSlices(db);
+    const chosen = all.filter((slice) => isChosenDay(slice.day, choice));
+    forgetOthers(db, all);
+    const bySlice = await decodeSlices(db, chosen);
+    if (chosen.every((slice) => bySlice.has(slice.id))) return { chosen, bySlice };
+    if (run === MOST_RUNS) throw new AppError("conflict", "The figures are being renewed at this moment. Try again.");
+  }
+}
+
+/** Slices that were replaced have no reader any more. */
+function forgetOthers(db: Db, all: readonly Slice[]): void {
+  const known = decoded.get(db);
+  if (!known || known.size === 0) return;
+  const present = new Set(all.map((slice) => slice.id));
+  for (const id of known.keys()) if (!present.has(id)) known.delete(id);
+}
+
+/** A map of its own for each caller: what another one forgets meanwhile is not missed. */
+async function decodeSlices(db: Db, slices: readonly Slice[]): Promise<Map<number, ScreenDay>> {
   let known = decoded.get(db);
   if (!known) decoded.set(db, (known = new Map()));
-  const missing = slices.filter((slice) => !known.has(slice.id)).map((slice) => slice.id);
-  if (missing.length > 0) {
-    const rows = await db
-      .select({ id: screenDays.id, payload: screenDays.payload })
-      .from(screenDays)
-      .where(inArray(screenDays.id, missing));
-    for (const row of rows) known.set(row.id, decodeScreenDay(row.payload));
+  const wanted = new Map<number, ScreenDay>();
+  const missing: number[] = [];
+  for (const { id } of slices) {
+    const day = known.get(id);
+    if (day) wanted.set(id, day);
+    else missing.push(id);
   }
-  return known;
+  if (missing.length === 0) return wanted;
+  const rows = await db.select({ id: screenDays.id, payload: screenDays.payload }).from(screenDays).where(inArray(screenDays.id, missing));
+  for (const row of rows) {
+    const day = decodeScreenDay(row.payload);
+    known.set(row.id, day);
+    wanted.set(row.id, day);
+  }
+  return wanted;
 }
