@@ -1,4 +1,4 @@
-import { and, inArray, ne, sql } from "drizzle-orm";
+import { and, between, inArray, ne, sql } from "drizzle-orm";
 import type { Network, Traversals } from "@/core/types";
 import type { Db } from "@/db/client";
 import { screenDays, traversals as table } from "@/db/schema";
@@ -27,6 +27,8 @@ export async function dropKnown(db: Db, all: Traversals, question: OverlapQuesti
     .where(and(inArray(screenDays.day, [...days]), ne(screenDays.uploadId, uploadId)))
     .groupBy(screenDays.day);
   if (others.length === 0) return all;
+  const firstMs = all.stopLineMs.reduce((least, ms) => Math.min(least, ms), Infinity);
+  const lastMs = all.stopLineMs.reduce((most, ms) => Math.max(most, ms), -Infinity);
   const rows = await db
     .select({
       vehicle: table.vehicle,
@@ -34,7 +36,14 @@ export async function dropKnown(db: Db, all: Traversals, question: OverlapQuesti
       stopLineMs: sql<number>`extract(epoch from ${table.stopLineAt}) * 1000`.mapWith(Number),
     })
     .from(table)
-    .where(and(inArray(table.localDay, others.map((row) => isoFromDay(row.day))), ne(table.uploadId, uploadId)));
+    .where(
+      and(
+        inArray(table.localDay, others.map((row) => isoFromDay(row.day))),
+        ne(table.uploadId, uploadId),
+        // Files of neighbouring days share a local day and hardly a moment: what lies outside this one's span is not read.
+        between(table.stopLineAt, new Date(firstMs - SAME_PASSAGE_MS), new Date(lastMs + SAME_PASSAGE_MS)),
+      ),
+    );
   const known = new Map<string, number[]>();
   for (const row of rows) {
     const key = `${row.vehicle}:${row.legId}`;
