@@ -12,7 +12,7 @@ export const users = pgTable(
     role: text("role", { enum: ROLES }).notNull(),
     /** Null until the invitation is taken up. */
     passwordHash: text("password_hash"),
-    /** Sessions issued before this moment are void: password changes and role changes raise it. */
+    /** Sessions issued before this moment are void: a new password and a disabled account raise it. */
     sessionsValidFrom: instant("sessions_valid_from").notNull().defaultNow(),
     disabledAt: instant("disabled_at"),
     createdAt: instant("created_at").notNull().defaultNow(),

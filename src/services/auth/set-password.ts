@@ -12,6 +12,8 @@ const STALE = "This link has been used or has run out. Ask for a new one.";
 /** Open to whoever holds the token. Ends every session of the account that was opened before. */
 export async function setPassword(ctx: Context, input: SetPassword): Promise<{ email: string }> {
   const form = SetPassword.parse(input);
+  // A password is costly to hash: not for whoever holds no token.
+  if ((await tokenPurpose(ctx, form.token)) === null) throw new AppError("invalid", STALE);
   const passwordHash = await hashPassword(form.password);
   return ctx.db.transaction(async (tx) => {
     // Claimed by the update itself: of two requests with one token, one finds it used.
