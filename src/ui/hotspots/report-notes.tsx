@@ -29,7 +29,7 @@ export function ReportNotes({ basis, locale }: { basis: ScreenResult["basis"]; l
         <h2 className="mb-2 text-lg">How far it can be trusted</h2>
         <ul className="max-w-prose list-disc pl-5 text-[0.95rem] text-ink-soft">
           <li>
-            It rests on {counted(basis.traversals, "passage", "passages", locale)} of vehicles on {counted(basis.days, "day", "days", locale)}, a small share of all traffic (method version {basis.methodVersion}).
+            It rests on {counted(basis.traversals, "passage", "passages", locale)} of vehicles on {counted(basis.days, "day", "days", locale)}, a sample of all traffic (method version {basis.methodVersion}).
           </li>
           {CAUTIONS.map((caution) => (
             <li key={caution}>{caution}</li>
