@@ -14,8 +14,12 @@ describe("csvText", () => {
     );
   });
 
-  it("disarms text that a spreadsheet would run, and no negative number", async () => {
-    expect(await written(["a", "b"], [["=1+1", -1], ["@x", 2], ["-2", 3], ["+4", 4]])).toBe("a,b\n'=1+1,-1\n'@x,2\n'-2,3\n'+4,4\n");
+  it("disarms text that a spreadsheet would run", async () => {
+    expect(await written(["a", "b"], [["=1+1", -1], ["@x", 2], ["-2+3", 3], ["+cmd", 4]])).toBe("a,b\n'=1+1,-1\n'@x,2\n'-2+3,3\n'+cmd,4\n");
+  });
+
+  it("leaves text that is a plain number as it is: identifiers must be found again", async () => {
+    expect(await written(["junction_id", "b"], [["-2", -1], ["+4.5", 2], ["-17", 3]])).toBe("junction_id,b\n-2,-1\n+4.5,2\n-17,3\n");
   });
 
   it("writes long lists in parts", async () => {

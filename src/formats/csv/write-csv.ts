@@ -17,9 +17,11 @@ export async function* csvText(header: readonly string[], rows: Iterable<readonl
   if (waiting.length > 0) yield stringify(waiting);
 }
 
-/** A leading = + - @ or control character makes spreadsheets run the cell; an apostrophe before it stops them. */
+const PLAIN_NUMBER = /^[+-]?\d+(\.\d+)?$/;
+
+/** A leading = + - @ or control character makes spreadsheets run the cell; an apostrophe before it stops them. A number is none. */
 function cellText(cell: Cell): string {
   if (cell === null) return "";
   if (typeof cell === "number") return Number.isFinite(cell) ? String(cell) : "";
-  return /^[=+\-@\t\r\n]/.test(cell) ? `'${cell}` : cell;
+  return /^[=+\-@\t\r\n]/.test(cell) && !PLAIN_NUMBER.test(cell) ? `'${cell}` : cell;
 }
