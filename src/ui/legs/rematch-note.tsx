@@ -1,8 +1,8 @@
 "use client";
 
-import { useQueryClient } from "@tanstack/react-query";
-import { useEffect, useRef, useState } from "react";
+import { useState } from "react";
 import type { Rematch } from "@/domain/leg-check";
+import { useFreshFigures } from "@/ui/use-fresh-figures";
 import { isUnderWay } from "./queries";
 
 const WORDS = {
@@ -22,17 +22,8 @@ export function RematchNote({ rematch }: { rematch: Rematch }) {
   useFreshFigures(isUnderWay(rematch));
   const words = rematch === null ? (isDone ? "The pings around the junction are matched to the changed legs: all figures are up to date." : "") : WORDS[rematch];
   return (
-    <p role="status" className={words ? `border-b border-rule px-4 py-2.5 sm:px-6 ${rematch === "failed" ? "font-medium text-tail" : ""}` : "sr-only"}>
+    <p role="status" className={words ? `border-b border-rule bg-sheet px-4 py-2.5 sm:px-6 lg:sticky lg:top-0 lg:z-10 ${rematch === "failed" ? "font-medium text-tail" : ""}` : "sr-only"}>
       {words}
     </p>
   );
-}
-
-function useFreshFigures(isMatching: boolean): void {
-  const client = useQueryClient();
-  const wasMatching = useRef(isMatching);
-  useEffect(() => {
-    if (wasMatching.current && !isMatching) void client.invalidateQueries();
-    wasMatching.current = isMatching;
-  }, [isMatching, client]);
 }

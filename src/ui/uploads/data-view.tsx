@@ -1,11 +1,12 @@
 "use client";
 
-import { useQuery, useQueryClient } from "@tanstack/react-query";
+import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
-import { useEffect, useRef, type ReactNode } from "react";
+import type { ReactNode } from "react";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";
 import { useCan, useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
+import { useFreshFigures } from "@/ui/use-fresh-figures";
 import { CoveragePanel, coverageSentence } from "./coverage-panel";
 import { coverageQuery, isUnderWay, uploadsQuery } from "./queries";
 import { SendForm } from "./send-form";
@@ -56,7 +57,7 @@ export function DataView() {
 
 function Uploads() {
   const uploads = useQuery(uploadsQuery());
-  useFreshCoverage(uploads.data?.some(isUnderWay) ?? false);
+  useFreshFigures(uploads.data?.some(isUnderWay) ?? false);
   if (uploads.isPending) return <Loading title="Reading the list of files" />;
   if (uploads.isError) return <Failed title="The list of files could not be read." message={uploads.error.message} onRetry={() => void uploads.refetch()} />;
   if (uploads.data.length === 0) {
@@ -67,16 +68,6 @@ function Uploads() {
     );
   }
   return <UploadsTable uploads={uploads.data} />;
-}
-
-/** Coverage is asked for again once the last file under way has come in. */
-function useFreshCoverage(isReading: boolean): void {
-  const client = useQueryClient();
-  const wasReading = useRef(false);
-  useEffect(() => {
-    if (wasReading.current && !isReading) void client.invalidateQueries({ queryKey: coverageQuery().queryKey });
-    wasReading.current = isReading;
-  }, [isReading, client]);
 }
 
 function Part({ title, children }: { title: string; children: ReactNode }) {

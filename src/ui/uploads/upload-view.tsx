@@ -8,8 +8,9 @@ import { formatBytes, formatInstant } from "@/ui/format";
 import { Failed, Loading } from "@/ui/primitives/states";
 import { useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
+import { useFreshFigures } from "@/ui/use-fresh-figures";
 import { FailedUpload } from "./failed-upload";
-import { uploadQuery } from "./queries";
+import { isUnderWay, uploadQuery } from "./queries";
 import { ReadingUpload } from "./reading-upload";
 import { ReceivedUpload } from "./received-upload";
 import { UploadReport } from "./upload-report";
@@ -18,6 +19,7 @@ import { KIND_NAMES } from "./upload-words";
 /** One file, from the moment it was sent to its report. */
 export function UploadView({ uploadId, sameAs }: { uploadId: string; sameAs: string | null }) {
   const { data: upload, error, refetch } = useQuery(uploadQuery(uploadId));
+  useFreshFigures(upload !== undefined && isUnderWay(upload));
   if (error) return <Failed title="This file could not be shown." message={error.message} onRetry={() => void refetch()} />;
   if (!upload) return <Loading title="Reading the report" />;
   return (
