@@ -56,7 +56,7 @@ export function CheckDesk({ view, actions }: { view: LegCheckView; actions: LegA
 
   return (
     <div className="grid flex-1 items-start lg:grid-cols-[minmax(0,1fr)_minmax(22rem,27rem)]">
-      <section aria-label="Plan" className="flex min-w-0 flex-col gap-3 px-4 py-4 sm:px-6 lg:sticky lg:top-0">
+      <section aria-label="Plan" className="flex min-w-0 flex-col gap-3 px-4 py-4 sm:px-6 lg:sticky lg:top-11">
         <PlanTools zoom={zoom} onZoom={setZoom} style={style} onStyle={setStyle} pings={cloud.data ? cloud.data.eastM.length : null} />
         {cloud.isError ? <CloudFailed message={cloud.error.message} onRetry={() => void cloud.refetch()} /> : null}
         <CheckPlan
@@ -64,7 +64,7 @@ export function CheckDesk({ view, actions }: { view: LegCheckView; actions: LegA
           cloud={cloud.data}
           style={style}
           radiusM={RADII_M[zoom]}
-          selected={leg?.id ?? null}
+          selected={drawn.drawing ? null : (leg?.id ?? null)}
           preview={preview}
           shiftM={shiftM}
           mayEdit={mayEdit}

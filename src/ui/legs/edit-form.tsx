@@ -48,10 +48,11 @@ export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Pr
     if (isBusy || isTooShort || Object.keys(found).length > 0) return;
     if (!changes) return setNote("Nothing is changed yet.");
     setNote("");
-    if (!(await run(changes))) return;
+    const done = await run(changes);
+    if (!done) return;
     await onSaved();
     setTyped({});
-    setNote("The leg is saved.");
+    setNote(done.data.rematching ? "The leg is saved; the pings around the junction are being matched anew." : "The leg is saved.");
   }
 
   const number = (label: string, field: "speedLimit" | "storage" | "lanes", hint: string, error: string[] | undefined) => (
@@ -84,7 +85,7 @@ export function EditForm({ leg, edit, shiftM, isTooShort, onShift, onSaved }: Pr
           <span className="block text-sm text-ink-soft">New files leave the leg as it is. A leg that you change is locked with the change.</span>
         </span>
       </label>
-      <FormProblem problem={problem} />
+      <FormProblem problem={problem?.fieldErrors ? { ...problem, message: "Check the marked fields." } : problem} />
       <div className="flex flex-wrap items-center gap-4">
         {/* Not disabled while it works: it would lose the focus. */}
         <Button type="submit" tone="strong" aria-disabled={isBusy || isTooShort}>
