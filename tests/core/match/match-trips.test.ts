@@ -1,0 +1,78 @@
+import { describe, expect, it } from "vitest";
+import { latAt, lonAt, planeAt } from "@/core/geometry/plane";
+import { draftExit, draftLeg } from "@/core/legs/draft";
+import { createFrame } from "@/core/legs/frame";
+import { listMovements } from "@/core/legs/movements";
+import { createGraph } from "@/core/match/graph";
+import { matchTrips, type Chain } from "@/core/match/match-trips";
+import { cleanPings } from "@/core/pings/clean";
+import type { Network } from "@/core/types";
+import { createH3Index } from "@/geo/h3-index";
+import { columnsOf } from "../two-crossings";
+
+const plane = planeAt(45.6, -38.3);
+const at = (x: number, y: number): { lat: number; lon: number } => ({ lat: latAt(plane, y), lon: lonAt(plane, x) });
+const line = (...xy: number[]): Float64Array => Float64Array.from(xy);
+
+/** Three crossings 200 m apart in a row from west to east, one eastbound street through them, a frontage road 45 m south of it. */
+function street(): Network {
+  const junctions = [{ id: "A", ...at(0, 0) }, { id: "B", ...at(200, 0) }, { id: "C", ...at(400, 0) }];
+  const frame = createFrame(junctions, 1000);
+  const legs = junctions.map((_, j) => draftLeg(frame, j, line(-14, 0, -186, 0), 50));
+  const exits = junctions.map((_, j) => draftExit(frame, j, line(14, 0, 186, 0), 50));
+  legs[1] = { ...legs[1], upstreamExit: 0 };
+  legs[2] = { ...legs[2], upstreamExit: 1 };
+  const base = { junctions, legs, exits, driveSide: "right" as const };
+  return { ...base, movements: listMovements(base) };
+}
+
+/** Chains of one vehicle's pings: seconds, east and north metres; speed and heading as given or eastbound at 12 m/s. */
+function chainsOf(pings: [number, number, number, number?, number?][]): { chains: Chain[]; legs: string[] } {
+  const network = street();
+  const graph = createGraph(network, createH3Index());
+  const rows = pings.map(([s, x, y, speed = 12, heading = 90]) => [0, s * 1000, at(x, y).lat, at(x, y).lon, speed, heading]);
+  const chains: Chain[] = [];
+  matchTrips(cleanPings(columnsOf(rows)).trips, graph, (chain) => chains.push({ ...chain }));
+  const legs = chains.flatMap((chain) => chain.links.map((l) => (graph.leg[l] >= 0 ? network.junctions[network.legs[graph.leg[l]].junction].id : "open")));
+  return { chains, legs };
+}
+
+describe("matched paths", () => {
+  it("follows a vehicle over the legs that it drives", () => {
+    const { legs } = chainsOf([[0, -100, 2], [10, 20, -3], [20, 140, 4], [30, 260, 0]]);
+    expect(legs).toEqual(["A", "B", "C"]);
+  });
+
+  it("puts the links in that lie between two pings, several junctions apart", () => {
+    const { chains, legs } = chainsOf([[0, -100, 0], [45, 440, 0]]);
+    expect(legs).toEqual(["A", "B", "C", "open"]);
+    expect(chains[0].step).toEqual([0, 3]);
+  });
+
+  it("leaves a vehicle on the frontage road alone", () => {
+    expect(chainsOf([[0, -100, -45], [10, 20, -45], [20, 140, -45], [30, 260, -45]]).chains).toEqual([]);
+  });
+
+  it("leaves a vehicle alone that drives the other way", () => {
+    const westbound: [number, number, number, number, number][] = [[0, 260, 0, 12, 270], [10, 140, 0, 12, 270], [20, 20, 0, 12, 270]];
+    expect(chainsOf(westbound).chains).toEqual([]);
+  });
+
+  it("goes on over one stray ping", () => {
+    const { chains, legs } = chainsOf([[0, -100, 0], [10, 20, 0], [15, 80, 60], [20, 140, 0], [30, 260, 0]]);
+    expect(legs).toEqual(["A", "B", "C"]);
+    expect(chains[0].pings).toEqual([0, 1, 3, 4]);
+  });
+
+  it("breaks where a vehicle turns off the street for good", () => {
+    const { chains } = chainsOf([[0, -100, 0], [10, -60, 0, 3], [20, -60, -60, 12, 180], [30, -60, -180, 12, 180], [40, -60, -300, 12, 180]]);
+    expect(chains).toHaveLength(1);
+    expect(chains[0].links).toHaveLength(1);
+  });
+
+  it("holds a waiting vehicle in its place through noise of 25 m", () => {
+    const wait = Array.from({ length: 14 }, (_, i): [number, number, number, number, number] => [10 + 5 * i, 170 + (i % 3), i % 5 === 4 ? 26 : (i % 2) * 6, 0, 0]);
+    const { legs } = chainsOf([[0, 60, 0], [5, 120, 0], ...wait, [85, 230, 0], [95, 350, 0]]);
+    expect(legs).toEqual(["B", "C"]);
+  });
+});
