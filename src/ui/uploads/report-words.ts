@@ -54,7 +54,7 @@ function pingWords(report: IngestReport, locale: string, timeZone: string): stri
     report.duplicatePings ? counted(report.duplicatePings, "duplicate ping", "duplicate pings", locale) : null,
     report.jumps ? counted(report.jumps, "impossible jump", "impossible jumps", locale) : null,
   ].filter((part) => part !== null);
-  if (report.penetration !== undefined) words.push(`By the queues, the file holds about ${formatShare(report.penetration, locale)} of the traffic.`);
+  if (report.penetration !== undefined) words.push(`By the queues, the file holds about ${formatShare(report.penetration, locale)} of the traffic at most.`);
   if (dropped.length > 0) words.push(`${dropped.join(" and ")} left out.`);
   return words;
 }

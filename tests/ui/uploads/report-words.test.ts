@@ -34,7 +34,7 @@ describe("a report in words", () => {
       "30 traversals of 4 of the city's 248 junctions, on 16 legs, were added.",
       "2 traversals were known from an earlier file and left out.",
       "1 traversal begins or ends inside a junction's window: counted, not scored.",
-      "By the queues, the file holds about 5 % of the traffic.",
+      "By the queues, the file holds about 5 % of the traffic at most.",
       "3 duplicate pings left out.",
     ]);
   });
