@@ -2,8 +2,7 @@ import { resolve } from "node:path";
 import { z } from "zod";
 
 /** How the installation runs: `demo` shows the invented city with known accounts, `production` accepts no defaults. */
-export const MODES = ["production", "demo", "development", "test"] as const;
-export type Mode = (typeof MODES)[number];
+const MODES = ["production", "demo", "development", "test"] as const;
 
 /** Known to everyone who reads this file, hence refused in production. */
 const DEFAULT_SECRET = "tailmark-development-secret-known-to-all";

@@ -35,11 +35,6 @@ export class VehicleNames {
     return decoder.decode(this.text.subarray(this.offsets[vehicle], this.offsets[vehicle + 1]));
   }
 
-  /** 32-bit FNV-1a of the name: the same in every file, so that distinct vehicles can be counted across files. */
-  hashOf(vehicle: number): number {
-    return this.hashes[vehicle];
-  }
-
   private isName(vehicle: number, bytes: Uint8Array, start: number, end: number): boolean {
     const from = this.offsets[vehicle];
     if (this.offsets[vehicle + 1] - from !== end - start) return false;

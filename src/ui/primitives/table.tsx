@@ -21,16 +21,6 @@ export function Td({ numeric, className, ...rest }: TdHTMLAttributes<HTMLTableCe
   return <td className={classNames("border-b border-rule px-2 py-2 align-top", numeric ? "text-right tabular-nums" : "text-left", className)} {...rest} />;
 }
 
-/** Head of a column that sorts. `dir` is null where another column sorts. */
-export function SortTh({ className, ...button }: SortButtonProps & { className?: string }) {
-  const aria = button.dir === null ? "none" : button.dir === "asc" ? "ascending" : "descending";
-  return (
-    <Th numeric={button.numeric} aria-sort={aria} className={className}>
-      <SortButton {...button} />
-    </Th>
-  );
-}
-
 export interface SortButtonProps {
   label: ReactNode;
   dir: "asc" | "desc" | null;

@@ -96,8 +96,6 @@ export function screenColumns({ units, locale, maxDelayS, lastRank, sort }: Colu
   ]);
 }
 
-export type ScreenColumns = ReturnType<typeof screenColumns>;
-
 function lastFigure(row: RankedJunction, sort: SortKey, locale: string): string {
   if (sort === "p95") return formatNumber(row.p95S, locale);
   if (sort === "hours") return formatNumber(row.hoursSeen, locale, 1);

@@ -40,5 +40,3 @@ export function useMapping(detection: Detection) {
     },
   };
 }
-
-export type MappingControls = ReturnType<typeof useMapping>;
