@@ -19,7 +19,7 @@ beforeEach(async () => {
 });
 
 const queued = async () =>
-  (await admin.db.execute<{ data: { userId: string; purpose: string } }>(sql`select data from pgboss.job where name = 'send-password-mail'`)).rows.map((row) => row.data);
+  (await admin.db.execute<{ data: { userId: string; purpose: string } }>(sql`select data from pgboss.job where name = 'send-password-mail' order by created_on, id`)).rows.map((row) => row.data);
 
 const trail = async () => (await listAudit(admin)).map(({ action, subject }) => [action, subject]);
 
