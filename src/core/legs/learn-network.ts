@@ -5,6 +5,7 @@ import { noteDoubts, settleIds, settleNames } from "@/core/legs/finish";
 import { applyGivenLegs } from "@/core/legs/given-legs";
 import { joinArms } from "@/core/legs/join";
 import { LEARNING } from "@/core/legs/learning";
+import { mirrorArms } from "@/core/legs/mirror";
 import { listMovements } from "@/core/legs/movements";
 import { PASSAGES } from "@/core/legs/passage-seeds";
 import { createPingGrid } from "@/core/legs/ping-grid";
@@ -51,7 +52,8 @@ function proposeLegs(
   const grid = createPingGrid(trips, frame, LEARNING.traceMostM);
   const reach = isSparse(trips) ? claimRings(frame, index, PASSAGES.reachM) : null;
   const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse(trips)));
-  const derived = dropTwins(joinArms(arms, frame));
+  const joined = dropTwins(joinArms(arms, frame));
+  const derived = isSparse(trips) ? mirrorArms(joined, frame, options.driveSide) : joined;
   const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;
   return prior ? carryOver(drawn, prior, frame) : { ...drawn, carried: new Set() };
 }

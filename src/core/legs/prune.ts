@@ -1,3 +1,4 @@
+import { angleBetweenDeg } from "@/core/geometry/angles";
 import { placeBoxEdges } from "@/core/legs/box-edges";
 import { estimateFreeSpeeds } from "@/core/legs/free-speed";
 import type { Joined } from "@/core/legs/join";
@@ -12,6 +13,9 @@ const LEAST_SHARE = 0.01;
 /** At a junction with legs from earlier data a new one must be plain. */
 const NEW_LEAST_TRIPS = 5;
 const NEW_LEAST_SHARE = 0.06;
+/** Trips that leave along a street which show that it has two directions. */
+const TWO_WAY_TRIPS = 3;
+const SAME_ARM_DEG = 30;
 /** Between junctions this near matched paths may run over streets that do not exist: pings must have been seen on them. */
 const SHORT_LINK_M = 45;
 const SHORT_LINK_SEEN = 2;
@@ -64,9 +68,18 @@ function legsThatStay(
   draft: Network, usage: Usage, carried: Set<string>, isUsed: (trips: number, junction: number) => boolean,
 ): number[] {
   const shortcuts = findShortcuts(draft, usage);
+  const isOneOfTwo = (leg: Leg, i: number): boolean => usage.leg[i] > 0 && usage.seenOn[i] > 0 && isTwoWay(leg, draft, usage);
   const isReal = (leg: Leg, i: number): boolean =>
-    isUsed(usage.leg[i], leg.junction) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
+    (isUsed(usage.leg[i], leg.junction) || (carried.size === 0 && isOneOfTwo(leg, i))) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
   return draft.legs.flatMap((leg, i) => (leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i) ? [i] : []));
+}
+
+/** Whether traffic leaves along a leg's street: then one trip is enough to believe that it also comes. */
+function isTwoWay(leg: Leg, draft: Network, usage: Usage): boolean {
+  return draft.exits.some(
+    (exit, e) =>
+      exit.junction === leg.junction && usage.exit[e] >= TWO_WAY_TRIPS && angleBetweenDeg(leg.bearingDeg + 180, exit.bearingDeg) < SAME_ARM_DEG,
+  );
 }
 
 function exitsThatStay(
