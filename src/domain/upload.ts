@@ -89,7 +89,7 @@ export const REJECT_SENTENCES: Record<RejectReason, string> = {
   heading: "The heading cannot be read.",
   duplicate: "It stands in the file more than once.",
   name: "The identifier or the name is empty.",
-  line: "The feature is no line of at least two points, or a coordinate is out of range.",
+  line: "The feature is no line of at least 30 m, or a coordinate is out of range.",
   far: "The line does not end at its junction. Lines are drawn towards the stop line.",
   junction: "No junction with this identifier is loaded.",
 };

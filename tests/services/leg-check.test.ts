@@ -1,7 +1,7 @@
 import { Readable } from "node:stream";
 import { count, eq, sql } from "drizzle-orm";
 import { beforeAll, describe, expect, it } from "vitest";
-import { auditEvents, junctions, legs, movements, traversals } from "@/db/schema";
+import { auditEvents, exits, junctions, legs, movements, traversals } from "@/db/schema";
 import { ScreenQuery } from "@/domain/screen";
 import type { UploadKind } from "@/domain/upload";
 import { reprocessLegs as reprocessJob } from "@/jobs/definitions/reprocess-legs";
@@ -10,7 +10,7 @@ import { reprocessLegs } from "@/services/ingest/reprocess-legs";
 import { editLeg } from "@/services/legs/edit-leg";
 import { getLegCheck } from "@/services/legs/get-leg-check";
 import { listLegsToCheck } from "@/services/legs/list-legs-to-check";
-import { addLeg, mergeLegs } from "@/services/legs/redraw-legs";
+import { addLeg, mergeLegs, splitLeg } from "@/services/legs/redraw-legs";
 import { getJunction } from "@/services/junctions/get-junction";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
@@ -95,6 +95,19 @@ describe("leg check", () => {
     await expect(editLeg(engineer, { legId: leg.id, stopLineShiftM: 61 })).rejects.toThrow();
   });
 
+  it("gives an emptied storage back to the street between the junctions, where there is one behind", async () => {
+    const [, leg] = await legRows();
+    await editLeg(engineer, { legId: leg.id, storageM: null });
+    const storageOf = async () => (await job.db.select().from(legs).where(eq(legs.id, leg.id)))[0].storageM;
+    expect(await storageOf()).toBeNull();
+    const [exit] = await job.db.select({ id: exits.id }).from(exits);
+    await job.db.update(legs).set({ upstreamExitId: exit.id, line: [0, 10, 0, 100, 30, 140] }).where(eq(legs.id, leg.id));
+    await editLeg(engineer, { legId: leg.id, storageM: null });
+    // 90 m, then the long side of a triangle of 30 and 40 m.
+    expect(await storageOf()).toBeCloseTo(140, 3);
+    await job.db.update(legs).set({ upstreamExitId: null, line: leg.line, storageM: leg.storageM }).where(eq(legs.id, leg.id));
+  });
+
   it("merges two legs: the dropped one stays away, its traversals go", async () => {
     const rows = await legRows();
     const added = await addLeg(engineer, { junctionId, name: "Side lane", line: [[14, 14], [90, 90]] });
@@ -107,6 +120,27 @@ describe("leg check", () => {
     expect(await job.db.select({ n: count() }).from(movements).where(eq(movements.legId, rows[3].id))).toEqual([{ n: 0 }]);
     await upload("pings", "wednesday.csv", crossingPings({ startMs: Date.parse("2026-03-05T08:00:00Z") }));
     expect(await legRows()).toHaveLength(3);
+  });
+
+  it("refuses drawn lines that are no leg: too short, far off, or drawn towards the junction", async () => {
+    const add = (line: [number, number][]) => addLeg(engineer, { junctionId, name: "Wrong", line });
+    await expect(add([[0, 15], [0, 40]])).rejects.toThrow("The line is 25 m long: a leg needs at least 30 m");
+    await expect(add([[0, 200], [0, 300]])).rejects.toThrow("begins 200 m from the junction");
+    await expect(add([[0, 100], [0, 15]])).rejects.toThrow("draw it from the stop line upstream");
+    expect((await legRows()).some((leg) => leg.name === "Wrong")).toBe(false);
+  });
+
+  it("splits a leg: the first line keeps its identity, both stay", async () => {
+    const [first] = await legRows();
+    const { legId } = await splitLeg(engineer, { legId: first.id, first: [[2, -16], [2, -200]], second: [[12, -16], [80, -180]] });
+    const rows = await legRows();
+    const [kept, added] = [rows.find((leg) => leg.id === first.id), rows.find((leg) => leg.id === legId)];
+    expect(kept).toMatchObject({ name: first.name, origin: "set", locked: true });
+    // From (80, -180) to (12, -16): 68 m west and 164 m north, 22.5 degrees west of north.
+    expect(added?.bearingDeg).toBeCloseTo(337.5, 0);
+    await reprocessLegs(job, { junctionIds: [junctionId] });
+    expect((await legRows()).map((leg) => leg.id)).toContain(legId);
+    await mergeLegs(engineer, { keepId: first.id, dropId: legId });
   });
 
   it("writes each change into the audit trail", async () => {

@@ -1,4 +1,6 @@
 import { eastM, northM, planeAt } from "@/core/geometry/plane";
+import { lengthOf } from "@/core/geometry/polyline";
+import { SHORTEST_LEG_M } from "@/core/legs/reshape";
 import { neededFields, type FileMapping, type LegField, type RejectedRow, type RejectReason } from "@/domain/upload";
 import { MAX_REJECT_TEXT } from "../csv/field";
 import { isPosition, propertyOf, requireFields } from "../fields";
@@ -82,7 +84,9 @@ class LegList {
     if (lat === null || lon === null || !lat.every((value, i) => isPosition(value, lon[i]))) return reject("line");
     const junction = this.junctions.get(junctionId);
     if (!junction) return reject("junction");
-    if (!endsAt(junction, lat, lon)) return reject("far");
+    const drawn = inPlane(junction, lat, lon);
+    if (lengthOf(drawn) < SHORTEST_LEG_M) return reject("line");
+    if (!endsAtOrigin(drawn)) return reject("far");
     const key = `${junctionId} ${lat.join()} ${lon.join()}`;
     if (this.seen.has(key)) return reject("duplicate");
     this.seen.add(key);
@@ -117,10 +121,13 @@ class LegList {
   }
 }
 
-/** The stop line is the end at the junction. */
-function endsAt(junction: { lat: number; lon: number }, lat: Float64Array, lon: Float64Array): boolean {
+function inPlane(junction: { lat: number; lon: number }, lat: Float64Array, lon: Float64Array): Float64Array {
   const plane = planeAt(junction.lat, junction.lon);
-  const distance = (i: number) => Math.hypot(eastM(plane, lon[i]), northM(plane, lat[i]));
-  const end = distance(lat.length - 1);
-  return end <= MAX_END_M && end < distance(0);
+  return Float64Array.from([...lat].flatMap((value, i) => [eastM(plane, lon[i]), northM(plane, value)]));
+}
+
+/** The stop line is the end at the junction. */
+function endsAtOrigin(line: Float64Array): boolean {
+  const end = Math.hypot(line[line.length - 2], line[line.length - 1]);
+  return end <= MAX_END_M && end < Math.hypot(line[0], line[1]);
 }

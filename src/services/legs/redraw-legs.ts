@@ -1,6 +1,8 @@
 import { eq } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
+import { lengthOf } from "@/core/geometry/polyline";
 import { legBearingDeg, legName } from "@/core/legs/draft";
+import { SHORTEST_LEG_M } from "@/core/legs/reshape";
 import { junctions, legs } from "@/db/schema";
 import type { Db } from "@/db/client";
 import { AppError } from "@/domain/errors";
@@ -59,15 +61,19 @@ type LegBase = Pick<StoredLeg, "junctionId" | "storageM" | "freeSpeedMs" | "upst
 
 async function insertLeg(db: Db, base: LegBase, line: number[], name: string | null): Promise<number> {
   const shape = shapeOf(line);
-  const [junction] = await db.select({ code: junctions.code }).from(junctions).where(eq(junctions.id, base.junctionId));
-  const taken = new Set((await db.select({ code: legs.code }).from(legs).where(eq(legs.junctionId, base.junctionId))).map((row) => row.code));
+  const { junctionId, storageM, freeSpeedMs, upstreamExitId } = base;
+  const [junction] = await db.select({ code: junctions.code }).from(junctions).where(eq(junctions.id, junctionId));
+  const taken = new Set((await db.select({ code: legs.code }).from(legs).where(eq(legs.junctionId, junctionId))).map((row) => row.code));
   const stem = `${junction.code}:in:${String(Math.round(shape.bearingDeg) % 360).padStart(3, "0")}`;
   let code = stem;
   for (let n = 2; taken.has(code); n++) code = `${stem}-${n}`;
   const [row] = await db
     .insert(legs)
     .values({
-      ...base,
+      junctionId,
+      storageM,
+      freeSpeedMs,
+      upstreamExitId,
       ...shape,
       code,
       name: name ?? `${legName(shape.bearingDeg)} (${Math.round(shape.bearingDeg)}°)`,
@@ -82,6 +88,17 @@ async function insertLeg(db: Db, base: LegBase, line: number[], name: string | n
   return row.id;
 }
 
+/** Farthest that a stop line is drawn from its junction's point, m. */
+const FARTHEST_STOP_LINE_M = 150;
+
 function shapeOf(line: number[]): { line: number[]; bearingDeg: number } {
-  return { line, bearingDeg: legBearingDeg(Float64Array.from(line)) };
+  const drawn = Float64Array.from(line);
+  const lengthM = lengthOf(drawn);
+  if (lengthM < SHORTEST_LEG_M) throw new AppError("invalid", `The line is ${Math.round(lengthM)} m long: a leg needs at least ${SHORTEST_LEG_M} m.`);
+  const beginM = Math.hypot(line[0], line[1]);
+  if (beginM > FARTHEST_STOP_LINE_M) throw new AppError("invalid", `The line begins ${Math.round(beginM)} m from the junction: its first point is the stop line.`);
+  if (beginM > Math.hypot(line[line.length - 2], line[line.length - 1])) {
+    throw new AppError("invalid", "The line ends nearer to the junction than it begins: draw it from the stop line upstream.");
+  }
+  return { line, bearingDeg: legBearingDeg(drawn) };
 }

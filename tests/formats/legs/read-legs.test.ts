@@ -56,6 +56,8 @@ describe("readLegs", () => {
       feature({ junction_id: "J1" }, outward),
       feature({ junction_id: "J1" }, away),
       feature({ junction_id: "J1" }, FROM_THE_WEST),
+      // 23 m long.
+      feature({ junction_id: "J1" }, [[-38.30056, 45.6], [-38.30026, 45.6]]),
     );
     const { legs, rowsRead, accepted, rejectedRows } = await read(bytes);
     expect(legs).toHaveLength(1);
@@ -68,6 +70,7 @@ describe("readLegs", () => {
       [8, "far"],
       [9, "far"],
       [10, "duplicate"],
+      [11, "line"],
     ]);
     expect(accepted + rejectedRows.length).toBe(rowsRead);
   });
