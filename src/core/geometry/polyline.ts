@@ -3,7 +3,7 @@ import { bearingDeg } from "@/core/geometry/angles";
 /** Polylines are x then y for each vertex, metres. */
 export type Polyline = Float64Array;
 
-export function lengthOf(line: Polyline): number {
+export function lengthOf(line: ArrayLike<number>): number {
   let length = 0;
   for (let i = 2; i < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
   return length;

@@ -1,5 +1,6 @@
 import { asc, inArray, sql, type SQL } from "drizzle-orm";
 import type { AnyPgColumn } from "drizzle-orm/pg-core";
+import { lengthOf } from "@/core/geometry/polyline";
 import { METHOD_VERSION } from "@/core/method-version";
 import type { DriveSide, JunctionPoint, Network } from "@/core/types";
 import type { Db } from "@/db/client";
@@ -84,12 +85,6 @@ export async function readNetwork(db: Db, points: KeyedPoint[], driveSide: Drive
       cordonDownM: row.cordonDownM,
     })),
   };
-}
-
-function lengthOf(line: readonly number[]): number {
-  let length = 0;
-  for (let i = 2; i < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
-  return length;
 }
 
 /** Writes what the pings taught; rows keep their keys by the identity that the core carries on. */

@@ -1,3 +1,4 @@
+import { lengthOf } from "@/core/geometry/polyline";
 import type { Evidence } from "@/core/types";
 import type { LegScore, MovementScore } from "@/core/scores/types";
 import type { ExitView, LegView, MovementView } from "@/domain/junction";
@@ -9,12 +10,6 @@ export function pairsOf(line: readonly number[]): [number, number][] {
   const pairs: [number, number][] = [];
   for (let i = 0; i + 1 < line.length; i += 2) pairs.push([line[i], line[i + 1]]);
   return pairs;
-}
-
-export function lengthOf(line: readonly number[]): number {
-  let length = 0;
-  for (let i = 2; i + 1 < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
-  return length;
 }
 
 const NO_EVIDENCE: Evidence = "none";

@@ -1,4 +1,5 @@
 import { eq } from "drizzle-orm";
+import { lengthOf } from "@/core/geometry/polyline";
 import { moveStopLine, SHORTEST_LEG_M } from "@/core/legs/reshape";
 import { legs } from "@/db/schema";
 import { AppError } from "@/domain/errors";
@@ -30,7 +31,7 @@ function changesOf(leg: StoredLeg, edit: EditLeg): Partial<StoredLeg> {
   if (edit.locked !== undefined) changes.locked = edit.locked;
   if (edit.lanes !== undefined) changes.lanes = edit.lanes;
   if (edit.speedLimitKmh !== undefined) changes.speedLimitMs = edit.speedLimitKmh === null ? null : edit.speedLimitKmh / 3.6;
-  if (edit.storageM !== undefined) changes.storageM = edit.storageM;
+  if (edit.storageM !== undefined) changes.storageM = edit.storageM ?? storageOfStreet(leg);
   if (edit.stopLineShiftM) {
     const line = moveStopLine(Float64Array.from(leg.line), edit.stopLineShiftM);
     if (line === null) throw new AppError("invalid", `The leg is too short to move its stop line by ${edit.stopLineShiftM} m: ${SHORTEST_LEG_M} m must remain.`);
@@ -43,4 +44,9 @@ function changesOf(leg: StoredLeg, edit: EditLeg): Partial<StoredLeg> {
   if (edit.locked === undefined && Object.keys(changes).length > 0) changes.locked = true;
   if (changes.locked) changes.doubts = [];
   return changes;
+}
+
+/** As for derived legs: the street between the two junctions, where there is one behind. */
+function storageOfStreet(leg: StoredLeg): number | null {
+  return leg.upstreamExitId === null ? null : lengthOf(leg.line);
 }

@@ -1,12 +1,13 @@
 import { eq } from "drizzle-orm";
 import { z } from "zod";
+import { lengthOf } from "@/core/geometry/polyline";
 import { junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import type { LegCheckView, LegOfCheck } from "@/domain/leg-check";
 import { reprocessLegs } from "@/jobs/definitions/reprocess-legs";
 import { requirePermission, type Context } from "../context";
 import { readExits, readLegs, readMovements, type LegRow } from "../junctions/junction-rows";
-import { exitView, lengthOf, pairsOf } from "../junctions/leg-view";
+import { exitView, pairsOf } from "../junctions/leg-view";
 
 const JunctionId = z.coerce.number().int().positive();
 
