@@ -30,61 +30,82 @@ interface Look {
 const RAD = Math.PI / 180;
 const MOST_PINGS = 4000;
 
+/** A trace on its way: present place and outward direction, the line so far and how much of it pings support. */
+interface Trail {
+  x: number;
+  y: number;
+  ux: number;
+  uy: number;
+  line: number[];
+  supported: number;
+  gapM: number;
+  bends: number;
+}
+
+type See = (x: number, y: number, ux: number, uy: number, along: number, side: number) => Look;
+
 /** Follows a seed's pings outward, bending with them, until they end, another junction is met or the limit is reached. */
 export function traceArm(seed: Seed, frame: Frame, grid: PingGrid, isSparse: boolean): Arm {
   const plane = frame.planes[seed.junction];
   const sign = seed.inbound ? -1 : 1;
   const scratch = new Uint32Array(MOST_PINGS);
-  const see = (x: number, y: number, ux: number, uy: number, along: number, side: number): Look =>
-    look(grid, plane, scratch, sign, x, y, ux, uy, along, side);
-
-  let ux = sign * Math.sin(seed.bearingDeg * RAD);
-  let uy = sign * Math.cos(seed.bearingDeg * RAD);
-  const start = see(35 * ux, 35 * uy, ux, uy, 25, 18);
-  const offset = start.count > 0 ? start.side : 0;
-  let x = LEARNING.boxM * ux + offset * uy;
-  let y = LEARNING.boxM * uy - offset * ux;
-  if (start.ux !== 0 || start.uy !== 0) [ux, uy] = [start.ux, start.uy];
-  const line = [x, y];
-  let supported = 1;
-  let gap = 0;
+  const see: See = (x, y, ux, uy, along, side) => look(grid, plane, scratch, sign, x, y, ux, uy, along, side);
+  const trail = startTrail(sign * Math.sin(seed.bearingDeg * RAD), sign * Math.cos(seed.bearingDeg * RAD), see);
+  const mostGapM = isSparse ? LEARNING.sparseGapM : LEARNING.gapM;
   let meets = -1;
-  let bends = 0;
-  const gapM = isSparse ? LEARNING.sparseGapM : LEARNING.gapM;
-  for (let far = LEARNING.stepM; far <= LEARNING.traceMostM; far += LEARNING.stepM) {
-    if (gap > gapM) {
-      const [endX, endY, endUx, endUy] = lastDirection(line.slice(0, 2 * supported));
-      const mayBend = supported > 2 && bends < LEARNING.mostBends;
-      const bend = mayBend ? findBend(grid, plane, scratch, sign, endX, endY, endUx, endUy) : null;
-      if (!bend) break;
-      bends += 1;
-      [x, y, ux, uy] = [bend.x, bend.y, bend.ux, bend.uy];
-      line.length = 2 * supported;
-      line.push(x, y);
-      supported = line.length / 2;
-      far -= gap;
-      gap = 0;
+  for (let far = 0; far < LEARNING.traceMostM; far += LEARNING.stepM) {
+    if (trail.gapM > mostGapM) {
+      far -= trail.gapM;
+      if (!goRoundBend(trail, grid, plane, scratch, sign)) break;
     }
-    meets = junctionAhead(frame, seed.junction, x, y, ux, uy);
+    meets = junctionAhead(frame, seed.junction, trail.x, trail.y, trail.ux, trail.uy);
     if (meets >= 0) break;
-    x += LEARNING.stepM * ux;
-    y += LEARNING.stepM * uy;
-    const seen = see(x, y, ux, uy, LEARNING.stepM + Math.min(5, gap / 5), LEARNING.sideM + Math.min(6, gap / 10));
-    if (seen.count === 0) {
-      gap += LEARNING.stepM;
-      line.push(x, y);
-      continue;
-    }
-    gap = 0;
-    const gain = seen.count / (seen.count + 2);
-    x += gain * seen.side * uy;
-    y -= gain * seen.side * ux;
-    line.push(x, y);
-    supported = line.length / 2;
-    [ux, uy] = turnTowards(line, ux, uy, seen, gain);
+    stepOn(trail, see);
   }
-  const line2 = meets >= 0 ? cutAtBox(line, frame, seed.junction, meets) : line.slice(0, 2 * Math.max(supported, LEARNING.leastPoints));
-  return { junction: seed.junction, inbound: seed.inbound, support: seed.support, line: line2, meets };
+  const { line, supported } = trail;
+  const kept = meets >= 0 ? cutAtBox(line, frame, seed.junction, meets) : line.slice(0, 2 * Math.max(supported, LEARNING.leastPoints));
+  return { junction: seed.junction, inbound: seed.inbound, support: seed.support, line: kept, meets };
+}
+
+/** At the edge of the box, moved sideways and turned to the pings that lie ahead. */
+function startTrail(seedUx: number, seedUy: number, see: See): Trail {
+  const start = see(35 * seedUx, 35 * seedUy, seedUx, seedUy, 25, 18);
+  const x = LEARNING.boxM * seedUx + start.side * seedUy;
+  const y = LEARNING.boxM * seedUy - start.side * seedUx;
+  const isTurned = start.ux !== 0 || start.uy !== 0;
+  const [ux, uy] = isTurned ? [start.ux, start.uy] : [seedUx, seedUy];
+  return { x, y, ux, uy, line: [x, y], supported: 1, gapM: 0, bends: 0 };
+}
+
+/** One step outwards: straight on where no ping lies, else to the middle of those that do. */
+function stepOn(trail: Trail, see: See): void {
+  trail.x += LEARNING.stepM * trail.ux;
+  trail.y += LEARNING.stepM * trail.uy;
+  const { gapM } = trail;
+  const seen = see(
+    trail.x, trail.y, trail.ux, trail.uy,
+    LEARNING.stepM + Math.min(5, gapM / 5), LEARNING.sideM + Math.min(6, gapM / 10),
+  );
+  const gain = seen.count / (seen.count + 2);
+  trail.x += gain * seen.side * trail.uy;
+  trail.y -= gain * seen.side * trail.ux;
+  trail.line.push(trail.x, trail.y);
+  trail.gapM = seen.count === 0 ? gapM + LEARNING.stepM : 0;
+  if (seen.count === 0) return;
+  trail.supported = trail.line.length / 2;
+  [trail.ux, trail.uy] = turnTowards(trail.line, trail.ux, trail.uy, seen, gain);
+}
+
+/** Takes the trail back to its last ping and round the corner there; false where there is none. */
+function goRoundBend(trail: Trail, grid: PingGrid, plane: Plane, scratch: Uint32Array, sign: number): boolean {
+  if (trail.supported <= 2 || trail.bends >= LEARNING.mostBends) return false;
+  const [x, y, ux, uy] = lastDirection(trail.line.slice(0, 2 * trail.supported));
+  const bend = findBend(grid, plane, scratch, sign, x, y, ux, uy);
+  if (!bend) return false;
+  trail.line.length = 2 * trail.supported;
+  trail.line.push(bend.x, bend.y);
+  Object.assign(trail, bend, { supported: trail.line.length / 2, gapM: 0, bends: trail.bends + 1 });
+  return true;
 }
 
 /** Last point of a line and the direction of its last 20 m. */
