@@ -14,6 +14,15 @@ async function one<T>(text: string): Promise<T> {
 
 const matched = (page: Page) => expect(page.getByText("all figures are up to date")).toBeVisible({ timeout: 60_000 });
 
+/** A stop line 18 m from the junction and 90 m of street behind it, typed. */
+async function drawAlong(page: Page, bearing: string): Promise<void> {
+  for (const length of ["18", "90"]) {
+    await page.getByLabel(/^Bearing/).fill(bearing);
+    await page.getByLabel(/^Length/).fill(length);
+    await page.getByRole("button", { name: "Add the point" }).press("Enter");
+  }
+}
+
 test("an engineer renames a leg and moves its stop line, and the list shows it locked", async ({ page, signIn, expectAccessible }) => {
   await signIn("engineer");
   await page.goto("/data");
@@ -41,7 +50,7 @@ test("an engineer renames a leg and moves its stop line, and the list shows it l
   await expect(page.getByText("There is no locked leg")).toBeVisible();
 });
 
-test("an engineer adds a leg by keyboard alone, then merges it away", async ({ page, signIn, expectAccessible }) => {
+test("an engineer adds a leg by keyboard alone, splits it and merges both away", async ({ page, signIn, expectAccessible }) => {
   await signIn("engineer");
   const { id } = await one<{ id: number }>("select junction_id as id from legs group by junction_id having count(*) >= 3 order by junction_id desc limit 1");
   await page.goto(`/data/legs/${id}`);
@@ -50,11 +59,7 @@ test("an engineer adds a leg by keyboard alone, then merges it away", async ({ p
   const before = await legs.count();
   await page.getByRole("button", { name: "Add a leg" }).press("Enter");
   await page.getByLabel("Name").fill("Yard gate");
-  for (const [bearing, length] of [["30", "18"], ["30", "90"]]) {
-    await page.getByLabel(/^Bearing/).fill(bearing);
-    await page.getByLabel(/^Length/).fill(length);
-    await page.getByRole("button", { name: "Add the point" }).press("Enter");
-  }
+  await drawAlong(page, "30");
   await expect(page.getByText("2 points drawn")).toBeVisible();
   await expectAccessible();
   await page.getByRole("button", { name: "Add the leg" }).press("Enter");
@@ -62,11 +67,22 @@ test("an engineer adds a leg by keyboard alone, then merges it away", async ({ p
   await expect(legs).toHaveCount(before + 1);
   await matched(page);
 
+  await page.getByText("Merge or split").click();
+  await page.getByRole("button", { name: "Split the leg" }).press("Enter");
+  await drawAlong(page, "30");
+  await page.getByRole("radio", { name: /the second line/ }).check();
+  await drawAlong(page, "75");
+  await page.getByRole("button", { name: "Split the leg" }).press("Enter");
+  await expect(legs).toHaveCount(before + 2);
+
   await legs.first().check();
   await page.getByText("Merge or split").click();
-  await page.getByLabel("The same street as").selectOption({ label: "Yard gate" });
-  await page.getByRole("button", { name: "Merge the legs" }).click();
-  await expect(legs).toHaveCount(before);
+  // Vehicles on a line that lies at 75 degrees travel at 255 degrees.
+  for (const [i, label] of ["from the east, westbound (255°)", "Yard gate"].entries()) {
+    await page.getByLabel("The same street as").selectOption({ label });
+    await page.getByRole("button", { name: "Merge the legs" }).click();
+    await expect(legs).toHaveCount(before + 1 - i);
+  }
   await matched(page);
 });
 
