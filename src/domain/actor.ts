@@ -16,6 +16,7 @@ export const PERMISSIONS = {
   "strip.export": ["engineer", "admin"],
   "upload.create": ["engineer"],
   "upload.view": ["engineer", "admin"],
+  "feed.manage": ["engineer", "admin"],
   "coverage.view": ["engineer", "admin"],
   "method.view": ["engineer", "technician", "admin"],
   "leg.view": ["engineer", "admin"],

@@ -8,10 +8,16 @@ export interface Queue {
    * Queues a job; given a transaction, only if that commits. False when one of the same key waits already.
    * Throws a ZodError for a payload of the wrong shape.
    */
-  enqueue<P extends object>(job: JobDefinition<P>, payload: NoInfer<P>, options?: { db?: Db }): Promise<boolean>;
+  enqueue<P extends object>(job: JobDefinition<P>, payload: NoInfer<P>, options?: EnqueueOptions): Promise<boolean>;
   /** How far the newest jobs are whose payload holds `part`; null where none waits, runs or has failed last. */
   stateOf<P extends object>(job: JobDefinition<P>, part: NoInfer<Partial<P>>): Promise<JobState | null>;
   stop(): Promise<void>;
+}
+
+export interface EnqueueOptions {
+  db?: Db;
+  /** Earliest begin, seconds from now; needs a transaction, or a worker may be quicker. */
+  afterS?: number;
 }
 
 export type JobState = "waiting" | "running" | "failed";
@@ -30,6 +36,7 @@ export function openQueue(db: Db): Queue {
         ...sendOptions(job, payload),
         ...(options.db && { db: executorOf(options.db) }),
       });
+      if (id !== null && options.afterS !== undefined) await postpone(options.db ?? db, job.name, id, options.afterS);
       return id !== null;
     },
     async stateOf(job, part) {
@@ -45,6 +52,11 @@ export function openQueue(db: Db): Queue {
       if (started) await boss.stop({ graceful: false, close: false });
     },
   };
+}
+
+/** The library's own option is one parameter of two types, which the executor below cannot pass on. */
+async function postpone(db: Db, name: string, id: string, afterS: number): Promise<void> {
+  await db.execute(sql`update pgboss.job set start_after = now() + make_interval(secs => ${afterS}) where name = ${name} and id = ${id}`);
 }
 
 function sendOptions<P extends object>(job: JobDefinition<P>, payload: P): PgBoss.SendOptions {

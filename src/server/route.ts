@@ -4,6 +4,9 @@ import { currentContext } from "./current-context";
 import { STATUS_OF_CODE, toProblem } from "./problem";
 import { requireSameOrigin } from "./same-origin";
 
+/** The windows in which calls are counted are no shorter. */
+const RETRY_AFTER_S = "60";
+
 type RouteParams = Record<string, string | string[]>;
 
 /**
@@ -22,7 +25,8 @@ export function route<P extends RouteParams = Record<string, never>>(
     } catch (error) {
       unstable_rethrow(error);
       const problem = toProblem(error);
-      return Response.json(problem, { status: STATUS_OF_CODE[problem.code], headers: { "cache-control": "no-store" } });
+      const headers = { "cache-control": "no-store", ...(problem.code === "too_many" && { "retry-after": RETRY_AFTER_S }) };
+      return Response.json(problem, { status: STATUS_OF_CODE[problem.code], headers });
     }
   };
 }

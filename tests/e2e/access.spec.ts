@@ -56,6 +56,12 @@ const ROUTES: Record<string, Who> = {
   "POST /api/uploads/[uploadId]/start": ["engineer"],
 };
 
+/** For suppliers' machines: a session opens nothing here, a token does. */
+const TOKEN_ROUTES = ["POST /api/v1/pings"];
+
+/** For everyone, signed in or not. */
+const OPEN_ROUTES = ["GET /api/v1/openapi.json"];
+
 const APP = new URL("../../src/app", import.meta.url).pathname;
 
 /** Addresses of all files of one name below src/app, groups left out. */
@@ -92,7 +98,7 @@ const isAllowed = (who: Who, role: Role) => who === "anyone" || who.includes(rol
 
 test("every page and route has its line in the table", () => {
   expect(addressesOf("page.tsx")).toEqual(Object.keys(PAGES).sort());
-  expect(addressesOf("route.ts")).toEqual([...new Set(Object.keys(ROUTES).map((key) => key.split(" ")[1]))].sort());
+  expect(addressesOf("route.ts")).toEqual([...new Set([...Object.keys(ROUTES), ...TOKEN_ROUTES, ...OPEN_ROUTES].map((key) => key.split(" ")[1]))].sort());
 });
 
 async function call(request: APIRequestContext, key: string): Promise<number> {
@@ -112,6 +118,8 @@ for (const role of ROLES) {
       const isRight = isAllowed(who, role) ? status !== 401 && status !== 403 && status < 500 : status === 403;
       if (!isRight) wrong.push(`${key}: ${status}`);
     }
+    for (const key of TOKEN_ROUTES) if ((await call(page.request, key)) !== 401) wrong.push(key);
+    for (const key of OPEN_ROUTES) if ((await call(page.request, key)) !== 200) wrong.push(key);
     expect(wrong).toEqual([]);
   });
 
@@ -132,6 +140,8 @@ test("signed out, routes answer 401 and pages lead to the sign-in", async ({ pag
     const status = await call(page.request, key);
     if (status !== 401) wrong.push(`${key}: ${status}`);
   }
+  for (const key of TOKEN_ROUTES) if ((await call(page.request, key)) !== 401) wrong.push(key);
+  for (const key of OPEN_ROUTES) if ((await call(page.request, key)) !== 200) wrong.push(key);
   for (const [address, who] of Object.entries(PAGES)) {
     await page.goto(filled(address));
     const isAtSignIn = new URL(page.url()).pathname === "/sign-in";

@@ -7,3 +7,4 @@ export * from "./uploads";
 export * from "./traversals";
 export * from "./reports";
 export * from "./ping-clouds";
+export * from "./feeds";

@@ -26,6 +26,8 @@ export const uploads = pgTable(
     sha256: text("sha256").notNull(),
     supplierId: integer("supplier_id").references(() => suppliers.id),
     mapping: jsonb("mapping").$type<FileMapping>(),
+    /** Of a supplier's feed: begin of the hour whose batches it gathers. */
+    feedHour: instant("feed_hour"),
     state: text("state", { enum: UPLOAD_STATES }).notNull(),
     progress: jsonb("progress").$type<IngestProgress>(),
     report: jsonb("report").$type<IngestReport>(),
@@ -37,7 +39,7 @@ export const uploads = pgTable(
     createdAt: instant("created_at").notNull(),
     finishedAt: instant("finished_at"),
   },
-  (t) => [index("uploads_created_idx").on(t.createdAt), index("uploads_sha256_idx").on(t.sha256)],
+  (t) => [index("uploads_created_idx").on(t.createdAt), index("uploads_sha256_idx").on(t.sha256), uniqueIndex("uploads_feed_key").on(t.supplierId, t.feedHour)],
 );
 
 /** The screen summary of one local day from one upload: days are read by merging their slices. */

@@ -7,9 +7,7 @@ import type { RowTally } from "../row-tally";
 import type { VehicleNames } from "../vehicle-names";
 import type { PingBatcher } from "./ping-batcher";
 import { FIELD, PingJudge } from "./ping-judge";
-
-/** Longer values are no value of a ping. */
-const MAX_VALUE_CHARS = 500;
+import { ValueLine } from "./value-line";
 
 /** A scanner that turns point features into pings: each value is judged as if it stood in a CSV file. */
 export function geojsonPings(mapping: FileMapping, names: VehicleNames, batcher: PingBatcher, tally: RowTally): FeatureScanner {
@@ -46,25 +44,4 @@ export function geojsonPings(mapping: FileMapping, names: VehicleNames, batcher:
     const vehicle = names.intern(line.bytes, judge.spans[0], judge.spans[1]);
     batcher.add(vehicle, judge.tMs, judge.lat, judge.lon, judge.speedMs, judge.headingDeg);
   });
-}
-
-/** The values of one feature, written one after the other as bytes. */
-class ValueLine {
-  /** Six values of at most three bytes for each character. */
-  readonly bytes = new Uint8Array(6 * 3 * MAX_VALUE_CHARS);
-  private readonly encoder = new TextEncoder();
-  private end = 0;
-
-  constructor(private readonly spans: Int32Array) {}
-
-  clear(): void {
-    this.end = 0;
-  }
-
-  put(field: number, value: string): void {
-    const { written } = this.encoder.encodeInto(value.slice(0, MAX_VALUE_CHARS), this.bytes.subarray(this.end));
-    this.spans[2 * field] = this.end;
-    this.end += written;
-    this.spans[2 * field + 1] = this.end;
-  }
 }

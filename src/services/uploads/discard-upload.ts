@@ -13,7 +13,7 @@ export async function discardUpload(ctx: Context, input: { uploadId: string }): 
   const uploadId = id.data;
   const keys = await ctx.db.transaction(async (tx) => {
     const [upload] = await tx
-      .select({ state: uploads.state, fileName: uploads.fileName, storageKey: uploads.storageKey, rejectsKey: uploads.rejectsKey })
+      .select({ state: uploads.state, fileName: uploads.fileName, storageKey: uploads.storageKey, rejectsKey: uploads.rejectsKey, feedHour: uploads.feedHour })
       .from(uploads)
       .where(eq(uploads.id, uploadId))
       .for("update");
@@ -21,6 +21,7 @@ export async function discardUpload(ctx: Context, input: { uploadId: string }): 
     if (upload.state !== "received" && upload.state !== "failed") {
       throw new AppError("conflict", `${upload.fileName} is being read or has been read in, so it cannot be discarded.`);
     }
+    if (upload.feedHour !== null) throw new AppError("conflict", `${upload.fileName} is an hour of a supplier's feed: start it again instead.`);
     await tx.delete(uploads).where(eq(uploads.id, uploadId));
     await recordAudit(tx, ctx, { action: "discarded file", subject: upload.fileName, detail: { uploadId } });
     return [upload.storageKey, upload.rejectsKey];

@@ -21,7 +21,7 @@ export async function startUpload(ctx: Context, input: StartUpload): Promise<{ u
   const { uploadId, mapping, supplier } = StartUpload.parse(input);
   return ctx.db.transaction(async (tx) => {
     const [upload] = await tx
-      .select({ id: uploads.id, kind: uploads.kind, state: uploads.state, fileName: uploads.fileName })
+      .select({ id: uploads.id, kind: uploads.kind, state: uploads.state, fileName: uploads.fileName, feedHour: uploads.feedHour })
       .from(uploads)
       .where(eq(uploads.id, uploadId))
       .for("update");
@@ -29,10 +29,11 @@ export async function startUpload(ctx: Context, input: StartUpload): Promise<{ u
     if (upload.state === "waiting" || upload.state === "reading") return { uploadId };
     if (upload.state === "done") throw new AppError("conflict", `${upload.fileName} has been read in already.`);
     checkMapping(neededFields(upload.kind, mapping.format), mapping);
-    const supplierId = supplier ? await rememberMapping(tx, supplier, upload.kind, mapping) : null;
+    // The hour of a feed was written by ourselves: how it is read is settled.
+    const read = upload.feedHour === null ? { mapping, supplierId: supplier ? await rememberMapping(tx, supplier, upload.kind, mapping) : null } : {};
     await tx
       .update(uploads)
-      .set({ mapping, supplierId, state: "waiting", failure: null, progress: null, report: null, finishedAt: null })
+      .set({ ...read, state: "waiting", failure: null, progress: null, report: null, finishedAt: null })
       .where(and(eq(uploads.id, uploadId)));
     await ctx.queue.enqueue(ingestUpload, { uploadId }, { db: tx });
     await recordAudit(tx, ctx, { action: "started reading file", subject: upload.fileName, detail: { uploadId, supplier } });

@@ -13,7 +13,7 @@ import { SendForm } from "./send-form";
 import { UploadsTable } from "./uploads-table";
 
 /** Files that came in, what they cover, and the form that sends another one. */
-export function DataView() {
+export function DataView({ feeds }: { feeds: ReactNode }) {
   const coverage = useQuery(coverageQuery());
   const { locale } = useCity();
   const canSend = useCan("upload.create");
@@ -38,6 +38,7 @@ export function DataView() {
             {coverage.isError ? <Failed title="Coverage could not be read." message={coverage.error.message} onRetry={() => void coverage.refetch()} /> : null}
             {coverage.data ? <CoveragePanel coverage={coverage.data} /> : null}
           </Part>
+          <Part title="Feeds">{feeds}</Part>
           {mayCheckLegs ? (
             <Part title="Legs">
               <p className="max-w-xl">
