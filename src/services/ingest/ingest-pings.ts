@@ -30,7 +30,7 @@ import { joinPings, openPingStore, type PingStore } from "./ping-store";
 import { openProgress, type ProgressWriter } from "./progress";
 import { readIntoStore, type PingUpload } from "./read-into-store";
 import { openRejects } from "./rejects";
-import { storeTraversals } from "./store-traversals";
+import { makePartitions, storeTraversals } from "./store-traversals";
 import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 
 /** Enough vehicles to learn the streets from; the rest only passes over them. */
@@ -119,12 +119,13 @@ async function matchAndStore(
 
   await progress.tell("store", 0.1, counts.rowsRead);
   const report = reportOf(counts, matched, traversals, network, penetration);
+  await makePartitions(ctx.db, daysOf(traversals));
   await bulkTransaction(ctx.db, async (tx, client) => {
     await requireSameLegs(tx, seen);
     await tx.delete(traversalTable).where(eq(traversalTable.uploadId, upload.id));
     await tx.delete(screenDays).where(eq(screenDays.uploadId, upload.id));
     const keys = await storeNetwork(tx, network, points.map((point) => point.key));
-    await storeTraversals(tx, client, { uploadId: upload.id, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
+    await storeTraversals(client, { uploadId: upload.id, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
     const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
     const slices = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
     for (const slice of slices) {

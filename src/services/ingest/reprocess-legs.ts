@@ -28,7 +28,7 @@ import { dropKnown } from "./known-traversals";
 import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork, type KeyedPoint, type NetworkKeys } from "./network-rows";
 import { emptyColumns, openPingStore } from "./ping-store";
 import { readIntoStore, type PingUpload } from "./read-into-store";
-import { storeTraversals } from "./store-traversals";
+import { makePartitions, storeTraversals } from "./store-traversals";
 import { vehicleHashes, vehicleKey } from "./vehicle-hash";
 
 /** Pings farther than this from the changed junctions take no part in their legs or in those of their neighbours, degrees. */
@@ -179,6 +179,7 @@ async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals
   const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
   const fresh = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
   const touchedKeys = [...keys.legs].filter((_, l) => touched[l] === 1);
+  await makePartitions(ctx.db, daysOf(traversals));
   await bulkTransaction(ctx.db, async (tx, client) => {
     await requireSameLegs(tx, job.legEdits);
     await tx
@@ -189,7 +190,7 @@ async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals
           or(inArray(traversalTable.legId, touchedKeys), notInArray(traversalTable.legId, [...keys.legs])),
         ),
       );
-    await storeTraversals(tx, client, { uploadId, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
+    await storeTraversals(client, { uploadId, network, keys, traversals, localDay: daysOf(traversals), vehicleHash });
     await patchSlices(tx, uploadId, job, fresh);
     await raiseDataVersion(tx);
   });

@@ -37,10 +37,9 @@ export interface TraversalRows {
   vehicleHash: BigInt64Array;
 }
 
-/** Loads all traversals of one upload; the partitions of their days are made first. */
-export async function storeTraversals(db: Db, client: PoolClient, rows: TraversalRows): Promise<void> {
+/** Loads all traversals of one upload into the partitions of their days, which are there already. */
+export async function storeTraversals(client: PoolClient, rows: TraversalRows): Promise<void> {
   const { traversals, network, keys, localDay } = rows;
-  for (const day of new Set(localDay)) await makePartition(db, day);
   const uploadId = Buffer.from(rows.uploadId.replaceAll("-", ""), "hex");
   await copyRows(client, `traversals (${COLUMNS.join(", ")})`, traversals.length, (writer, i) => {
     const movement = traversals.movement[i];
@@ -65,8 +64,14 @@ export async function storeTraversals(db: Db, client: PoolClient, rows: Traversa
   });
 }
 
-async function makePartition(db: Db, day: number): Promise<void> {
-  const date = isoFromDay(day);
-  const name = `traversals_${date.replaceAll("-", "_")}`;
-  await db.execute(sql.raw(`create table if not exists ${name} partition of traversals for values in ('${date}')`));
+/**
+ * Makes the partitions of local days, each by a statement of its own: a new one locks the whole table until its
+ * transaction ends, and nobody could read a strip for as long as an upload is stored.
+ */
+export async function makePartitions(db: Db, localDay: Iterable<number>): Promise<void> {
+  for (const day of new Set(localDay)) {
+    const date = isoFromDay(day);
+    const name = `traversals_${date.replaceAll("-", "_")}`;
+    await db.execute(sql.raw(`create table if not exists ${name} partition of traversals for values in ('${date}')`));
+  }
 }
