@@ -194,3 +194,37 @@ describe("earlier and drawn legs", () => {
     expect(city.network.legs.filter((l) => l.junction === 1)).toHaveLength(4);
   });
 });
+
+describe("odd input", () => {
+  const none = columnsOf([]);
+  const lone = columnsOf([[0, TOWN.startMs, 45.6, -38.3, 10, 0]]);
+  const same = [town.junctions[0], { ...town.junctions[0], id: "A again" }, town.junctions[1]];
+
+  it.each([
+    ["no pings", none, town.junctions],
+    ["no junctions", town.pings, []],
+    ["neither", none, []],
+    ["one ping", lone, town.junctions],
+  ])("finds nothing in %s", (_, pings, junctions) => {
+    const city = processCity(pings, junctions, index, { driveSide: "right" });
+    expect(city.traversals.length).toBe(0);
+    expect(city.network.legs).toEqual([]);
+  });
+
+  it("goes through with one junction listed twice at the same place", () => {
+    const city = processCity(town.pings, same, index, { driveSide: "right" });
+    expect(city.network.junctions).toHaveLength(3);
+    expect(city.traversals.length).toBeGreaterThan(0);
+  });
+
+  it("gives the clean file's traversals without speeds and headings, delays within 2 s", () => {
+    const bare = { ...town.pings, speedMs: new Float32Array(town.pings.length).fill(NaN), headingDeg: new Float32Array(town.pings.length).fill(NaN) };
+    const city = processCity(bare, town.junctions, index, { driveSide: "right" });
+    expect(city.facts).toMatchObject({ hasSpeed: false, hasHeading: false, medianIntervalS: TOWN.pingS });
+    const seen = summary(city);
+    for (const [key, value] of summary(whole)) {
+      expect(seen.get(key)?.n).toBe(value.n);
+      expect(Math.abs((seen.get(key)?.meanS ?? NaN) - value.meanS)).toBeLessThan(2);
+    }
+  });
+});
