@@ -1,3 +1,5 @@
+import { offsetMinAt } from "@/domain/local-time";
+
 const QUARTER_MS = 900_000;
 const DAY_MS = 86_400_000;
 
@@ -6,22 +8,9 @@ const DAY_MS = 86_400_000;
  * is meant; a time that clocks skip is no time (NaN). Offsets are looked up once for each quarter of an hour.
  */
 export class ZoneClock {
-  private readonly format: Intl.DateTimeFormat;
   private readonly offsets = new Map<number, number>();
 
-  constructor(timeZone: string) {
-    this.format = new Intl.DateTimeFormat("en-US", {
-      timeZone,
-      hourCycle: "h23",
-      year: "numeric",
-      month: "numeric",
-      day: "numeric",
-      hour: "numeric",
-      minute: "numeric",
-      second: "numeric",
-      era: "short",
-    });
-  }
+  constructor(private readonly timeZone: string) {}
 
   /** `wallMs` is the wall-clock time read as if it were UTC. */
   instantMs(wallMs: number): number {
@@ -45,9 +34,6 @@ export class ZoneClock {
   }
 
   private offsetMs(instantMs: number): number {
-    const part: Record<string, string> = {};
-    for (const { type, value } of this.format.formatToParts(instantMs)) part[type] = value;
-    const wall = Date.UTC(+part.year, +part.month - 1, +part.day, +part.hour, +part.minute, +part.second);
-    return wall - Math.floor(instantMs / 1000) * 1000;
+    return offsetMinAt(this.timeZone, instantMs) * 60_000;
   }
 }
