@@ -122,7 +122,7 @@ export interface Traversals {
   delayS: Float32Array;
   stops: Uint8Array;
   stoppedS: Float32Array;
-  /** Farthest s at which the vehicle stood on this leg; NaN when it did not stop. */
+  /** Farthest s at which the vehicle stood on this leg; NaN when it did not stop, or nothing tells where. */
   farthestStopM: Float32Array;
   /** Bits of TRAVERSAL_FLAGS. */
   flags: Uint8Array;

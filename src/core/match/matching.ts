@@ -7,7 +7,7 @@ export const MATCHING = Object.freeze({
   headingSpreadDeg: 18,
   boxHeadingSpreadDeg: 35,
   headingLimitDeg: 100,
-  headingMostCost: 6,
+  headingMostCost: 9,
   /** A heading below this speed says little, m/s. */
   headingMinSpeedMs: 2,
   /** How far links go on into the boxes at their ends, m. */
