@@ -2,11 +2,16 @@ import { Readable } from "node:stream";
 import { text } from "node:stream/consumers";
 import { count, eq, sql } from "drizzle-orm";
 import { beforeAll, describe, expect, it } from "vitest";
-import { junctions, legs, screenDays, traversals } from "@/db/schema";
+import type { Network } from "@/core/types";
+import { decodeScreenDay, encodeScreenDay } from "@/core/scores/screen-day-codec";
+import { exits, junctions, legs, screenDays, traversals, uploads } from "@/db/schema";
+import { dayFromIso } from "@/domain/local-time";
 import { ScreenQuery } from "@/domain/screen";
 import { StripQuery } from "@/domain/junction";
 import type { UploadKind } from "@/domain/upload";
+import { raiseDataVersion } from "@/services/catalogue/catalogue";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
+import { readJunctionPoints, readNetwork, storeNetwork } from "@/services/ingest/network-rows";
 import { exportScreen } from "@/services/screens/export-screen";
 import { rankJunctions } from "@/services/screens/rank-junctions";
 import { getJunction } from "@/services/junctions/get-junction";
@@ -127,6 +132,36 @@ describe("ingest", () => {
     const { rows } = await rankJunctions(engineer, ScreenQuery.parse({ period: "all", days: "saturday" }));
     expect(rows[0]).toMatchObject({ evidence: "none", vehicles: 4, days: 1, rank: null, delay: null, p95S: null, los: null, hoursSeen: null, reachM: null, spill: null });
     expect(rows[0].needles.map(({ delayS, reachM }) => [delayS, reachM])).toEqual(Array(4).fill([null, null]));
+  });
+
+  it("drops exits that the core no longer knows", async () => {
+    const [{ junctionId, methodVersion }] = await job.db.select().from(exits);
+    const before = await job.db.select({ n: count() }).from(exits);
+    await job.db.insert(exits).values({ code: "X1:out:stray", junctionId, bearingDeg: 45, line: [0, 0, 50, 50], support: 1, methodVersion });
+    const points = await readJunctionPoints(job.db);
+    const network = (await readNetwork(job.db, points, "right")) as Network;
+    expect(network.exits.pop()?.id).toBe("X1:out:stray");
+    await storeNetwork(job.db, network, points.map((point) => point.key));
+    expect(await job.db.select({ n: count() }).from(exits)).toEqual(before);
+  });
+
+  it("says by a sentence that hours end before they begin", async () => {
+    await expect(rankJunctions(engineer, ScreenQuery.parse({ from: 600, to: 600 }))).rejects.toThrow("The hours must end after they begin.");
+  });
+
+  it("goes on ranking where an older method has measured the same day", async () => {
+    const query = ScreenQuery.parse({ period: "all", since: "2026-03-05", until: "2026-03-05" });
+    const before = await rankJunctions(engineer, query);
+    const [slice] = await job.db.select().from(screenDays).where(eq(screenDays.day, dayFromIso("2026-03-05")));
+    const [other] = await job.db.select({ id: uploads.id }).from(uploads).where(eq(uploads.fileName, "crossing-again.csv"));
+    const older = encodeScreenDay({ ...decodeScreenDay(slice.payload), methodVersion: slice.methodVersion - 1 });
+    const [{ id }] = await job.db
+      .insert(screenDays)
+      .values({ ...slice, id: undefined, uploadId: other.id, methodVersion: slice.methodVersion - 1, payload: older })
+      .returning({ id: screenDays.id });
+    await raiseDataVersion(job.db);
+    expect(await rankJunctions(engineer, query)).toEqual(before);
+    await job.db.delete(screenDays).where(eq(screenDays.id, id));
   });
 
   it("reports rejected rows with their lines and keeps the good ones", async () => {

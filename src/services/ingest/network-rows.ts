@@ -202,6 +202,12 @@ async function dropUnused(db: Db, network: Network): Promise<void> {
       sql`${inArray(legs.id, goneLegs)} and not exists (select 1 from movements where movements.leg_id = ${legs.id})`,
     );
   }
+  const goneExits = await gone(exits, network.exits.map((exit) => exit.id));
+  if (goneExits.length > 0) {
+    await db.delete(exits).where(
+      sql`${inArray(exits.id, goneExits)} and not exists (select 1 from movements where movements.exit_id = ${exits.id}) and not exists (select 1 from legs where legs.upstream_exit_id = ${exits.id})`,
+    );
+  }
 }
 
 async function upsert<T extends { id: string }>(

@@ -1,6 +1,7 @@
 import { METHOD_VERSION } from "@/core/method-version";
 import { scoreScreen } from "@/core/scores/score-screen";
 import type { JunctionScore, LegScore, MovementScore, ScreenScores } from "@/core/scores/types";
+import { AppError } from "@/domain/errors";
 import { isoFromDay } from "@/domain/local-time";
 import type { ScreenQuery, ScreenResult } from "@/domain/screen";
 import { periodWindow, type CitySettings, type TimeWindow } from "@/domain/settings";
@@ -59,7 +60,10 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
 }
 
 export function windowOf(settings: CitySettings, query: WhenAndTurn): TimeWindow {
-  if (query.from !== undefined && query.to !== undefined) return { fromMin: query.from, toMin: query.to };
+  if (query.from !== undefined && query.to !== undefined) {
+    if (query.from >= query.to) throw new AppError("invalid", "The hours must end after they begin.");
+    return { fromMin: query.from, toMin: query.to };
+  }
   return periodWindow(settings, query.period);
 }
 
@@ -71,7 +75,8 @@ export function basisOf(scored: ScoredCity): ScreenResult["basis"] {
     days: data.days.length,
     traversals: scores.traversals,
     medianIntervalS: data.medianIntervalS,
-    methodVersion: METHOD_VERSION,
+    // The oldest that any of the figures rests on.
+    methodVersion: data.days.reduce((least, day) => Math.min(least, day.methodVersion), METHOD_VERSION),
     fromMin: window.fromMin,
     toMin: window.toMin,
   };

@@ -63,7 +63,7 @@ export async function loadScreenDays(db: Db, choice: DateChoice): Promise<Screen
     list.push(bySlice.get(slice.id) as ScreenDay);
     byDay.set(slice.day, list);
   }
-  const days = [...byDay.values()].map((slices) => (slices.length === 1 ? slices[0] : mergeScreenDays(slices)));
+  const days = [...byDay.values()].map((slices) => mergeScreenDays(ofNewestMethod(slices)));
   const intervals = chosen.flatMap((slice) => (slice.medianIntervalS === null ? [] : [slice.medianIntervalS])).sort((a, b) => a - b);
   return {
     days,
@@ -71,6 +71,12 @@ export async function loadScreenDays(db: Db, choice: DateChoice): Promise<Screen
     lastDay: days.length > 0 ? days[days.length - 1].day : null,
     medianIntervalS: intervals.length > 0 ? intervals[Math.floor(intervals.length / 2)] : null,
   };
+}
+
+/** What different methods measured on one day cannot be added up: until the older file is matched anew, the newer counts. */
+function ofNewestMethod(slices: readonly ScreenDay[]): ScreenDay[] {
+  const newest = slices.reduce((most, slice) => Math.max(most, slice.methodVersion), 0);
+  return slices.filter((slice) => slice.methodVersion === newest);
 }
 
 interface ChosenSlices {
