@@ -54,19 +54,21 @@ export async function receiveUpload(ctx: Context, input: ReceiveUpload, content:
   try {
     const detected = await detect(Buffer.concat(head), name, kind);
     const sameAs = await findSame(ctx, kind, sha256);
-    await ctx.db.insert(uploads).values({
-      id: uploadId,
-      kind,
-      fileName: name,
-      storageKey,
-      bytes,
-      sha256,
-      mapping: detected.mapping,
-      state: "received",
-      createdBy: ctx.actor.type === "user" ? ctx.actor.userId : null,
-      createdAt: ctx.now,
+    await ctx.db.transaction(async (tx) => {
+      await tx.insert(uploads).values({
+        id: uploadId,
+        kind,
+        fileName: name,
+        storageKey,
+        bytes,
+        sha256,
+        mapping: detected.mapping,
+        state: "received",
+        createdBy: ctx.actor.type === "user" ? ctx.actor.userId : null,
+        createdAt: ctx.now,
+      });
+      await recordAudit(tx, ctx, { action: "received file", subject: name, detail: { uploadId, kind, bytes } });
     });
-    await recordAudit(ctx.db, ctx, { action: "received file", subject: name, detail: { uploadId, kind, bytes } });
     return { uploadId, detected, sameAs };
   } catch (error) {
     await ctx.storage.remove(storageKey);
