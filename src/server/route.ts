@@ -24,6 +24,8 @@ export function route<P extends RouteParams = Record<string, never>>(
       return Response.json(answer ?? null, { headers: { "cache-control": "private, no-store" } });
     } catch (error) {
       unstable_rethrow(error);
+      // Who left in the middle reads no answer, and did nothing that the log should call a fault.
+      if (request.signal.aborted) return new Response(null, { status: STATUS_OF_CODE.invalid });
       const problem = toProblem(error);
       const headers = { "cache-control": "no-store", ...(problem.code === "too_many" && { "retry-after": RETRY_AFTER_S }) };
       return Response.json(problem, { status: STATUS_OF_CODE[problem.code], headers });

@@ -1,11 +1,15 @@
 import { randomUUID } from "node:crypto";
 import { createWriteStream } from "node:fs";
-import { mkdir, open, rename, rm, stat } from "node:fs/promises";
+import { mkdir, open, readdir, rename, rm, stat } from "node:fs/promises";
 import { dirname, join } from "node:path";
 import { Readable } from "node:stream";
 import { pipeline } from "node:stream/promises";
 import { notFound } from "@/domain/errors";
 import { checkKey, type Storage } from "./storage";
+
+const PARTIAL = ".part";
+/** An object that arrives for longer than this does not arrive any more. */
+const PARTIAL_MAX_MS = 24 * 3_600_000;
 
 /** Keeps each object as a file below `root`. */
 export function openFolderStorage(root: string): Storage {
@@ -15,7 +19,7 @@ export function openFolderStorage(root: string): Storage {
     async put(key, content) {
       const path = pathOf(key);
       // A reader never sees half an object: the bytes arrive under another name.
-      const partial = `${path}.${randomUUID()}.part`;
+      const partial = `${path}.${randomUUID()}${PARTIAL}`;
       await mkdir(dirname(path), { recursive: true });
       try {
         const sink = createWriteStream(partial);
@@ -51,6 +55,19 @@ export function openFolderStorage(root: string): Storage {
       await rm(pathOf(key), { force: true });
     },
   };
+}
+
+/** Removes what is left of objects that arrived when a process was killed. */
+export async function removeOldPartials(root: string, now: Date): Promise<void> {
+  const names = await readdir(root, { recursive: true }).catch((error: unknown) => {
+    if (isMissing(error)) return [];
+    throw error;
+  });
+  for (const name of names) {
+    if (!name.endsWith(PARTIAL)) continue;
+    const found = await stat(join(root, name)).catch(() => null);
+    if (found && now.getTime() - found.mtimeMs > PARTIAL_MAX_MS) await rm(join(root, name), { force: true });
+  }
 }
 
 function isMissing(error: unknown): boolean {

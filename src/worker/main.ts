@@ -5,7 +5,7 @@ import { keptMailFolder } from "@/mail/kept-mail";
 import { startMailKeeper, type MailKeeper } from "@/mail/mail-keeper";
 import { openMailer } from "@/mail/mailer";
 import type { Context } from "@/services/context";
-import { openStorage } from "@/storage/open-storage";
+import { openStorage, sweepStorage } from "@/storage/open-storage";
 import { handlers } from "./handlers";
 import { runJobs } from "./run-jobs";
 
@@ -42,6 +42,7 @@ const runner = await runJobs({
   contextFor,
 });
 console.log("Worker ready.");
+await sweepStorage(settings, new Date()).catch((error: Error) => console.error("Sweep of the storage:", error.message));
 
 let isStopping = false;
 async function stop(): Promise<void> {

@@ -1,4 +1,4 @@
-import { mkdtemp, readdir, rm } from "node:fs/promises";
+import { mkdtemp, readdir, rm, writeFile } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { Readable } from "node:stream";
@@ -7,7 +7,7 @@ import { ListObjectsV2Command, S3Client } from "@aws-sdk/client-s3";
 import S3rver from "s3rver";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { readEnv } from "@/env";
-import { openStorage } from "@/storage/open-storage";
+import { openStorage, sweepStorage } from "@/storage/open-storage";
 import type { Storage } from "@/storage/storage";
 
 const BUCKET = "tailmark-files";
@@ -53,6 +53,25 @@ async function bucketPlace(): Promise<Place> {
     },
   };
 }
+
+describe("halves of files in a folder", () => {
+  it("go after a day, when nobody can be sending them any more", async () => {
+    const dataDir = await mkdtemp(join(tmpdir(), "tailmark-storage-"));
+    try {
+      const settings = readEnv({ DATA_DIR: dataDir });
+      await sweepStorage(settings, new Date());
+      await openStorage(settings).put("uploads/whole", Readable.from([Buffer.from("all of it")]));
+      await writeFile(join(dataDir, "storage/uploads/cut.1f.part"), "half");
+      const list = () => readdir(join(dataDir, "storage/uploads"));
+      await sweepStorage(settings, new Date(Date.now() + 23 * 3_600_000));
+      expect((await list()).sort()).toEqual(["cut.1f.part", "whole"]);
+      await sweepStorage(settings, new Date(Date.now() + 25 * 3_600_000));
+      expect(await list()).toEqual(["whole"]);
+    } finally {
+      await rm(dataDir, { recursive: true, force: true });
+    }
+  });
+});
 
 const PLACES = { "a folder": folderPlace, "a bucket": bucketPlace };
 
