@@ -15,6 +15,7 @@ import { readJunctionPoints, readNetwork, storeNetwork } from "@/services/ingest
 import { exportScreen } from "@/services/screens/export-screen";
 import { rankJunctions } from "@/services/screens/rank-junctions";
 import { getJunction } from "@/services/junctions/get-junction";
+import { exportStrip } from "@/services/strips/export-strip";
 import { getTracks } from "@/services/strips/get-tracks";
 import { decodeTrackSet } from "@/core/strips/track-set";
 import { getUpload, openRejects } from "@/services/uploads/get-upload";
@@ -86,6 +87,14 @@ describe("ingest", () => {
     expect(seen.map((movement) => [movement.turn, movement.vehicles])).toEqual(Array(4).fill(["through", 60]));
     const set = decodeTrackSet((await getTracks(engineer, { legId: found.legs[0].id, query: StripQuery.parse({ period: "all" }) })).buffer);
     expect(set.tracks).toBe(60);
+  });
+
+  it("exports a strip in the cells that a page would draw", async () => {
+    const [{ id }] = await job.db.select({ id: legs.id }).from(legs);
+    const lines = (await text(Readable.from(await exportStrip(engineer, { legId: id, query: StripQuery.parse({ period: "all", cellS: 5 }) })))).split("\n");
+    // A day has 1,440 minutes, and no more columns are drawn.
+    expect(lines[0].split(",")[7]).toBe("cell_width_s");
+    expect(new Set(lines.slice(1, -1).map((line) => line.split(",")[7]))).toEqual(new Set(["60"]));
   });
 
   it("counts an overlapping file once, and the very same file not at all", async () => {

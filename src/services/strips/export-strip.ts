@@ -1,5 +1,6 @@
 import type { z } from "zod";
 import { addTracks } from "@/core/strips/add-tracks";
+import { drawableCellS } from "@/core/strips/cell-width";
 import { cellCentre, createStrip, specOfWindow, speedsOf } from "@/core/strips/strip";
 import { decodeTrackSet } from "@/core/strips/track-set";
 import { csvText, type Cell } from "@/formats/csv/write-csv";
@@ -34,7 +35,8 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
   const { fromMin, toMin } = windowOf(await getSettings(ctx), query);
   const waveKmh = query.shape === "waves" ? query.wave : null;
   const window = { fromS: fromMin * 60, toS: toMin * 60, bottomM: 0, topM: view.leg.lengthM };
-  const strip = createStrip(specOfWindow(window, query.cellS, query.cellM, waveKmh === null ? Infinity : waveKmh / 3.6));
+  const cellS = drawableCellS(query.cellS, window);
+  const strip = createStrip(specOfWindow(window, cellS, query.cellM, waveKmh === null ? Infinity : waveKmh / 3.6));
   addTracks(strip, set);
   const speeds = speedsOf(strip);
   function* rows(): Generator<Cell[]> {
@@ -49,7 +51,7 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
         Math.round(strip.distanceM[cell] * 10) / 10,
         strip.vehicles[cell],
         strip.days[cell],
-        query.cellS,
+        cellS,
         query.cellM,
         waveKmh,
         query.day ?? view.basis.firstDate,

@@ -1,6 +1,7 @@
 "use client";
 
 import { useId } from "react";
+import { CELL_SECONDS, drawableCellS } from "@/core/strips/cell-width";
 import { TURNS } from "@/core/types";
 import type { LegStripView, StripQuery } from "@/domain/junction";
 import { counted, formatLength } from "@/ui/format";
@@ -8,7 +9,7 @@ import { ChoiceList } from "@/ui/primitives/choice";
 import { Field, Select } from "@/ui/primitives/field";
 import { SentenceControl } from "@/ui/primitives/sentence";
 import { useCity } from "@/ui/shell/city";
-import { CELL_METRES, CELL_SECONDS, drawableCellS, windowOfView } from "./strip-picture";
+import { CELL_METRES, windowOfView } from "./strip-picture";
 import { cellSecondsPhrase, cellsPhrase, MOVEMENT_PHRASES, shapePhrase, SMOOTH_PHRASES, TYPICAL_DAY, wavePhrase, weekdayPhrase } from "./strip-phrases";
 
 interface ControlProps {

@@ -1,3 +1,4 @@
+import { drawableCellS } from "@/core/strips/cell-width";
 import { addTracks } from "@/core/strips/add-tracks";
 import { delayOverTime, type DelayOverTime } from "@/core/strips/delay-over-time";
 import type { DayReaches } from "@/core/strips/reach-of-days";
@@ -27,9 +28,6 @@ export interface StripPicture {
 
 /** Used where the leg's own free speed is not known yet. */
 const USUAL_FREE_MS = 50 / 3.6;
-/** More columns than this are finer than any window can show. */
-const MOST_COLUMNS = 1440;
-export const CELL_SECONDS = [5, 10, 15, 30, 60, 120, 300, 900] as const;
 export const CELL_METRES = [5, 10, 20, 50] as const;
 
 /** Room above the end of the leg, so that a storage line at the very end still shows. */
@@ -38,12 +36,6 @@ const HEADROOM = 1.03;
 export function windowOfView({ leg, basis }: PictureView): StripWindow {
   const endM = leg.storageM !== null && leg.storageM < 1.2 * leg.lengthM ? Math.max(leg.lengthM, leg.storageM) : leg.lengthM;
   return { fromS: basis.fromMin * 60, toS: basis.toMin * 60, bottomM: 0, topM: endM * HEADROOM };
-}
-
-/** The chosen width, or the finest that the length of the window allows. */
-export function drawableCellS(cellS: number, window: Pick<StripWindow, "fromS" | "toS">): number {
-  const least = (window.toS - window.fromS) / MOST_COLUMNS;
-  return cellS >= least ? cellS : (CELL_SECONDS.find((choice) => choice >= least) ?? cellS);
 }
 
 export function waveMsOf(query: Pick<StripQuery, "shape" | "wave">): number {

@@ -1,10 +1,11 @@
 import { describe, expect, it } from "vitest";
+import { drawableCellS } from "@/core/strips/cell-width";
 import { reachOfDays } from "@/core/strips/reach-of-days";
 import { crossingTimes } from "@/core/strips/track-crossings";
 import type { LegStripView } from "@/domain/junction";
 import { stripQueryFromParams } from "@/domain/junction";
 import { firstCell, moveCursor, readOut, readOutText } from "@/ui/strips/strip-cursor";
-import { buildPicture, delayStepS, drawableCellS, includeTurn, referencePace, windowOfView } from "@/ui/strips/strip-picture";
+import { buildPicture, delayStepS, includeTurn, referencePace, windowOfView } from "@/ui/strips/strip-picture";
 import { setOf } from "@tests/core/strips/support";
 
 const movement = (id: number, turn: string, referenceS: number | null) => ({ id, turn, referenceS, cordonUpM: 250, cordonDownM: 60, vehicles: 1 });
