@@ -1,4 +1,5 @@
 import type { LegQuarters, Network, Traversals } from "@/core/types";
+import { joinedTails } from "./joined-tails";
 import { createScratch, type LegView } from "./moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
 import { presenceByLeg, quartersSeen, type Presence } from "./presence";
@@ -18,7 +19,7 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
   const standings = findStandings(network, traversals, chosen);
   const offset = standingsByLeg(standings, network.legs.length);
   const perMetre = seenPerMetre(standings, offset, chosen);
-  const presence = presenceByLeg(network, traversals);
+  const presence = presenceByLeg(network, traversals, standings, chosen);
   const seenQuarters = quartersSeen(presence);
   const scratch = createScratch(standings.length);
   const rows: (QuarterFigures & { leg: number; startMs: number })[] = [];
@@ -29,6 +30,8 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
       standings,
       standingFrom: offset[leg],
       standingTo: offset[leg + 1],
+      tails: joinedTails(standings, offset[leg], offset[leg + 1], chosen),
+      tailFrom: 0,
       presence,
       presenceAll: presence.offset[leg],
       presenceFrom: presence.offset[leg],
@@ -47,9 +50,8 @@ export function legQuarters(network: Network, traversals: Traversals, options: P
 function passOver(view: LegView, startMs: number, options: QueueOptions): void {
   const { standings, presence } = view;
   const standingMs = startMs - options.memoryS * 1000;
-  const presentMs = startMs - options.sightS * 1000;
   while (view.standingFrom < view.standingTo && standings.toMs[view.standingFrom] < standingMs) view.standingFrom++;
-  while (view.presenceFrom < view.presenceTo && presence.toMs[view.presenceFrom] < presentMs) view.presenceFrom++;
+  while (view.presenceFrom < view.presenceTo && presence.untilMs[view.presenceFrom] < startMs) view.presenceFrom++;
 }
 
 /** Starts of the quarters in which any vehicle was on the leg, ascending. */

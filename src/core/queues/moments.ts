@@ -1,4 +1,5 @@
 import { columnReach } from "./column-reach";
+import { tailAt, type TailSpan } from "./joined-tails";
 import { QUARTER_MS, type QueueOptions } from "./options";
 import type { Presence } from "./presence";
 import type { Standings } from "./standings";
@@ -12,6 +13,9 @@ export interface LegView {
   standings: Standings;
   standingFrom: number;
   standingTo: number;
+  /** What those who joined tell of the tail, by end; first that is not over yet. */
+  tails: readonly TailSpan[];
+  tailFrom: number;
   presence: Presence;
   /** First of the leg's, and first that is not over yet. */
   presenceAll: number;
@@ -32,44 +36,49 @@ export function createScratch(standings: number): Scratch {
   return { count: 0, index: new Uint32Array(standings), sorted: new Float64Array(standings) };
 }
 
-/** `reachM`: farthest standing vehicle of the column; `tailM`: where the queue behind it is expected to end. */
-export type MomentVisitor = (tMs: number, reachM: number, tailM: number) => void;
+/** Where a queue is expected to end, and where at least, places being uncertain; metres from the stop line, 0 without one. */
+export interface Tail {
+  expectedM: number;
+  leastM: number;
+}
+
+/** `reachM`: farthest standing vehicle of the column. `tail` is the same object in every call. */
+export type MomentVisitor = (tMs: number, reachM: number, tail: Readonly<Tail>) => void;
 
 /**
- * Visits the quarter that begins at `startMs` every `stepS`, in the middle of each step, while any vehicle stands or is
- * remembered; returns the seconds for which a vehicle can speak. O(moments × standing²).
+ * Visits the quarter that begins at `startMs` every `stepS`, in the middle of each step, while a vehicle can speak and
+ * any stands or is remembered; returns the seconds for which one can speak. O(moments × standing²).
  */
 export function eachMoment(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch, visit: MomentVisitor): number {
   const endMs = startMs + QUARTER_MS;
-  const observedS = observedSeconds(leg, startMs, endMs, options.sightS * 1000);
-  const growthMs = tailGrowthMs(othersPerSecond(leg, startMs), leg.perMetre, options);
+  const others = othersPerSecond(leg, startMs);
+  const growthMs = tailGrowthMs(others, leg.perMetre, options);
+  const wholeGrowthMs = leg.perMetre > 0 ? others / leg.perMetre : 0;
   const stepMs = options.stepS * 1000;
+  const sightMs = options.sightS * 1000;
+  const { presence, presenceTo } = leg;
   let next = leg.standingFrom;
+  let present = leg.presenceFrom;
+  let seenUntilMs = -Infinity;
+  let observedS = 0;
+  const tail: Tail = { expectedM: 0, leastM: 0 };
   scratch.count = 0;
   for (let tMs = startMs + stepMs / 2; tMs < endMs; tMs += stepMs) {
-    next = remember(scratch, leg, next, tMs, options.memoryS * 1000);
-    if (scratch.count === 0) {
-      if (next === leg.standingTo) break;
-      continue;
+    for (; present < presenceTo && presence.fromMs[present] - sightMs <= tMs; present++) {
+      seenUntilMs = Math.max(seenUntilMs, presence.untilMs[present]);
     }
+    if (seenUntilMs < tMs) continue;
+    observedS += options.stepS;
+    next = remember(scratch, leg, next, tMs, options.memoryS * 1000);
+    tail.expectedM = 0;
+    tail.leastM = 0;
+    takeJoined(tail, leg, tMs, wholeGrowthMs);
+    if (scratch.count === 0 && tail.expectedM === 0) continue;
     const reachM = reachOf(scratch, leg.standings, options);
-    visit(tMs, reachM, expectedTail(scratch, leg, reachM, tMs, growthMs, options));
+    takeExpected(tail, scratch, leg, reachM, tMs, growthMs, options);
+    visit(tMs, reachM, tail);
   }
   return observedS;
-}
-
-/** Seconds of the quarter for which a vehicle can speak. */
-function observedSeconds(leg: LegView, startMs: number, endMs: number, sightMs: number): number {
-  let observedMs = 0;
-  let seenUntil = startMs;
-  for (let k = leg.presenceFrom; k < leg.presenceTo && leg.presence.fromMs[k] - sightMs < endMs; k++) {
-    const from = Math.max(seenUntil, leg.presence.fromMs[k] - sightMs);
-    const to = Math.min(endMs, leg.presence.toMs[k] + sightMs);
-    if (to <= from) continue;
-    observedMs += to - from;
-    seenUntil = to;
-  }
-  return observedMs / 1000;
 }
 
 /**
@@ -112,26 +121,39 @@ function remember(scratch: Scratch, leg: LegView, next: number, tMs: number, mem
 
 function reachOf(scratch: Scratch, standings: Standings, options: QueueOptions): number {
   const { sorted, index, count } = scratch;
+  let sureM = 0;
   for (let i = 0; i < count; i++) {
     const s = standings.s[index[i]];
+    if (standings.isQueuing[index[i]] === 1) sureM = Math.max(sureM, s);
     let at = i;
     for (; at > 0 && sorted[at - 1] > s; at--) sorted[at] = sorted[at - 1];
     sorted[at] = s;
   }
-  return columnReach(sorted, count, options.headM, options.gapM);
+  return columnReach(sorted, count, options.headM, options.gapM, sureM);
 }
 
-/** Farthest expected end of the queue behind any vehicle of the column; 0 where none is left. */
-function expectedTail(scratch: Scratch, leg: LegView, reachM: number, tMs: number, growthMs: number, options: QueueOptions): number {
+/** Takes in what those who joined around a moment tell. */
+function takeJoined(tail: Tail, leg: LegView, tMs: number, growthMs: number): void {
+  while (leg.tailFrom < leg.tails.length && leg.tails[leg.tailFrom].toMs < tMs) leg.tailFrom++;
+  for (let k = leg.tailFrom; k < leg.tails.length; k++) {
+    if (leg.tails[k].fromMs > tMs) break;
+    take(tail, tailAt(leg.tails[k], tMs, growthMs), leg.tails[k].doubtM);
+  }
+}
+
+/** Takes in the expected end of the queue behind every vehicle of the column. */
+function takeExpected(tail: Tail, scratch: Scratch, leg: LegView, reachM: number, tMs: number, growthMs: number, options: QueueOptions): void {
   const meanGapM = leg.perMetre > 0 ? 1 / leg.perMetre : 0;
   const longestM = leg.storageM > 0 ? leg.storageM : Infinity;
-  let tailM = 0;
   for (let i = 0; i < scratch.count; i++) {
     const k = scratch.index[i];
     const s = leg.standings.s[k];
     if (s > reachM) continue;
-    const expectedM = expectedTailM(leg.standings, k, tMs, growthMs, Math.min(meanGapM, longestM - s), options);
-    if (expectedM > tailM) tailM = expectedM;
+    take(tail, expectedTailM(leg.standings, k, tMs, growthMs, Math.min(meanGapM, longestM - s), options), leg.standings.doubtM[k]);
   }
-  return tailM;
+}
+
+function take(tail: Tail, expectedM: number, doubtM: number): void {
+  if (expectedM > tail.expectedM) tail.expectedM = expectedM;
+  if (expectedM - doubtM > tail.leastM) tail.leastM = expectedM - doubtM;
 }

@@ -11,10 +11,16 @@ export interface QueueOptions {
   gapM: number;
   /** and all were standing within this time. */
   memoryS: number;
+  /** Who stood this long and moved up meanwhile is in a queue, whoever else was seen: nobody gives way for so long. */
+  queuingS: number;
   /** Positions this far past the stop line still count as standing at it. */
   pastLineM: number;
   /** A leg whose storage is filled to this share spills back. */
   spillShare: number;
+  /** Storage below which that cannot be said: places of vehicles are not known well enough in a leg for three. */
+  leastStorageM: number;
+  /** How well a ping tells where a vehicle stands: half the road that it takes. Who moved up in a queue stood far enough. */
+  doubtM: number;
   /** A vehicle on the leg speaks for this long before it came and after it left. */
   sightS: number;
   /** Step in which the column is looked at. */
@@ -25,6 +31,8 @@ export interface QueueOptions {
   jamSpacingM: number;
 }
 
+const JAM_SPACING_M = 7.62;
+
 export const DEFAULT_QUEUE_OPTIONS: Readonly<QueueOptions> = Object.freeze({
   stopSpeedMs: 5 / 3.6,
   goSpeedMs: 10 / 3.6,
@@ -32,12 +40,15 @@ export const DEFAULT_QUEUE_OPTIONS: Readonly<QueueOptions> = Object.freeze({
   headM: 100,
   gapM: 120,
   memoryS: 40,
+  queuingS: 60,
   pastLineM: 8,
   spillShare: 0.9,
+  leastStorageM: 3 * JAM_SPACING_M,
+  doubtM: JAM_SPACING_M / 2,
   sightS: 30,
   stepS: 5,
   waveSpeedMs: 5,
-  jamSpacingM: 7.62,
+  jamSpacingM: JAM_SPACING_M,
 });
 
 export const QUARTER_MS = 900_000;

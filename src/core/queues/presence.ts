@@ -1,15 +1,31 @@
 import type { Network, Traversals } from "@/core/types";
-import { QUARTER_MS } from "./options";
+import { QUARTER_MS, type QueueOptions } from "./options";
+import type { Standings } from "./standings";
 
 /** Spans of time in which vehicles were on a leg: entries offset[leg] to offset[leg + 1], by beginning. */
 export interface Presence {
   offset: Uint32Array;
   fromMs: Float64Array;
   toMs: Float64Array;
+  /** How long the vehicle speaks for the leg. */
+  untilMs: Float64Array;
+}
+
+/**
+ * Until when each vehicle speaks for what is behind it: beyond `toMs` for as long as it can be seen from. One that had
+ * to stand again after moving up leaves standing vehicles behind, of whom it tells nothing once it drives off.
+ * O(vehicles + standings).
+ */
+export function speaksUntil(standings: Standings, toMs: ArrayLike<number>, options: QueueOptions): Float64Array {
+  const until = Float64Array.from(toMs, (ms) => ms + options.sightS * 1000);
+  for (let k = 0; k < standings.length; k++) {
+    if (standings.joinedMs[k] < standings.fromMs[k]) until[standings.traversal[k]] = standings.toMs[k];
+  }
+  return until;
 }
 
 /** From the first point of the track on the leg to the stop line. O(traversals × log). */
-export function presenceByLeg(network: Network, traversals: Traversals): Presence {
+export function presenceByLeg(network: Network, traversals: Traversals, standings: Standings, options: QueueOptions): Presence {
   const { length } = traversals;
   const legOf = (i: number): number => network.movements[traversals.movement[i]].leg;
   const startOf = new Float64Array(length);
@@ -21,11 +37,13 @@ export function presenceByLeg(network: Network, traversals: Traversals): Presenc
     offset[legOf(i) + 1] += 1;
   }
   for (let leg = 0; leg < network.legs.length; leg++) offset[leg + 1] += offset[leg];
+  const untilMs = speaksUntil(standings, traversals.stopLineMs, options);
   const order = Array.from({ length }, (_, i) => i).sort((a, b) => legOf(a) - legOf(b) || startOf[a] - startOf[b]);
   return {
     offset,
     fromMs: Float64Array.from(order, (i) => startOf[i]),
     toMs: Float64Array.from(order, (i) => traversals.stopLineMs[i]),
+    untilMs: Float64Array.from(order, (i) => untilMs[i]),
   };
 }
 

@@ -11,6 +11,12 @@ export interface Standings {
   s: Float32Array;
   fromMs: Float64Array;
   toMs: Float64Array;
+  /** When the vehicle joined the queue in which it stands: the beginning of its first stop there. */
+  joinedMs: Float64Array;
+  /** 1 where the vehicle moved up in this queue: it belongs to one, whoever else was seen. */
+  isQueuing: Uint8Array;
+  /** By how much its place may be too far, metres. */
+  doubtM: Float32Array;
 }
 
 /** One stop: where, and from when to when. */
@@ -23,6 +29,9 @@ export interface Stop {
 export interface Standing extends Stop {
   leg: number;
   traversal: number;
+  joinedMs: number;
+  isQueuing: boolean;
+  doubtM: number;
 }
 
 /** A ping that tells of standing nearer than this to a stop seen in the track is that stop. */
@@ -46,10 +55,25 @@ export function findStandings(network: Network, traversals: Traversals, options:
   return standingsOf(found);
 }
 
-/** Keeps the stops of one track that belong to the leg's queue. */
+/**
+ * Keeps the stops of one track that belong to the leg's queue. A vehicle that stands again within the column's memory
+ * and gap moved up in the queue that it had joined before.
+ */
 export function addStandings(out: Standing[], stops: Stop[], leg: number, traversal: number, storageM: number, options: QueueOptions): void {
   const farthest = storageM > 0 ? storageM : Infinity;
-  for (const stop of stops) if (stop.s >= -options.pastLineM && stop.s <= farthest) out.push({ leg, traversal, ...stop });
+  let queue: Standing[] = [];
+  let stoodMs = 0;
+  for (const stop of [...stops].sort((a, b) => a.fromMs - b.fromMs)) {
+    if (stop.s < -options.pastLineM || stop.s > farthest) continue;
+    const last = queue.at(-1);
+    const isSameQueue = last && stop.fromMs - last.toMs <= options.memoryS * 1000 && last.s - stop.s <= options.gapM;
+    if (!isSameQueue) queue = [];
+    queue.push({ leg, traversal, ...stop, joinedMs: queue.length > 0 ? queue[0].joinedMs : stop.fromMs, isQueuing: false, doubtM: options.doubtM });
+    out.push(queue[queue.length - 1]);
+    stoodMs = (isSameQueue ? stoodMs : 0) + stop.toMs - stop.fromMs;
+    const isQueuing = stoodMs >= options.queuingS * 1000 && queue[0].s - stop.s >= options.jamSpacingM;
+    if (isQueuing) for (const standing of queue) Object.assign(standing, { isQueuing, doubtM: 0 });
+  }
 }
 
 /** Sorts in place, then copies to columns. */
@@ -112,6 +136,9 @@ function columnsOf(found: Standing[]): Standings {
     s: Float32Array.from(found, (f) => f.s),
     fromMs: Float64Array.from(found, (f) => f.fromMs),
     toMs: Float64Array.from(found, (f) => f.toMs),
+    joinedMs: Float64Array.from(found, (f) => f.joinedMs),
+    isQueuing: Uint8Array.from(found, (f) => (f.isQueuing ? 1 : 0)),
+    doubtM: Float32Array.from(found, (f) => f.doubtM),
   };
 }
 

@@ -42,7 +42,7 @@ export function tailGrowthMs(seenPerSecond: number, perMetre: number, options: Q
  * seen vehicle at its departure and runs upstream at the wave speed, has come to that end. `mostM` limits the unseen part.
  */
 export function expectedTailM(standings: Standings, k: number, tMs: number, growthMs: number, mostM: number, options: QueueOptions): number {
-  const behindM = Math.min(mostM, (growthMs * (tMs - standings.fromMs[k])) / 1000);
+  const behindM = Math.min(mostM, (growthMs * (tMs - standings.joinedMs[k])) / 1000);
   const dischargedM = (options.waveSpeedMs * (tMs - standings.toMs[k])) / 1000;
   return dischargedM <= behindM ? standings.s[k] + behindM : NaN;
 }

@@ -1,3 +1,4 @@
+import { fullFromM } from "@/core/queues/full-from";
 import { createScratch, eachMoment } from "@/core/queues/moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "@/core/queues/options";
 import type { TrackColumns } from "@/core/queues/standings";
@@ -17,6 +18,8 @@ export interface DayReaches {
   reachM: Float32Array;
   /** Where the queue is expected to end, the unseen tail behind the last seen vehicle with it (a model). */
   tailM: Float32Array;
+  /** Where it ends at least, places of vehicles being uncertain. */
+  leastTailM: Float32Array;
 }
 
 /**
@@ -34,6 +37,7 @@ export function reachOfDays(set: TrackSet, fromS: number, toS: number, storageM:
   const size = days.length * steps;
   const result: DayReaches = {
     fromS, stepS: chosen.stepS, steps, days, reachM: new Float32Array(size).fill(NaN), tailM: new Float32Array(size).fill(NaN),
+    leastTailM: new Float32Array(size).fill(NaN),
   };
   const columns: TrackColumns = { enterMs: new Float64Array(set.tracks), trackOffset: set.offset, trackT: set.tS, trackS: set.sM };
   starts.forEach((start, d) => readDay(result, d, columns, start, starts[d + 1] ?? set.tracks, storageM, chosen));
@@ -42,11 +46,12 @@ export function reachOfDays(set: TrackSet, fromS: number, toS: number, storageM:
 
 /** Share of the observed moments, all days together, at which the queue filled at least `spillShare` of the storage; NaN where it cannot be said. */
 export function spillShare(reaches: DayReaches, storageM: number, options: Partial<QueueOptions> = {}): number {
-  const full = (options.spillShare ?? DEFAULT_QUEUE_OPTIONS.spillShare) * storageM;
-  if (!(full > 0)) return NaN;
+  const chosen = { ...DEFAULT_QUEUE_OPTIONS, ...options };
+  const full = fullFromM(storageM, chosen);
+  if (Number.isNaN(full)) return NaN;
   let observed = 0;
   let spilled = 0;
-  for (const tail of reaches.tailM) {
+  for (const tail of reaches.leastTailM) {
     if (Number.isNaN(tail)) continue;
     observed++;
     if (tail >= full) spilled++;
@@ -65,11 +70,12 @@ function readDay(out: DayReaches, day: number, columns: TrackColumns, from: numb
   const view = viewOfTracks(columns, from, to, storageM, options);
   const reachM = out.reachM.subarray(day * out.steps, (day + 1) * out.steps);
   const tailM = out.tailM.subarray(day * out.steps, (day + 1) * out.steps);
+  const leastTailM = out.leastTailM.subarray(day * out.steps, (day + 1) * out.steps);
   for (let k = 0; k < view.presenceTo; k++) {
-    // A vehicle speaks for the leg from `sightS` before it came until `sightS` after it left.
+    // A vehicle speaks for the leg from `sightS` before it came as long as it can be seen from.
     const begin = Math.ceil((view.presence.fromMs[k] / 1000 - options.sightS - out.fromS) / out.stepS - 0.5);
-    const until = Math.floor((view.presence.toMs[k] / 1000 + options.sightS - out.fromS) / out.stepS - 0.5);
-    for (const column of [reachM, tailM]) column.fill(0, Math.max(0, begin), Math.max(0, until + 1));
+    const until = Math.floor((view.presence.untilMs[k] / 1000 - out.fromS) / out.stepS - 0.5);
+    for (const column of [reachM, tailM, leastTailM]) column.fill(0, Math.max(0, begin), Math.max(0, until + 1));
   }
   const scratch = createScratch(view.standings.length);
   const lastMs = (out.fromS + out.steps * out.stepS) * 1000;
@@ -78,7 +84,8 @@ function readDay(out: DayReaches, day: number, columns: TrackColumns, from: numb
       const step = Math.floor((tMs / 1000 - out.fromS) / out.stepS);
       if (!(reachM[step] >= 0)) return;
       reachM[step] = reach;
-      tailM[step] = tail;
+      tailM[step] = tail.expectedM;
+      leastTailM[step] = tail.leastM;
     });
   }
 }

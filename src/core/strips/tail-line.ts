@@ -26,7 +26,7 @@ const TAIL_QUANTILE = 0.95;
  * nearest first, until 21 samples are found; a column that no day saw stays NaN. Its interval is that of the scores (Woodruff 1952); its upper end
  * is at most the largest reach seen. A single day shows its own reach, without an interval. O(days × steps + columns × samples × log).
  */
-export function tailLine(reaches: Omit<DayReaches, "tailM">, columnS: number): TailLine {
+export function tailLine(reaches: Omit<DayReaches, "tailM" | "leastTailM">, columnS: number): TailLine {
   const columns = Math.max(1, Math.ceil((reaches.steps * reaches.stepS) / columnS));
   const perDay = farthestByColumn(reaches, columnS, columns);
   const line: TailLine = {
@@ -53,7 +53,7 @@ export function tailLine(reaches: Omit<DayReaches, "tailM">, columnS: number): T
 }
 
 /** Farthest reach of each day in each column; entry = day * columns + column. */
-function farthestByColumn(reaches: Omit<DayReaches, "tailM">, columnS: number, columns: number): Float32Array {
+function farthestByColumn(reaches: Omit<DayReaches, "tailM" | "leastTailM">, columnS: number, columns: number): Float32Array {
   const out = new Float32Array(reaches.days.length * columns).fill(NaN);
   for (let day = 0; day < reaches.days.length; day++) {
     for (let step = 0; step < reaches.steps; step++) {

@@ -61,7 +61,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "reach",
     term: "Reach, observed",
     meaning: [
-      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last, and they stood within ${QUEUE.memoryS} s of each other. Vehicles that wait inside the junction behind are not this leg’s queue.`,
+      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last, and they stood within ${QUEUE.memoryS} s of each other. Who stood for ${QUEUE.queuingS} s and moved up meanwhile belongs to it, whoever else was seen. Vehicles that wait inside the junction behind are not this leg’s queue.`,
       "The figure is the 95th percentile of the farthest reach in each quarter of an hour. With a few per cent of the vehicles seen, the last one seen is seldom the last one: the true tail stands farther back.",
     ],
   },
@@ -78,7 +78,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "spillback",
     term: "Spillback",
     meaning: [
-      `Share of the time for which the sample can speak about the leg in which its queue fills ${QUEUE.spillShare * 100} % or more of the storage length, the distance to the junction behind. Where the unseen end of the queue is expected counts with it. A vehicle speaks for the leg while it is on it and ${QUEUE.sightS} s before and after.`,
+      `Share of the time for which the sample can speak about the leg in which its queue fills ${QUEUE.spillShare * 100} % or more of the storage length, the distance to the junction behind. Where the unseen end of the queue is expected counts with it: a model. A vehicle’s place is taken to be good to ${QUEUE.doubtM.toFixed(1)} m, except where it moved up in the queue and stood again. A vehicle speaks for the leg while it is on it and ${QUEUE.sightS} s before and after; one that had to stand again, only until it drives off. Legs shorter than ${QUEUE.leastStorageM.toFixed(0)} m, room for three vehicles, have no share.`,
     ],
     formula: "queue storage ratio = reach / storage length",
     source: "Queue storage ratio: Highway Capacity Manual, 7th edition, chapter 31.",
