@@ -16,5 +16,5 @@ export default {
   typescript: { ignoreBuildErrors: true },
   turbopack: { root: here },
   outputFileTracingRoot: here,
-  serverExternalPackages: ["pg", "pg-copy-streams", "pg-boss", "@aws-sdk/client-s3", "@aws-sdk/lib-storage", "@node-rs/argon2", "nodemailer", "smtp-server", "mailparser"],
+  serverExternalPackages: ["pg", "pg-copy-streams", "pg-boss", "@aws-sdk/client-s3", "@aws-sdk/lib-storage", "@tus/server", "@tus/file-store", "@node-rs/argon2", "nodemailer", "smtp-server", "mailparser"],
 };

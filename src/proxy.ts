@@ -39,4 +39,4 @@ export function proxy(request: NextRequest): NextResponse {
 }
 
 // The body of a request that passes the proxy is kept in memory and cut off at 10 MiB: files are sent past it.
-export const config = { matcher: ["/((?!_next/static|_next/image|fonts/|map/|maplibre-gl-worker|api/uploads$|api/v1/pings$).*)"] };
+export const config = { matcher: ["/((?!_next/static|_next/image|fonts/|map/|maplibre-gl-worker|api/uploads$|api/uploads/parts|api/v1/pings$).*)"] };

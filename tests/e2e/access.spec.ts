@@ -54,6 +54,10 @@ const ROUTES: Record<string, Who> = {
   "DELETE /api/uploads/[uploadId]": ["engineer"],
   "POST /api/uploads": ["engineer"],
   "POST /api/uploads/[uploadId]/start": ["engineer"],
+  "POST /api/uploads/parts": ["engineer"],
+  "HEAD /api/uploads/parts/[partId]": ["engineer"],
+  "PATCH /api/uploads/parts/[partId]": ["engineer"],
+  "DELETE /api/uploads/parts/[partId]": ["engineer"],
 };
 
 /** For suppliers' machines: a session opens nothing here, a token does. */
@@ -88,6 +92,7 @@ test.beforeAll(async () => {
     junctionId: await one("select id from junctions order by id limit 1"),
     legId: await one("select id from legs order by id limit 1"),
     uploadId: await one("select id from uploads order by created_at limit 1"),
+    partId: "0".repeat(32),
     reportId: await one("select id from hotspot_reports where title = 'Access walk'"),
   };
   await client.end();

@@ -1,5 +1,6 @@
 import type { FileMapping, UploadKind } from "@/domain/upload";
 import { RequestError } from "@/ui/query-client";
+import { sendPieces, type Pieces } from "./send-pieces";
 
 export interface ReceivedFile {
   uploadId: string;
@@ -7,28 +8,25 @@ export interface ReceivedFile {
   sameAs: { id: string; createdAt: string } | null;
 }
 
-const OUT_OF_REACH = "The file did not reach the server. Check the connection and send it again.";
+export interface Sending extends Pick<Pieces, "pause" | "goOn" | "stop"> {
+  received: Promise<ReceivedFile>;
+}
 
-/** Streams a file from the disk to the server; `onShare` tells how much of it is there, from 0 to 1. */
-export function sendFile(file: File, kind: UploadKind, onShare: (share: number) => void, signal: AbortSignal): Promise<ReceivedFile> {
-  return new Promise((resolve, reject) => {
-    // fetch cannot tell how far an upload has come.
-    const request = new XMLHttpRequest();
-    const params = new URLSearchParams({ kind, name: file.name });
-    request.open("POST", `/api/uploads?${params}`);
-    request.setRequestHeader("content-type", "application/octet-stream");
-    request.responseType = "json";
-    request.upload.onprogress = (event) => onShare(event.lengthComputable ? event.loaded / event.total : 0);
-    request.onload = () => {
-      const answer = request.response as (ReceivedFile & { message?: string }) | null;
-      if (request.status === 201 && answer) resolve(answer);
-      else reject(new RequestError(request.status, answer?.message ?? `The server answered ${request.status}.`));
-    };
-    request.onerror = () => reject(new RequestError(0, OUT_OF_REACH));
-    request.onabort = () => reject(new RequestError(0, "Sending was stopped. Nothing was kept."));
-    signal.addEventListener("abort", () => request.abort());
-    request.send(file);
+/** Sends a file from the disk to the server; `onShare` tells how much of it is there, from 0 to 1. */
+export function sendFile(file: File, kind: UploadKind, onShare: (share: number) => void): Sending {
+  const { arrived, forget, pause, goOn, stop } = sendPieces(file, onShare);
+  const received = arrived.then(async (part) => {
+    try {
+      const answer = await change(`/api/uploads?${new URLSearchParams({ kind, name: file.name, part })}`, "POST");
+      await forget();
+      return (await answer.json()) as ReceivedFile;
+    } catch (error) {
+      // Refused for what it is: it need not be gone on with.
+      if (error instanceof RequestError && error.status >= 400 && error.status < 500) await forget();
+      throw error;
+    }
   });
+  return { received, pause, goOn, stop };
 }
 
 /** Has a received file read in the way that the person settled on. */
@@ -42,11 +40,11 @@ export async function discardFile(uploadId: string): Promise<void> {
   await change(`/api/uploads/${uploadId}`, "DELETE");
 }
 
-async function change(path: string, method: "POST" | "DELETE", body?: unknown): Promise<void> {
+async function change(path: string, method: "POST" | "DELETE", body?: unknown): Promise<Response> {
   const json = body === undefined ? {} : { headers: { "content-type": "application/json" }, body: JSON.stringify(body) };
   const answer = await fetch(path, { method, ...json }).catch(() => null);
   if (answer === null) throw new RequestError(0, "The server cannot be reached. Check the connection and try again.");
-  if (answer.ok) return;
+  if (answer.ok) return answer;
   const problem = (await answer.json().catch(() => null)) as { message?: string } | null;
   throw new RequestError(answer.status, problem?.message ?? `The server answered ${answer.status}.`);
 }

@@ -8,7 +8,7 @@ import { Button } from "@/ui/primitives/button";
 import { FileChooser } from "./file-chooser";
 import { ProgressBar } from "./progress-bar";
 import { uploadsQuery } from "./queries";
-import { sendFile } from "./send-file";
+import { sendFile, type Sending } from "./send-file";
 
 const KIND_WORDS: Record<UploadKind, { label: string; fields: string }> = {
   pings: { label: "Pings of vehicles", fields: "vehicle, time, latitude, longitude; speed and heading where the supplier has them" },
@@ -22,7 +22,8 @@ export function SendForm({ firstKind }: { firstKind: UploadKind }) {
   const [file, setFile] = useState<File | null>(null);
   const [share, setShare] = useState<number | null>(null);
   const [error, setError] = useState<string | null>(null);
-  const sending = useRef<AbortController | null>(null);
+  const [isPaused, setPaused] = useState(false);
+  const sending = useRef<Sending | null>(null);
   const router = useRouter();
   const client = useQueryClient();
   const id = useId();
@@ -32,15 +33,22 @@ export function SendForm({ firstKind }: { firstKind: UploadKind }) {
     if (!file) return setError("Choose a file first.");
     setError(null);
     setShare(0);
-    sending.current = new AbortController();
+    setPaused(false);
     try {
-      const { uploadId, sameAs } = await sendFile(file, kind, setShare, sending.current.signal);
+      sending.current = sendFile(file, kind, setShare);
+      const { uploadId, sameAs } = await sending.current.received;
       void client.invalidateQueries({ queryKey: uploadsQuery().queryKey });
       router.push(sameAs ? `/data/${uploadId}?same=${sameAs.id}` : `/data/${uploadId}`);
     } catch (failure) {
       setShare(null);
       setError(failure instanceof Error ? failure.message : "The file could not be sent.");
     }
+  }
+
+  function pauseOrGoOn() {
+    if (isPaused) sending.current?.goOn();
+    else sending.current?.pause();
+    setPaused(!isPaused);
   }
 
   return (
@@ -59,7 +67,7 @@ export function SendForm({ firstKind }: { firstKind: UploadKind }) {
       </fieldset>
       <FileChooser file={file} onChoose={setFile} describedBy={`${id}-formats`} />
       <p id={`${id}-formats`} className="text-sm text-ink-soft">
-        CSV with comma, semicolon or tab, or GeoJSON; UTF-8; packed with gzip if you like. You see the first rows and confirm the columns before anything is read.
+        CSV with comma, semicolon or tab, or GeoJSON; UTF-8; packed with gzip if you like. You see the first rows and confirm the columns before anything is read. A file whose sending was cut off goes on where it stopped when you choose it again.
       </p>
       {share === null ? (
         <Button type="submit" tone="strong" className="self-start">
@@ -67,9 +75,14 @@ export function SendForm({ firstKind }: { firstKind: UploadKind }) {
         </Button>
       ) : (
         <div className="flex flex-col items-start gap-3">
-          <p role="status">{share < 1 ? "Sending" : "Sent. Looking at the first rows"}…</p>
+          <p role="status">{share >= 1 ? "Sent. Looking at the first rows…" : isPaused ? "Paused." : "Sending…"}</p>
           <ProgressBar share={share} label="Sent" />
-          <Button onClick={() => sending.current?.abort()}>Stop</Button>
+          {share < 1 ? (
+            <div className="flex gap-3">
+              <Button onClick={pauseOrGoOn}>{isPaused ? "Go on" : "Pause"}</Button>
+              <Button onClick={() => sending.current?.stop()}>Stop</Button>
+            </div>
+          ) : null}
         </div>
       )}
       {error ? (
