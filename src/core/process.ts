@@ -8,8 +8,9 @@ import type { Trips } from "@/core/pings/trips";
 import { penetrationFromQueues } from "@/core/queues/penetration";
 import { createTraversalBuilder } from "@/core/traversals/columns";
 import { createExtractor } from "@/core/traversals/extract";
+import { createOpenTrackBuilder } from "@/core/traversals/open-tracks";
 import { setReferences } from "@/core/traversals/references";
-import type { CleanReport, JunctionPoint, Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
+import type { CleanReport, JunctionPoint, Network, OpenTracks, PingColumns, SampleFacts, Traversals } from "@/core/types";
 
 export type { CoreOptions, GivenLeg } from "@/core/options";
 export type { JunctionIndex } from "@/core/index/junction-index";
@@ -18,6 +19,7 @@ export { setReferences };
 export interface Matched {
   /** `delayS` is NaN until setReferences has run over all traversals. */
   traversals: Traversals;
+  openTracks: OpenTracks;
   report: CleanReport;
   facts: SampleFacts;
 }
@@ -25,6 +27,7 @@ export interface Matched {
 export interface CityResult {
   network: Network;
   traversals: Traversals;
+  openTracks: OpenTracks;
   clean: CleanReport;
   facts: SampleFacts;
 }
@@ -62,7 +65,7 @@ export function processCity(
   const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network, index), pings);
   setReferences(network, matched.traversals);
   const facts = { ...matched.facts, penetration: penetrationFromQueues(network, matched.traversals) };
-  return { network, traversals: matched.traversals, clean: matched.report, facts };
+  return { network, traversals: matched.traversals, openTracks: matched.openTracks, clean: matched.report, facts };
 }
 
 function matchCleaned(
@@ -70,7 +73,8 @@ function matchCleaned(
   graph: ReturnType<typeof createGraph>, pings: PingColumns,
 ): Matched {
   const builder = createTraversalBuilder();
-  const extractor = createExtractor(trips, graph, builder);
+  const open = createOpenTrackBuilder();
+  const extractor = createExtractor(trips, graph, builder, open);
   let incompleteTraversals = 0;
   matchTrips(trips, graph, (chain) => {
     incompleteTraversals += extractor.addChain(chain);
@@ -79,6 +83,7 @@ function matchCleaned(
   for (let i = 0; i < trips.length; i++) if (graph.claims.find(trips.lat[i], trips.lon[i]) < 0) farFromJunctions += 1;
   return {
     traversals: builder.finish(),
+    openTracks: open.finish(),
     report: { ...report, farFromJunctions, incompleteTraversals },
     facts: sampleFacts(trips, pings),
   };

@@ -134,6 +134,23 @@ export interface Traversals {
   trackS: Float32Array;
 }
 
+/**
+ * Tracks of vehicles that came along a leg and were still on it when their trip or the file ended. No traversals; they
+ * only tell of the queue in which they stood.
+ */
+export interface OpenTracks {
+  length: number;
+  /** Index into `Network.legs`. */
+  leg: Uint32Array;
+  vehicle: Uint32Array;
+  /** First point, ms UTC. */
+  enterMs: Float64Array;
+  /** As in `Traversals`. */
+  trackOffset: Uint32Array;
+  trackT: Float32Array;
+  trackS: Float32Array;
+}
+
 export const TRAVERSAL_FLAGS = {
   /** Pings are too far apart to see stops: their number is a lower bound. */
   stopsLowerBound: 1,

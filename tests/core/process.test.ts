@@ -171,6 +171,30 @@ describe("invariance", () => {
   });
 });
 
+describe("a vehicle whose pings end before the stop line", () => {
+  const first = Array.from({ length: whole.traversals.length }, (_, i) => i)
+    .filter((i) => whole.traversals.vehicle[i] === 0)
+    .sort((a, b) => whole.traversals.stopLineMs[a] - whole.traversals.stopLineMs[b])[0];
+  const leg = whole.network.movements[whole.traversals.movement[first]].leg;
+  const before = rowsOf(town.pings).filter(([v, tMs]) => v === 0 && tMs < whole.traversals.stopLineMs[first] - 4000);
+
+  it("is no traversal and leaves an open track on its leg", () => {
+    const { traversals, openTracks } = createMatcher(whole.network, index)(columnsOf(before));
+    expect(traversals.length).toBe(0);
+    expect([...openTracks.leg]).toEqual([leg]);
+    for (let p = 1; p < openTracks.trackS.length; p++) expect(openTracks.trackS[p]).toBeLessThanOrEqual(openTracks.trackS[p - 1]);
+    expect(openTracks.trackS[openTracks.trackS.length - 1]).toBeGreaterThan(0);
+    expect(openTracks.trackS[openTracks.trackS.length - 1]).toBeLessThan(100);
+  });
+
+  it("leaves none where it drove on beside the streets", () => {
+    const [vehicle, tMs, lat, lon] = before[before.length - 1];
+    // 85 m and more off every street, north-east, at 11 m/s.
+    const away = Array.from({ length: 12 }, (_, n) => [vehicle, tMs + (n + 1) * 5000, lat + (n + 1) * 0.00035, lon + (n + 1) * 0.0005, 11, 45]);
+    expect(createMatcher(whole.network, index)(columnsOf([...before, ...away])).openTracks.length).toBe(0);
+  });
+});
+
 const withoutDelay = (t: Traversals): Traversals => ({ ...t, delayS: new Float32Array(t.length) });
 
 describe("earlier and drawn legs", () => {

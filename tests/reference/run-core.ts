@@ -1,7 +1,7 @@
 import { processCity } from "@/core/process";
 import { legQuarters } from "@/core/queues/leg-quarters";
 import { screenRows } from "@/core/scores/screen-rows";
-import type { Network, PingColumns, Traversals } from "@/core/types";
+import type { Network, OpenTracks, PingColumns, Traversals } from "@/core/types";
 import { createH3Index } from "@/geo/h3-index";
 
 import { createPlane } from "./plane";
@@ -27,7 +27,7 @@ export function runOnRecording(recording: Recording, sampling: Sampling): CoreRu
   const pings = pingsOf(recording, sampling);
   const { columns, vehicles } = toColumns(pings);
   const { truth, oracle } = recording;
-  const { network, traversals } = processCity(columns, truth.junctions, createH3Index(), { driveSide: truth.driveSide }, prior);
+  const { network, traversals, openTracks } = processCity(columns, truth.junctions, createH3Index(), { driveSide: truth.driveSide }, prior);
   const isIn = (vehicleId: string) => isSampled(truth.scenario, vehicleId, sampling.share);
   return {
     network,
@@ -39,7 +39,7 @@ export function runOnRecording(recording: Recording, sampling: Sampling): CoreRu
       passages: recording.passages.filter((passage) => isIn(passage.vehicleId)),
       pingTimes: timesByVehicle(pings),
       intervalS: sampling.intervalS,
-      rows: toRows(network, traversals),
+      rows: toRows(network, traversals, openTracks),
       traversals: toFound(network, traversals, vehicles),
     },
   };
@@ -78,8 +78,8 @@ function timesByVehicle(pings: Ping[]): Map<string, number[]> {
   return times;
 }
 
-function toRows(network: Network, traversals: Traversals): ScreenRow[] {
-  return screenRows(network, traversals, legQuarters(network, traversals)).map((row) => ({
+function toRows(network: Network, traversals: Traversals, openTracks: OpenTracks): ScreenRow[] {
+  return screenRows(network, traversals, legQuarters(network, traversals, openTracks)).map((row) => ({
     ...row,
     junctionId: network.junctions[row.junction].id,
     intervalStart: row.startMs === null ? "all" : new Date(row.startMs).toISOString().replace(".000Z", "Z"),

@@ -1,4 +1,5 @@
-import type { LegQuarters, Network, Traversals } from "@/core/types";
+import { NO_OPEN_TRACKS } from "@/core/traversals/open-tracks";
+import type { LegQuarters, Network, OpenTracks, Traversals } from "@/core/types";
 import { joinedTails } from "./joined-tails";
 import { createScratch, type LegView } from "./moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
@@ -11,15 +12,16 @@ import { seenPerMetre } from "./unseen-tail";
  * Queue of each leg in each quarter of an hour (UTC; every city clock is off by whole quarters) in which the sample
  * saw the leg: reach of the standing column that hangs together with the stop line, seconds spilled back, seconds for
  * which the sample can say. A quarter in which vehicles passed and none stood has reach 0; one in which nobody was
- * seen has no entry. `traversals` are all of the time span, in any order; rows come in order of leg, then time.
+ * seen, or only vehicles of open tracks, has no entry. `traversals` and `open` are all of the time span, in any order;
+ * rows come in order of leg, then time.
  * O(traversals × log + moments with a queue × standing²).
  */
-export function legQuarters(network: Network, traversals: Traversals, options: Partial<QueueOptions> = {}): LegQuarters {
+export function legQuarters(network: Network, traversals: Traversals, open: OpenTracks = NO_OPEN_TRACKS, options: Partial<QueueOptions> = {}): LegQuarters {
   const chosen: QueueOptions = { ...DEFAULT_QUEUE_OPTIONS, ...options };
-  const standings = findStandings(network, traversals, chosen);
+  const standings = findStandings(network, traversals, chosen, open);
   const offset = standingsByLeg(standings, network.legs.length);
   const perMetre = seenPerMetre(standings, offset, chosen);
-  const presence = presenceByLeg(network, traversals, standings, chosen);
+  const presence = presenceByLeg(network, traversals, standings, chosen, open);
   const seenQuarters = quartersSeen(presence);
   const scratch = createScratch(standings.length);
   const rows: (QuarterFigures & { leg: number; startMs: number })[] = [];
@@ -54,10 +56,11 @@ function passOver(view: LegView, startMs: number, options: QueueOptions): void {
   while (view.presenceFrom < view.presenceTo && presence.untilMs[view.presenceFrom] < startMs) view.presenceFrom++;
 }
 
-/** Starts of the quarters in which any vehicle was on the leg, ascending. */
+/** Starts of the quarters in which any vehicle that passed the stop line was on the leg, ascending. */
 function quartersOf(presence: Presence, leg: number): number[] {
   const starts = new Set<number>();
   for (let k = presence.offset[leg]; k < presence.offset[leg + 1]; k++) {
+    if (presence.isOpen[k] === 1) continue;
     const first = Math.floor(presence.fromMs[k] / QUARTER_MS) * QUARTER_MS;
     for (let start = first; start <= presence.toMs[k]; start += QUARTER_MS) starts.add(start);
   }

@@ -1,11 +1,12 @@
-import type { Network, Traversals } from "@/core/types";
+import type { Network, OpenTracks, Traversals } from "@/core/types";
+import { NO_OPEN_TRACKS } from "@/core/traversals/open-tracks";
 import type { QueueOptions } from "./options";
 
 /** Where and when vehicles stood on legs, as columns in order of leg, then of time. */
 export interface Standings {
   length: number;
   leg: Uint32Array;
-  /** Index of the traversal. */
+  /** Index of the traversal; open tracks count on behind the traversals. */
   traversal: Uint32Array;
   /** Distance from the stop line, metres. */
   s: Float32Array;
@@ -43,16 +44,26 @@ const SHORT_STOP_MS = 5000;
  * Stops on the leg, read off the tracks with hysteresis: below 5 km/h until above 10 km/h; and the place where the
  * vehicle's own speed told of standing, which catches short stops at the tail between two pings. Vehicles that stand
  * past the stop line (waiting to turn) or at the upstream junction's box (waiting there to turn) are not this leg's
- * queue and are left out. O(track points + standings × log).
+ * queue and are left out; so is the last stop of an open track, unless its vehicle was queuing. O(track points + standings × log).
  */
-export function findStandings(network: Network, traversals: Traversals, options: QueueOptions): Standings {
+export function findStandings(network: Network, traversals: Traversals, options: QueueOptions, open: OpenTracks = NO_OPEN_TRACKS): Standings {
   const found: Standing[] = [];
   for (let i = 0; i < traversals.length; i++) {
     const leg = network.movements[traversals.movement[i]].leg;
     const stops = stopsOfTrack(traversals, i, options);
     addStandings(found, [...stops, ...slowPing(traversals, i, stops)], leg, i, network.legs[leg].storageM, options);
   }
+  for (let i = 0; i < open.length; i++) {
+    const own: Standing[] = [];
+    addStandings(own, stopsOfTrack(open, i, options), open.leg[i], traversals.length + i, network.legs[open.leg[i]].storageM, options);
+    found.push(...own.filter((standing) => standing.isQueuing || movedOn(open, i, standing, options)));
+  }
   return standingsOf(found);
+}
+
+/** Whether a vehicle drove on along the leg after a stop: where it was last seen it may have parked. */
+function movedOn(open: OpenTracks, i: number, standing: Standing, options: QueueOptions): boolean {
+  return open.trackS[open.trackOffset[i + 1] - 1] < standing.s - options.jamSpacingM;
 }
 
 /**

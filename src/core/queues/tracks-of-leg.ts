@@ -32,6 +32,7 @@ export function viewOfTracks(tracks: TrackColumns, from: number, to: number, sto
     fromMs: Float64Array.from(order, (i) => spans[i].fromMs),
     toMs: Float64Array.from(order, (i) => spans[i].toMs),
     untilMs: Float64Array.from(order, (i) => untilMs[i]),
+    isOpen: new Uint8Array(spans.length),
   };
   const [perMetre] = seenPerMetre(standings, Uint32Array.of(0, standings.length), options);
   return {

@@ -7,6 +7,7 @@ import type { TraversalBuilder } from "@/core/traversals/columns";
 import { createCourse, estimateSpeeds, KNOTS, smoothForward, timeAt, type Course } from "@/core/traversals/course";
 import { fillGaps } from "@/core/traversals/fill-gaps";
 import { filledEndMs, filledStartMs } from "@/core/traversals/fill-ends";
+import type { OpenTrackBuilder } from "@/core/traversals/open-tracks";
 import { summariseStops } from "@/core/traversals/stops";
 import { TRAVERSAL_FLAGS } from "@/core/types";
 
@@ -29,8 +30,8 @@ export interface Extractor {
   addChain(chain: Chain): number;
 }
 
-/** Turns matched stretches into traversals with crossing times, stops and tracks. */
-export function createExtractor(trips: Trips, graph: StreetGraph, builder: TraversalBuilder): Extractor {
+/** Turns matched stretches into traversals with crossing times, stops and tracks, and what breaks off on a leg into open tracks. */
+export function createExtractor(trips: Trips, graph: StreetGraph, builder: TraversalBuilder, open: OpenTrackBuilder): Extractor {
   const { network } = graph;
   const movementOf = new Map<number, number>();
   network.movements.forEach((m, i) => movementOf.set(m.leg * network.exits.length + m.exit, i));
@@ -53,7 +54,10 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
   return {
     addChain(chain) {
       let cut = endsInWindow(chain, graph) ? 1 : 0;
-      if (chain.links.length < 2) return cut;
+      const last = chain.links.length - 1;
+      // Who drove on beside the streets may have stood only to turn off there.
+      const isOpen = graph.leg[chain.links[last]] >= 0 && chain.pings[chain.pings.length - 1] === trips.tripOffset[chain.trip + 1] - 1;
+      if (last === 0 && !isOpen) return cut;
       const base = basesOf(chain, graph, box);
       const size = chain.pings.length;
       if (size > seen.tMs.length) {
@@ -72,6 +76,10 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
         const movement = movementOf.get(leg * network.exits.length + exit);
         if (movement === undefined) continue;
         if (!addTraversal(k, movement, chain, base)) cut += 1;
+      }
+      if (isOpen) {
+        const points = fillTrack(base[last], Infinity, base[last] + graph.stopAt[chain.links[last]]);
+        open.add(graph.leg[chain.links[last]], trips.tripVehicle[chain.trip], trackMs, trackS, points);
       }
       return cut;
     },

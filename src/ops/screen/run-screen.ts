@@ -28,10 +28,10 @@ export async function runScreen(args: ScreenArguments, say: Say): Promise<void> 
   const junctions = await loadJunctions(args, say);
   const pings = await loadPings(args, say);
   say(`${clock()}: ${pings.length} pings and ${junctions.length} junctions read`);
-  const { network, traversals, clean } = processCity(pings, junctions, createH3Index(), { driveSide: args.driveSide });
+  const { network, traversals, openTracks, clean } = processCity(pings, junctions, createH3Index(), { driveSide: args.driveSide });
   say(`${clock()}: ${clean.trips} trips, ${clean.duplicates} duplicate pings and ${clean.jumps} impossible jumps dropped`);
   say(`${clock()}: ${network.legs.length} legs, ${traversals.length} traversals, ${clean.incompleteTraversals} incomplete ones not scored`);
-  const rows = screenRows(network, traversals, legQuarters(network, traversals));
+  const rows = screenRows(network, traversals, legQuarters(network, traversals, openTracks));
   const cells = function* () {
     for (const row of rows) yield screenCells(row, network);
   };

@@ -7,8 +7,9 @@ import { penetrationFromQueues } from "@/core/queues/penetration";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
 import { localQuarter } from "@/core/scores/local-time";
 import { encodeScreenDay } from "@/core/scores/screen-day-codec";
+import { joinOpenTracks } from "@/core/traversals/open-tracks";
 import { keepSettledReferences } from "@/core/traversals/settled";
-import type { Network, PingColumns, SampleFacts, Traversals } from "@/core/types";
+import type { Network, OpenTracks, PingColumns, SampleFacts, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
 import { pingClouds, screenDays, traversals as traversalTable } from "@/db/schema";
@@ -114,7 +115,7 @@ async function matchAndStore(
     days: [...new Set(daysOf(matched.traversals))],
     vehicleHash,
   });
-  const quarters = legQuarters(network, traversals);
+  const quarters = legQuarters(network, traversals, matched.openTracks);
   const penetration = penetrationFromQueues(network, traversals);
 
   await progress.tell("store", 0.1, counts.rowsRead);
@@ -163,6 +164,7 @@ async function learningSample(store: PingStore): Promise<PingColumns> {
 
 interface MatchedFile {
   traversals: Traversals;
+  openTracks: OpenTracks;
   totals: Totals;
   facts: SampleFacts;
   firstMs: number;
@@ -181,6 +183,7 @@ async function matchAll(
   const match = createMatcher(network, index);
   const sampler = createNearSampler(network.junctions, index);
   const parts: Traversals[] = [];
+  const open: OpenTracks[] = [];
   const totals: Totals = { pings: 0, duplicates: 0, jumps: 0, trips: 0, incompleteTraversals: 0 };
   let facts: SampleFacts | null = null;
   let vehicles = 0;
@@ -189,6 +192,7 @@ async function matchAll(
   for await (const bucket of store.buckets()) {
     const matched = match(bucket);
     parts.push(matched.traversals);
+    open.push(matched.openTracks);
     sampler.add(bucket);
     for (const name of Object.keys(totals) as (keyof Totals)[]) totals[name] += matched.report[name];
     vehicles += matched.facts.vehicles;
@@ -200,7 +204,7 @@ async function matchAll(
     }
     await progress.tell("match", totals.pings / counts.accepted, counts.rowsRead);
   }
-  return { traversals: joinTraversals(parts), totals, facts: facts as SampleFacts, firstMs, lastMs, clouds: sampler.finish() };
+  return { traversals: joinTraversals(parts), openTracks: joinOpenTracks(open), totals, facts: facts as SampleFacts, firstMs, lastMs, clouds: sampler.finish() };
 }
 
 function reportOf(counts: RowCounts, matched: MatchedFile, traversals: Traversals, network: Network, penetration: number): IngestReport {

@@ -1,7 +1,8 @@
 import { and, asc, eq, inArray, notInArray, or } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
 import { relistMovements } from "@/core/legs/relist";
-import { createMatcher, setReferences } from "@/core/process";
+import { createMatcher, setReferences, type Matched } from "@/core/process";
+import { joinOpenTracks } from "@/core/traversals/open-tracks";
 import { keepSettledReferences } from "@/core/traversals/settled";
 import { legQuarters } from "@/core/queues/leg-quarters";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
@@ -10,7 +11,7 @@ import { localQuarter } from "@/core/scores/local-time";
 import { mergeScreenDays } from "@/core/scores/merge-screen-days";
 import { decodeScreenDay, encodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { ScreenDay } from "@/core/scores/types";
-import type { Network, PingColumns, Traversals } from "@/core/types";
+import type { Network, OpenTracks, PingColumns, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
 import { screenDays, traversals as traversalTable, uploads } from "@/db/schema";
@@ -132,13 +133,16 @@ async function rematchUpload(ctx: Context, upload: PingUpload, job: Job, isFirst
     await readIntoStore(ctx, upload, store, names, { choose: job.choose });
     const match = createMatcher(job.network, createH3Index());
     const parts: Traversals[] = [];
+    const open: OpenTracks[] = [];
     for await (const bucket of store.buckets()) {
-      parts.push(touchedOnly(match(bucket).traversals, job));
+      const matched = match(bucket);
+      parts.push(touchedOnly(matched.traversals, job));
+      open.push(joinOpenTracks([matched.openTracks], (leg) => job.touched[leg] === 1));
     }
     if (parts.length === 0) return false;
     const traversals = joinTraversals(parts);
     setTouchedReferences(job, traversals, isFirst);
-    await replace(ctx, upload.id, job, traversals, vehicleHashes(await vehicleKey(ctx.db), names));
+    await replace(ctx, upload.id, job, { traversals, openTracks: joinOpenTracks(open) }, vehicleHashes(await vehicleKey(ctx.db), names));
     return true;
   } finally {
     await store.close();
@@ -163,7 +167,8 @@ function setTouchedReferences({ network, home, touched }: Job, traversals: Trave
   });
 }
 
-async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals, vehicleHash: BigInt64Array): Promise<void> {
+async function replace(ctx: Context, uploadId: string, job: Job, matched: Pick<Matched, "traversals" | "openTracks">, vehicleHash: BigInt64Array): Promise<void> {
+  const { traversals: all, openTracks } = matched;
   const { network, keys, touched } = job;
   const [firstMs, lastMs] = spanOf(all);
   const localTime = offsetTable(job.timeZone, firstMs, lastMs);
@@ -175,7 +180,7 @@ async function replace(ctx: Context, uploadId: string, job: Job, all: Traversals
     days: [...new Set(daysOf(all))],
     vehicleHash,
   });
-  const quarters = legQuarters(network, traversals);
+  const quarters = legQuarters(network, traversals, openTracks);
   const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
   const fresh = buildScreenDays(traversals, quarters, { movement: keys.movements, leg: keys.legs, vehicle }, localTime);
   const touchedKeys = [...keys.legs].filter((_, l) => touched[l] === 1);

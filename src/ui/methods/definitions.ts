@@ -61,7 +61,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "reach",
     term: "Reach, observed",
     meaning: [
-      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last, and they stood within ${QUEUE.memoryS} s of each other. Who stood for ${QUEUE.queuingS} s and moved up meanwhile belongs to it, whoever else was seen. Vehicles that wait inside the junction behind are not this leg’s queue.`,
+      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last, and they stood within ${QUEUE.memoryS} s of each other. Who stood for ${QUEUE.queuingS} s and moved up meanwhile belongs to it, whoever else was seen. Vehicles whose pings end in the queue count with the stops after which they drove on. Vehicles that wait inside the junction behind are not this leg’s queue.`,
       "The figure is the 95th percentile of the farthest reach in each quarter of an hour. With a few per cent of the vehicles seen, the last one seen is seldom the last one: the true tail stands farther back.",
     ],
   },
