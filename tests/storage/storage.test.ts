@@ -3,54 +3,19 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { Readable } from "node:stream";
 import { buffer } from "node:stream/consumers";
-import { ListObjectsV2Command, S3Client } from "@aws-sdk/client-s3";
-import S3rver from "s3rver";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { readEnv } from "@/env";
 import { openStorage, sweepStorage } from "@/storage/open-storage";
 import type { Storage } from "@/storage/storage";
+import { openBucket, type FilePlace } from "@tests/support/bucket";
 
-const BUCKET = "tailmark-files";
-const KEYS = { accessKeyId: "S3RVER", secretAccessKey: "S3RVER" };
-
-interface Place {
-  storage: Storage;
-  /** What a look into the place itself shows. */
-  listed(): Promise<string[]>;
-  close(): Promise<unknown>;
-}
-
-async function folderPlace(): Promise<Place> {
+async function folderPlace(): Promise<FilePlace> {
   const dataDir = await mkdtemp(join(tmpdir(), "tailmark-storage-"));
   const list = async () => (await readdir(join(dataDir, "storage"), { recursive: true, withFileTypes: true })).filter((entry) => entry.isFile());
   return {
     storage: openStorage(readEnv({ DATA_DIR: dataDir })),
     listed: async () => (await list()).map((entry) => entry.name).sort(),
     close: () => rm(dataDir, { recursive: true, force: true }),
-  };
-}
-
-/** The same settings as in front of a real store, answered by a local stand-in. */
-async function bucketPlace(): Promise<Place> {
-  const directory = await mkdtemp(join(tmpdir(), "tailmark-bucket-"));
-  const server = new S3rver({ address: "127.0.0.1", port: 0, silent: true, directory, configureBuckets: [{ name: BUCKET }] });
-  const { port } = await server.run();
-  const endpoint = `http://127.0.0.1:${port}`;
-  const storage = openStorage(
-    readEnv({ S3_BUCKET: BUCKET, S3_ENDPOINT: endpoint, S3_ACCESS_KEY_ID: KEYS.accessKeyId, S3_SECRET_ACCESS_KEY: KEYS.secretAccessKey }),
-  );
-  const client = new S3Client({ endpoint, region: "us-east-1", forcePathStyle: true, credentials: KEYS });
-  return {
-    storage,
-    async listed() {
-      const { Contents = [] } = await client.send(new ListObjectsV2Command({ Bucket: BUCKET }));
-      return Contents.map((object) => String(object.Key)).sort();
-    },
-    async close() {
-      client.destroy();
-      await server.close();
-      await rm(directory, { recursive: true, force: true });
-    },
   };
 }
 
@@ -73,10 +38,10 @@ describe("halves of files in a folder", () => {
   });
 });
 
-const PLACES = { "a folder": folderPlace, "a bucket": bucketPlace };
+const PLACES = { "a folder": folderPlace, "a bucket": openBucket };
 
 describe.each(Object.entries(PLACES))("files in %s", (_, openPlace) => {
-  let place: Place;
+  let place: FilePlace;
   let storage: Storage;
 
   beforeAll(async () => {
