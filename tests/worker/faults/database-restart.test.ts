@@ -21,6 +21,9 @@ import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
 import { forgetResults, resultChecksums } from "@tests/support/result-checksums";
 import { startWorkerProcess } from "@tests/support/worker-process";
 
+/** Enough for a reading that takes longer than the order to restart. */
+const VEHICLES = 3000;
+
 let home: string;
 let server: { url: string; stop: () => Promise<void> };
 let database: Database;
@@ -75,26 +78,45 @@ afterAll(async () => {
   rmSync(home, { recursive: true, force: true });
 });
 
+describe("a connection that is lost while somebody holds it between two queries", () => {
+  it("fails the next query and nothing else", async () => {
+    const other = openDatabase(server.url, { max: 2 });
+    try {
+      const held = await other.pool.connect();
+      const { rows } = await held.query<{ pid: number }>("select pg_backend_pid() as pid");
+      const lost = new Promise((resolve) => held.once("end", resolve));
+      await other.pool.query("select pg_terminate_backend($1)", [rows[0].pid]);
+      await lost;
+      await expect(held.query("select 1")).rejects.toThrow("connection error");
+      held.release(true);
+      expect((await other.pool.query<{ n: number }>("select 1 as n")).rows).toEqual([{ n: 1 }]);
+    } finally {
+      await other.close();
+    }
+  });
+});
+
 describe("PostgreSQL that goes down and comes up again while a file is read", () => {
   it("leaves the tables as if it had not, with the same worker going on", async () => {
     const junctions = await receive("junctions", "junctions.csv", JUNCTIONS_CSV);
     await junctions.start();
     await ingestUpload(ctx, { uploadId: junctions.uploadId });
-    const file = await receive("pings", "day.csv", crossingPings({ vehicles: 800, everyS: 20, pingS: 2 }));
+    const file = await receive("pings", "day.csv", crossingPings({ vehicles: VEHICLES, everyS: 20, pingS: 1 }));
     await file.start();
     const beganMs = performance.now();
     await ingestUpload(ctx, { uploadId: file.uploadId });
     const readingMs = performance.now() - beganMs;
     const undisturbed = await resultChecksums(database.db);
-    expect(undisturbed.traversals.rows).toBe(800);
+    expect(undisturbed.traversals.rows).toBe(VEHICLES);
     await forgetResults(database.db);
 
     const worker = await startWorkerProcess({ databaseUrl: server.url, dataDir: join(home, "data") });
     try {
       await file.start();
       await untilState(file.uploadId, ["reading"]);
-      await delay(readingMs / 2);
+      await delay(readingMs / 5);
       await restartServer();
+      expect(await stateOf(file.uploadId), "the restart came in the middle").toBe("reading");
       await database.db.execute(sql`update pgboss.job set started_on = now() - interval '1 minute' where state = 'active'`);
       await untilState(file.uploadId, ["done", "failed"]);
       expect(worker.hasEnded(), worker.output()).toBe(false);
