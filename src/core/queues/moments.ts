@@ -3,7 +3,10 @@ import { tailAt, type TailSpan } from "./joined-tails";
 import { QUARTER_MS, type QueueOptions } from "./options";
 import type { Presence } from "./presence";
 import type { Standings } from "./standings";
-import { expectedTailM, tailGrowthMs } from "./unseen-tail";
+import { expectedBehindM, longestBehindM, tailGrowthMs } from "./unseen-tail";
+
+/** From fewer vehicles than this the flow is known too badly to tell by how much it may exceed its mean. */
+const LEAST_OTHERS = 5;
 
 /** One leg's part of the columns. */
 export interface LegView {
@@ -36,10 +39,13 @@ export function createScratch(standings: number): Scratch {
   return { count: 0, index: new Uint32Array(standings), sorted: new Float64Array(standings) };
 }
 
-/** Where a queue is expected to end, and where at least, places being uncertain; metres from the stop line, 0 without one. */
+/** Where a queue ends, metres from the stop line, 0 without one. */
 export interface Tail {
   expectedM: number;
+  /** At least, places being uncertain. */
   leastM: number;
+  /** Where more vehicles than expected may have joined unseen. */
+  farthestM: number;
 }
 
 /** `reachM`: farthest standing vehicle of the column. `tail` is the same object in every call. */
@@ -51,9 +57,9 @@ export type MomentVisitor = (tMs: number, reachM: number, tail: Readonly<Tail>) 
  */
 export function eachMoment(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch, visit: MomentVisitor): number {
   const endMs = startMs + QUARTER_MS;
-  const others = othersPerSecond(leg, startMs);
-  const growthMs = tailGrowthMs(others, leg.perMetre, options);
-  const wholeGrowthMs = leg.perMetre > 0 ? others / leg.perMetre : 0;
+  const others = othersAround(leg, startMs);
+  const growthMs = tailGrowthMs(others.perSecond, leg.perMetre, options);
+  const wholeGrowthMs = leg.perMetre > 0 ? others.perSecond / leg.perMetre : 0;
   const stepMs = options.stepS * 1000;
   const sightMs = options.sightS * 1000;
   const { presence, presenceTo } = leg;
@@ -61,7 +67,7 @@ export function eachMoment(leg: LegView, startMs: number, options: QueueOptions,
   let present = leg.presenceFrom;
   let seenUntilMs = -Infinity;
   let observedS = 0;
-  const tail: Tail = { expectedM: 0, leastM: 0 };
+  const tail: Tail = { expectedM: 0, leastM: 0, farthestM: 0 };
   scratch.count = 0;
   for (let tMs = startMs + stepMs / 2; tMs < endMs; tMs += stepMs) {
     for (; present < presenceTo && presence.fromMs[present] - sightMs <= tMs; present++) {
@@ -72,25 +78,28 @@ export function eachMoment(leg: LegView, startMs: number, options: QueueOptions,
     next = remember(scratch, leg, next, tMs, options.memoryS * 1000);
     tail.expectedM = 0;
     tail.leastM = 0;
+    tail.farthestM = 0;
     takeJoined(tail, leg, tMs, wholeGrowthMs);
     if (scratch.count === 0 && tail.expectedM === 0) continue;
     const reachM = reachOf(scratch, leg.standings, options);
     takeExpected(tail, scratch, leg, reachM, tMs, growthMs, options);
+    if (others.count < LEAST_OTHERS) tail.farthestM = tail.expectedM;
     visit(tMs, reachM, tail);
   }
   return observedS;
 }
 
 /**
- * Vehicles of the sample that come on the leg a second, in this quarter and its neighbours, beside the one whose
- * queue is looked at: one is left out, since without it nobody would look.
+ * Vehicles of the sample that come on the leg in this quarter and its neighbours, and those a second, beside the one
+ * whose queue is looked at: one is left out, since without it nobody would look.
  */
-function othersPerSecond(leg: LegView, startMs: number): number {
+function othersAround(leg: LegView, startMs: number): { count: number; perSecond: number } {
   let quarters = 0;
   for (const start of [startMs - QUARTER_MS, startMs, startMs + QUARTER_MS]) if (leg.seenQuarters.has(start)) quarters++;
   const first = firstAtLeast(leg.presence.fromMs, leg.presenceAll, leg.presenceTo, startMs - QUARTER_MS);
   const last = firstAtLeast(leg.presence.fromMs, leg.presenceAll, leg.presenceTo, startMs + 2 * QUARTER_MS);
-  return quarters === 0 ? 0 : Math.max(0, last - first - 1) / ((quarters * QUARTER_MS) / 1000);
+  const count = Math.max(0, last - first - 1);
+  return { count, perSecond: quarters === 0 ? 0 : count / ((quarters * QUARTER_MS) / 1000) };
 }
 
 /** First index in from..to whose value is at least `least`; the column ascends there. */
@@ -149,7 +158,11 @@ function takeExpected(tail: Tail, scratch: Scratch, leg: LegView, reachM: number
     const k = scratch.index[i];
     const s = leg.standings.s[k];
     if (s > reachM) continue;
-    take(tail, expectedTailM(leg.standings, k, tMs, growthMs, Math.min(meanGapM, longestM - s), options), leg.standings.doubtM[k]);
+    const mostM = Math.min(meanGapM, longestM - s);
+    const behindM = expectedBehindM(leg.standings, k, tMs, growthMs, mostM, options);
+    if (Number.isNaN(behindM)) continue;
+    take(tail, s + behindM, leg.standings.doubtM[k]);
+    tail.farthestM = Math.max(tail.farthestM, s + longestBehindM(behindM, mostM, options));
   }
 }
 

@@ -16,7 +16,7 @@ export function quarterFigures(leg: LegView, startMs: number, options: QueueOpti
   const figures: QuarterFigures = { reachM: 0, reachEstimateM: 0, spilledS: Number.isNaN(fullM) ? NaN : 0, observedS: 0 };
   figures.observedS = eachMoment(leg, startMs, options, scratch, (_, reachM, tail) => {
     figures.reachM = Math.max(figures.reachM, reachM);
-    figures.reachEstimateM = Math.max(figures.reachEstimateM, reachM, tail.expectedM);
+    figures.reachEstimateM = Math.max(figures.reachEstimateM, reachM, tail.expectedM, tail.farthestM);
     if (tail.leastM >= fullM) figures.spilledS += options.stepS;
   });
   return figures;

@@ -4,6 +4,8 @@ import type { Standings } from "./standings";
 
 /** Seen vehicles that the city's density counts for beside a leg's own. */
 const PRIOR_VEHICLES = 5;
+/** Lanes of a queue; their number is not known. */
+const ASSUMED_LANES = 2;
 
 /**
  * Seen vehicles per metre of standing column, by leg: Σ(n - 1) / Σ reach, since the last of a column marks its own
@@ -38,11 +40,19 @@ export function tailGrowthMs(seenPerSecond: number, perMetre: number, options: Q
 }
 
 /**
- * Where the unseen end of the queue behind standing `k` is expected at `tMs`; NaN once the discharge, which leaves the
- * seen vehicle at its departure and runs upstream at the wave speed, has come to that end. `mostM` limits the unseen part.
+ * Road that the unseen part of the queue behind standing `k` is expected to take at `tMs`, at most `mostM`; NaN once the
+ * discharge, which leaves the seen vehicle at its departure and runs upstream at the wave speed, has come to its end.
  */
-export function expectedTailM(standings: Standings, k: number, tMs: number, growthMs: number, mostM: number, options: QueueOptions): number {
+export function expectedBehindM(standings: Standings, k: number, tMs: number, growthMs: number, mostM: number, options: QueueOptions): number {
   const behindM = Math.min(mostM, (growthMs * (tMs - standings.joinedMs[k])) / 1000);
   const dischargedM = (options.waveSpeedMs * (tMs - standings.toMs[k])) / 1000;
-  return dischargedM <= behindM ? standings.s[k] + behindM : NaN;
+  return dischargedM <= behindM ? behindM : NaN;
+}
+
+/**
+ * Road that the unseen part takes where it is longer than expected by one standard deviation, as the longest of a
+ * quarter's queues is: arrivals are counted as Poisson's, and two lanes are assumed to share the road.
+ */
+export function longestBehindM(behindM: number, mostM: number, options: QueueOptions): number {
+  return Math.min(mostM, behindM + Math.sqrt((behindM * options.jamSpacingM) / ASSUMED_LANES));
 }

@@ -69,7 +69,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "reach-estimate",
     term: "Reach, estimated",
     meaning: [
-      "A model, shown beside the observed reach and never in its place: where the unseen end of the queue is expected, from the rate at which seen vehicles arrive and how closely they stand, until the discharge has run back to it.",
+      "A model, shown beside the observed reach and never in its place: where the unseen end of the queue is expected, from the rate at which seen vehicles arrive and how closely they stand, until the discharge has run back to it. For the farthest of a quarter one standard deviation of the vehicles joined is added, for two lanes.",
     ],
     formula: "vehicles behind the last one seen = (1 − p) · λ · τ",
     source: "Comert and Cetin, European Journal of Operational Research 197, 2009.",
