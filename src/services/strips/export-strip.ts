@@ -24,9 +24,13 @@ const HEADER = [
   "first_date",
   "last_date",
   "method_version",
+  "least_vehicles_in_a_cell",
 ];
 
-/** The cells of a strip as the page draws them, one row each; cells in which nobody was seen are left out. */
+/** On a single day a cell of one vehicle is a piece of that vehicle's path: exports hold aggregates. */
+const LEAST_VEHICLES_OF_A_DAY = 2;
+
+/** The cells of a strip as the page draws them, one row each; cells in which nobody, or on one day one vehicle, was seen are left out. */
 export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>): Promise<AsyncGenerator<string>> {
   requirePermission(ctx, "strip.export");
   const { query } = GetTracks.parse(input);
@@ -39,9 +43,10 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
   const strip = createStrip(specOfWindow(window, cellS, query.cellM, waveKmh === null ? Infinity : waveKmh / 3.6));
   addTracks(strip, set);
   const speeds = speedsOf(strip);
+  const leastVehicles = query.day !== undefined || view.days.length <= 1 ? LEAST_VEHICLES_OF_A_DAY : 1;
   function* rows(): Generator<Cell[]> {
     for (let cell = 0; cell < speeds.length; cell++) {
-      if (strip.vehicles[cell] === 0) continue;
+      if (strip.vehicles[cell] < leastVehicles) continue;
       const { tS, sM } = cellCentre(strip.spec, cell);
       yield [
         Math.round(tS * 10) / 10,
@@ -57,6 +62,7 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
         query.day ?? view.basis.firstDate,
         query.day ?? view.basis.lastDate,
         view.basis.methodVersion,
+        leastVehicles,
       ];
     }
   }

@@ -87,6 +87,9 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
           Save cells as CSV
         </ButtonLink>
       ) : null}
+      {mayExport && (query.day !== undefined || view.days.length <= 1) ? (
+        <p className="self-center text-sm text-ink-soft">Of a single day, cells with fewer than two vehicles are left out of the CSV.</p>
+      ) : null}
       {failure ? (
         <p role="alert" className="w-full text-sm text-tail">
           {failure}
