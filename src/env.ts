@@ -18,6 +18,8 @@ const Env = z.object({
   NEXTAUTH_SECRET: z.string().min(32),
   /** Address under which people reach the application; links in mail start with it. */
   BASE_URL: z.url({ protocol: /^https?$/ }).transform((url) => url.replace(/\/+$/, "")),
+  /** Proxies in front that add to X-Forwarded-For; what clients write there themselves is not believed. 0: people connect directly. */
+  TRUSTED_PROXIES: z.coerce.number().int().min(0).max(9).default(0),
   /** Folder of uploads, where no bucket is named, and, in demo and tests, of kept mail. */
   DATA_DIR: z.string().default(".data").transform((path) => resolve(path)),
   /** Bucket of an S3-compatible store that keeps the uploads instead of the folder; web and workers may then run on several machines. */

@@ -23,6 +23,7 @@ const MAY_IMPORT: Record<string, readonly string[]> = {
   ops: ["core", "domain", "geo", "formats", "db", "storage", "mail", "jobs", "services", "worker", "seed", "env"],
   env: [],
   proxy: [],
+  instrumentation: ["server"],
 };
 
 /** npm packages of the layers that are kept free of them, or nearly. */

@@ -3,6 +3,7 @@ import Credentials from "next-auth/providers/credentials";
 import { env } from "@/env";
 import { signIn } from "@/services/auth/sign-in";
 import { addressFrom } from "./client-address";
+import { PEER_HEADER } from "./peer-header";
 import { contextOf } from "./runtime";
 import { sessionCookieName } from "./session";
 
@@ -26,7 +27,7 @@ export function authOptions(): AuthOptions {
         credentials: { email: { type: "email" }, password: { type: "password" } },
         async authorize(given, request) {
           const ctx = contextOf({ type: "nobody" });
-          const address = addressFrom(request.headers?.["x-forwarded-for"]);
+          const address = addressFrom({ forwardedFor: request.headers?.["x-forwarded-for"], peer: request.headers?.[PEER_HEADER] }, settings.TRUSTED_PROXIES);
           const person = await signIn(ctx, { email: given?.email ?? "", password: given?.password ?? "", address });
           return person && { id: person.userId, name: person.name, email: person.email };
         },

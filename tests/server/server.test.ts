@@ -29,10 +29,20 @@ describe("a request that changes something", () => {
 });
 
 describe("the address of a client", () => {
-  it("is what the nearest server wrote, not what the client claims", () => {
-    expect(addressFrom("6.6.6.6, 10.0.0.7")).toBe("10.0.0.7");
-    expect(addressFrom("10.0.0.7")).toBe("10.0.0.7");
-    expect(addressFrom(undefined)).toBe("unknown");
+  const claimed = { forwardedFor: "6.6.6.6, 10.0.0.7", peer: "10.0.0.1" };
+
+  it.each([
+    [0, "10.0.0.1"],
+    [1, "10.0.0.7"],
+    [2, "6.6.6.6"],
+    [5, "6.6.6.6"],
+  ])("with %d trusted proxies is %s, whatever stands left of it", (proxies, address) => {
+    expect(addressFrom(claimed, proxies)).toBe(address);
+  });
+
+  it("is the connection's where nothing was forwarded, and one for all where nobody knows", () => {
+    expect(addressFrom({ forwardedFor: undefined, peer: "10.0.0.1" }, 1)).toBe("10.0.0.1");
+    expect(addressFrom({ forwardedFor: undefined, peer: undefined }, 0)).toBe("unknown");
   });
 });
 

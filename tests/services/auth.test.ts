@@ -2,7 +2,7 @@ import { eq } from "drizzle-orm";
 import { beforeEach, describe, expect, it } from "vitest";
 import { auditEvents, passwordTokens, signInAttempts, users } from "@/db/schema";
 import { actorOfSession } from "@/services/auth/actor-of-session";
-import { ACCOUNT_LIMIT, ADDRESS_LIMIT, WINDOW_MINUTES } from "@/services/auth/attempts";
+import { ACCOUNT_LIMIT, ADDRESS_LIMIT, PAIR_LIMIT, WINDOW_MINUTES } from "@/services/auth/attempts";
 import { askForReset } from "@/services/auth/ask-for-reset";
 import { hashPassword } from "@/services/auth/passwords";
 import { sendPasswordMail } from "@/services/auth/send-password-mail";
@@ -46,16 +46,23 @@ describe("signing in", () => {
     expect(await attempt(PASSWORD)).toBeNull();
   });
 
-  it("refuses even the right password after too many failures of the account, until the window is over", async () => {
+  it("refuses even the right password after too many failures from one address, until the window is over; the owner elsewhere comes in", async () => {
+    for (let i = 0; i < 2 * PAIR_LIMIT; i++) expect(await attempt("wrong", "10.0.0.1")).toBeNull();
+    expect(await attempt(PASSWORD, "10.0.0.1")).toBeNull();
+    expect(await attempt(PASSWORD, "10.0.0.99")).not.toBeNull();
+    expect(await attempt(PASSWORD, "10.0.0.1", EMAIL, minutesLater(WINDOW_MINUTES))).not.toBeNull();
+  });
+
+  it("refuses an account that is tried from many addresses", async () => {
     for (let i = 0; i < ACCOUNT_LIMIT; i++) expect(await attempt("wrong", `10.0.0.${i}`)).toBeNull();
     expect(await attempt(PASSWORD, "10.0.0.99")).toBeNull();
     expect(await attempt(PASSWORD, "10.0.0.99", EMAIL, minutesLater(WINDOW_MINUTES))).not.toBeNull();
   });
 
   it("lets attempts that are sent side by side through no more often than those sent one by one", async () => {
-    const guesses = Array.from({ length: 12 }, (_, i) => (i < ACCOUNT_LIMIT ? "wrong" : PASSWORD));
-    for (const guess of guesses.slice(0, ACCOUNT_LIMIT)) await attempt(guess);
-    const rest = await Promise.all(guesses.slice(ACCOUNT_LIMIT).map((guess) => attempt(guess)));
+    const guesses = Array.from({ length: 12 }, (_, i) => (i < PAIR_LIMIT ? "wrong" : PASSWORD));
+    for (const guess of guesses.slice(0, PAIR_LIMIT)) await attempt(guess);
+    const rest = await Promise.all(guesses.slice(PAIR_LIMIT).map((guess) => attempt(guess)));
     expect(rest).toEqual(rest.map(() => null));
   });
 
@@ -66,9 +73,9 @@ describe("signing in", () => {
   });
 
   it("forgets the account's failures after a success", async () => {
-    for (let i = 0; i < ACCOUNT_LIMIT - 1; i++) await attempt("wrong");
+    for (let i = 0; i < PAIR_LIMIT - 1; i++) await attempt("wrong");
     expect(await attempt(PASSWORD)).not.toBeNull();
-    for (let i = 0; i < ACCOUNT_LIMIT - 1; i++) await attempt("wrong");
+    for (let i = 0; i < PAIR_LIMIT - 1; i++) await attempt("wrong");
     expect(await attempt(PASSWORD)).not.toBeNull();
   });
 });

@@ -35,7 +35,7 @@ export const passwordTokens = pgTable(
 
 /** Failed sign-ins by account and by address within the current window. */
 export const signInAttempts = pgTable("sign_in_attempts", {
-  /** `account:<e-mail>` or `address:<ip>` */
+  /** `account:<e-mail>`, `address:<ip>`, `pair:<e-mail> <ip>` or `reset:<ip>` */
   key: text("key").primaryKey(),
   failures: integer("failures").notNull(),
   windowStart: instant("window_start").notNull(),

@@ -1,9 +1,10 @@
 import { and, eq, gt, isNull } from "drizzle-orm";
-import { passwordTokens, signInAttempts, users } from "@/db/schema";
+import { passwordTokens, users } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { SetPassword } from "@/domain/people";
 import { recordAudit } from "../audit/record-audit";
 import type { Context } from "../context";
+import { forgetAccountAttempts } from "./attempts";
 import { hashPassword } from "./passwords";
 import { hashToken } from "./tokens";
 
@@ -29,7 +30,7 @@ export async function setPassword(ctx: Context, input: SetPassword): Promise<{ e
       .where(and(eq(users.id, token.userId), isNull(users.disabledAt)))
       .returning({ email: users.email });
     if (!user) throw new AppError("invalid", STALE);
-    await tx.delete(signInAttempts).where(eq(signInAttempts.key, `account:${user.email.toLowerCase()}`));
+    await forgetAccountAttempts(tx, user.email.toLowerCase());
     await recordAudit(tx, ctx, { action: token.purpose === "invitation" ? "took up invitation" : "set new password", subject: user.email });
     return user;
   });
