@@ -3,6 +3,7 @@ import { beforeEach, describe, expect, it } from "vitest";
 import { auditEvents, passwordTokens, signInAttempts, users } from "@/db/schema";
 import { actorOfSession } from "@/services/auth/actor-of-session";
 import { ACCOUNT_LIMIT, ADDRESS_LIMIT, PAIR_LIMIT, WINDOW_MINUTES } from "@/services/auth/attempts";
+import { answerResetRequest } from "@/services/auth/answer-reset-request";
 import { askForReset } from "@/services/auth/ask-for-reset";
 import { hashPassword } from "@/services/auth/passwords";
 import { sendPasswordMail } from "@/services/auth/send-password-mail";
@@ -153,9 +154,21 @@ describe("a password link", () => {
 describe("asking for a new password", () => {
   const ask = (email: string, address = "10.1.1.1") => askForReset(ctx, { email, address });
 
-  it("answers alike for known and unknown accounts", async () => {
-    expect(await ask(EMAIL)).toBeUndefined();
-    expect(await ask("unknown@test.example")).toBeUndefined();
+  it("does the same for known and unknown accounts; only the worker tells them apart", async () => {
+    const queued: unknown[] = [];
+    const queue = { ...ctx.queue, enqueue: async (job: { name: string }, payload: unknown) => void queued.push([job.name, payload]) } as typeof ctx.queue;
+    for (const email of [EMAIL, "unknown@test.example"]) expect(await askForReset({ ...ctx, queue }, { email, address: "10.1.1.1" })).toBeUndefined();
+    expect(queued).toEqual([EMAIL, "unknown@test.example"].map((email) => ["answer-reset-request", { email }]));
+
+    const worker = await testContext("job");
+    await answerResetRequest(worker, { email: "unknown@test.example" });
+    expect(worker.sent).toEqual([]);
+    await answerResetRequest(worker, { email: EMAIL });
+    expect(worker.sent.map(({ to, subject }) => [to, subject])).toEqual([[EMAIL, "Set a new password for Tailmark in My city"]]);
+    await ctx.db.update(users).set({ disabledAt: TEST_NOW }).where(eq(users.id, userId));
+    await answerResetRequest(worker, { email: EMAIL });
+    expect(worker.sent).toHaveLength(1);
+    await expect(answerResetRequest(ctx, { email: EMAIL })).rejects.toThrow("by the worker only");
   });
 
   it("is limited by address", async () => {

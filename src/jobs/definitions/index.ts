@@ -1,7 +1,8 @@
+import { answerResetRequest } from "./answer-reset-request";
 import { ingestUpload } from "./ingest-upload";
 import { reprocessLegs } from "./reprocess-legs";
 import { sendPasswordMail } from "./send-password-mail";
 import { sendUploadMail } from "./send-upload-mail";
 
 /** Every queue of the installation; a job that is not listed here cannot be queued. */
-export const JOBS = [ingestUpload, reprocessLegs, sendPasswordMail, sendUploadMail] as const;
+export const JOBS = [answerResetRequest, ingestUpload, reprocessLegs, sendPasswordMail, sendUploadMail] as const;
