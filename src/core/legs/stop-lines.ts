@@ -64,14 +64,28 @@ export function findStopLine(heads: number[]): number {
   return first - STANDS_BEFORE_M;
 }
 
-/** Moves the stop lines of derived legs to where queues begin. */
-export function placeStopLines(legs: Leg[], usage: Usage, carried: Set<string>): Leg[] {
+/** Moves the stop lines of derived legs to where queues begin; where too few stood, as far out as the junction's others. */
+export function placeStopLines(legs: Leg[], usage: Pick<Usage, "heads">, carried: Set<string>): Leg[] {
   const isFree = (leg: Leg): boolean =>
     leg.origin === "derived" && !leg.locked && (!carried.has(leg.id) || leg.stopLineOrigin === "default");
-  return legs.map((leg, i) => {
+  const placed = legs.map((leg, i) => {
     const shift = isFree(leg) ? findStopLine(usage.heads[i]) : NaN;
-    if (Number.isNaN(shift) || leg.lengthM - shift < 20) return leg;
-    const line = slice(leg.line, shift, leg.lengthM);
-    return { ...leg, line, lengthM: lengthOf(line), bearingDeg: legBearingDeg(line), stopLineOrigin: "derived" as const };
+    return Number.isNaN(shift) ? leg : moved(leg, shift, "derived");
   });
+  return placed.map((leg) => {
+    if (!isFree(leg) || leg.stopLineOrigin !== "default") return leg;
+    const others = placed.filter((other) => other.junction === leg.junction && other.stopLineOrigin !== "default").map(outM);
+    return others.length === 0 ? leg : moved(leg, others.reduce((sum, m) => sum + m, 0) / others.length - outM(leg), "default");
+  });
+}
+
+/** Distance of the stop line from the junction's point, m. */
+function outM(leg: Leg): number {
+  return Math.hypot(leg.line[0], leg.line[1]);
+}
+
+function moved(leg: Leg, shift: number, stopLineOrigin: Leg["stopLineOrigin"]): Leg {
+  if (leg.lengthM - shift < 20) return leg;
+  const line = slice(leg.line, shift, leg.lengthM);
+  return { ...leg, line, lengthM: lengthOf(line), bearingDeg: legBearingDeg(line), stopLineOrigin };
 }

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { findStopLine } from "@/core/legs/stop-lines";
+import { findStopLine, placeStopLines } from "@/core/legs/stop-lines";
+import type { Leg } from "@/core/types";
 
 /** Half a car and a gap lie between the first vehicle's place and the line. */
 const STANDS_BEFORE_M = 3;
@@ -24,5 +25,30 @@ describe("stop line from the places of standing vehicles", () => {
 
   it("says nothing where fewer than eight stood", () => {
     expect(findStopLine([1, 2, 3, 4, 5, 6, 7])).toBeNaN();
+  });
+});
+
+describe("stop lines of a junction", () => {
+  /** Legs from the south and from the east, both begun at 14 m by default. */
+  const legOf = (id: string, x: number, y: number): Leg => ({
+    id, junction: 0, name: id, bearingDeg: 0, line: Float64Array.of(14 * x, 14 * y, 114 * x, 114 * y), lengthM: 100, upstreamExit: -1, storageM: NaN,
+    freeSpeedMs: 14, speedLimitMs: NaN, origin: "derived", stopLineOrigin: "default", locked: false, support: 20, doubts: [],
+  });
+  const legs = [legOf("S", 0, -1), legOf("E", 1, 0)];
+
+  it("go as far out as the others of the junction where too few stood", () => {
+    const [south, east] = placeStopLines(legs, { heads: [headsOf(-4), [3, 5]] }, new Set());
+    expect(south.stopLineOrigin).toBe("derived");
+    // Stood 4 m nearer and half a car before the line: at 7 m instead of 14 m.
+    expect(Math.abs(-south.line[1] - 7)).toBeLessThanOrEqual(1);
+    expect(east.stopLineOrigin).toBe("default");
+    expect(east.line[0]).toBeCloseTo(-south.line[1], 6);
+    expect(east.lengthM).toBeCloseTo(100 + 14 - east.line[0], 6);
+  });
+
+  it("stay where nobody stood at the junction, or the leg is locked", () => {
+    expect(placeStopLines(legs, { heads: [[], []] }, new Set())).toEqual(legs);
+    const locked = { ...legs[1], locked: true };
+    expect(placeStopLines([legs[0], locked], { heads: [headsOf(-4), []] }, new Set())[1]).toEqual(locked);
   });
 });
