@@ -26,6 +26,18 @@ describe("the city's settings", () => {
     await expect(saveSettings(admin, { ...valid, periods })).rejects.toThrow("must end after it begins");
   });
 
+  it("refuse a time zone that the server knows and the database does not", async () => {
+    const admin = await testContext("admin");
+    // To Node the letters mean Kolkata's zone, to PostgreSQL they are an abbreviation of Jerusalem's.
+    const lettersOnly = { ...CitySettings.parse({}), timeZone: "IST" };
+    await expect(saveSettings(admin, lettersOnly)).rejects.toMatchObject({
+      code: "invalid",
+      fieldErrors: { timeZone: ["The database does not know the time zone IST. Give an area and place, such as Atlantic/Azores."] },
+    });
+    expect(await saveSettings(admin, { ...lettersOnly, timeZone: "Asia/Kolkata" })).toMatchObject({ timeZone: "Asia/Kolkata" });
+    await saveSettings(admin, CitySettings.parse({}));
+  });
+
   it("keep time zone and side of the road once pings are being read in; the rest may change", async () => {
     const admin = await testContext("admin");
     const before = await getSettings(admin);

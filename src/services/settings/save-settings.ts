@@ -12,11 +12,20 @@ export async function saveSettings(ctx: Context, input: CitySettings): Promise<C
   const next = CitySettings.parse(input);
   await ctx.db.transaction(async (tx) => {
     const before = await getSettings({ db: tx });
+    await requireKnownZone(tx, next.timeZone);
     await refuseLateChange(tx, before, next);
     await writeSettings(tx, next, ctx.now);
     await recordAudit(tx, ctx, { action: "changed settings", subject: next.cityName, detail: { before, after: next } });
   });
   return next;
+}
+
+/** Strips reckon by the database's zones and all else by the server's: some names mean two zones. */
+async function requireKnownZone(db: Db, timeZone: string): Promise<void> {
+  const { rows } = await db.execute(sql`select 1 from pg_timezone_names where lower(name) = lower(${timeZone})`);
+  if (rows.length > 0) return;
+  const sentence = `The database does not know the time zone ${timeZone}. Give an area and place, such as Atlantic/Azores.`;
+  throw new AppError("invalid", sentence, { fieldErrors: { timeZone: [sentence] } });
 }
 
 /** Local days and turns of what is stored rest on these two: changed later, old and new figures would not fit together. */
