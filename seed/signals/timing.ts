@@ -1,3 +1,4 @@
+import { websterCycleS } from "@/core/models/webster-delay";
 import type { City, CityNode } from "../network/types";
 import { gapCapacityVehH, stagesOf, type Stage } from "./stages";
 
@@ -53,10 +54,10 @@ function legRatio(city: City, leg: number, stage: Stage, flow: Float64Array): nu
   return Math.max(others / spread, sum.through / (throughLanes * 0.95), turning * 1.08) / SATURATION_VEH_H;
 }
 
-/** Webster (1958): near-optimal cycle and greens in proportion to the flow ratios. */
-export function websterCycleS(ratios: number[]): number {
+/** Webster's near-optimal cycle; flow ratios that sum up to more than can be served are taken for the most that can. */
+export function cycleOfStagesS(ratios: number[]): number {
   const total = Math.min(0.9, ratios.reduce((sum, ratio) => sum + ratio, 0));
-  return (1.5 * LOST_S * ratios.length + 5) / (1 - total);
+  return websterCycleS(LOST_S * ratios.length, total);
 }
 
 export function timeNode(city: City, node: CityNode, flow: Float64Array, cycleS: number): NodeTiming {
@@ -77,7 +78,7 @@ export const CYCLES_S = { shortest: 75, longest: 120, step: 5 };
 /** The shorter of the cycles that keep every stage below the wanted degree of saturation, but not below Webster's. */
 export function chooseCycleS(city: City, node: CityNode, flow: Float64Array): number {
   const first = timeNode(city, node, flow, CYCLES_S.shortest);
-  const websterS = Math.round((WEBSTER_ALLOWANCE * websterCycleS(first.ratios)) / CYCLES_S.step) * CYCLES_S.step;
+  const websterS = Math.round((WEBSTER_ALLOWANCE * cycleOfStagesS(first.ratios)) / CYCLES_S.step) * CYCLES_S.step;
   let cycleS = Math.min(CYCLES_S.longest, Math.max(CYCLES_S.shortest, websterS));
   while (cycleS < CYCLES_S.longest && timeNode(city, node, flow, cycleS).saturation > WANTED_SATURATION) cycleS += CYCLES_S.step;
   return cycleS;

@@ -42,18 +42,13 @@ export function learnNetwork(
   return learnFromTrips(cleanPings(pings).trips, junctions, index, options, prior);
 }
 
-/** Matches batches of whole vehicles over one network: build it once, call it for each batch. */
+/** Stage 5: matches batches of whole vehicles over one network: build it once, call it for each batch. Each vehicle's result is independent of all others. O(pings). */
 export function createMatcher(network: Network, index: JunctionIndex): (pings: PingColumns) => Matched {
   const graph = createGraph(network, index);
   return (pings) => {
     const cleaned = cleanPings(pings);
     return matchCleaned(cleaned.trips, cleaned.report, graph, pings);
   };
-}
-
-/** Stage 5 on one batch of whole vehicles. Each vehicle's result is independent of all others. O(pings). */
-export function matchTraversals(network: Network, pings: PingColumns, index: JunctionIndex): Matched {
-  return createMatcher(network, index)(pings);
 }
 
 /** Stages 2 to 6 on one batch in memory, and the share of traffic that it shows. */

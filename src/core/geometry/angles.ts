@@ -24,20 +24,6 @@ export function bearingDeg(eastM: number, northM: number): number {
   return deg < 0 ? deg + 360 : deg;
 }
 
-/** Mean direction of weighted bearings by the resultant vector; NaN where they cancel out (length below 1e-9). */
-export function meanBearingDeg(bearings: ArrayLike<number>, weights?: ArrayLike<number>): number {
-  let east = 0;
-  let north = 0;
-  let total = 0;
-  for (let i = 0; i < bearings.length; i++) {
-    const weight = weights ? weights[i] : 1;
-    east += weight * Math.sin(bearings[i] / DEG);
-    north += weight * Math.cos(bearings[i] / DEG);
-    total += weight;
-  }
-  return Math.hypot(east, north) > 1e-9 * total ? bearingDeg(east, north) : NaN;
-}
-
 const POINTS = ["north", "north-east", "east", "south-east", "south", "south-west", "west", "north-west"] as const;
 
 /** The compass word, of eight, nearest to a bearing. */

@@ -1,4 +1,3 @@
-import { signedTurnDeg } from "@/core/geometry/angles";
 import { draftExit, draftLeg, nearestBearing, seenFrom } from "@/core/legs/draft";
 import type { Frame } from "@/core/legs/frame";
 import { LEARNING } from "@/core/legs/learning";
@@ -96,9 +95,4 @@ function prolong(arm: Arm, frame: Frame): Arm {
   const share = Math.max(0, distance - LEARNING.boxM) / distance;
   const line = [...arm.line, x + share * (other.x - x), y + share * (other.y - y)];
   return { ...arm, line, meets };
-}
-
-/** Signed turn from a leg to an exit by their bearings at the junction. */
-export function turnBetween(leg: Leg, exit: Exit): number {
-  return signedTurnDeg(leg.bearingDeg, exit.bearingDeg);
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { angleBetweenDeg, bearingDeg, compassWord, meanBearingDeg, normaliseDeg, signedTurnDeg } from "@/core/geometry/angles";
+import { angleBetweenDeg, bearingDeg, compassWord, normaliseDeg, signedTurnDeg } from "@/core/geometry/angles";
 
 describe("angles", () => {
   it.each([
@@ -30,13 +30,6 @@ describe("angles", () => {
     expect(bearingDeg(0, -1)).toBe(180);
     expect(bearingDeg(-1, 1)).toBe(315);
     expect(bearingDeg(0, 0)).toBeNaN();
-  });
-
-  // Fisher, Statistical Analysis of Circular Data (1993); values checked with the R package circular 0.4-95.
-  it("averages bearings by their resultant", () => {
-    expect(meanBearingDeg([350, 10, 20, 5])).toBeCloseTo(6.271074, 5);
-    expect(meanBearingDeg([15, 20, 35, 40, 55, 60, 350])).toBeCloseTo(30.957782, 5);
-    expect(meanBearingDeg([0, 180])).toBeNaN();
   });
 
   it("names the nearest of eight compass points", () => {
