@@ -6,6 +6,7 @@ import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";
 import { createCourse, estimateSpeeds, KNOTS, smoothForward, timeAt, type Course } from "@/core/traversals/course";
 import { fillGaps } from "@/core/traversals/fill-gaps";
+import { KNOTS_A_STEP } from "@/core/traversals/share-wait";
 import { filledEndMs, filledStartMs } from "@/core/traversals/fill-ends";
 import type { OpenTrackBuilder } from "@/core/traversals/open-tracks";
 import { summariseStops } from "@/core/traversals/stops";
@@ -47,7 +48,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     return found;
   };
   let seen: Course = createCourse(256);
-  let course: Course = createCourse(1024);
+  let course: Course = createCourse(256 * KNOTS_A_STEP);
   let trackMs = new Float64Array(0);
   let trackS = new Float64Array(0);
 
@@ -62,7 +63,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       const size = chain.pings.length;
       if (size > seen.tMs.length) {
         seen = createCourse(size * 2);
-        course = createCourse(size * 8);
+        course = createCourse(size * 2 * KNOTS_A_STEP);
       }
       if (trackMs.length < course.tMs.length + 2) {
         trackMs = new Float64Array(course.tMs.length + 2);

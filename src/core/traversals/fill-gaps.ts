@@ -1,4 +1,5 @@
 import { KNOTS, type Course } from "@/core/traversals/course";
+import { shareWait } from "@/core/traversals/share-wait";
 import { STOPPING } from "@/core/traversals/stops";
 
 const { brakeMs2, speedUpMs2, stopMs } = STOPPING;
@@ -28,7 +29,8 @@ export const FILLING = Object.freeze({
  * Copies a course and puts points in where kinematics tell what happened between two pings: when a standing vehicle
  * set off, when a vehicle that now stands came to a stand, and a stop in between that the time cannot explain
  * otherwise. Braking 2.6 and speeding up 1.9 m/s2. `lines` are the path distances of the stop lines, ascending.
- * `to` must hold four times the points of `from`. O(n).
+ * Where the step passes more stop lines, the wait is shared with them (see shareWait). `to` must hold
+ * KNOTS_A_STEP times the points of `from`. O(n).
  */
 export function fillGaps(from: Course, lines: ArrayLike<number>, to: Course): void {
   to.length = 0;
@@ -40,7 +42,10 @@ export function fillGaps(from: Course, lines: ArrayLike<number>, to: Course): vo
     const seconds = (from.tMs[i + 1] - from.tMs[i]) / 1000;
     const isKnown = from.speedMs[i] >= 0 && from.speedMs[i + 1] >= 0;
     const passed = line > 0 ? lines[line - 1] : -Infinity;
-    if (seconds >= FILLING.leastStepS && isKnown) fillStep(from, i, passed, line < lines.length ? lines[line] : Infinity, to);
+    if (seconds < FILLING.leastStepS || !isKnown) continue;
+    const first = to.length;
+    fillStep(from, i, passed, line < lines.length ? lines[line] : Infinity, to);
+    if (to.length > first) shareWait(from, i, lines, line, first, to);
   }
 }
 

@@ -2,10 +2,11 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { createCourse, timeAt, type Course } from "@/core/traversals/course";
 import { fillGaps } from "@/core/traversals/fill-gaps";
+import { KNOTS_A_STEP } from "@/core/traversals/share-wait";
 import { courseOf } from "./courses";
 
 function filled(from: Course, lines: number[] = []): { seconds: number; metres: number; ms: number }[] {
-  const to = createCourse(from.length * 4);
+  const to = createCourse(from.length * KNOTS_A_STEP);
   fillGaps(from, lines, to);
   return Array.from({ length: to.length }, (_, i) => ({ seconds: to.tMs[i] / 1000, metres: to.distanceM[i], ms: to.speedMs[i] }));
 }
