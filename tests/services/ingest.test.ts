@@ -10,6 +10,7 @@ import { ScreenQuery } from "@/domain/screen";
 import { StripQuery } from "@/domain/junction";
 import type { UploadKind } from "@/domain/upload";
 import { raiseDataVersion } from "@/services/catalogue/catalogue";
+import { getCoverage } from "@/services/coverage/get-coverage";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
 import { readJunctionPoints, readNetwork, storeNetwork } from "@/services/ingest/network-rows";
 import { exportScreen } from "@/services/screens/export-screen";
@@ -87,6 +88,21 @@ describe("ingest", () => {
     expect(seen.map((movement) => [movement.turn, movement.vehicles])).toEqual(Array(4).fill(["through", 60]));
     const set = decodeTrackSet((await getTracks(engineer, { legId: found.legs[0].id, query: StripQuery.parse({ period: "all" }) })).buffer);
     expect(set.tracks).toBe(60);
+  });
+
+  it("counts coverage once for each state of the data", async () => {
+    const coverage = await getCoverage(engineer);
+    expect(coverage).toEqual({
+      junctions: 1,
+      covered: 1,
+      days: [{ date: "2026-03-03", traversals: 240, junctions: 1, medianIntervalS: coverage.days[0].medianIntervalS }],
+      uncovered: [],
+    });
+    expect(await getCoverage(engineer)).toBe(coverage);
+    await raiseDataVersion(job.db);
+    const afresh = await getCoverage(engineer);
+    expect(afresh).not.toBe(coverage);
+    expect(afresh).toEqual(coverage);
   });
 
   it("exports a strip in the cells that a page would draw", async () => {

@@ -1,11 +1,12 @@
 import { eq } from "drizzle-orm";
 import { z } from "zod";
-import { scoreProfile, type ProfileQuarter } from "@/core/scores/score-profile";
+import type { ProfileQuarter } from "@/core/scores/score-profile";
 import { corridors, junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { WhenQuery, type JunctionView, type ProfilePoint } from "@/domain/junction";
 import { estimateView } from "@/domain/screen";
 import { requirePermission, type Context } from "../context";
+import { profileOf } from "../screens/profile-of";
 import { finite, rowOf } from "../screens/ranked-row";
 import { basisOf, scoreCity } from "../screens/score-city";
 import { exitView, legView, movementView } from "./leg-view";
@@ -44,14 +45,13 @@ export async function getJunction(ctx: Context, input: z.input<typeof GetJunctio
     scoreCity(ctx, { ...when, turn: "any" }),
   ]);
   const listed = scored.catalogue.junctions.get(junctionId);
-  const profile = scoreProfile(scored.data.days, { movements: movementRows.map((movement) => movement.id), legs: legIds });
   return {
     ...row,
     score: listed ? rowOf(listed, scored) : null,
     legs: legRows.map((leg) => legView(leg, scored.legScores.get(leg.id))),
     exits: exitRows.map(exitView),
     movements: movementRows.map((movement) => movementView(movement, scored.movementScores.get(movement.id))),
-    profile: profile.map(profilePoint),
+    profile: profileOf(scored, movementRows, legIds).map(profilePoint),
     basis: basisOf(scored),
   };
 }

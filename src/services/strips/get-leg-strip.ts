@@ -1,6 +1,5 @@
 import { and, eq, inArray, sql } from "drizzle-orm";
 import { z } from "zod";
-import { scoreProfile } from "@/core/scores/score-profile";
 import { junctions, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { StripQuery, type LegStripView } from "@/domain/junction";
@@ -8,6 +7,7 @@ import { requirePermission, type Context } from "../context";
 import { profilePoint } from "../junctions/get-junction";
 import { legView, movementView } from "../junctions/leg-view";
 import { readLegs, readMovements } from "../junctions/junction-rows";
+import { profileOf } from "../screens/profile-of";
 import { basisOf, scoreCity } from "../screens/score-city";
 import { chosenDates } from "./chosen-dates";
 
@@ -41,7 +41,7 @@ export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStri
     leg: legView(leg, scored.legScores.get(legId)),
     movements: movementRows.map((movement) => movementView(movement, scored.movementScores.get(movement.id))),
     days: counted,
-    profile: scoreProfile(scored.data.days, { movements: movementRows.map((movement) => movement.id), legs: [legId] }).map(profilePoint),
+    profile: profileOf(scored, movementRows, [legId]).map(profilePoint),
     basis: basisOf(scored),
   };
 }
