@@ -6,6 +6,16 @@ import { ScreenQuery, type EstimateView, type RankedJunction, type RawParams, ty
 export const WhenQuery = ScreenQuery.pick({ period: true, from: true, to: true, days: true, since: true, until: true });
 export type WhenQuery = z.infer<typeof WhenQuery>;
 
+/** A junction in a list to choose from. */
+export interface ListedJunction {
+  id: number;
+  code: string;
+  name: string;
+  lat: number;
+  lon: number;
+  corridor: string | null;
+}
+
 export interface LegView {
   id: number;
   name: string;

@@ -141,3 +141,15 @@ export interface ScreenResult {
     toMin: number;
   };
 }
+
+export interface CorridorName {
+  id: number;
+  name: string;
+}
+
+/** A published report in the list of them. */
+export interface ListedReport {
+  id: string;
+  title: string;
+  publishedAt: string;
+}

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { emptyColumns, openPingStore } from "@/services/ingest/ping-store";
+import { emptyColumns } from "@/formats/pings/ping-columns";
+import { openPingStore } from "@/services/ingest/ping-store";
 import type { PingColumns } from "@/core/types";
 
 function batchOf(rows: [vehicle: number, tMs: number, lat: number, speedMs: number][]): PingColumns {

@@ -9,7 +9,7 @@ import { AppError } from "@/domain/errors";
 import type { JunctionRow } from "@/formats/junctions/junction-row";
 import { csvText } from "@/formats/csv/write-csv";
 import { readJunctions } from "@/formats/junctions/read-junctions";
-import { PingStore } from "@/formats/pings/ping-store";
+import { appendColumns, emptyColumns } from "@/formats/pings/ping-columns";
 import { readPings } from "@/formats/pings/read-pings";
 import { VehicleNames } from "@/formats/vehicle-names";
 import { createH3Index } from "@/geo/h3-index";
@@ -52,7 +52,7 @@ async function loadJunctions({ junctions: path }: ScreenArguments, say: Say): Pr
 }
 
 async function loadPings({ pings: paths, timeZone }: ScreenArguments, say: Say): Promise<PingColumns> {
-  const store = new PingStore();
+  let pings = emptyColumns(1 << 16);
   const vehicles = new VehicleNames();
   for (const path of paths) {
     const counts = await withFile(path, async () => {
@@ -61,10 +61,10 @@ async function loadPings({ pings: paths, timeZone }: ScreenArguments, say: Say):
         throw new AppError("invalid", "the times carry no zone. Say which is meant with --timezone.");
       }
       remarks.forEach((remark) => say(`${path}: ${remark}`));
-      return readPings(chunks, { ...mapping, timeZone: timeZone ?? "UTC" }, { onBatch: (batch) => store.add(batch) }, vehicles);
+      return readPings(chunks, { ...mapping, timeZone: timeZone ?? "UTC" }, { onBatch: (batch) => void (pings = appendColumns(pings, batch)) }, vehicles);
     });
     describeRows(path, counts).forEach(say);
   }
-  if (store.all().length === 0) throw new AppError("invalid", "No row of the pings could be used.");
-  return store.all();
+  if (pings.length === 0) throw new AppError("invalid", "No row of the pings could be used.");
+  return pings;
 }

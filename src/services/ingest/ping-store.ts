@@ -2,6 +2,7 @@ import { mkdtemp, open, rm, type FileHandle } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { PingColumns } from "@/core/types";
+import { appendColumns, emptyColumns } from "@/formats/pings/ping-columns";
 
 /** Pings of a file on their way to the core: in memory while they are few, else on disk in buckets of whole vehicles. */
 export interface PingStore {
@@ -36,7 +37,7 @@ export function openPingStore(options: PingStoreOptions = DEFAULTS): PingStore {
     async add(batch) {
       length += batch.length;
       if (spill) return spill.add(batch);
-      columns = append(columns, batch);
+      columns = appendColumns(columns, batch);
       if (columns.length <= options.memoryPings) return;
       spill = await openSpill();
       await spill.add(columns);
@@ -59,48 +60,9 @@ export function openPingStore(options: PingStoreOptions = DEFAULTS): PingStore {
   };
 }
 
-export function emptyColumns(capacity: number): PingColumns {
-  return {
-    length: 0,
-    vehicle: new Uint32Array(capacity),
-    tMs: new Float64Array(capacity),
-    lat: new Float64Array(capacity),
-    lon: new Float64Array(capacity),
-    speedMs: new Float32Array(capacity),
-    headingDeg: new Float32Array(capacity),
-  };
-}
-
 /** One batch out of several. */
 export function joinPings(parts: readonly PingColumns[]): PingColumns {
-  if (parts.length === 1) return parts[0];
-  const joined = emptyColumns(parts.reduce((sum, part) => sum + part.length, 0));
-  for (const part of parts) {
-    copyInto(joined, joined.length, part);
-    joined.length += part.length;
-  }
-  return joined;
-}
-
-function append(to: PingColumns, batch: PingColumns): PingColumns {
-  const needed = to.length + batch.length;
-  let grown = to;
-  if (needed > to.vehicle.length) {
-    grown = emptyColumns(Math.max(needed, Math.ceil(to.vehicle.length * 1.6)));
-    copyInto(grown, 0, to);
-  }
-  copyInto(grown, to.length, batch);
-  grown.length = needed;
-  return grown;
-}
-
-function copyInto(to: PingColumns, at: number, from: PingColumns): void {
-  to.vehicle.set(from.vehicle.subarray(0, from.length), at);
-  to.tMs.set(from.tMs.subarray(0, from.length), at);
-  to.lat.set(from.lat.subarray(0, from.length), at);
-  to.lon.set(from.lon.subarray(0, from.length), at);
-  to.speedMs.set(from.speedMs.subarray(0, from.length), at);
-  to.headingDeg.set(from.headingDeg.subarray(0, from.length), at);
+  return parts.length === 1 ? parts[0] : parts.reduce(appendColumns, emptyColumns(parts.reduce((sum, part) => sum + part.length, 0)));
 }
 
 interface Spill {

@@ -1,19 +1,11 @@
 import { asc, eq, ilike, or } from "drizzle-orm";
 import { z } from "zod";
 import { corridors, junctions } from "@/db/schema";
+import type { ListedJunction } from "@/domain/junction";
 import { requirePermission, type Context } from "../context";
 
 export const ListJunctions = z.object({ q: z.string().trim().max(80).default("") });
 export type ListJunctions = z.infer<typeof ListJunctions>;
-
-export interface ListedJunction {
-  id: number;
-  code: string;
-  name: string;
-  lat: number;
-  lon: number;
-  corridor: string | null;
-}
 
 export async function listJunctions(ctx: Context, input: ListJunctions): Promise<ListedJunction[]> {
   requirePermission(ctx, "junction.view");

@@ -1,12 +1,7 @@
 import { desc } from "drizzle-orm";
 import { hotspotReports } from "@/db/schema";
+import type { ListedReport } from "@/domain/screen";
 import { requirePermission, type Context } from "../context";
-
-export interface ListedReport {
-  id: string;
-  title: string;
-  publishedAt: string;
-}
 
 export async function listReports(ctx: Context): Promise<ListedReport[]> {
   requirePermission(ctx, "hotspots.view");

@@ -1,12 +1,7 @@
 import Link from "next/link";
+import type { ListedReport } from "@/domain/screen";
 import { formatInstant } from "@/ui/format";
 import { Empty } from "@/ui/primitives/states";
-
-export interface ListedReport {
-  id: string;
-  title: string;
-  publishedAt: string;
-}
 
 export function ReportList({ reports, locale, timeZone, canPublish }: { reports: ListedReport[]; locale: string; timeZone: string; canPublish: boolean }) {
   if (reports.length === 0) {

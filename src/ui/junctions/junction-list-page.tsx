@@ -3,6 +3,7 @@
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { useId } from "react";
+import type { ListedJunction } from "@/domain/junction";
 import type { RawParams } from "@/domain/screen";
 import { counted } from "@/ui/format";
 import { Input } from "@/ui/primitives/field";
@@ -10,7 +11,7 @@ import { Empty, Failed, Loading } from "@/ui/primitives/states";
 import { useCan, useCity } from "@/ui/shell/city";
 import { PageHead } from "@/ui/shell/page-head";
 import { useQueryAddress, type AddressCodec } from "@/ui/strips/use-query-address";
-import { junctionsQuery, type ListedJunction } from "./queries";
+import { junctionsQuery } from "./queries";
 import { matchingJunctions } from "./matching-junctions";
 
 const CODEC: AddressCodec<{ q: string }> = {

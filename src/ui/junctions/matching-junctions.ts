@@ -1,4 +1,4 @@
-import type { ListedJunction } from "./queries";
+import type { ListedJunction } from "@/domain/junction";
 
 /** Junctions in whose name, number or corridor every word of the search occurs; capitals and accents do not matter. */
 export function matchingJunctions(junctions: ListedJunction[], search: string): ListedJunction[] {

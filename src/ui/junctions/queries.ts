@@ -1,15 +1,6 @@
 import { keepPreviousData, queryOptions } from "@tanstack/react-query";
-import { whenQueryToParams, type JunctionView, type WhenQuery } from "@/domain/junction";
+import { whenQueryToParams, type JunctionView, type ListedJunction, type WhenQuery } from "@/domain/junction";
 import { getJson } from "@/ui/query-client";
-
-export interface ListedJunction {
-  id: number;
-  code: string;
-  name: string;
-  lat: number;
-  lon: number;
-  corridor: string | null;
-}
 
 /** All junctions of the city: the list is searched in the browser. */
 export function junctionsQuery() {

@@ -1,5 +1,5 @@
 import { keepPreviousData, queryOptions } from "@tanstack/react-query";
-import { screenQueryToParams, ScreenQuery, type ScreenResult } from "@/domain/screen";
+import { screenQueryToParams, ScreenQuery, type CorridorName, type ScreenResult } from "@/domain/screen";
 import { getJson } from "@/ui/query-client";
 
 /** What decides the figures: filters that only choose among rows are left out, so that dragging them fetches nothing. */
@@ -15,11 +15,6 @@ export function screenQuery(query: ScreenQuery) {
     queryFn: ({ signal }) => getJson<ScreenResult>(`/api/screen?${params}`, signal),
     placeholderData: keepPreviousData,
   });
-}
-
-export interface CorridorName {
-  id: number;
-  name: string;
 }
 
 export function corridorsQuery() {
