@@ -10,8 +10,13 @@ export type UploadState = (typeof UPLOAD_STATES)[number];
 export const DELIMITERS = [",", ";", "\t"] as const;
 export const SPEED_UNITS = ["kmh", "mph", "ms", "kn"] as const;
 export type SpeedUnit = (typeof SPEED_UNITS)[number];
-export const TIME_FORMATS = ["iso", "epoch_s", "epoch_ms", "local"] as const;
+/** Local ones carry no zone; with slashes, month (`mdy`) or day (`dmy`) comes first. */
+export const TIME_FORMATS = ["iso", "epoch_s", "epoch_ms", "local", "local_mdy", "local_dmy"] as const;
 export type TimeFormat = (typeof TIME_FORMATS)[number];
+
+export function isLocalTime(format: TimeFormat): boolean {
+  return format === "local" || format === "local_mdy" || format === "local_dmy";
+}
 
 export const PING_FIELDS = ["vehicle_id", "timestamp", "lat", "lon", "speed", "heading", "trip_id"] as const;
 export const JUNCTION_FIELDS = [

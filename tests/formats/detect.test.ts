@@ -31,6 +31,25 @@ describe("detect", () => {
     expect(remarks).toEqual(["The times carry no zone: they are read in the zone that is chosen."]);
   });
 
+  const dated = (...times: string[]) => detect(bytes(["vehicle_id,timestamp,lat,lon", ...times.map((time) => `v,${time},45.6,-38.3`)].join("\n")), "x.csv", "pings");
+  const NO_ZONE = "The times carry no zone: they are read in the zone that is chosen.";
+
+  it("tells from a day above 12 whether it stands before or after the month", () => {
+    const monthFirst = dated("03/02/2026 8:00:00 AM", "03/13/2026 8:00:05 AM");
+    expect(monthFirst.mapping.timeFormat).toBe("local_mdy");
+    expect(monthFirst.remarks).toEqual([NO_ZONE]);
+    const dayFirst = dated("02/03/2026 08:00:00", "13/03/2026 08:00:05");
+    expect(dayFirst.mapping.timeFormat).toBe("local_dmy");
+    expect(dayFirst.remarks).toEqual([NO_ZONE]);
+    expect(dated("02.03.2026 08:00").mapping.timeFormat).toBe("local");
+  });
+
+  it("leaves it to the person where no date tells", () => {
+    const { mapping, remarks } = dated("03/02/2026 08:00:00", "03/02/2026 08:00:05");
+    expect(mapping.timeFormat).toBe("local_mdy");
+    expect(remarks).toEqual([NO_ZONE, "The dates do not tell whether month or day comes first: month first is assumed. Choose day first if it is so."]);
+  });
+
   it("finds tabs and epochs in milliseconds, in gzip too", () => {
     const found = detect(gzipSync(fixture("tab.tsv")), "tab.tsv.gz", "pings");
     expect(found.gzip).toBe(true);

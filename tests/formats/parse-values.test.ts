@@ -73,4 +73,30 @@ describe("timeParser", () => {
   ])("reads the wall clock of %s, %s, as %s", (zone, text, expected) => {
     expect(time(text, "local", zone)).toBe(expected);
   });
+
+  it.each([
+    ["local_mdy", "03/02/2026 08:00:00", "2026-03-02T13:00:00.000Z"],
+    ["local_mdy", "3/2/2026 8:05 AM", "2026-03-02T13:05:00.000Z"],
+    ["local_mdy", "03/02/2026 12:00:07 AM", "2026-03-02T05:00:07.000Z"],
+    ["local_mdy", "03/02/2026 12:00:07pm", "2026-03-02T17:00:07.000Z"],
+    ["local_mdy", "12/31/2025 11:59:59.250 PM", "2026-01-01T04:59:59.250Z"],
+    ["local_mdy", "03/08/2026 02:30 AM", null],
+    ["local_dmy", "02/03/2026 08:00", "2026-03-02T13:00:00.000Z"],
+    ["local_dmy", "31/12/2025 23:59:59", "2026-01-01T04:59:59.000Z"],
+    ["local_dmy", "12/31/2025 23:59:59", null],
+    ["local_mdy", "31/12/2025 23:59:59", null],
+    ["local_mdy", "02/29/2026 08:00:00", null],
+    ["local_mdy", "03/02/2026 13:00 PM", null],
+    ["local_mdy", "03/02/2026 0:30 AM", null],
+    ["local_mdy", "03/02/2026 24:00", null],
+    ["local_mdy", "03/02/2026 08:60", null],
+    ["local_mdy", "03/02/2026 08:00:", null],
+    ["local_mdy", "03/02/2026 08:00:00.", null],
+    ["local_mdy", "03/02/2026 08:00 XM", null],
+    ["local_mdy", "03/02/26 08:00", null],
+    ["local_mdy", "03/02/2026", null],
+    ["local", "30.02.2026 08:00:00", null],
+  ] as const)("reads %s %s in New York as %s", (format, text, expected) => {
+    expect(time(text, format, "America/New_York")).toBe(expected);
+  });
 });

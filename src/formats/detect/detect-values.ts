@@ -7,13 +7,25 @@ const MIN_PAIRS = 20;
 
 /** The format most of the values have; null where none of them looks like a time. */
 export function timeFormatOf(values: readonly string[]): TimeFormat | null {
-  const votes: Record<TimeFormat, number> = { iso: 0, local: 0, epoch_s: 0, epoch_ms: 0 };
+  const votes: Record<TimeFormat, number> = { iso: 0, local: 0, local_mdy: 0, local_dmy: 0, epoch_s: 0, epoch_ms: 0 };
+  const slashed = slashedOrder(values);
   for (const value of values) {
-    const format = formatOfTime(value);
+    const format = SLASHED.test(value) ? (slashed === "dmy" ? "local_dmy" : "local_mdy") : formatOfTime(value);
     if (format !== null) votes[format] += 1;
   }
   const [best, count] = Object.entries(votes).reduce((a, b) => (b[1] > a[1] ? b : a));
   return count === 0 ? null : (best as TimeFormat);
+}
+
+const SLASHED = /^(\d{1,2})\/(\d{1,2})\/\d{4} \d{1,2}:\d{2}/;
+
+/** What comes first in dates with slashes: a part above 12 is a day. Null where no value tells, and where they contradict each other. */
+export function slashedOrder(values: readonly string[]): "mdy" | "dmy" | null {
+  const parts = values.map((value) => SLASHED.exec(value)).filter((match) => match !== null);
+  const dayFirst = parts.filter(([, first]) => Number(first) > 12).length;
+  const monthFirst = parts.filter(([, , second]) => Number(second) > 12).length;
+  if (dayFirst === monthFirst) return null;
+  return dayFirst > monthFirst ? "dmy" : "mdy";
 }
 
 function formatOfTime(value: string): TimeFormat | null {

@@ -1,9 +1,9 @@
-import { neededFields, type Detection, type FileMapping, type SpeedUnit, type UploadKind } from "@/domain/upload";
+import { isLocalTime, neededFields, type Detection, type FileMapping, type SpeedUnit, type UploadKind } from "@/domain/upload";
 import { isGzip, plainStart } from "../gzip";
 import { timeParser } from "../time/parse-time";
 import { csvShape, type SettledShape } from "./detect-csv";
 import { geojsonShape } from "./detect-geojson";
-import { hasDecimalComma, speedUnitOf, timeFormatOf, type SpeedSample } from "./detect-values";
+import { hasDecimalComma, slashedOrder, speedUnitOf, timeFormatOf, type SpeedSample } from "./detect-values";
 import { unusable } from "../unusable";
 import { refuseBinary } from "./refuse-binary";
 import { speedUnitFromName } from "./synonyms";
@@ -89,7 +89,10 @@ function settlePings(mapping: FileMapping, sample: Sample, remarks: string[]): v
   const format = timeFormatOf(times);
   if (format !== null) mapping.timeFormat = format;
   else if (times.length > 0) remarks.push("The times are in no format that is known: see the first rows.");
-  if (format === "local") remarks.push("The times carry no zone: they are read in the zone that is chosen.");
+  if (format !== null && isLocalTime(format)) remarks.push("The times carry no zone: they are read in the zone that is chosen.");
+  if (format === "local_mdy" && slashedOrder(times) === null) {
+    remarks.push("The dates do not tell whether month or day comes first: month first is assumed. Choose day first if it is so.");
+  }
   const speed = mapping.columns.speed;
   if (speed === undefined) return;
   const named = speedUnitFromName(typeof speed === "number" && mapping.hasHeader ? sample.header[speed] : String(speed));

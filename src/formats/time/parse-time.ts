@@ -1,11 +1,12 @@
 import type { TimeFormat } from "@/domain/upload";
 import { parseNumber } from "../csv/parse-number";
+import { dayStartMs, digitsEnd, four, fractionMs, isDigit, two } from "./calendar-bytes";
+import { slashedWallMs } from "./slashed-time";
 import { ZoneClock } from "./zone-clock";
 
 /** Outside these years a time is taken for a mistake: 1990-01-01 and 2100-01-01. */
 const EARLIEST_MS = 631_152_000_000;
 const LATEST_MS = 4_102_444_800_000;
-const ZERO = 48;
 
 export type TimeParser = (bytes: Uint8Array, start: number, end: number) => number;
 
@@ -21,6 +22,11 @@ export function timeParser(format: TimeFormat, timeZone: string, decimal: number
     case "local": {
       const clock = new ZoneClock(timeZone);
       return (bytes, start, end) => plausible(parseCalendar(bytes, start, end, clock));
+    }
+    case "local_mdy":
+    case "local_dmy": {
+      const clock = new ZoneClock(timeZone);
+      return (bytes, start, end) => plausible(clock.instantMs(slashedWallMs(bytes, start, end, format === "local_mdy")));
     }
     default:
       return format satisfies never;
@@ -94,50 +100,4 @@ function zoneMs(bytes: Uint8Array, start: number, end: number): number {
   }
   if (!(hours <= 14) || !(minutes <= 59)) return NaN;
   return (sign === 45 ? -1 : 1) * (hours * 3_600_000 + minutes * 60_000);
-}
-
-let lastKey = 0;
-let lastDayMs = 0;
-
-function dayStartMs(year: number, month: number, day: number): number {
-  const key = year * 10_000 + month * 100 + day;
-  if (key === lastKey) return lastDayMs;
-  if (!(year >= 1000 && month >= 1 && month <= 12 && day >= 1)) return NaN;
-  const dayMs = Date.UTC(year, month - 1, day);
-  // Date.UTC rolls 31 April over into May.
-  if (new Date(dayMs).getUTCDate() !== day) return NaN;
-  lastKey = key;
-  lastDayMs = dayMs;
-  return dayMs;
-}
-
-function isDigit(byte: number): boolean {
-  return byte >= ZERO && byte <= 57;
-}
-
-function two(bytes: Uint8Array, at: number): number {
-  const tens = bytes[at];
-  const ones = bytes[at + 1];
-  return isDigit(tens) && isDigit(ones) ? (tens - ZERO) * 10 + (ones - ZERO) : NaN;
-}
-
-function four(bytes: Uint8Array, at: number): number {
-  return two(bytes, at) * 100 + two(bytes, at + 2);
-}
-
-function digitsEnd(bytes: Uint8Array, start: number, end: number): number {
-  let at = start;
-  while (at < end && isDigit(bytes[at])) at += 1;
-  return at;
-}
-
-/** Rounded to whole milliseconds. */
-function fractionMs(bytes: Uint8Array, start: number, end: number): number {
-  let value = 0;
-  let scale = 1000;
-  for (let at = start; at < end && at < start + 9; at += 1) {
-    scale /= 10;
-    value += (bytes[at] - ZERO) * scale;
-  }
-  return Math.round(value);
 }

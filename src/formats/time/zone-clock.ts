@@ -12,8 +12,9 @@ export class ZoneClock {
 
   constructor(private readonly timeZone: string) {}
 
-  /** `wallMs` is the wall-clock time read as if it were UTC. */
+  /** `wallMs` is the wall-clock time read as if it were UTC; what is no time (NaN) stays none. */
   instantMs(wallMs: number): number {
+    if (Number.isNaN(wallMs)) return NaN;
     const quarter = Math.floor(wallMs / QUARTER_MS);
     let offset = this.offsets.get(quarter);
     if (offset === undefined) {

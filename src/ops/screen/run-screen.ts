@@ -9,6 +9,7 @@ import { AppError } from "@/domain/errors";
 import type { JunctionRow } from "@/formats/junctions/junction-row";
 import { csvText } from "@/formats/csv/write-csv";
 import { readJunctions } from "@/formats/junctions/read-junctions";
+import { isLocalTime } from "@/domain/upload";
 import { appendColumns, emptyColumns } from "@/formats/pings/ping-columns";
 import { readPings } from "@/formats/pings/read-pings";
 import { VehicleNames } from "@/formats/vehicle-names";
@@ -57,7 +58,7 @@ async function loadPings({ pings: paths, timeZone }: ScreenArguments, say: Say):
   for (const path of paths) {
     const counts = await withFile(path, async () => {
       const { chunks, mapping, remarks } = await openFile(path, "pings");
-      if (mapping.timeFormat === "local" && timeZone === null) {
+      if (isLocalTime(mapping.timeFormat) && timeZone === null) {
         throw new AppError("invalid", "the times carry no zone. Say which is meant with --timezone.");
       }
       remarks.forEach((remark) => say(`${path}: ${remark}`));

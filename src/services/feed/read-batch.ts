@@ -1,5 +1,6 @@
 import type { PingColumns } from "@/core/types";
 import { AppError } from "@/domain/errors";
+import { isLocalTime } from "@/domain/upload";
 import { MAX_BATCH_BYTES } from "@/domain/feed";
 import { detect, DETECT_BYTES } from "@/formats/detect/detect";
 import { plainChunks } from "@/formats/gzip";
@@ -38,7 +39,7 @@ async function readCsv(bytes: Buffer, names: VehicleNames): Promise<ReadBatch> {
   const { mapping } = detect(bytes.subarray(0, DETECT_BYTES), "The batch", "pings");
   if (!mapping.hasHeader) throw new AppError("invalid", "A batch of CSV begins with a header row, as vehicle_id,timestamp,lat,lon,speed_kmh,heading.");
   // Nobody is there to choose a zone.
-  if (mapping.timeFormat === "local") throw new AppError("invalid", "The times carry no zone. Send them as ISO 8601 with a zone or as milliseconds since 1970.");
+  if (isLocalTime(mapping.timeFormat)) throw new AppError("invalid", "The times carry no zone. Send them as ISO 8601 with a zone or as milliseconds since 1970.");
   const batches: PingColumns[] = [];
   const counts = await readPings(once(bytes), mapping, { onBatch: (batch) => void batches.push(batch) }, names);
   return { counts, batches };

@@ -3,7 +3,7 @@ import { z } from "zod";
 import { suppliers, uploads } from "@/db/schema";
 import { AppError, notFound } from "@/domain/errors";
 import { isTimeZone } from "@/domain/settings";
-import { FileMapping, neededFields } from "@/domain/upload";
+import { FileMapping, isLocalTime, neededFields } from "@/domain/upload";
 import { ingestUpload } from "@/jobs/definitions/ingest-upload";
 import { recordAudit } from "../audit/record-audit";
 import { requirePermission, type Context } from "../context";
@@ -48,7 +48,7 @@ function checkMapping(needs: readonly string[], mapping: FileMapping): void {
       fieldErrors: Object.fromEntries(missing.map((field) => [`columns.${field}`, ["Choose a column."]])),
     });
   }
-  if (mapping.timeFormat === "local" && !isTimeZone(mapping.timeZone)) {
+  if (isLocalTime(mapping.timeFormat) && !isTimeZone(mapping.timeZone)) {
     throw new AppError("invalid", `${mapping.timeZone} is not a time zone that this server knows.`);
   }
 }

@@ -2,7 +2,7 @@
 
 import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useId, useState, type FormEvent } from "react";
-import { neededFields, type Detection, type UploadView } from "@/domain/upload";
+import { isLocalTime, neededFields, type Detection, type UploadView } from "@/domain/upload";
 import { isTimeZone } from "@/domain/settings";
 import { Button } from "@/ui/primitives/button";
 import { Field, Input } from "@/ui/primitives/field";
@@ -39,7 +39,7 @@ export function MappingForm({ upload, detection, onReshape }: Props) {
   async function start(event: FormEvent) {
     event.preventDefault();
     if (missing.length > 0) return setError(`Say which column holds ${fieldList(missing)}.`);
-    if (mapping.timeFormat === "local" && !isTimeZone(mapping.timeZone)) return setError(`${mapping.timeZone || "An empty text"} is not a time zone.`);
+    if (isLocalTime(mapping.timeFormat) && !isTimeZone(mapping.timeZone)) return setError(`${mapping.timeZone || "An empty text"} is not a time zone.`);
     setError(null);
     setStarting(true);
     try {

@@ -1,7 +1,7 @@
 "use client";
 
 import { useId } from "react";
-import type { FileMapping, SpeedUnit, TimeFormat, UploadKind } from "@/domain/upload";
+import { isLocalTime, type FileMapping, type SpeedUnit, type TimeFormat, type UploadKind } from "@/domain/upload";
 import { Button } from "@/ui/primitives/button";
 import { ChoiceList, type Choice } from "@/ui/primitives/choice";
 import { Field, Input } from "@/ui/primitives/field";
@@ -23,7 +23,9 @@ const DECIMAL_CHOICES: readonly Choice<"." | ",">[] = [
 ];
 const TIME_CHOICES: readonly Choice<TimeFormat>[] = [
   { value: "iso", label: "dates with their zone", note: "2026-03-02T08:00:00Z" },
-  { value: "local", label: "dates without a zone", note: "2026-03-02 08:00:00" },
+  { value: "local", label: "dates without a zone", note: "2026-03-02 08:00:00, 02.03.2026 08:00" },
+  { value: "local_mdy", label: "dates without a zone, month first", note: "03/02/2026 08:00:00, 3/2/2026 8:00 AM" },
+  { value: "local_dmy", label: "dates without a zone, day first", note: "02/03/2026 08:00:00, 2/3/2026 8:00 AM" },
   { value: "epoch_s", label: "seconds since 1970", note: "1772438400" },
   { value: "epoch_ms", label: "milliseconds since 1970", note: "1772438400000" },
 ];
@@ -67,7 +69,7 @@ export function MappingSentence({ kind, mapping, gzip, onChange, onReshape }: Pr
       {kind === "pings" ? (
         <>
           ; times are <Pick name="Times" choices={TIME_CHOICES} value={mapping.timeFormat} onChoose={(timeFormat) => onChange({ timeFormat })} />
-          {mapping.timeFormat === "local" ? (
+          {isLocalTime(mapping.timeFormat) ? (
             <>
               {" "}
               in <ZonePhrase zone={mapping.timeZone} onChoose={(timeZone) => onChange({ timeZone })} />
