@@ -1,5 +1,6 @@
 import { draftExit, draftLeg, nearestBearing, seenFrom } from "@/core/legs/draft";
 import type { Frame } from "@/core/legs/frame";
+import { joinCorners } from "@/core/legs/join-corners";
 import { LEARNING } from "@/core/legs/learning";
 import type { Arm } from "@/core/legs/trace";
 import type { Exit, Leg } from "@/core/types";
@@ -30,6 +31,7 @@ export function joinArms(arms: Arm[], frame: Frame): Joined {
   outbound.forEach((arm, i) => {
     if (arm.meets >= 0) feedLeg(joined, i, arm.meets, frame);
   });
+  joinCorners(joined, frame);
   return joined;
 }
 
