@@ -24,7 +24,7 @@ export function shareWait(from: Course, i: number, lines: ArrayLike<number>, lin
   let stand = standIn(from, i, first, to);
   if (stand < 0) return;
   const place = to.distanceM[stand];
-  const others = otherLines(lines, line, place, from.distanceM[i + 1] - SHARING.clearM);
+  const others = otherLines(lines, line, place, from.distanceM[i], from.distanceM[i + 1] - SHARING.clearM);
   if (others.length === 0) return;
   const end = stand + 1 < to.length ? to.tMs[stand + 1] : from.tMs[i + 1];
   const partMs = (end - to.tMs[stand]) / (1 + others.length);
@@ -50,13 +50,13 @@ function standIn(from: Course, i: number, first: number, to: Course): number {
 }
 
 /** Lines that the step passes, without the one that its stand belongs to. */
-function otherLines(lines: ArrayLike<number>, line: number, place: number, limit: number): number[] {
+function otherLines(lines: ArrayLike<number>, line: number, place: number, fromM: number, toM: number): number[] {
   const out: number[] = [];
   let isOwnFound = false;
-  for (let l = line; l < lines.length && lines[l] < limit && out.length < SHARING.mostLines; l++) {
+  for (let l = line; l < lines.length && lines[l] < toM && out.length < SHARING.mostLines; l++) {
     const isOwn = !isOwnFound && lines[l] + SHARING.pastLineM >= place;
     if (isOwn) isOwnFound = true;
-    else out.push(lines[l]);
+    else if (lines[l] > fromM) out.push(lines[l]);
   }
   return out;
 }

@@ -48,6 +48,11 @@ describe("a wait that may have been at several stop lines", () => {
     expect(Array.from(one.speedMs.subarray(0, one.length)).some(Number.isNaN)).toBe(false);
   });
 
+  it("shares nothing with a line that the first ping lies past", () => {
+    const course = filled([[0, 50, 36], [60, 250, 0]], [48, 260]);
+    expect(Array.from(course.speedMs.subarray(0, course.length)).some(Number.isNaN)).toBe(false);
+  });
+
   it("counts one stop, and tells no place of the shared part", () => {
     const course = filled([[0, 50, 0], [60, 250, 36]], [60, 160]);
     expect(summariseStops(course, -1, 60_000, 0, 250).stops).toBe(1);
