@@ -14,6 +14,7 @@ describe("methods", () => {
     expect(text).toContain("250 m before the stop line");
     expect(text).toContain("below 5 km/h and ends above 10 km/h");
     expect(text).toContain("fills 90 % or more");
+    expect(text).toContain("A mean below zero");
     expect(text).not.toMatch(/undefined|NaN|Infinity/);
   });
 });

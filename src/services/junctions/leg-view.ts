@@ -50,7 +50,8 @@ export function movementView(row: MovementRow, score: MovementScore | undefined)
     delay,
     medianS: score ? finite(score.medianS) : null,
     p95S: score ? finite(score.p95S) : null,
-    los: losView(delay),
+    // A grade is a verdict, for which such a sample is too small; the interval tells an engineer as much.
+    los: score?.evidence === "none" ? null : losView(delay),
     stopShare: score ? estimateView(score.stopShare) : null,
     stopsPerVehicle: score ? finite(score.stopsPerVehicle) : null,
     evidence: score?.evidence ?? NO_EVIDENCE,

@@ -1,5 +1,5 @@
 import { levelOfService } from "@/core/stats/level-of-service";
-import type { JunctionScore } from "@/core/scores/types";
+import type { JunctionScore, LegScore } from "@/core/scores/types";
 import { estimateView, type EstimateView, type NeedleView, type RankedJunction } from "@/domain/screen";
 import type { CatalogueJunction } from "../catalogue/catalogue";
 import type { ScoredCity } from "./score-city";
@@ -20,7 +20,7 @@ export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJu
   // Too few to be ranked are too few for a figure, too: a published list must not tell of two vehicles.
   if (score.evidence === "none") return { ...base, ...UNSEEN, vehicles: score.vehicles, days: score.days, needles };
   const delay = estimateView(score.delay);
-  const worstLeg = scored.legScores.get(score.worstLeg);
+  const worstLeg = supportedLeg(score.worstLeg, scored);
   return {
     ...base,
     rank: finite(score.rank),
@@ -72,10 +72,15 @@ function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["wors
   return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: figures.delay.value };
 }
 
+/** Figures of a leg for lists, map and exports: none without evidence. */
+function supportedLeg(legId: number, scored: ScoredCity): LegScore | undefined {
+  const score = scored.legScores.get(legId);
+  return score?.evidence === "none" ? undefined : score;
+}
+
 function needlesOf(junctionId: number, scored: ScoredCity): NeedleView[] {
   return (scored.catalogue.legsOfJunction.get(junctionId) ?? []).map((leg) => {
-    const known = scored.legScores.get(leg.id);
-    const score = known && known.evidence !== "none" ? known : undefined;
+    const score = supportedLeg(leg.id, scored);
     return {
       legId: leg.id,
       lieDeg: (leg.bearingDeg + 180) % 360,

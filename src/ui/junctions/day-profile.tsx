@@ -140,7 +140,7 @@ function ProfileTable({ profile }: { profile: ProfilePoint[] }) {
                 <Td numeric>{formatNumber(point.vehicles, locale)}</Td>
                 <Td numeric>{formatNumber(point.delay?.value, locale)}</Td>
                 <Td numeric className="whitespace-nowrap">
-                  {point.delay ? `${formatNumber(Math.max(0, point.delay.low), locale)} to ${formatNumber(point.delay.high, locale)}` : "–"}
+                  {point.delay ? `${formatNumber(point.delay.low, locale)} to ${formatNumber(point.delay.high, locale)}` : "–"}
                 </Td>
                 <Td numeric>{formatShare(point.spill, locale)}</Td>
               </tr>

@@ -18,7 +18,7 @@ export function JunctionStanding({ score }: { score: RankedJunction }) {
         {score.rank ?? NO_FIGURE}
       </Figure>
       <Figure term="mean delay" after={delay ? span(delay.low, delay.high) : "cannot be said"}>
-        {formatSeconds(delay && Math.max(0, delay.value), locale)}
+        {formatSeconds(delay?.value, locale)}
       </Figure>
       <Figure term="spills back, worst leg" after={spill ? `${span(spill.low * 100, spill.high * 100)} of the time` : "cannot be said"}>
         {formatShare(spill?.value, locale)}

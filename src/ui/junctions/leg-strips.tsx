@@ -2,10 +2,11 @@
 
 import Link from "next/link";
 import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } from "@/domain/junction";
-import { formatLength, formatSeconds } from "@/ui/format";
+import { formatLength } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";
 import { useCity } from "@/ui/shell/city";
 import { SmallStrip } from "@/ui/strips/small-strip";
+import { legDelayWords } from "./leg-delay-words";
 
 /** One row where they fit. */
 const COLUMNS: Record<number, string> = { 3: "xl:grid-cols-3", 5: "xl:grid-cols-5", 6: "xl:grid-cols-3" };
@@ -31,7 +32,7 @@ export function LegStrips({ view, when }: { view: JunctionView; when: WhenQuery 
 
 function LegWords({ leg }: { leg: LegView }) {
   const { settings, locale } = useCity();
-  const delay = leg.delay === null ? "no figure" : `${formatSeconds(Math.max(0, leg.delay.value), locale)} delay`;
+  const delay = legDelayWords(leg, locale);
   const reach = leg.reachP95M === null ? null : `reach ${formatLength(leg.reachP95M, settings.units, locale)}`;
   return <span className="mb-1 block font-table text-[0.92rem] text-ink-soft">{[delay, reach, `${formatLength(leg.lengthM, settings.units, locale)} of street`].filter(Boolean).join(", ")}</span>;
 }

@@ -132,15 +132,15 @@ function MovementRow({ movement, words, leg, maxS }: { movement: MovementView; w
         <TurnArrow turn={movement.turn} /> {words}
         <span className="sr-only"> {leg.name}</span>
       </th>
-      <Td numeric className="text-[1.02rem] font-semibold">
-        {delay === null ? <span className="text-sm font-normal text-ink-soft">no figure</span> : formatNumber(Math.max(0, delay.value), locale)}
+      <Td numeric className={movement.evidence === "none" ? "text-ink-soft" : "text-[1.02rem] font-semibold"}>
+        {delay === null ? <span className="text-sm font-normal text-ink-soft">no figure</span> : formatNumber(delay.value, locale)}
       </Td>
       <Td>
         <span className="flex items-center gap-2 whitespace-nowrap">
-          <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(Math.max(0, e.low), locale)} to ${formatSeconds(e.high, locale)}`} />
+          <IntervalMark estimate={delay} max={maxS} describe={(e) => `95 % interval ${formatSeconds(e.low, locale)} to ${formatSeconds(e.high, locale)}`} />
           {delay ? (
             <span aria-hidden="true" className="text-sm text-ink-soft">
-              {formatNumber(Math.max(0, delay.low), locale)} to {formatNumber(delay.high, locale)}
+              {formatNumber(delay.low, locale)} to {formatNumber(delay.high, locale)}
             </span>
           ) : null}
         </span>

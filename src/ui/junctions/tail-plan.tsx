@@ -2,9 +2,10 @@
 
 import Link from "next/link";
 import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } from "@/domain/junction";
-import { formatLength, formatSeconds, type Units } from "@/ui/format";
+import { formatLength, type Units } from "@/ui/format";
 import { COLORS, delayColor } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";
+import { legDelayWords } from "./leg-delay-words";
 import { shortLegName } from "./movement-words";
 import { lineLength, pathOf, placeOn, planRadius, planScale, stretchOf, type PlanScale } from "./plan-geometry";
 import { CrossBar, NorthArrow, ScaleBar, Streets } from "./plan-parts";
@@ -68,7 +69,7 @@ function Needle({ leg, scale, seenM }: { leg: LegView; scale: PlanScale; seenM: 
 }
 
 function labelLines(leg: LegView, units: Units, locale: string): string[] {
-  const delay = leg.delay === null ? "no figure" : `${formatSeconds(Math.max(0, leg.delay.value), locale)} delay`;
+  const delay = legDelayWords(leg, locale);
   const room = leg.storageM === null ? "" : ` of ${formatLength(leg.storageM, units, locale)}`;
   return leg.reachP95M === null ? [delay] : [delay, `reach ${formatLength(leg.reachP95M, units, locale)}${room}`];
 }

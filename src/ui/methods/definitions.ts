@@ -17,6 +17,10 @@ export interface Definition {
 
 const kmh = (speedMs: number) => Math.round(speedMs * 3.6);
 
+/** Engineers look at single movements, where a hint is better than nothing; everybody else is shown what the sample supports. */
+export const NO_EVIDENCE_RULE =
+  "Without evidence a junction has no figure anywhere. For its legs and movements the junction page and the strip still show delay and reach, marked with evidence “none”: they are not ranked, get no level of service, and stand in no list, on no map, in no export of the list and in no report.";
+
 /** What each figure is, in the order in which one is made from the other. Numbers are read from the core itself. */
 export const DEFINITIONS: readonly Definition[] = [
   {
@@ -38,7 +42,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "delay",
     term: "Control delay",
     meaning: [
-      "How much longer the traversal took than an undelayed vehicle of the same movement needs. Single delays may be negative and are not cut off at zero, so that the mean is not pushed up.",
+      "How much longer the traversal took than an undelayed vehicle of the same movement needs. Single delays may be negative and are not cut off at zero, so that the mean is not pushed up. A mean below zero says that vehicles were quicker than the reference, and is shown as it is, on pages and in exports.",
       `The reference is built from the leg’s free speed and the geometry of the turn, then moved by what unhindered traversals of that movement show: their ${percentileWords(REFERENCE.share)}, drawn towards leg and kind of turn where few were seen. From ${REFERENCE.seenN} unhindered traversals on it counts as seen, below as shrunk, with none as free speed; the junction page says which.`,
     ],
     formula: "delay = (t exit − t cordon) − reference",

@@ -58,7 +58,7 @@ export function EvidenceTable() {
           <Td>
             <EvidenceBar evidence="none" withWord />
           </Td>
-          <Td colSpan={4}>less than that: no rank, and no figure in its place</Td>
+          <Td colSpan={4}>less than that: no rank; no figure in lists, on the map, in exports and in reports</Td>
         </tr>
       </tbody>
     </RuledTable>

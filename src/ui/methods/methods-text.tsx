@@ -2,7 +2,7 @@ import type { ReactNode } from "react";
 import { METHOD_VERSION } from "@/core/method-version";
 import { CAUTIONS } from "@/ui/primitives/caution";
 import { MAIN_SAMPLINGS } from "./accuracy";
-import { DEFINITIONS, type Definition } from "./definitions";
+import { DEFINITIONS, type Definition, NO_EVIDENCE_RULE } from "./definitions";
 import { AccuracyTable, EvidenceTable, IntervalTable, LosTable } from "./methods-tables";
 
 export function MethodsText() {
@@ -25,6 +25,7 @@ export function MethodsText() {
       </Section>
       <Section id="evidence" title="Evidence">
         <p className="max-w-prose">How far the sample supports a mean delay. A grade asks for all of its row; the first row that is met counts. The bounds are our own.</p>
+        <p className="max-w-prose">{NO_EVIDENCE_RULE}</p>
         <EvidenceTable />
       </Section>
       <Section id="sample" title="What the sample can say">

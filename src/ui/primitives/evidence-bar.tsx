@@ -3,7 +3,7 @@ import type { Evidence } from "@/core/types";
 const FILL: Record<Evidence, number> = { none: 0, thin: 1, fair: 2, strong: 3 };
 
 export const EVIDENCE_SENTENCES: Record<Evidence, string> = {
-  none: "No evidence: too few vehicles were seen to give a figure.",
+  none: "No evidence: too few vehicles were seen. A figure beside it is neither ranked nor published.",
   thin: "Thin evidence: the figure could be far off.",
   fair: "Fair evidence: good enough to compare, not to settle a close call.",
   strong: "Strong evidence.",

@@ -31,9 +31,9 @@ export function DelayTable({ picture }: { picture: StripPicture }) {
               <tr key={fromS}>
                 <Td className="whitespace-nowrap">{formatClockRange(fromS / 60, (fromS + delay.stepS) / 60)}</Td>
                 <Td numeric>{formatNumber(delay.vehicles[k], locale)}</Td>
-                <Td numeric>{formatNumber(Math.max(0, meanS), locale)}</Td>
+                <Td numeric>{formatNumber(meanS, locale)}</Td>
                 <Td numeric className="whitespace-nowrap">
-                  {Number.isFinite(delay.lowS[k]) ? `${formatNumber(Math.max(0, delay.lowS[k]), locale)} to ${formatNumber(delay.highS[k], locale)}` : "–"}
+                  {Number.isFinite(delay.lowS[k]) ? `${formatNumber(delay.lowS[k], locale)} to ${formatNumber(delay.highS[k], locale)}` : "–"}
                 </Td>
                 <Td>{levelOfService(meanS) ?? "–"}</Td>
                 <Td numeric>{formatLength(farthestTail(tail, fromS, fromS + delay.stepS), settings.units, locale)}</Td>

@@ -15,14 +15,14 @@ const MUCH_SPILL = 0.1;
 export function FactsLine({ facts, fromMin, toMin, children }: { facts: StripFacts; fromMin: number; toMin: number; children?: ReactNode }) {
   const { settings, locale } = useCity();
   const { units } = settings;
-  const seconds = (value: number) => formatNumber(Math.max(0, value), locale);
+  const seconds = (value: number) => formatNumber(value, locale);
   const percent = (value: number) => formatNumber(value * 100, locale);
   const every = facts.medianIntervalS === null ? "" : `, every ${formatNumber(facts.medianIntervalS, locale)} s`;
   return (
     <section aria-label="Figures" className="border-t border-rule bg-paper px-4 py-4 sm:px-6">
       <div className="flex flex-wrap items-start gap-x-12 gap-y-4">
         <dl className="flex flex-wrap gap-x-9 gap-y-4">
-          <Fact term={`${formatClockRange(fromMin, toMin)}, mean delay`} figure={formatSeconds(facts.delay && Math.max(0, facts.delay.value), locale)} after={spanOf(facts.delay, seconds)} />
+          <Fact term={`${formatClockRange(fromMin, toMin)}, mean delay`} figure={formatSeconds(facts.delay?.value, locale)} after={spanOf(facts.delay, seconds)} />
           {facts.stopShare ? <Fact term="must stop" figure={formatShare(facts.stopShare.value, locale)} after={spanOf(facts.stopShare, percent)} /> : null}
           <Fact
             term={facts.reachKind === "95th" ? "reach, 95th percentile" : "farthest reach"}

@@ -3,9 +3,9 @@ import type { StripFacts } from "./strip-facts";
 
 /** The facts of a strip as one line of words. */
 export function factsText(facts: StripFacts, units: Units, locale: string): string {
-  const number = (value: number) => formatNumber(Math.max(0, value), locale);
+  const number = (value: number) => formatNumber(value, locale);
   const delay = facts.delay
-    ? `Mean delay ${formatSeconds(Math.max(0, facts.delay.value), locale)} (95 % interval ${number(facts.delay.low)} to ${number(facts.delay.high)})`
+    ? `Mean delay ${formatSeconds(facts.delay.value, locale)} (95 % interval ${number(facts.delay.low)} to ${number(facts.delay.high)})`
     : "Mean delay cannot be said";
   const kind = facts.reachKind === "95th" ? "95th percentile of reach" : "farthest reach";
   const reach = facts.reachM === null ? null : `${kind} ${formatLength(facts.reachM, units, locale)}${facts.storageM === null ? "" : ` of ${formatLength(facts.storageM, units, locale)}`}`;

@@ -87,6 +87,6 @@ function delayText({ delay }: StripPicture, tS: number, locale: string): string 
   const step = Math.floor((tS - delay.fromS) / delay.stepS);
   const mean = delay.meanS[step];
   if (!Number.isFinite(mean)) return null;
-  const span = Number.isFinite(delay.lowS[step]) ? ` (${formatNumber(Math.max(0, delay.lowS[step]), locale)} to ${formatNumber(delay.highS[step], locale)})` : "";
-  return `delay ${formatSeconds(Math.max(0, mean), locale)}${span}`;
+  const span = Number.isFinite(delay.lowS[step]) ? ` (${formatNumber(delay.lowS[step], locale)} to ${formatNumber(delay.highS[step], locale)})` : "";
+  return `delay ${formatSeconds(mean, locale)}${span}`;
 }

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import type { ExitView, MovementView, ProfilePoint } from "@/domain/junction";
+import { legDelayWords } from "@/ui/junctions/leg-delay-words";
 import { matchingJunctions } from "@/ui/junctions/matching-junctions";
 import { movementWords, shortLegName } from "@/ui/junctions/movement-words";
 import { profileRuns } from "@/ui/junctions/profile-runs";
@@ -21,6 +22,16 @@ describe("words for movements and legs", () => {
   it("keeps the degrees that tell two legs apart", () => {
     expect(shortLegName({ name: "from the south, northbound" })).toBe("from the south");
     expect(shortLegName({ name: "from the south, northbound (20°)" })).toBe("from the south (20°)");
+  });
+});
+
+describe("delay of a leg", () => {
+  const delay = { value: -2.4, low: -6, high: 1 };
+
+  it("is shown as it is below zero, and marked where nothing supports it", () => {
+    expect(legDelayWords({ delay, evidence: "thin" }, "en-GB")).toBe("-2 s delay");
+    expect(legDelayWords({ delay: { ...delay, value: 31 }, evidence: "none" }, "en-GB")).toBe("31 s delay, no evidence");
+    expect(legDelayWords({ delay: null, evidence: "none" }, "en-GB")).toBe("no figure");
   });
 });
 

@@ -105,6 +105,7 @@ describe("figures under a strip", () => {
     const facts = { stopShare: null, reachKind: "95th", storageM: 310, days: 19, medianIntervalS: 5, evidence: "fair" } as const;
     const text = factsText({ ...facts, delay: { value: 82, low: 74, high: 91 }, reachM: 268, spill: { value: 0.11, low: 0, high: 1 }, vehicles: 412 }, "metric", "en-GB");
     expect(text).toBe("Mean delay 82 s (95 % interval 74 to 91); 95th percentile of reach 268 m of 310 m; spills back 11 % of the time; 412 vehicles seen on 19 days; a ping every 5 s; evidence: fair.");
+    expect(factsText({ ...facts, delay: { value: -2.4, low: -6, high: 1 }, reachM: null, spill: null, vehicles: 3 }, "metric", "en-GB")).toContain("Mean delay -2 s (95 % interval -6 to 1)");
     expect(factsText({ ...facts, delay: null, reachM: null, spill: null, vehicles: 1, days: 1, medianIntervalS: null, evidence: null }, "metric", "en-GB")).toBe("Mean delay cannot be said; 1 vehicle seen on 1 day.");
   });
 });
