@@ -37,6 +37,8 @@ export const uploads = pgTable(
     failure: text("failure"),
     createdBy: uuid("created_by").references(() => users.id, { onDelete: "set null" }),
     createdAt: instant("created_at").notNull(),
+    /** Order of receipt where the instant is the same: ids are random. */
+    receivedNo: serial("received_no").notNull(),
     finishedAt: instant("finished_at"),
   },
   (t) => [index("uploads_created_idx").on(t.createdAt), index("uploads_sha256_idx").on(t.sha256), uniqueIndex("uploads_feed_key").on(t.supplierId, t.feedHour)],

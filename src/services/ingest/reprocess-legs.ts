@@ -1,4 +1,4 @@
-import { and, asc, eq, inArray, notInArray, or } from "drizzle-orm";
+import { and, eq, inArray, notInArray, or } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
 import { relistMovements } from "@/core/legs/relist";
 import { createMatcher, setReferences, type Matched } from "@/core/process";
@@ -14,7 +14,7 @@ import type { ScreenDay } from "@/core/scores/types";
 import type { Network, OpenTracks, PingColumns, Traversals } from "@/core/types";
 import { bulkTransaction, withAdvisoryLock } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
-import { screenDays, traversals as traversalTable, uploads } from "@/db/schema";
+import { screenDays, traversals as traversalTable } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { offsetTable } from "@/domain/local-time";
 import { emptyColumns } from "@/formats/pings/ping-columns";
@@ -28,6 +28,7 @@ import { getSettings } from "../settings/get-settings";
 import { filterTraversals, joinTraversals } from "./join-traversals";
 import { dropKnown } from "./known-traversals";
 import { INGEST_LOCK, readJunctionPoints, readNetwork, storedLegKeys, storeNetwork, type KeyedPoint, type NetworkKeys } from "./network-rows";
+import { pingFiles } from "./ping-files";
 import { openPingStore } from "./ping-store";
 import { readIntoStore, type PingUpload } from "./read-into-store";
 import { makePartitions, storeTraversals } from "./store-traversals";
@@ -67,15 +68,10 @@ export async function reprocessLegs(ctx: Context, input: { junctionIds: number[]
 async function rematchFiles(ctx: Context, junctionIds: number[], signal: AbortSignal | undefined): Promise<void> {
   const job = await prepare(ctx, junctionIds);
   if (!job) return;
-  const files = await ctx.db
-    .select({ id: uploads.id, storageKey: uploads.storageKey, mapping: uploads.mapping })
-    .from(uploads)
-    .where(and(eq(uploads.kind, "pings"), eq(uploads.state, "done")))
-    .orderBy(asc(uploads.createdAt), asc(uploads.id));
   let isFirst = true;
-  for (const file of files) {
+  for (const file of await pingFiles(ctx.db)) {
     signal?.throwIfAborted();
-    if (file.mapping && (await rematchUpload(ctx, { ...file, mapping: file.mapping }, job, isFirst))) isFirst = false;
+    if (await rematchUpload(ctx, file, job, isFirst)) isFirst = false;
   }
   await bulkTransaction(ctx.db, async (tx) => {
     await requireSameLegs(tx, job.legEdits);

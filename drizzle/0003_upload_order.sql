@@ -1,0 +1,1 @@
+ALTER TABLE "uploads" ADD COLUMN "received_no" serial NOT NULL;
