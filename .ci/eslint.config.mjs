@@ -26,7 +26,7 @@ export default [
   },
   {
     // The one reader of the environment, the scripts that set it, and what the builder inlines.
-    files: ["src/env.ts", "src/ops/**", "src/proxy.ts", "tests/**", "seed/**"],
+    files: ["src/env.ts", "src/instrumentation.ts", "src/ops/**", "src/proxy.ts", "tests/**", "seed/**"],
     rules: { "no-restricted-syntax": "off" },
   },
   {
