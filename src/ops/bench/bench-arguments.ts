@@ -1,0 +1,64 @@
+import { parseArgs } from "node:util";
+
+export const PARTS = ["parse", "ingest", "workers", "ranking", "strip"] as const;
+export type Part = (typeof PARTS)[number];
+
+export const USAGE = `npm run bench -- [--only NAME ...] [--rows N] [--junctions N] [--days N] [--traversals N] [--large] [--json] [--write]
+
+  --only NAME      one part: ${PARTS.join(", ")}; may be given several times
+  --rows N         pings of the generated file (default 1000000)
+  --junctions N    junctions of the generated screen (default 300)
+  --days N         its days (default 28: 20 weekdays)
+  --traversals N   its traversals (default 1000000)
+  --large          10 million pings; 1,000 junctions, 60 days, 20 million traversals
+  --json           one object a line
+  --write          keep the table in tests/bench/results.md (whole bench only)`;
+
+export interface BenchArguments {
+  parts: Part[];
+  rows: number;
+  junctions: number;
+  days: number;
+  traversals: number;
+  isJson: boolean;
+  isWrite: boolean;
+}
+
+/** What was asked for; throws a sentence for anything that makes no sense. */
+export function benchArguments(argv: string[]): BenchArguments | "help" {
+  const { values } = parseArgs({
+    args: argv,
+    options: {
+      only: { type: "string", multiple: true },
+      rows: { type: "string" },
+      junctions: { type: "string" },
+      days: { type: "string" },
+      traversals: { type: "string" },
+      large: { type: "boolean", default: false },
+      json: { type: "boolean", default: false },
+      write: { type: "boolean", default: false },
+      help: { type: "boolean", short: "h", default: false },
+    },
+  });
+  if (values.help) return "help";
+  const only = values.only ?? [];
+  const unknown = only.find((name) => !PARTS.some((part) => part === name));
+  if (unknown !== undefined) throw new RangeError(`--only ${unknown} is no part of the bench. Give one of ${PARTS.join(", ")}.`);
+  if (values.write && only.length > 0) throw new RangeError("--write keeps the whole table: leave --only out.");
+  return {
+    parts: PARTS.filter((part) => only.length === 0 || only.includes(part)),
+    rows: count("--rows", values.rows, values.large ? 10_000_000 : 1_000_000),
+    junctions: count("--junctions", values.junctions, values.large ? 1000 : 300),
+    days: count("--days", values.days, values.large ? 60 : 28),
+    traversals: count("--traversals", values.traversals, values.large ? 20_000_000 : 1_000_000),
+    isJson: values.json,
+    isWrite: values.write,
+  };
+}
+
+function count(option: string, text: string | undefined, fallback: number): number {
+  if (text === undefined) return fallback;
+  const value = Number(text);
+  if (!Number.isInteger(value) || value < 1) throw new RangeError(`${option} ${text} is no whole number from 1 on.`);
+  return value;
+}
