@@ -112,7 +112,8 @@ async function within<T>(url: string, folder: string, work: (open: OpenContext) 
 
 function ingestIn(url: string, folder: string, uploadIds: readonly string[]): Promise<Run> {
   const program = fileURLToPath(new URL("./ingest-process.ts", import.meta.url));
-  const child = spawn(process.execPath, ["--import", "tsx", program, url, folder, ...uploadIds], { stdio: ["ignore", "pipe", "inherit"] });
+  // With the options of this process: the loader of TypeScript, and a profiler where one is on.
+  const child = spawn(process.execPath, [...process.execArgv, program, url, folder, ...uploadIds], { stdio: ["ignore", "pipe", "inherit"] });
   let out = "";
   child.stdout.on("data", (chunk: Buffer) => (out += chunk.toString()));
   return new Promise((resolve, reject) => {
