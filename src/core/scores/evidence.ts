@@ -17,6 +17,9 @@ export const EVIDENCE_RULES: readonly EvidenceRule[] = [
   { grade: "thin", vehicles: 10, distinctVehicles: 5, days: 1, halfWidthS: Infinity, halfWidthShare: Infinity },
 ];
 
+/** No grade asks for more distinct vehicles. */
+export const ENOUGH_VEHICLES = Math.max(...EVIDENCE_RULES.map((rule) => rule.distinctVehicles));
+
 /** How far the sample supports a mean delay. */
 export function evidenceOf(sample: { vehicles: number; distinctVehicles: number; days: number; delay: Estimate }): Evidence {
   const half = (sample.delay.high - sample.delay.low) / 2;

@@ -2,6 +2,7 @@ import { createDistinctCounter } from "@/core/stats/distinct-counter";
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
 import { createLevel, rollUp, type DelayLevel } from "./delay-level";
+import { ENOUGH_VEHICLES } from "./evidence";
 import { addLegQuarter, createReachLevel, type ReachLevel } from "./leg-level";
 import { isListed, prepareDay, type PreparedDay } from "./prepare-day";
 import { addOpenTo, clustersFor, closeDay, closeQuarter } from "./ratio-tally";
@@ -16,7 +17,7 @@ export interface GatheredScreen {
   /** Traversals of movement u: entries offset[u] to offset[u + 1]; those of a junction follow each other. Scratch. */
   offset: Uint32Array;
   delayS: Float32Array;
-  /** Distinct vehicles among entries from..to. */
+  /** Distinct vehicles among entries from..to, counted as far as evidence asks for them. */
   distinct(from: number, to: number): number;
 }
 
@@ -49,7 +50,7 @@ export function gatherScreen(days: readonly ScreenDay[], index: CatalogueIndex, 
   for (let u = 0; u < index.movements.length; u++) offset[u + 1] += offset[u];
   const { delayS, vehicle } = place(ordered, filter, isChosen, offset);
   const counter = createDistinctCounter(longestStretch(index, offset));
-  return { movements, legs, junctions, queues, offset, delayS, distinct: (from, to) => counter.count(vehicle, from, to) };
+  return { movements, legs, junctions, queues, offset, delayS, distinct: (from, to) => counter.count(vehicle, from, to, ENOUGH_VEHICLES) };
 
   function closeCluster(close: typeof closeDay): void {
     addOpenTo(movements.delay, index.legOf, legs.delay);

@@ -46,7 +46,7 @@ export function spillEstimate(level: ReachLevel, unit: number): Estimate {
 
 /** Quantile with the interval of Woodruff (Journal of the American Statistical Association 47, 1952). */
 export function quantileEstimate(values: number[], p: number): Estimate {
-  const scratch = Float32Array.from(values);
+  const scratch = new Float32Array(values);
   const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
   if (values.length === 0) return { value: NaN, low: NaN, high: NaN };
   const { low, high } = wilsonInterval(p, values.length);
@@ -55,7 +55,7 @@ export function quantileEstimate(values: number[], p: number): Estimate {
 
 /** Median and 95th percentile of what was observed; NaN of nothing. */
 export function reachQuantiles(values: number[]): { reachP50M: number; reachP95M: number } {
-  const scratch = Float32Array.from(values);
+  const scratch = new Float32Array(values);
   const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
   return { reachP50M: at(0.5), reachP95M: at(0.95) };
 }

@@ -45,6 +45,7 @@ export interface ScoreFilter {
 export interface MovementScore {
   movement: number;
   vehicles: number;
+  /** Counted up to 50: evidence asks for no more. */
   distinctVehicles: number;
   days: number;
   delay: Estimate;
@@ -70,6 +71,7 @@ export interface LegScore {
 export interface JunctionScore {
   junction: number;
   vehicles: number;
+  /** Counted up to 50: evidence asks for no more. */
   distinctVehicles: number;
   days: number;
   delay: Estimate;

@@ -25,26 +25,38 @@ export function rankIntervals(
   const units = value.length;
   const { draws, tail = 0.025 } = options;
   if (draws > 65_535) throw new RangeError(`At most 65535 draws, got ${draws}.`);
-  const normal = normalRandom(seededRandom(options.seed));
+  const normals = normalsOf(options.seed, draws * units);
   // counts[unit * units + rank - 1]: how often the unit had the rank.
   const counts = new Uint16Array(units * units);
   const drawn = new Float64Array(units);
+  const bucket = new Uint16Array(units);
   const above = new Uint32Array(BUCKETS + 1);
   for (let d = 0; d < draws; d++) {
     let [least, most] = [Infinity, -Infinity];
     for (let i = 0; i < units; i++) {
-      const x = value[i] + sd[i] * normal();
+      const x = value[i] + sd[i] * normals[d * units + i];
       drawn[i] = x;
       if (x < least) least = x;
       if (x > most) most = x;
     }
-    if (units > FEW) countAboveBuckets(drawn, least, most, above);
+    if (units > FEW) countAboveBuckets(drawn, least, most, bucket, above);
     for (let i = 0; i < units; i++) {
-      const better = units > FEW ? above[bucketOf(drawn[i], least, most) + 1] : countAbove(drawn, drawn[i]);
+      const better = units > FEW ? above[bucket[i] + 1] : countAbove(drawn, drawn[i]);
       counts[i * units + better] += 1;
     }
   }
   return summarise(counts, units, draws, tail);
+}
+
+let lastNormals: { seed: number; values: Float64Array } | null = null;
+
+/** The first `count` numbers of the seed's sequence. The last sequence is kept: every ranking of a city asks for the same one. */
+function normalsOf(seed: number, count: number): Float64Array {
+  if (lastNormals?.seed !== seed || lastNormals.values.length < count) {
+    const normal = normalRandom(seededRandom(seed));
+    lastNormals = { seed, values: Float64Array.from({ length: count }, normal) };
+  }
+  return lastNormals.values;
 }
 
 function countAbove(drawn: Float64Array, x: number): number {
@@ -57,10 +69,13 @@ function bucketOf(x: number, least: number, most: number): number {
   return most > least ? Math.min(BUCKETS - 1, Math.floor(((x - least) / (most - least)) * BUCKETS)) : 0;
 }
 
-/** above[b]: how many values lie in bucket b or higher. */
-function countAboveBuckets(drawn: Float64Array, least: number, most: number, above: Uint32Array): void {
+/** bucket[i]: where value i lies; above[b]: how many values lie in bucket b or higher. */
+function countAboveBuckets(drawn: Float64Array, least: number, most: number, bucket: Uint16Array, above: Uint32Array): void {
   above.fill(0);
-  for (const x of drawn) above[bucketOf(x, least, most)] += 1;
+  for (let i = 0; i < drawn.length; i++) {
+    bucket[i] = bucketOf(drawn[i], least, most);
+    above[bucket[i]] += 1;
+  }
   for (let b = BUCKETS - 1; b >= 0; b--) above[b] += above[b + 1];
 }
 

@@ -11,6 +11,12 @@ describe("distinct counter", () => {
     expect(counter.count(values, 3, 3)).toBe(0);
   });
 
+  it("stops at as many as are enough", () => {
+    const counter = createDistinctCounter(5);
+    const values = Uint32Array.of(3, 3, 5, 8, 13);
+    expect([1, 2, 3, 4, 5].map((enough) => counter.count(values, 0, 5, enough))).toEqual([1, 2, 3, 4, 4]);
+  });
+
   it("agrees with a set from call to call", () => {
     const random = seededRandom(9);
     const values = Uint32Array.from({ length: 3000 }, () => Math.floor(random() * 700) * 65_536);
