@@ -10,26 +10,63 @@ const UNSEEN = -2;
 /** From a cell's centre to its far corner, with room for cells larger than the average and for half a pixel's diagonal. */
 const CELL_REACH_M = getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) * 1.25 + PIXEL_M;
 
-/** The index over H3 cells of resolution 11 (flat to flat about 50 m). */
-export function createH3Index(): JunctionIndex {
-  return { claim: claimCells };
+/** Disks that are remembered at most, some 20 MB. */
+const MOST_DISKS = 50_000;
+
+/** A cell around a disc's centre, with the middle of it. */
+interface NearCell {
+  cell: string;
+  lat: number;
+  lon: number;
 }
 
-function claimCells(claims: Claims): ClaimIndex {
+/** The cells within some rings of a cell. */
+type Disks = (cell: string, rings: number) => readonly NearCell[];
+
+/** The index over H3 cells of resolution 11 (flat to flat about 50 m). What it learned of cells serves every claim. */
+export function createH3Index(): JunctionIndex {
+  const disks = createDisks();
+  return { claim: (claims) => claimCells(claims, disks) };
+}
+
+/** Neighbouring discs begin from the same cells again and again, and h3-js is slow to answer. */
+function createDisks(): Disks {
+  const known = new Map<string, readonly NearCell[]>();
+  const places = new Map<string, NearCell>();
+  const forget = (): void => {
+    known.clear();
+    places.clear();
+  };
+  const placeOf = (cell: string): NearCell => {
+    let place = places.get(cell);
+    if (!place) {
+      const [lat, lon] = cellToLatLng(cell);
+      place = { cell, lat, lon };
+      places.set(cell, place);
+    }
+    return place;
+  };
+  return (cell, rings) => {
+    const key = `${cell} ${rings}`;
+    let disk = known.get(key);
+    if (!disk) {
+      if (known.size >= MOST_DISKS) forget();
+      disk = gridDisk(cell, rings).map(placeOf);
+      known.set(key, disk);
+    }
+    return disk;
+  };
+}
+
+function claimCells(claims: Claims, disks: Disks): ClaimIndex {
   const slots = new Map<string, number>();
   const owners: number[][] = [];
-  const centres = new Map<string, [number, number]>();
   for (let i = 0; i < claims.length; i++) {
     const plane = planeAt(claims.lat[i], claims.lon[i]);
     const reach = claims.radiusM[i] + CELL_REACH_M;
     const rings = Math.ceil((reach / getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) + 1) / 1.5);
-    for (const cell of gridDisk(latLngToCell(claims.lat[i], claims.lon[i], RESOLUTION), rings)) {
-      let centre = centres.get(cell);
-      if (!centre) {
-        centre = cellToLatLng(cell);
-        centres.set(cell, centre);
-      }
-      if (Math.hypot(eastM(plane, centre[1]), northM(plane, centre[0])) > reach) continue;
+    for (const { cell, lat, lon } of disks(latLngToCell(claims.lat[i], claims.lon[i], RESOLUTION), rings)) {
+      if (Math.hypot(eastM(plane, lon), northM(plane, lat)) > reach) continue;
       let slot = slots.get(cell);
       if (slot === undefined) {
         slot = owners.length;
