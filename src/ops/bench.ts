@@ -27,6 +27,7 @@ function readArguments(): BenchArguments | "help" | null {
 async function bench(wanted: BenchArguments): Promise<void> {
   const place = await openPlace();
   const figures: Figure[] = [];
+  for (const signal of ["SIGINT", "SIGTERM"] as const) process.once(signal, () => void place.close().finally(() => process.exit(1)));
   try {
     for await (const figure of measure(place, wanted)) {
       figures.push(figure);

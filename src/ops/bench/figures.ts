@@ -11,7 +11,8 @@ export interface Figure {
   ratio: number;
 }
 
-const rounded = (value: number) => Number(value.toPrecision(3));
+/** To three digits; a bound that is a whole number stays as it is. */
+const rounded = (value: number) => (Number.isInteger(value) ? value : Number(value.toPrecision(3)));
 
 /** A figure whose ratio is to `other`, which `label` names. */
 export function figure(name: string, value: number, unit: string, label: string, other: number): Figure {
