@@ -139,6 +139,17 @@ for (const role of ROLES) {
   });
 }
 
+test("pages of what does not exist answer 404", async ({ page, signIn }) => {
+  await signIn("engineer");
+  const none = "00000000-0000-4000-8000-000000000000";
+  const wrong: string[] = [];
+  for (const address of ["/junctions/999999", "/junctions/first", "/junctions/99999999999", "/legs/999999", "/data/legs/999999", `/data/${none}`, `/hotspots/${none}`, "/nowhere"]) {
+    const status = (await page.request.get(address)).status();
+    if (status !== 404) wrong.push(`${address}: ${status}`);
+  }
+  expect(wrong).toEqual([]);
+});
+
 test("signed out, routes answer 401 and pages lead to the sign-in", async ({ page }) => {
   const wrong: string[] = [];
   for (const key of Object.keys(ROUTES)) {

@@ -8,7 +8,7 @@ import { listUploads } from "@/services/uploads/list-uploads";
 import { FeedsPanel } from "@/ui/feeds/feeds-panel";
 import { DataView } from "@/ui/uploads/data-view";
 import { coverageQuery, uploadsQuery } from "@/ui/uploads/queries";
-import { makeFeedTokenAction, revokeFeedTokenAction } from "./actions";
+import { makeFeedTokenAction, revokeFeedTokenAction } from "../actions";
 
 export const metadata: Metadata = { title: "Data" };
 
