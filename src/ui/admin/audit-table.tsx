@@ -20,7 +20,7 @@ export function AuditTable({ events, locale, timeZone }: { events: AuditView[]; 
             <Td className="whitespace-nowrap">
               <time dateTime={event.at}>{formatInstant(event.at, locale, timeZone)}</time>
             </Td>
-            <Td className="break-all">{event.actor}</Td>
+            <Td className="min-w-48 break-words">{event.actor}</Td>
             <Td>{event.action}</Td>
             <Td className="break-words">{event.subject}</Td>
             <Td className="text-ink-soft">{detailText(event.detail)}</Td>

@@ -48,12 +48,12 @@ export function JunctionListPage() {
 
 function JunctionList({ junctions }: { junctions: ListedJunction[] }) {
   return (
-    <ul className="grid content-start gap-x-10 px-4 py-3 sm:grid-cols-2 sm:px-6 xl:grid-cols-3">
+    <ul className="grid grid-cols-1 content-start gap-x-10 px-4 py-3 sm:grid-cols-2 sm:px-6 xl:grid-cols-3">
       {junctions.map((junction) => (
-        <li key={junction.id} className="border-b border-rule [contain-intrinsic-size:auto_3.4rem] [content-visibility:auto]">
+        <li key={junction.id} className="min-w-0 border-b border-rule [contain-intrinsic-size:auto_3.4rem] [content-visibility:auto]">
           <Link href={`/junctions/${junction.id}`} prefetch={false} className="flex min-h-12 items-baseline gap-3 py-2.5 outline-offset-[-2px] hover:bg-paper">
             <span className="w-14 shrink-0 font-table text-sm text-ink-soft">{junction.code}</span>
-            <span className="font-table text-[1.05rem] font-medium leading-tight">
+            <span className="min-w-0 font-table text-[1.05rem] font-medium leading-tight [overflow-wrap:anywhere]">
               {junction.name}
               {junction.corridor ? <span className="block text-sm font-normal text-ink-soft">{junction.corridor}</span> : null}
             </span>

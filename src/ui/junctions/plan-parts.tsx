@@ -27,9 +27,10 @@ export function CrossBar(props: { leg: LegView; scale: PlanScale; atM: number; h
   return <line x1={x - dx} y1={y - dy} x2={x + dx} y2={y + dy} stroke={props.stroke} strokeWidth={props.width} strokeDasharray={props.dashed ? "4 3" : undefined} />;
 }
 
-export function NorthArrow({ size }: { size: number }) {
+/** In the upper right corner, or in the lower one where labels stand in the upper. */
+export function NorthArrow({ size, isLow = false }: { size: number; isLow?: boolean }) {
   return (
-    <g transform={`translate(${size - 18} 30)`} aria-hidden="true">
+    <g transform={`translate(${size - 18} ${isLow ? size - 30 : 30})`} aria-hidden="true">
       <path d="M0 -20L6 4L0 0L-6 4Z" fill={COLORS.ink} />
       <text y="20" textAnchor="middle" fontSize="14" fill={COLORS.ink}>
         {compassPoint(0).charAt(0).toUpperCase()}

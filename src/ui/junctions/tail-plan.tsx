@@ -30,7 +30,7 @@ export function TailPlan({ view, when }: { view: JunctionView; when: WhenQuery }
         {view.legs.map((leg) => (
           <LegLabel key={leg.id} leg={leg} scale={scale} seenM={Math.min(radiusM, lineLength(leg.line))} href={`/legs/${leg.id}${suffix ? `?${suffix}` : ""}`} lines={labelLines(leg, settings.units, locale)} />
         ))}
-        <NorthArrow size={SIZE} />
+        <NorthArrow size={SIZE} isLow />
         <ScaleBar scale={scale} units={settings.units} />
       </svg>
       <p className="flex flex-wrap items-center gap-x-5 font-table text-[0.92rem] text-ink-soft">

@@ -66,7 +66,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
           </div>
           <div className="flex min-h-0 flex-col" aria-busy={isPlaceholderData}>
             <ScreenTools query={query} onChange={change} publish={publish} isMapOpen={isMapOpen} onToggleMap={() => setMapOpen(!isMapOpen)} shown={rows.length} />
-            <div data-scrolls className={`min-h-0 flex-1 lg:overflow-y-auto ${isPlaceholderData ? "opacity-60" : ""}`}>
+            <div data-scrolls className={`relative min-h-0 flex-1 lg:overflow-y-auto ${isPlaceholderData ? "opacity-60" : ""}`}>
               {rows.length > 0 ? (
                 <RankingTable {...scale} rows={rows} query={query} selected={at} onSelect={select} onHover={hover.set} onSort={change} />
               ) : (
