@@ -18,8 +18,15 @@ export function referenceSentence(movements: MovementView[], turn: Turn | "any",
   const known = movements.filter((movement) => movement.vehicles > 0 && movement.referenceS !== null && (turn === "any" || movement.turn === turn));
   if (known.length === 0) return null;
   const parts = [...new Set(known.map((movement) => movement.referenceSource))].map((source) => {
-    const times = known.filter((movement) => movement.referenceSource === source).map((movement) => `${TURNING[movement.turn]} ${formatSeconds(movement.referenceS, locale)}`);
+    const ofSource = known.filter((movement) => movement.referenceSource === source);
+    const times = [...new Set(ofSource.map((movement) => movement.turn))].map((each) => turnTimes(each, ofSource, locale));
     return `${times.join(", ")} (${REFERENCE_WORDS[source]})`;
   });
   return `Delay is the time beyond what an undelayed vehicle needs: ${parts.join("; ")}.`;
+}
+
+/** A leg may have two exits for one turn: "right 24 s or 25 s by exit". */
+function turnTimes(turn: Turn, movements: MovementView[], locale: string): string {
+  const times = new Set(movements.filter((movement) => movement.turn === turn).map((movement) => formatSeconds(movement.referenceS, locale)));
+  return `${TURNING[turn]} ${[...times].join(" or ")}${times.size > 1 ? " by exit" : ""}`;
 }

@@ -44,6 +44,8 @@ describe("reference of the delays", () => {
       "Delay is the time beyond what an undelayed vehicle needs: left 23 s (from few vehicles that did not stop, steadied by those of the same turn); through 20 s, right 22 s (from vehicles that did not stop).",
     );
     expect(referenceSentence(all, "right", "en-GB")).toMatch(/: right 22 s/);
+    const twoRights = [movement("right", 24, "shrunk"), movement("right", 25, "shrunk"), movement("right", 25.2, "shrunk")];
+    expect(referenceSentence(twoRights, "any", "en-GB")).toMatch(/: right 24 s or 25 s by exit \(from few/);
     expect(referenceSentence([movement("left", null, "shrunk")], "any", "en-GB")).toBeNull();
   });
 });
