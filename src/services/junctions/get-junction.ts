@@ -5,6 +5,7 @@ import { corridors, junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { WhenQuery, type JunctionView, type ProfilePoint } from "@/domain/junction";
 import { estimateView } from "@/domain/screen";
+import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 import { profileOf } from "../screens/profile-of";
 import { finite, rowOf } from "../screens/ranked-row";
@@ -12,7 +13,7 @@ import { basisOf, scoreCity } from "../screens/score-city";
 import { exitView, legView, movementView } from "./leg-view";
 import { readExits, readLegs, readMovements } from "./junction-rows";
 
-export const GetJunction = z.object({ junctionId: z.coerce.number().int().positive(), when: WhenQuery });
+export const GetJunction = z.object({ junctionId: RowKey, when: WhenQuery });
 
 export async function getJunction(ctx: Context, input: z.input<typeof GetJunction>): Promise<JunctionView> {
   requirePermission(ctx, "junction.view");

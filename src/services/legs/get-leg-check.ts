@@ -1,20 +1,18 @@
 import { eq } from "drizzle-orm";
-import { z } from "zod";
 import { lengthOf } from "@/core/geometry/polyline";
 import { junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import type { LegCheckView, LegOfCheck } from "@/domain/leg-check";
 import { reprocessLegs } from "@/jobs/definitions/reprocess-legs";
+import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 import { readExits, readLegs, readMovements, type LegRow } from "../junctions/junction-rows";
 import { exitView, pairsOf } from "../junctions/leg-view";
 
-const JunctionId = z.coerce.number().int().positive();
-
 /** One junction's legs as an engineer checks them, and whether its pings are being matched anew. */
 export async function getLegCheck(ctx: Context, input: { junctionId: string | number }): Promise<LegCheckView> {
   requirePermission(ctx, "leg.view");
-  const id = JunctionId.safeParse(input.junctionId);
+  const id = RowKey.safeParse(input.junctionId);
   const columns = { id: junctions.id, code: junctions.code, name: junctions.name };
   const [junction] = id.success ? await ctx.db.select(columns).from(junctions).where(eq(junctions.id, id.data)) : [];
   if (!junction) throw notFound("Junction", input.junctionId);

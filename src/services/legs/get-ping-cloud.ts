@@ -1,19 +1,17 @@
 import { desc, eq } from "drizzle-orm";
-import { z } from "zod";
 import { decodeNearPings } from "@/core/pings/near-sample";
 import { pingClouds, uploads } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import type { PingCloud } from "@/domain/leg-check";
+import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 
 /** Newest uploads whose samples are shown together: enough to see every street, few enough to draw. */
 const MOST_UPLOADS = 4;
 
-const JunctionId = z.coerce.number().int().positive();
-
 export async function getPingCloud(ctx: Context, input: { junctionId: string | number }): Promise<PingCloud> {
   requirePermission(ctx, "leg.view");
-  const id = JunctionId.safeParse(input.junctionId);
+  const id = RowKey.safeParse(input.junctionId);
   if (!id.success) throw notFound("Junction", input.junctionId);
   const rows = await ctx.db
     .select({ payload: pingClouds.payload })

@@ -3,6 +3,7 @@ import { z } from "zod";
 import { junctions, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { StripQuery, type LegStripView } from "@/domain/junction";
+import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 import { profilePoint } from "../junctions/get-junction";
 import { legView, movementView } from "../junctions/leg-view";
@@ -11,7 +12,7 @@ import { profileOf } from "../screens/profile-of";
 import { basisOf, scoreCity } from "../screens/score-city";
 import { chosenDates } from "./chosen-dates";
 
-export const GetLegStrip = z.object({ legId: z.coerce.number().int().positive(), query: StripQuery });
+export const GetLegStrip = z.object({ legId: RowKey, query: StripQuery });
 
 /** All that a strip page says in words and figures; the tracks themselves come from getTracks. */
 export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStrip>): Promise<LegStripView> {

@@ -5,12 +5,13 @@ import { legs, movements, traversals } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { MOST_TRACKS, StripQuery } from "@/domain/junction";
 import { dayFromIso } from "@/domain/local-time";
+import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 import { windowOf } from "../screens/score-city";
 import { getSettings } from "../settings/get-settings";
 import { chosenDates } from "./chosen-dates";
 
-export const GetTracks = z.object({ legId: z.coerce.number().int().positive(), query: StripQuery });
+export const GetTracks = z.object({ legId: RowKey, query: StripQuery });
 
 /** Tracks that reach into the window from before it, or leave the leg after it, belong on the strip. */
 const LEAD_IN_MIN = 15;
