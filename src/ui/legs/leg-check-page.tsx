@@ -24,13 +24,13 @@ export function LegCheckPage({ junctionId, actions }: { junctionId: number; acti
           <HeadWords view={view} />
         </p>
       </PageHead>
-      <RematchNote key={junctionId} rematch={view.rematch} />
+      <RematchNote key={`rematch-${junctionId}`} rematch={view.rematch} />
       {error ? (
         <p role="alert" className="border-b border-rule px-4 py-2.5 font-medium text-tail sm:px-6">
           What is shown may be out of date: {error.message}
         </p>
       ) : null}
-      <CheckDesk key={junctionId} view={view} actions={actions} />
+      <CheckDesk key={`desk-${junctionId}`} view={view} actions={actions} />
     </article>
   );
 }
