@@ -43,6 +43,8 @@ const NEEDS: Record<string, Permission> = {
   publishReport: "hotspots.publish",
   rankJunctions: "screen.view",
   receiveUpload: "upload.create",
+  requireJunction: "junction.view",
+  requireLeg: "strip.view",
   resendMail: "user.manage",
   revokeFeedToken: "feed.manage",
   saveSettings: "setting.manage",
