@@ -10,6 +10,7 @@ import { screenDays, uploads } from "@/db/schema";
 import { raiseDataVersion } from "@/services/catalogue/catalogue";
 import { storeNetwork, type NetworkKeys } from "@/services/ingest/network-rows";
 import { makePartitions, storeTraversals } from "@/services/ingest/store-traversals";
+import { emptyTraversals } from "@/services/ingest/join-traversals";
 
 /** A Monday. */
 export const FIRST_DAY = 20_514;
@@ -115,7 +116,7 @@ function movementOf(leg: number, exit: number, legs: Leg[], exits: Exit[], turn:
 }
 
 function traversalsOf(network: Network, day: number, count: number, random: Random): Traversals {
-  const all = emptyTraversals(count);
+  const all = emptyTraversals(count, count * TRACK_POINTS);
   const dayMs = day * DAY_MS + OPEN_FROM_H * 3_600_000;
   const startMs = Float64Array.from({ length: count }, () => dayMs + random() * (OPEN_HOURS - 0.2) * 3_600_000).sort();
   for (let i = 0; i < count; i++) {
@@ -147,25 +148,6 @@ function drawTrack(all: Traversals, i: number, waitS: number): void {
     all.trackT[from + p] = share * 28 - 8 + (share > 0.75 ? waitS : 0);
   }
   all.trackOffset[i + 1] = from + TRACK_POINTS;
-}
-
-function emptyTraversals(length: number): Traversals {
-  return {
-    length,
-    movement: new Uint32Array(length),
-    vehicle: new Uint32Array(length),
-    enterMs: new Float64Array(length),
-    stopLineMs: new Float64Array(length),
-    exitMs: new Float64Array(length),
-    delayS: new Float32Array(length),
-    stops: new Uint8Array(length),
-    stoppedS: new Float32Array(length),
-    farthestStopM: new Float32Array(length),
-    flags: new Uint8Array(length),
-    trackOffset: new Uint32Array(length + 1),
-    trackT: new Float32Array(length * TRACK_POINTS),
-    trackS: new Float32Array(length * TRACK_POINTS),
-  };
 }
 
 /** Every leg in every quarter of the open hours. */

@@ -55,7 +55,7 @@ const SCALARS = [
   "flags",
 ] as const satisfies readonly (keyof Traversals)[];
 
-function emptyTraversals(length: number, points: number): Traversals {
+export function emptyTraversals(length: number, points: number): Traversals {
   return {
     length,
     movement: new Uint32Array(length),
