@@ -126,3 +126,11 @@ async function linkMailedTo(email: string): Promise<string> {
     .toBeTruthy();
   return link ?? "";
 }
+
+test("the pages for a lost password leave nothing that axe finds", async ({ page, expectAccessible }) => {
+  for (const path of ["/forgot", "/set-password", "/set-password?token=not-a-token"]) {
+    await page.goto(path);
+    await expect(page.getByRole("heading", { level: 1 })).toBeVisible();
+    await expectAccessible();
+  }
+});
