@@ -5,7 +5,7 @@ import { createScratch, type LegView } from "./moments";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options";
 import { presenceByLeg, quartersSeen, type Presence } from "./presence";
 import { quarterFigures, type QuarterFigures } from "./quarter-figures";
-import { findStandings, standingsByLeg } from "./standings";
+import { findStandings, standingsByLeg, type Standings } from "./standings";
 import { seenPerMetre } from "./unseen-tail";
 
 /**
@@ -19,10 +19,24 @@ import { seenPerMetre } from "./unseen-tail";
 export function legQuarters(network: Network, traversals: Traversals, open: OpenTracks = NO_OPEN_TRACKS, options: Partial<QueueOptions> = {}): LegQuarters {
   const chosen: QueueOptions = { ...DEFAULT_QUEUE_OPTIONS, ...options };
   const standings = findStandings(network, traversals, chosen, open);
-  const offset = standingsByLeg(standings, network.legs.length);
-  const perMetre = seenPerMetre(standings, offset, chosen);
   const presence = presenceByLeg(network, traversals, standings, chosen, open);
-  const seenQuarters = quartersSeen(presence);
+  const perMetre = seenPerMetre(standings, standingsByLeg(standings, network.legs.length), chosen);
+  return quartersOfLegs(network, { standings, presence, perMetre, seenQuarters: quartersSeen(presence) }, chosen);
+}
+
+/** What the quarters of some legs rest on; density and quarters with traffic are the whole city's. */
+export interface LegSights {
+  standings: Standings;
+  presence: Presence;
+  /** Seen vehicles per metre of standing column, by leg. */
+  perMetre: Float64Array;
+  /** Starts of the quarters in which any vehicle came on any leg. */
+  seenQuarters: ReadonlySet<number>;
+}
+
+/** Second half of `legQuarters`: legs may come in parts, each with all of its standings and spans. */
+export function quartersOfLegs(network: Network, { standings, presence, perMetre, seenQuarters }: LegSights, chosen: QueueOptions = DEFAULT_QUEUE_OPTIONS): LegQuarters {
+  const offset = standingsByLeg(standings, network.legs.length);
   const scratch = createScratch(standings.length);
   const rows: (QuarterFigures & { leg: number; startMs: number })[] = [];
   for (let leg = 0; leg < network.legs.length; leg++) {

@@ -2,7 +2,7 @@ import { quantile } from "@/core/stats/quantile";
 import type { Network, Traversals } from "@/core/types";
 import { columnsOfLeg } from "./columns-of-leg";
 import { DEFAULT_QUEUE_OPTIONS, type QueueOptions } from "./options";
-import { findStandings, standingsByLeg } from "./standings";
+import { findStandings, standingsByLeg, type Standings } from "./standings";
 
 /** Fewer places than this in all say nothing useful about the share seen; on one leg, nothing about that leg. */
 const LEAST_PLACES = 200;
@@ -20,18 +20,36 @@ const NARROW_QUARTILE = 0.25;
 export function penetrationFromQueues(network: Network, traversals: Traversals, options: Partial<QueueOptions> = {}): number {
   const chosen: QueueOptions = { ...DEFAULT_QUEUE_OPTIONS, ...options };
   const standings = findStandings(network, traversals, chosen);
-  const offset = standingsByLeg(standings, network.legs.length);
+  return penetrationOf(placeSums(standings, standingsByLeg(standings, network.legs.length), chosen));
+}
+
+/** Vehicles before the last one of each standing column, and places up to it, summed by leg. */
+export interface PlaceSums {
+  ahead: Float64Array;
+  places: Float64Array;
+}
+
+/** First half of `penetrationFromQueues`, leg by leg; standings of open tracks take no part. O(standings × log). */
+export function placeSums(standings: Standings, offset: Uint32Array, options: QueueOptions): PlaceSums {
+  const ahead = new Float64Array(offset.length - 1);
+  const places = new Float64Array(offset.length - 1);
+  for (let leg = 0; leg < ahead.length; leg++) {
+    for (const { seen, reachM } of columnsOfLeg(standings, offset[leg], offset[leg + 1], options)) {
+      ahead[leg] += seen - 1;
+      places[leg] += Math.max(seen - 1, Math.round(reachM / options.jamSpacingM));
+    }
+  }
+  return { ahead, places };
+}
+
+/** Second half of `penetrationFromQueues`: needs the sums of all legs of the city. */
+export function penetrationOf({ ahead, places }: PlaceSums): number {
   const all = { ahead: 0, places: 0 };
   const byLeg: number[] = [];
-  for (let leg = 0; leg < network.legs.length; leg++) {
-    const own = { ahead: 0, places: 0 };
-    for (const { seen, reachM } of columnsOfLeg(standings, offset[leg], offset[leg + 1], chosen)) {
-      own.ahead += seen - 1;
-      own.places += Math.max(seen - 1, Math.round(reachM / chosen.jamSpacingM));
-    }
-    all.ahead += own.ahead;
-    all.places += own.places;
-    if (own.places >= LEAST_PLACES_OF_LEG) byLeg.push(own.ahead / own.places);
+  for (let leg = 0; leg < ahead.length; leg++) {
+    all.ahead += ahead[leg];
+    all.places += places[leg];
+    if (places[leg] >= LEAST_PLACES_OF_LEG) byLeg.push(ahead[leg] / places[leg]);
   }
   if (all.places < LEAST_PLACES) return NaN;
   return byLeg.length < LEAST_LEGS ? all.ahead / all.places : quantile(byLeg, NARROW_QUARTILE);

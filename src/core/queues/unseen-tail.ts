@@ -13,6 +13,17 @@ const ASSUMED_LANES = 2;
  * its standings. NaN where nobody stood behind anybody in the whole city. O(standings × log).
  */
 export function seenPerMetre(standings: Standings, offset: Uint32Array, options: QueueOptions): Float64Array {
+  return perMetreOf(columnSums(standings, offset, options));
+}
+
+/** What the standing columns of each leg add up to: vehicles before the last one, and reach. */
+export interface ColumnSums {
+  ahead: Float64Array;
+  reachM: Float64Array;
+}
+
+/** First half of `seenPerMetre`, leg by leg. */
+export function columnSums(standings: Standings, offset: Uint32Array, options: QueueOptions): ColumnSums {
   const legs = offset.length - 1;
   const ahead = new Float64Array(legs);
   const reachM = new Float64Array(legs);
@@ -22,6 +33,11 @@ export function seenPerMetre(standings: Standings, offset: Uint32Array, options:
       reachM[leg] += column.reachM;
     }
   }
+  return { ahead, reachM };
+}
+
+/** Second half of `seenPerMetre`: needs the sums of all legs of the city. */
+export function perMetreOf({ ahead, reachM }: ColumnSums): Float64Array {
   const sum = (values: Float64Array): number => values.reduce((total, value) => total + value, 0);
   const city = sum(ahead) / sum(reachM);
   return ahead.map((n, leg) => (city > 0 ? (n + PRIOR_VEHICLES) / (reachM[leg] + PRIOR_VEHICLES / city) : NaN));

@@ -28,7 +28,12 @@ export const REFERENCE = Object.freeze({
  * movement. Never faster than the speed limit. Delays are not clipped. O(track points + n log n).
  */
 export function setReferences(network: Network, traversals: Traversals): void {
-  const unhindered = gatherUnhindered(network, traversals);
+  setReferencesFrom(network, gatherUnhindered(network, traversals));
+  setDelays(network, traversals);
+}
+
+/** The references of `setReferences` from the seconds that `gatherUnhindered` found, which are sorted in place. O(n log n). */
+export function setReferencesFrom(network: Network, unhindered: number[][]): void {
   const built = network.movements.map((movement) => builtReferenceS(network, movement));
   const counts = unhindered.map((seconds) => seconds.length);
   const excess = unhindered.map((seconds, m) =>
@@ -50,6 +55,10 @@ export function setReferences(network: Network, traversals: Traversals): void {
     movement.referenceN = counts[m];
     movement.referenceSource = counts[m] >= REFERENCE.seenN ? "unstopped" : counts[m] > 0 ? "shrunk" : "free-speed";
   });
+}
+
+/** Each traversal's delay against the reference of its movement. O(traversals). */
+export function setDelays(network: Network, traversals: Traversals): void {
   for (let i = 0; i < traversals.length; i++) {
     const seconds = (traversals.exitMs[i] - traversals.enterMs[i]) / 1000;
     traversals.delayS[i] = seconds - network.movements[traversals.movement[i]].referenceS;
@@ -67,8 +76,8 @@ function shrunkMeans(group: number[], groups: number, values: number[], counts: 
   return sum.map((value, g) => value / weight[g]);
 }
 
-/** Seconds from cordon to cordon of the traversals that nothing slowed down, by movement. */
-function gatherUnhindered(network: Network, traversals: Traversals): number[][] {
+/** Seconds from cordon to cordon of the traversals that nothing slowed down, by movement. O(track points). */
+export function gatherUnhindered(network: Network, traversals: Traversals): number[][] {
   const out: number[][] = network.movements.map(() => []);
   for (let i = 0; i < traversals.length; i++) {
     const isWhole = (traversals.flags[i] & TRAVERSAL_FLAGS.truncated) === 0;

@@ -11,6 +11,12 @@ const SAME_CORDON_M = 2;
  * cordons moved since has no earlier reference. `network` and `traversals` are changed in place. O(movements + traversals).
  */
 export function keepSettledReferences(network: Network, traversals: Traversals, earlier: Network): void {
+  const shiftS = settleReferences(network, earlier);
+  for (let i = 0; i < traversals.length; i++) traversals.delayS[i] += shiftS[traversals.movement[i]];
+}
+
+/** `keepSettledReferences` without the traversals: seconds by which the delays of each movement grow. O(movements). */
+export function settleReferences(network: Network, earlier: Network): Float64Array {
   const known = new Map(earlier.movements.map((movement) => [movement.id, movement]));
   const shiftS = new Float64Array(network.movements.length);
   network.movements.forEach((movement, m) => {
@@ -26,5 +32,5 @@ export function keepSettledReferences(network: Network, traversals: Traversals, 
     movement.referenceN = n;
     if (old.referenceN >= movement.referenceN - old.referenceN) movement.referenceSource = old.referenceSource;
   });
-  for (let i = 0; i < traversals.length; i++) traversals.delayS[i] += shiftS[traversals.movement[i]];
+  return shiftS;
 }
