@@ -7,6 +7,7 @@ import { pipeline } from "node:stream/promises";
 import { notFound } from "@/domain/errors";
 import { checkKey, type Storage } from "./storage";
 
+const RANGE_CHUNK_BYTES = 2 ** 20;
 const PARTIAL = ".part";
 /** An object that arrives for longer than this does not arrive any more. */
 const PARTIAL_MAX_MS = 24 * 3_600_000;
@@ -32,10 +33,10 @@ export function openFolderStorage(root: string): Storage {
       }
     },
 
-    async open(key) {
+    async open(key, range) {
       try {
         const file = await open(pathOf(key));
-        return file.createReadStream();
+        return file.createReadStream(range && { start: range.from, end: range.to - 1, highWaterMark: RANGE_CHUNK_BYTES });
       } catch (error) {
         if (isMissing(error)) throw notFound("Stored file", key);
         throw error;
@@ -53,6 +54,10 @@ export function openFolderStorage(root: string): Storage {
 
     async remove(key) {
       await rm(pathOf(key), { force: true });
+    },
+
+    async removeFolder(folder) {
+      await rm(pathOf(folder), { recursive: true, force: true });
     },
   };
 }

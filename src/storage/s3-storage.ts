@@ -52,11 +52,11 @@ export function openS3Storage(options: S3StorageOptions): Storage {
       }
     },
 
-    async open(key) {
+    async open(key, range) {
       checkKey(key);
       const { GetObjectCommand } = await import("@aws-sdk/client-s3");
       try {
-        const { Body } = await (await client()).send(new GetObjectCommand({ Bucket, Key: key }));
+        const { Body } = await (await client()).send(new GetObjectCommand({ Bucket, Key: key, ...(range && { Range: `bytes=${range.from}-${range.to - 1}` }) }));
         return Body as Readable;
       } catch (error) {
         if (isMissing(error)) throw notFound("Stored file", key);
@@ -79,6 +79,17 @@ export function openS3Storage(options: S3StorageOptions): Storage {
       checkKey(key);
       const { DeleteObjectCommand } = await import("@aws-sdk/client-s3");
       await (await client()).send(new DeleteObjectCommand({ Bucket, Key: key }));
+    },
+
+    async removeFolder(folder) {
+      const Prefix = `${checkKey(folder)}/`;
+      const { DeleteObjectCommand, ListObjectsV2Command } = await import("@aws-sdk/client-s3");
+      for (;;) {
+        const { Contents = [] } = await (await client()).send(new ListObjectsV2Command({ Bucket, Prefix }));
+        if (Contents.length === 0) return;
+        // One by one: the request for many at once asks for a checksum that stores of other makers do not all know.
+        for (const { Key } of Contents) await (await client()).send(new DeleteObjectCommand({ Bucket, Key }));
+      }
     },
   };
 }

@@ -56,6 +56,15 @@ describe.each(Object.entries(PLACES))("files in %s", (_, openPlace) => {
     expect(await storage.put("uploads/a1.csv", Readable.from([bytes.subarray(0, 1000), bytes.subarray(1000)]))).toBe(300_000);
     expect(await storage.size("uploads/a1.csv")).toBe(300_000);
     expect((await buffer(await storage.open("uploads/a1.csv"))).equals(bytes)).toBe(true);
+    expect([...(await buffer(await storage.open("uploads/a1.csv", { from: 249, to: 253 })))]).toEqual([249, 250, 0, 1]);
+  });
+
+  it("go by the folder, and only those below it", async () => {
+    for (const key of ["pieces/a/1", "pieces/a/b/2", "pieces/ab/3"]) await storage.put(key, Readable.from([Buffer.from(key)]));
+    await storage.removeFolder("pieces/a");
+    await storage.removeFolder("pieces/never");
+    expect(await Promise.all(["pieces/a/1", "pieces/a/b/2", "pieces/ab/3"].map((key) => storage.size(key)))).toEqual([null, null, 11]);
+    await storage.removeFolder("pieces");
   });
 
   it("may be larger than one part of a transfer", async () => {

@@ -1,6 +1,5 @@
 import { eastM, northM, planeAt } from "@/core/geometry/plane";
 import type { JunctionIndex } from "@/core/index/junction-index";
-import { seededRandom } from "@/core/stats/random";
 import type { JunctionPoint, PingColumns } from "@/core/types";
 
 /** Pings near one junction as columns: where vehicles were, not which. */
@@ -14,27 +13,35 @@ export interface NearPings {
   speedMs: Float32Array;
 }
 
+/** Near pings with what decides which of them are kept, the smallest first. */
+export interface NearSample extends NearPings {
+  /** In [0, 1), drawn from the ping itself. */
+  priority: Float64Array;
+}
+
 export interface NearSampler {
   add(pings: PingColumns): void;
-  /** By index of the junction. */
-  finish(): NearPings[];
+  /** By index of the junction; the sampler begins afresh. */
+  finish(): NearSample[];
 }
 
 export interface NearSampleOptions {
   radiusM: number;
   /** Pings kept for each junction. */
   most: number;
-  seed: number;
+  /** By junction: share of its pings beyond which none can be among those kept. */
+  share: Float64Array;
 }
 
-export const NEAR_SAMPLE: Readonly<NearSampleOptions> = Object.freeze({ radiusM: 180, most: 1500, seed: 20_260_301 });
+export const NEAR_SAMPLE = Object.freeze({ radiusM: 180, most: 1500 });
 
 /**
- * Keeps an even sample of the pings within a radius of each junction, however many go by
- * (reservoir sampling, algorithm R: Vitter, ACM Transactions on Mathematical Software 11, 1985). O(pings).
+ * Keeps an even sample of the pings within a radius of each junction, however many go by: those whose hash is smallest
+ * (bottom-k sampling: Cohen and Kaplan, Summarizing Data using Bottom-k Sketches, PODC 2007). What is kept depends
+ * neither on the order of the pings nor on how they were dealt out to several samplers. O(pings).
  */
 export function createNearSampler(junctions: readonly JunctionPoint[], index: JunctionIndex, options: Partial<NearSampleOptions> = {}): NearSampler {
-  const { radiusM, most, seed } = { ...NEAR_SAMPLE, ...options };
+  const { radiusM, most, share } = { ...NEAR_SAMPLE, share: new Float64Array(junctions.length).fill(1), ...options };
   const planes = junctions.map((junction) => planeAt(junction.lat, junction.lon));
   const length = junctions.length;
   const claims = index.claim({
@@ -44,15 +51,26 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
     radiusM: new Float64Array(length).fill(radiusM),
     owner: Uint32Array.from(junctions, (_, i) => i),
   });
-  const kept = junctions.map(() => emptyNear(most));
-  const seen = new Uint32Array(length);
-  const random = seededRandom(seed);
+  const draw = createDraw();
+  let kept = junctions.map(() => emptySample(FIRST_ROOM));
+  let limit = Float64Array.from(share);
 
-  function place(j: number): number {
-    seen[j] += 1;
-    if (kept[j].length < most) return kept[j].length++;
-    const at = Math.floor(random() * seen[j]);
-    return at < most ? at : -1;
+  function keep(j: number, x: number, y: number, pings: PingColumns, i: number): void {
+    const priority = draw(pings, i);
+    if (priority >= limit[j]) return;
+    let sample = kept[j];
+    if (sample.length === 2 * most) {
+      sample = kept[j] = smallest([sample], most);
+      limit[j] = sample.priority[most - 1];
+      if (priority >= limit[j]) return;
+    }
+    if (sample.length === sample.priority.length) sample = kept[j] = smallest([sample], Infinity, Math.min(2 * most, sample.length * 2));
+    const at = sample.length++;
+    sample.eastM[at] = x;
+    sample.northM[at] = y;
+    sample.headingDeg[at] = pings.headingDeg[i];
+    sample.speedMs[at] = pings.speedMs[i];
+    sample.priority[at] = priority;
   }
 
   return {
@@ -64,27 +82,77 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
           const j = claims.owners[k];
           const x = eastM(planes[j], pings.lon[i]);
           const y = northM(planes[j], pings.lat[i]);
-          if (x * x + y * y > radiusM * radiusM) continue;
-          const at = place(j);
-          if (at < 0) continue;
-          kept[j].eastM[at] = x;
-          kept[j].northM[at] = y;
-          kept[j].headingDeg[at] = pings.headingDeg[i];
-          kept[j].speedMs[at] = pings.speedMs[i];
+          if (x * x + y * y <= radiusM * radiusM) keep(j, x, y, pings, i);
         }
       }
     },
-    finish: () => kept,
+    finish() {
+      const samples = kept.map((sample) => smallest([sample], most));
+      kept = junctions.map(() => emptySample(FIRST_ROOM));
+      limit = Float64Array.from(share);
+      return samples;
+    },
   };
 }
 
-function emptyNear(most: number): NearPings {
+const FIRST_ROOM = 16;
+
+/** The sample of one junction from those of several samplers. O(pings × log). */
+export function joinNearSamples(parts: readonly NearSample[], most: number = NEAR_SAMPLE.most): NearSample {
+  return smallest(parts, most);
+}
+
+/** The pings of least priority, ascending, in columns with room for `room` of them. */
+function smallest(parts: readonly NearSample[], most: number, room = 0): NearSample {
+  const from = parts.flatMap((part, p) => Array.from({ length: part.length }, (_, i) => ({ p, i, priority: part.priority[i] })));
+  from.sort((a, b) => a.priority - b.priority);
+  if (from.length > most) from.length = most;
+  const out = emptySample(Math.max(room, from.length));
+  out.length = from.length;
+  from.forEach(({ p, i }, k) => {
+    for (const name of SAMPLE_COLUMNS) out[name][k] = parts[p][name][i];
+  });
+  return out;
+}
+
+const SAMPLE_COLUMNS = ["eastM", "northM", "headingDeg", "speedMs", "priority"] as const;
+
+/** A number in [0, 1) from a ping's time, place and speed: multiply and rotate over their bits (as MurmurHash3, Appleby, public domain). */
+function createDraw(): (pings: PingColumns, i: number) => number {
+  const values = new Float64Array(4);
+  const words = new Uint32Array(values.buffer);
+  const mixed = (seed: number): number => {
+    let h = seed;
+    for (let w = 0; w < words.length; w++) {
+      let k = Math.imul(words[w], 0xcc9e2d51);
+      k = Math.imul((k << 15) | (k >>> 17), 0x1b873593);
+      h ^= k;
+      h = Math.imul((h << 13) | (h >>> 19), 5) + 0xe6546b64;
+    }
+    h = Math.imul(h ^ (h >>> 16), 0x85ebca6b);
+    h = Math.imul(h ^ (h >>> 13), 0xc2b2ae35);
+    return (h ^ (h >>> 16)) >>> 0;
+  };
+  return (pings, i) => {
+    values[0] = pings.tMs[i];
+    values[1] = pings.lat[i];
+    values[2] = pings.lon[i];
+    values[3] = pings.speedMs[i];
+    return (mixed(1) + (mixed(2) >>> 11) / 2 ** 21) / 2 ** 32;
+  };
+}
+
+function emptySample(rows: number): NearSample {
+  return { ...emptyNear(rows), priority: new Float64Array(rows) };
+}
+
+function emptyNear(rows: number): NearPings {
   return {
     length: 0,
-    eastM: new Float32Array(most),
-    northM: new Float32Array(most),
-    headingDeg: new Float32Array(most),
-    speedMs: new Float32Array(most),
+    eastM: new Float32Array(rows),
+    northM: new Float32Array(rows),
+    headingDeg: new Float32Array(rows),
+    speedMs: new Float32Array(rows),
   };
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { createNearSampler, decodeNearPings, encodeNearPings } from "@/core/pings/near-sample";
+import { createNearSampler, decodeNearPings, encodeNearPings, joinNearSamples } from "@/core/pings/near-sample";
 import type { PingColumns } from "@/core/types";
 import { createH3Index } from "@/geo/h3-index";
 
@@ -7,12 +7,13 @@ const JUNCTION = { id: "A", lat: 45.6, lon: -38.3 };
 // 0.001 degrees of latitude are 111.14 m at 45.6 N (WGS 84, 111,143.5 m for a degree).
 const STEP_DEG = 0.001;
 
-function pingsAt(lats: number[], headingDeg: number, speedMs: number): PingColumns {
+/** One ping a second, from `fromS` on. */
+function pingsAt(lats: number[], headingDeg: number, speedMs: number, fromS = 0): PingColumns {
   const length = lats.length;
   return {
     length,
     vehicle: new Uint32Array(length),
-    tMs: new Float64Array(length),
+    tMs: Float64Array.from(lats, (_, i) => (fromS + i) * 1000),
     lat: Float64Array.from(lats),
     lon: new Float64Array(length).fill(JUNCTION.lon),
     speedMs: new Float32Array(length).fill(speedMs),
@@ -32,12 +33,30 @@ describe("sample of pings near a junction", () => {
 
   it("keeps no more than it may, from all parts of the stream", () => {
     const sampler = createNearSampler([JUNCTION], createH3Index(), { most: 100 });
-    for (let part = 0; part < 10; part++) sampler.add(pingsAt(Array(1000).fill(JUNCTION.lat), NaN, part));
+    for (let part = 0; part < 10; part++) sampler.add(pingsAt(Array(1000).fill(JUNCTION.lat), NaN, part, part * 1000));
     const [near] = sampler.finish();
     expect(near.length).toBe(100);
     const fromEachPart = Array.from({ length: 10 }, (_, part) => near.speedMs.filter((speed) => speed === part).length);
     // Ten of a hundred are expected from each part; beyond 10 ± 9 lies less than one in a hundred seeds.
     for (const n of fromEachPart) expect(Math.abs(n - 10)).toBeLessThan(10);
+  });
+
+  it("is the same whoever saw which pings in which order", () => {
+    const index = createH3Index();
+    const whole = createNearSampler([JUNCTION], index, { most: 100 });
+    const first = createNearSampler([JUNCTION], index, { most: 100 });
+    const second = createNearSampler([JUNCTION], index, { most: 100 });
+    for (let part = 0; part < 10; part++) {
+      const batch = pingsAt(Array(300).fill(JUNCTION.lat), part, part, part * 300);
+      whole.add(batch);
+      (part % 2 === 0 ? second : first).add(batch);
+    }
+    const joined = joinNearSamples([second.finish()[0], first.finish()[0]], 100);
+    expect(joined).toEqual(whole.finish()[0]);
+    // A share that is large enough costs nothing: of 3,000 pings 100 are kept, hardly ever one beyond the first tenth.
+    const bounded = createNearSampler([JUNCTION], index, { most: 100, share: Float64Array.of(0.1) });
+    for (let part = 0; part < 10; part++) bounded.add(pingsAt(Array(300).fill(JUNCTION.lat), part, part, part * 300));
+    expect(bounded.finish()[0]).toEqual(joined);
   });
 
   it("comes back from its bytes to a decimetre, a degree and a half and a quarter of a metre a second", () => {
@@ -46,10 +65,12 @@ describe("sample of pings near a junction", () => {
     sampler.add(pingsAt([JUNCTION.lat], NaN, NaN));
     const back = decodeNearPings(encodeNearPings(sampler.finish()[0]));
     expect(back.length).toBe(2);
-    expect(back.northM[0]).toBeCloseTo(-111.1, 1);
-    expect(back.headingDeg[0]).toBe(0);
-    expect(back.speedMs[0]).toBe(14);
-    expect([back.headingDeg[1], back.speedMs[1]]).toEqual([NaN, NaN]);
+    // In the order of their hashes.
+    const [south, here] = back.northM[0] < back.northM[1] ? [0, 1] : [1, 0];
+    expect(back.northM[south]).toBeCloseTo(-111.1, 1);
+    expect(back.headingDeg[south]).toBe(0);
+    expect(back.speedMs[south]).toBe(14);
+    expect([back.headingDeg[here], back.speedMs[here]]).toEqual([NaN, NaN]);
     expect(() => decodeNearPings(new Uint8Array([1, 0, 0, 0, 9]))).toThrow(TypeError);
   });
 });
