@@ -8,3 +8,4 @@ export * from "./traversals";
 export * from "./reports";
 export * from "./ping-clouds";
 export * from "./feeds";
+export * from "./ingest-pieces";
