@@ -1,13 +1,17 @@
 import { writeFileSync } from "node:fs";
 import { benchArguments, USAGE, type BenchArguments } from "./bench/bench-arguments";
+import { benchBrowser } from "./bench/bench-browser";
+import { benchCrowd } from "./bench/bench-crowd";
 import { benchIngest, benchWorkers } from "./bench/bench-ingest";
 import { benchParse } from "./bench/bench-parse";
-import { openContext, openPlace, type BenchPlace } from "./bench/bench-place";
+import { openContext, openPlace, type BenchPlace, type OpenContext } from "./bench/bench-place";
 import { benchRanking } from "./bench/bench-ranking";
 import { benchStrip } from "./bench/bench-strip";
 import { figureLine, figuresTable, type Figure } from "./bench/figures";
+import { startProduct } from "./bench/product";
 import { fillScreenCity } from "./bench/screen-city";
 
+const SCREEN_PARTS = ["ranking", "strip", "browser", "crowd"] as const;
 const RESULTS = "tests/bench/results.md";
 
 const asked = readArguments();
@@ -44,18 +48,32 @@ async function* measure(place: BenchPlace, wanted: BenchArguments): AsyncGenerat
   if (parts.includes("parse")) yield* await benchParse(place.folder, rows);
   if (parts.includes("ingest")) yield* await benchIngest(place, rows);
   if (parts.includes("workers")) yield* await benchWorkers(place, rows);
-  if (parts.includes("ranking") || parts.includes("strip")) yield* await measureScreens(place, wanted);
+  if (SCREEN_PARTS.some((part) => parts.includes(part))) yield* measureScreens(place, wanted);
 }
 
-async function measureScreens(place: BenchPlace, wanted: BenchArguments): Promise<Figure[]> {
-  const open = openContext(await place.newDatabase("screens"), place.folder);
+/** The parts that look at one generated city. */
+async function* measureScreens(place: BenchPlace, wanted: BenchArguments): AsyncGenerator<Figure> {
+  const { parts } = wanted;
+  const url = await place.newDatabase("screens");
+  const open = openContext(url, place.folder);
   try {
     await fillScreenCity(open.ctx.db, wanted);
-    const ranking = wanted.parts.includes("ranking") ? await benchRanking(open, place.folder) : [];
-    const strip = wanted.parts.includes("strip") ? await benchStrip(open) : [];
-    return [...ranking, ...strip];
+    if (parts.includes("ranking")) yield* await benchRanking(open, place.folder);
+    if (parts.includes("strip")) yield* await benchStrip(open);
+    if (parts.includes("browser") || parts.includes("crowd")) yield* measureProduct(place, url, open, wanted);
   } finally {
     await open.close();
+  }
+}
+
+/** What needs pages that are served. The crowd adds to the city, hence last. */
+async function* measureProduct(place: BenchPlace, url: string, open: OpenContext, wanted: BenchArguments): AsyncGenerator<Figure> {
+  const product = await startProduct(url, place.folder);
+  try {
+    if (wanted.parts.includes("browser")) yield* await benchBrowser(product, open.database.pool);
+    if (wanted.parts.includes("crowd")) yield* await benchCrowd(product, open.database.pool, place.folder, wanted);
+  } finally {
+    await product.stop();
   }
 }
 

@@ -1,15 +1,16 @@
 import { parseArgs } from "node:util";
 
-export const PARTS = ["parse", "ingest", "workers", "ranking", "strip"] as const;
+export const PARTS = ["parse", "ingest", "workers", "ranking", "strip", "browser", "crowd"] as const;
 export type Part = (typeof PARTS)[number];
 
-export const USAGE = `npm run bench -- [--only NAME ...] [--rows N] [--junctions N] [--days N] [--traversals N] [--large] [--json] [--write]
+export const USAGE = `npm run bench -- [--only NAME ...] [--rows N] [--junctions N] [--days N] [--traversals N] [--seconds N] [--large] [--json] [--write]
 
   --only NAME      one part: ${PARTS.join(", ")}; may be given several times
   --rows N         pings of the generated file (default 1000000)
   --junctions N    junctions of the generated screen (default 300)
   --days N         its days (default 28: 20 weekdays)
   --traversals N   its traversals (default 1000000)
+  --seconds N      how long the crowd is there (default 60)
   --large          10 million pings; 1,000 junctions, 60 days, 20 million traversals
   --json           one object a line
   --write          keep the table in tests/bench/results.md (whole bench only)`;
@@ -20,6 +21,7 @@ export interface BenchArguments {
   junctions: number;
   days: number;
   traversals: number;
+  seconds: number;
   isJson: boolean;
   isWrite: boolean;
 }
@@ -34,6 +36,7 @@ export function benchArguments(argv: string[]): BenchArguments | "help" {
       junctions: { type: "string" },
       days: { type: "string" },
       traversals: { type: "string" },
+      seconds: { type: "string" },
       large: { type: "boolean", default: false },
       json: { type: "boolean", default: false },
       write: { type: "boolean", default: false },
@@ -51,6 +54,7 @@ export function benchArguments(argv: string[]): BenchArguments | "help" {
     junctions: count("--junctions", values.junctions, values.large ? 1000 : 300),
     days: count("--days", values.days, values.large ? 60 : 28),
     traversals: count("--traversals", values.traversals, values.large ? 20_000_000 : 1_000_000),
+    seconds: count("--seconds", values.seconds, 60),
     isJson: values.json,
     isWrite: values.write,
   };

@@ -24,7 +24,7 @@ describe("p95", () => {
 
 describe("arguments of the bench", () => {
   it("take all parts where none is named, and keep their order", () => {
-    expect(benchArguments([])).toMatchObject({ parts: ["parse", "ingest", "workers", "ranking", "strip"], rows: 1_000_000, isWrite: false });
+    expect(benchArguments([])).toMatchObject({ parts: ["parse", "ingest", "workers", "ranking", "strip", "browser", "crowd"], rows: 1_000_000, seconds: 60, isWrite: false });
     expect(benchArguments(["--only", "strip", "--only", "parse"])).toMatchObject({ parts: ["parse", "strip"] });
   });
 
