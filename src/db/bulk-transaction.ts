@@ -3,7 +3,7 @@ import type { Pool, PoolClient } from "pg";
 import type { Db } from "./client";
 import * as schema from "./schema";
 
-function poolOf(db: Db): Pool {
+export function poolOf(db: Db): Pool {
   if ("$client" in db) return db.$client as Pool;
   throw new TypeError("Bulk work needs the pool, not a transaction.");
 }

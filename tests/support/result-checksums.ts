@@ -47,7 +47,7 @@ async function slices(db: Db): Promise<string[]> {
   return rows.map(({ name, day, payload }) => {
     const { movement, leg, ...columns } = decodeScreenDay(payload);
     const named = { movement: Array.from(movement, (key) => movements.get(key)), leg: Array.from(leg, (key) => legs.get(key)) };
-    const plain = Object.entries(columns).map(([key, value]) => [key, ArrayBuffer.isView(value) ? Array.from(value as Float32Array) : value]);
+    const plain = Object.entries(columns).map(([key, value]) => [key, ArrayBuffer.isView(value) ? Array.from(value as Uint32Array) : value]);
     return JSON.stringify([name, day, named, plain]);
   });
 }

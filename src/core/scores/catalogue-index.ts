@@ -8,6 +8,8 @@ export interface CatalogueIndex {
   junctions: number[];
   /** Movements of junction j: from junctionOffset[j] to junctionOffset[j + 1]. */
   junctionOffset: Uint32Array;
+  /** Legs of junction j: from junctionLegOffset[j] to junctionLegOffset[j + 1]. */
+  junctionLegOffset: Uint32Array;
   /** Movements of leg l: from legOffset[l] to legOffset[l + 1]. */
   legOffset: Uint32Array;
   /** Dense numbers by dense movement. */
@@ -43,16 +45,18 @@ function build(catalogue: Catalogue): CatalogueIndex {
     if (leg === undefined) throw new RangeError(`Movement ${m.key} names leg ${m.leg}, which the catalogue does not list.`);
     return leg;
   });
+  const junctionOfLeg = Uint32Array.from(legs, (leg) => junctionByKey.get(leg.junction)!);
   return {
     movements,
     legs,
     junctions,
+    junctionLegOffset: offsetsOf(junctionOfLeg, junctions.length),
     junctionOffset: offsetsOf(junctionOf, junctions.length),
     legOffset: offsetsOf(legOf, legs.length),
     legOf,
     junctionOf,
     turnOf: Uint8Array.from(movements, (m) => TURNS.indexOf(m.turn)),
-    junctionOfLeg: Uint32Array.from(legs, (leg) => junctionByKey.get(leg.junction)!),
+    junctionOfLeg,
     movementByKey: new Map(movements.map((m, k) => [m.key, k])),
     legByKey,
   };

@@ -1,4 +1,3 @@
-import { quantileInPlace } from "@/core/stats/quantile-in-place";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Estimate } from "@/core/types";
 import { meanIntervals, type MeanIntervals } from "./mean-intervals";
@@ -20,15 +19,6 @@ export interface DelayLevel {
 export function createLevel(units: number, clusters: Clusters): DelayLevel {
   const zeros = (): Float64Array => new Float64Array(units);
   return { delay: createTally(units, clusters), sumSq: zeros(), stopped: zeros(), stops: zeros() };
-}
-
-/** Adds squares and stops of each unit to the unit that holds it; the tallies are rolled up cluster by cluster. O(units). */
-export function rollUp(from: DelayLevel, unitOf: Uint32Array, to: DelayLevel): void {
-  for (let u = 0; u < unitOf.length; u++) {
-    to.sumSq[unitOf[u]] += from.sumSq[u];
-    to.stopped[unitOf[u]] += from.stopped[u];
-    to.stops[unitOf[u]] += from.stops[u];
-  }
 }
 
 export interface LevelFigures {
@@ -53,14 +43,5 @@ export function figuresOf(level: DelayLevel, group: ArrayLike<number>): LevelFig
       return { value, ...wilsonInterval(value, intervals.effective[u]) };
     },
     stopsPerVehicle: (u) => level.stops[u] / vehicles(u),
-  };
-}
-
-/** Median and 95th percentile of a stretch of scratch values, which are reordered; NaN where too few. */
-export function delayQuantiles(values: Float32Array, from: number, to: number): { medianS: number; p95S: number } {
-  const n = to - from;
-  return {
-    medianS: n >= LEAST_FOR_MEDIAN ? quantileInPlace(values, from, to, 0.5) : NaN,
-    p95S: n >= LEAST_FOR_P95 ? quantileInPlace(values, from, to, 0.95) : NaN,
   };
 }

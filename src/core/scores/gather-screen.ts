@@ -1,11 +1,14 @@
-import { createDistinctCounter } from "@/core/stats/distinct-counter";
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
-import { createLevel, rollUp, type DelayLevel } from "./delay-level";
+import { createHistogram, countKnown, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { createLevel, LEAST_FOR_MEDIAN, LEAST_FOR_P95, type DelayLevel } from "./delay-level";
+import { createDistinctSets, type DistinctSets } from "./distinct-sets";
 import { ENOUGH_VEHICLES } from "./evidence";
-import { addLegQuarter, createReachLevel, type ReachLevel } from "./leg-level";
-import { isListed, prepareDay, type PreparedDay } from "./prepare-day";
-import { addOpenTo, clustersFor, closeDay, closeQuarter } from "./ratio-tally";
+import { addSpill } from "./leg-level";
+import { addToTally, closeDayOf, closeQuarterOf, clustersFor, createTally, type Clusters, type RatioTally } from "./ratio-tally";
+import { entryAt, rowsOfDay, type RowsOfDay } from "./rows-of-day";
+import { delayOfCode, reachOfCode } from "./stored-figures";
+import { emptySums, sumStretch, type DelaySums } from "./sum-stretch";
 import type { ScoreFilter, ScreenDay } from "./types";
 
 /** All that one screen adds up, by the dense numbers of the catalogue index. */
@@ -13,50 +16,61 @@ export interface GatheredScreen {
   movements: DelayLevel;
   legs: DelayLevel;
   junctions: DelayLevel;
-  queues: ReachLevel;
-  /** Traversals of movement u: entries offset[u] to offset[u + 1]; those of a junction follow each other. Scratch. */
-  offset: Uint32Array;
-  delayS: Float32Array;
-  /** Distinct vehicles among entries from..to, counted as far as evidence asks for them. */
-  distinct(from: number, to: number): number;
+  /** Of legs: seconds spilled by seconds observed. */
+  spill: RatioTally;
+  /** Of legs; NaN where nothing was seen. */
+  reachP95M: Float64Array;
+  /** Of junctions; NaN where too few were seen. */
+  medianS: Float64Array;
+  p95S: Float64Array;
+  /** Distinct vehicles, counted as far as evidence asks for them. */
+  distinct: Record<"movements" | "legs" | "junctions", Uint8Array>;
+  traversals: number;
 }
 
 interface DayOfScreen {
   slice: ScreenDay;
-  prepared: PreparedDay;
+  rows: RowsOfDay;
 }
 
-/** Two passes over the cells of the window: sums and counts, then places. O(cells + traversals of the window). */
+interface Gathering {
+  index: CatalogueIndex;
+  days: readonly DayOfScreen[];
+  /** Windows of the day, each one cluster: the whole one, or its quarters. */
+  windows: readonly { from: number; to: number }[];
+  closeCluster(tally: RatioTally, unit: number): void;
+  isChosen: Uint8Array;
+  out: GatheredScreen;
+  /** Scratch. */
+  codes: CodeHistogram;
+  vehicles: DistinctSets;
+  sums: DelaySums;
+}
+
+/**
+ * One pass over the traversals of the window, junction by junction, so that all that is added up for one stays in the
+ * processor's cache. O(days × movements + traversals and leg quarters of the window); a traversal takes 2 to 4 ns.
+ */
 export function gatherScreen(days: readonly ScreenDay[], index: CatalogueIndex, filter: ScoreFilter): GatheredScreen {
   checkFilter(filter);
-  const ordered = [...days].sort((a, b) => a.day - b.day).map((slice): DayOfScreen => ({ slice, prepared: prepareDay(slice, index) }));
   const clusters = clustersFor(days.length);
-  const movements = createLevel(index.movements.length, clusters);
-  const legs = createLevel(index.legs.length, clusters);
-  const junctions = createLevel(index.junctions.length, clusters);
-  const queues = createReachLevel(index.legs.length, clusters);
-  const offset = new Uint32Array(index.movements.length + 1);
-  const isChosen = chosenTurns(index, filter);
-  for (const day of ordered) {
-    for (let quarter = filter.fromQuarter; quarter < filter.toQuarter; quarter++) {
-      addCells(day, quarter, isChosen, movements, offset);
-      addLegs(day, quarter, queues);
-      if (clusters === "quarters") closeCluster(closeQuarter);
-    }
-    closeCluster(closeDay);
+  const gathering: Gathering = {
+    index,
+    days: [...days].sort((a, b) => a.day - b.day).map((slice) => ({ slice, rows: rowsOfDay(slice, index) })),
+    windows: windowsOf(filter, clusters),
+    closeCluster: clusters === "days" ? closeDayOf : closeQuarterOf,
+    isChosen: chosenTurns(index, filter),
+    out: emptyScreen(index, clusters),
+    codes: createHistogram(),
+    vehicles: createDistinctSets(mostMovements(index), ENOUGH_VEHICLES),
+    sums: emptySums(),
+  };
+  for (let junction = 0; junction < index.junctions.length; junction++) {
+    for (const day of gathering.days) addDay(gathering, day, junction);
+    finishJunction(gathering, junction);
   }
-  rollUp(movements, index.legOf, legs);
-  rollUp(movements, index.junctionOf, junctions);
-  for (let u = 0; u < index.movements.length; u++) offset[u + 1] += offset[u];
-  const { delayS, vehicle } = place(ordered, filter, isChosen, offset);
-  const counter = createDistinctCounter(longestStretch(index, offset));
-  return { movements, legs, junctions, queues, offset, delayS, distinct: (from, to) => counter.count(vehicle, from, to, ENOUGH_VEHICLES) };
-
-  function closeCluster(close: typeof closeDay): void {
-    addOpenTo(movements.delay, index.legOf, legs.delay);
-    addOpenTo(movements.delay, index.junctionOf, junctions.delay);
-    for (const tally of [movements.delay, legs.delay, junctions.delay, queues.spill]) close(tally);
-  }
+  for (let leg = 0; leg < index.legs.length; leg++) addQueues(gathering, leg);
+  return gathering.out;
 }
 
 function checkFilter({ fromQuarter, toQuarter }: ScoreFilter): void {
@@ -65,58 +79,122 @@ function checkFilter({ fromQuarter, toQuarter }: ScoreFilter): void {
   }
 }
 
+function windowsOf({ fromQuarter, toQuarter }: ScoreFilter, clusters: Clusters): Gathering["windows"] {
+  if (clusters === "days") return [{ from: fromQuarter, to: toQuarter }];
+  return Array.from({ length: toQuarter - fromQuarter }, (_, k) => ({ from: fromQuarter + k, to: fromQuarter + k + 1 }));
+}
+
 /** 1 for the movements of the chosen turn. */
 function chosenTurns(index: CatalogueIndex, { turn }: ScoreFilter): Uint8Array {
   const wanted = turn === null ? -1 : TURNS.indexOf(turn);
   return index.turnOf.map((own) => (wanted < 0 || own === wanted ? 1 : 0));
 }
 
-function addCells({ slice, prepared }: DayOfScreen, quarter: number, isChosen: Uint8Array, level: DelayLevel, counts: Uint32Array): void {
-  const { base, total } = level.delay.open;
-  for (let c = prepared.quarterStart[quarter]; c < prepared.quarterStart[quarter + 1]; c++) {
-    const u = prepared.unit[c];
-    if (!isListed(u) || isChosen[u] === 0) continue;
-    const n = slice.offset[c + 1] - slice.offset[c];
-    base[u] += n;
-    total[u] += prepared.delayS[c];
-    level.sumSq[u] += prepared.delaySq[c];
-    level.stopped[u] += prepared.stopped[c];
-    level.stops[u] += prepared.stops[c];
-    counts[u + 1] += n;
-  }
+function emptyScreen(index: CatalogueIndex, clusters: Clusters): GatheredScreen {
+  const units = { movements: index.movements.length, legs: index.legs.length, junctions: index.junctions.length };
+  return {
+    movements: createLevel(units.movements, clusters),
+    legs: createLevel(units.legs, clusters),
+    junctions: createLevel(units.junctions, clusters),
+    spill: createTally(units.legs, clusters),
+    reachP95M: new Float64Array(units.legs),
+    medianS: new Float64Array(units.junctions).fill(NaN),
+    p95S: new Float64Array(units.junctions).fill(NaN),
+    distinct: { movements: new Uint8Array(units.movements), legs: new Uint8Array(units.legs), junctions: new Uint8Array(units.junctions) },
+    traversals: 0,
+  };
 }
 
-function addLegs({ slice, prepared }: DayOfScreen, quarter: number, queues: ReachLevel): void {
-  for (let k = prepared.legQuarterStart[quarter]; k < prepared.legQuarterStart[quarter + 1]; k++) {
-    if (isListed(prepared.legUnit[k])) addLegQuarter(queues, prepared.legUnit[k], slice, k);
-  }
+function mostMovements({ junctionOffset }: CatalogueIndex): number {
+  return junctionOffset.reduce((most, offset, j) => Math.max(most, j === 0 ? 0 : offset - junctionOffset[j - 1]), 0);
 }
 
-function place(days: DayOfScreen[], filter: ScoreFilter, isChosen: Uint8Array, offset: Uint32Array): { delayS: Float32Array; vehicle: Uint32Array } {
-  const total = offset[offset.length - 1];
-  const next = offset.slice();
-  const delayS = new Float32Array(total);
-  const vehicle = new Uint32Array(total);
-  for (const { slice, prepared } of days) {
-    const end = prepared.quarterStart[filter.toQuarter];
-    for (let c = prepared.quarterStart[filter.fromQuarter]; c < end; c++) {
-      const u = prepared.unit[c];
-      if (!isListed(u) || isChosen[u] === 0) continue;
-      let at = next[u];
-      for (let i = slice.offset[c]; i < slice.offset[c + 1]; i++, at++) {
-        delayS[at] = slice.delayS[i];
-        vehicle[at] = slice.vehicle[i];
+function addDay(gathering: Gathering, { slice, rows }: DayOfScreen, junction: number): void {
+  const { index, out, windows } = gathering;
+  for (const window of windows) {
+    let [vehicles, delayS] = [0, 0];
+    for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) {
+      let [ofLeg, ofLegS] = [0, 0];
+      for (let u = index.legOffset[leg]; u < index.legOffset[leg + 1]; u++) {
+        const row = rows.movement[u];
+        if (row < 0 || gathering.isChosen[u] === 0) continue;
+        const from = entryAt(slice.quarter, slice.movementStart[row], slice.movementStart[row + 1], window.from);
+        const to = entryAt(slice.quarter, from, slice.movementStart[row + 1], window.to);
+        if (from === to) continue;
+        addStretch(gathering, slice, from, to, u, junction);
+        ofLeg += to - from;
+        ofLegS += gathering.sums.delayS;
       }
-      next[u] = at;
+      closeWith(gathering, out.legs.delay, leg, ofLeg, ofLegS);
+      vehicles += ofLeg;
+      delayS += ofLegS;
     }
+    closeWith(gathering, out.junctions.delay, junction, vehicles, delayS);
   }
-  return { delayS, vehicle };
+  if (out.junctions.delay.clusters === "quarters") closeUnits(gathering, junction);
 }
 
-function longestStretch(index: CatalogueIndex, offset: Uint32Array): number {
-  let longest = 0;
-  for (let j = 0; j < index.junctions.length; j++) {
-    longest = Math.max(longest, offset[index.junctionOffset[j + 1]] - offset[index.junctionOffset[j]]);
+/** Adds traversals of one movement on one day to all that holds them, but for the clusters of leg and junction. */
+function addStretch(gathering: Gathering, slice: ScreenDay, from: number, to: number, u: number, junction: number): void {
+  const { index, out, codes, vehicles, sums } = gathering;
+  sumStretch(slice, from, to, codes, sums);
+  vehicles.add(u - index.junctionOffset[junction], slice.vehicle, from, to);
+  closeWith(gathering, out.movements.delay, u, sums.vehicles, sums.delayS);
+  addToLevel(out.movements, u, sums);
+  addToLevel(out.legs, index.legOf[u], sums);
+  addToLevel(out.junctions, junction, sums);
+}
+
+function addToLevel(level: DelayLevel, unit: number, sums: DelaySums): void {
+  level.sumSq[unit] += sums.delaySq;
+  level.stopped[unit] += sums.stopped;
+  level.stops[unit] += sums.stops;
+}
+
+function closeWith({ closeCluster }: Gathering, tally: RatioTally, unit: number, base: number, total: number): void {
+  if (base === 0) return;
+  addToTally(tally, unit, base, total);
+  closeCluster(tally, unit);
+}
+
+/** The day is over for a junction and all that belongs to it. */
+function closeUnits({ index, out }: Gathering, junction: number): void {
+  for (let u = index.junctionOffset[junction]; u < index.junctionOffset[junction + 1]; u++) closeDayOf(out.movements.delay, u);
+  for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) closeDayOf(out.legs.delay, leg);
+  closeDayOf(out.junctions.delay, junction);
+}
+
+function finishJunction({ index, out, codes, vehicles }: Gathering, junction: number): void {
+  const first = index.junctionOffset[junction];
+  const count = out.junctions.delay.base[junction];
+  if (count >= LEAST_FOR_MEDIAN) out.medianS[junction] = histogramQuantile(codes, count, 0.5, delayOfCode);
+  if (count >= LEAST_FOR_P95) out.p95S[junction] = histogramQuantile(codes, count, 0.95, delayOfCode);
+  for (let u = first; u < index.junctionOffset[junction + 1]; u++) out.distinct.movements[u] = vehicles.count(u - first, u - first + 1);
+  for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) {
+    out.distinct.legs[leg] = vehicles.count(index.legOffset[leg] - first, index.legOffset[leg + 1] - first);
   }
-  return longest;
+  out.distinct.junctions[junction] = vehicles.count(0, index.junctionOffset[junction + 1] - first);
+  out.traversals += count;
+  emptyHistogram(codes);
+  vehicles.clear();
+}
+
+function addQueues({ days, windows, out, codes, closeCluster }: Gathering, leg: number): void {
+  let known = 0;
+  for (const { slice, rows } of days) {
+    const row = rows.leg[leg];
+    if (row < 0) continue;
+    const end = slice.legStart[row + 1];
+    let to = entryAt(slice.legQuarter, slice.legStart[row], end, windows[0].from);
+    for (const window of windows) {
+      const from = to;
+      to = entryAt(slice.legQuarter, from, end, window.to);
+      known += countKnown(codes, slice.reach, from, to);
+      addSpill(out.spill, leg, slice, from, to);
+      closeCluster(out.spill, leg);
+    }
+    closeDayOf(out.spill, leg);
+  }
+  out.reachP95M[leg] = histogramQuantile(codes, known, 0.95, reachOfCode);
+  emptyHistogram(codes);
 }

@@ -1,36 +1,40 @@
+import { emptyScreenDay, QUEUE_TABLE, TRAVERSAL_TABLE, type SliceTable } from "./screen-day-columns";
 import type { ScreenDay } from "./types";
 
-/** The slice without the cells and leg quarters for which the questions say no. O(size of the slice). */
+/** The slice without the movements and legs for which the questions say no. O(size of the slice). */
 export function keepInScreenDay(day: ScreenDay, keepMovement: (key: number) => boolean, keepLeg: (key: number) => boolean): ScreenDay {
-  const cells = indicesWhere(day.cells, (c) => keepMovement(day.movement[c]));
-  const rows = cells.flatMap((c) => range(day.offset[c], day.offset[c + 1]));
-  const offset = new Uint32Array(cells.length + 1);
-  cells.forEach((c, k) => (offset[k + 1] = offset[k] + day.offset[c + 1] - day.offset[c]));
-  const legs = indicesWhere(day.legQuarters, (k) => keepLeg(day.leg[k]));
-  return {
-    day: day.day,
-    methodVersion: day.methodVersion,
-    cells: cells.length,
-    movement: Uint32Array.from(cells, (c) => day.movement[c]),
-    quarter: Uint8Array.from(cells, (c) => day.quarter[c]),
-    offset,
-    delayS: Float32Array.from(rows, (i) => day.delayS[i]),
-    stops: Uint8Array.from(rows, (i) => day.stops[i]),
-    vehicle: Uint32Array.from(rows, (i) => day.vehicle[i]),
-    legQuarters: legs.length,
-    leg: Uint32Array.from(legs, (k) => day.leg[k]),
-    legQuarter: Uint8Array.from(legs, (k) => day.legQuarter[k]),
-    reachM: Float32Array.from(legs, (k) => day.reachM[k]),
-    reachEstimateM: Float32Array.from(legs, (k) => day.reachEstimateM[k]),
-    spilledS: Float32Array.from(legs, (k) => day.spilledS[k]),
-    observedS: Float32Array.from(legs, (k) => day.observedS[k]),
-  };
+  const movements = rowsWhere(day, TRAVERSAL_TABLE, keepMovement);
+  const legs = rowsWhere(day, QUEUE_TABLE, keepLeg);
+  const out = emptyScreenDay(day.day, day.methodVersion, {
+    movements: movements.length,
+    traversals: entriesOf(day, TRAVERSAL_TABLE, movements),
+    legs: legs.length,
+    legQuarters: entriesOf(day, QUEUE_TABLE, legs),
+  });
+  copyRows(day, TRAVERSAL_TABLE, movements, out);
+  copyRows(day, QUEUE_TABLE, legs, out);
+  return out;
 }
 
-function indicesWhere(length: number, keep: (index: number) => boolean): number[] {
-  return range(0, length).filter(keep);
+function rowsWhere(day: ScreenDay, { key }: SliceTable, keep: (key: number) => boolean): number[] {
+  const rows: number[] = [];
+  day[key].forEach((value, row) => {
+    if (keep(value)) rows.push(row);
+  });
+  return rows;
 }
 
-function range(from: number, to: number): number[] {
-  return Array.from({ length: to - from }, (_, i) => from + i);
+function entriesOf(day: ScreenDay, { start }: SliceTable, rows: number[]): number {
+  return rows.reduce((sum, row) => sum + day[start][row + 1] - day[start][row], 0);
+}
+
+function copyRows(from: ScreenDay, { key, start, columns }: SliceTable, rows: number[], to: ScreenDay): void {
+  let at = 0;
+  rows.forEach((row, k) => {
+    const [first, end] = [from[start][row], from[start][row + 1]];
+    to[key][k] = from[key][row];
+    for (const name of columns) to[name].set(from[name].subarray(first, end), at);
+    at += end - first;
+    to[start][k + 1] = at;
+  });
 }

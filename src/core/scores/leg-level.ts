@@ -2,43 +2,35 @@ import { quantileInPlace } from "@/core/stats/quantile-in-place";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Estimate } from "@/core/types";
 import { clusterVariance } from "./cluster-variance";
-import { addToTally, createTally, type Clusters, type RatioTally } from "./ratio-tally";
+import { histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { addToTally, type RatioTally } from "./ratio-tally";
+import { reachOfCode, STEPS_PER_S } from "./stored-figures";
 import type { ScreenDay } from "./types";
 
 const QUARTER_S = 900;
+const NOTHING: Estimate = Object.freeze({ value: NaN, low: NaN, high: NaN });
 
-/** What is added up for the queues of each leg. */
-export interface ReachLevel {
-  spill: RatioTally;
-  reachM: number[][];
-  reachEstimateM: number[][];
-}
-
-/** The columns of one entry for a leg and quarter. */
-type LegColumns = Pick<ScreenDay, "reachM" | "reachEstimateM" | "spilledS" | "observedS">;
-
-export function createReachLevel(units: number, clusters: Clusters): ReachLevel {
-  const lists = (): number[][] => Array.from({ length: units }, () => []);
-  return { spill: createTally(units, clusters), reachM: lists(), reachEstimateM: lists() };
-}
-
-/** Adds entry k; what is missing in it is left out. */
-export function addLegQuarter(level: ReachLevel, unit: number, columns: LegColumns, k: number): void {
-  const { reachM, reachEstimateM, spilledS, observedS } = columns;
-  if (!Number.isNaN(reachM[k])) level.reachM[unit].push(reachM[k]);
-  if (!Number.isNaN(reachEstimateM[k])) level.reachEstimateM[unit].push(reachEstimateM[k]);
-  if (observedS[k] > 0 && !Number.isNaN(spilledS[k])) addToTally(level.spill, unit, observedS[k], spilledS[k]);
+/** Adds the observed and spilled time of entries `from` to `to`; what is missing in one is left out. */
+export function addSpill(tally: RatioTally, unit: number, { spilled, observed }: ScreenDay, from: number, to: number): void {
+  let [seen, full] = [0, 0];
+  for (let k = from; k < to; k++) {
+    // Code 0 is unknown and code 1 is none.
+    if (observed[k] < 2 || spilled[k] === 0) continue;
+    seen += observed[k] - 1;
+    full += spilled[k] - 1;
+  }
+  if (seen > 0) addToTally(tally, unit, seen / STEPS_PER_S, full / STEPS_PER_S);
 }
 
 /**
  * Share of the observed time that the leg spilled back, with Wilson's interval. One quarter of an hour counts as one
  * observation, since queues last; for fewer where days or neighbouring quarters differ more than that would let them.
  */
-export function spillEstimate(level: ReachLevel, unit: number): Estimate {
-  const observedS = level.spill.base[unit];
-  if (!(observedS > 0)) return { value: NaN, low: NaN, high: NaN };
-  const value = Math.min(1, level.spill.total[unit] / observedS);
-  const { variance } = clusterVariance(level.spill, unit);
+export function spillEstimate(spill: RatioTally, unit: number): Estimate {
+  const observedS = spill.base[unit];
+  if (!(observedS > 0)) return NOTHING;
+  const value = Math.min(1, spill.total[unit] / observedS);
+  const { variance } = clusterVariance(spill, unit);
   const atMost = observedS / QUARTER_S;
   const effective = variance > 0 ? Math.min(atMost, Math.max(1, (value * (1 - value)) / variance)) : atMost;
   return { value, ...wilsonInterval(value, effective) };
@@ -47,15 +39,16 @@ export function spillEstimate(level: ReachLevel, unit: number): Estimate {
 /** Quantile with the interval of Woodruff (Journal of the American Statistical Association 47, 1952). */
 export function quantileEstimate(values: number[], p: number): Estimate {
   const scratch = new Float32Array(values);
-  const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
-  if (values.length === 0) return { value: NaN, low: NaN, high: NaN };
-  const { low, high } = wilsonInterval(p, values.length);
-  return { value: at(p), low: at(low), high: at(high) };
+  return woodruff(values.length, p, (share) => quantileInPlace(scratch, 0, scratch.length, share));
 }
 
-/** Median and 95th percentile of what was observed; NaN of nothing. */
-export function reachQuantiles(values: number[]): { reachP50M: number; reachP95M: number } {
-  const scratch = new Float32Array(values);
-  const at = (share: number): number => quantileInPlace(scratch, 0, scratch.length, share);
-  return { reachP50M: at(0.5), reachP95M: at(0.95) };
+/** The same of counted reaches, metres. */
+export function reachEstimateOf(reaches: CodeHistogram, count: number, p: number): Estimate {
+  return woodruff(count, p, (share) => histogramQuantile(reaches, count, share, reachOfCode));
+}
+
+function woodruff(count: number, p: number, at: (share: number) => number): Estimate {
+  if (count === 0) return NOTHING;
+  const { low, high } = wilsonInterval(p, count);
+  return { value: at(p), low: at(low), high: at(high) };
 }

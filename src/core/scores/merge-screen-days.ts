@@ -1,12 +1,11 @@
+import { emptyScreenDay, QUEUE_TABLE, sizeOf, TRAVERSAL_TABLE, type SliceTable } from "./screen-day-columns";
 import type { ScreenDay } from "./types";
 
-/** Slices are never changed once made: the same ones merge to the same. */
-const merged = new WeakMap<ScreenDay, { slices: readonly ScreenDay[]; result: ScreenDay }>();
-
 /**
- * One slice from several of the same local day, as from different uploads. A traversal that is in more than one
- * (same movement, vehicle, quarter and delay) counts once; a leg's quarter keeps the farthest reach and the longest
- * observation. Order of the slices does not matter, and merging twice changes nothing. O(n log n).
+ * One slice from several of the same local day and method, as from different files. A traversal that is in more than
+ * one of them (same movement, quarter, vehicle and delay) counts as often as in the one that has it most often; of a
+ * leg's quarter the farthest reach and the longest observation are kept. Hence the order of the slices does not
+ * matter, nor how they are grouped, and merging the same twice changes nothing. O(n log slices).
  */
 export function mergeScreenDays(slices: readonly ScreenDay[]): ScreenDay {
   if (slices.length === 0) throw new RangeError("Nothing to merge.");
@@ -17,86 +16,116 @@ export function mergeScreenDays(slices: readonly ScreenDay[]): ScreenDay {
       throw new RangeError(`Slices of method versions ${methodVersion} and ${slice.methodVersion} cannot be merged.`);
     }
   }
-  if (slices.length === 1) return slices[0];
-  const known = merged.get(slices[0]);
-  if (known && known.slices.length === slices.length && known.slices.every((slice, k) => slice === slices[k])) return known.result;
-  const result = { day, methodVersion, ...mergedCells(slices), ...mergedLegs(slices) };
-  merged.set(slices[0], { slices: [...slices], result });
-  return result;
+  // Neighbours first: each entry is copied as often as the tree is deep.
+  let level = slices;
+  while (level.length > 1) {
+    const pairs = level;
+    level = Array.from({ length: Math.ceil(pairs.length / 2) }, (_, k) => (2 * k + 1 < pairs.length ? mergeTwo(pairs[2 * k], pairs[2 * k + 1]) : pairs[2 * k]));
+  }
+  return level[0];
 }
 
-function mergedCells(slices: readonly ScreenDay[]) {
-  const rows = flatten(slices);
-  const { quarter, movement, vehicle, delayS } = rows;
-  const isSameCell = (a: number, b: number): boolean => quarter[a] === quarter[b] && movement[a] === movement[b];
-  const order = Uint32Array.from(quarter, (_, i) => i).sort(
-    (a, b) => quarter[a] - quarter[b] || movement[a] - movement[b] || vehicle[a] - vehicle[b] || delayS[a] - delayS[b],
-  );
-  const kept = order.filter((i, k) => {
-    const last = order[k - 1];
-    return k === 0 || !isSameCell(i, last) || vehicle[i] !== vehicle[last] || delayS[i] !== delayS[last];
+/** How entries of one table meet: which of two comes first (0: they are the same one), and what both together are. */
+interface Meeting {
+  table: SliceTable;
+  compare(a: ScreenDay, i: number, b: ScreenDay, k: number): number;
+  join(to: ScreenDay, at: number, other: ScreenDay, k: number): void;
+}
+
+const TRAVERSALS: Meeting = {
+  table: TRAVERSAL_TABLE,
+  compare: (a, i, b, k) => a.quarter[i] - b.quarter[k] || a.vehicle[i] - b.vehicle[k] || a.delay[i] - b.delay[k],
+  join: (to, at, other, k) => {
+    to.stops[at] = Math.max(to.stops[at], other.stops[k]);
+  },
+};
+
+const FIGURES = ["reach", "reachEstimate", "spilled", "observed"] as const;
+
+const QUEUES: Meeting = {
+  table: QUEUE_TABLE,
+  compare: (a, i, b, k) => a.legQuarter[i] - b.legQuarter[k],
+  join: (to, at, other, k) => {
+    for (const name of FIGURES) to[name][at] = Math.max(to[name][at], other[name][k]);
+  },
+};
+
+function mergeTwo(a: ScreenDay, b: ScreenDay): ScreenDay {
+  const [left, right] = [sizeOf(a), sizeOf(b)];
+  const roomy = emptyScreenDay(a.day, a.methodVersion, {
+    movements: left.movements + right.movements,
+    traversals: left.traversals + right.traversals,
+    legs: left.legs + right.legs,
+    legQuarters: left.legQuarters + right.legQuarters,
   });
-  const starts: number[] = [];
-  for (let k = 0; k < kept.length; k++) if (k === 0 || !isSameCell(kept[k], kept[k - 1])) starts.push(k);
-  return {
-    cells: starts.length,
-    movement: Uint32Array.from(starts, (k) => movement[kept[k]]),
-    quarter: Uint8Array.from(starts, (k) => quarter[kept[k]]),
-    offset: Uint32Array.from([...starts, kept.length]),
-    delayS: Float32Array.from(kept, (i) => delayS[i]),
-    stops: Uint8Array.from(kept, (i) => rows.stops[i]),
-    vehicle: Uint32Array.from(kept, (i) => vehicle[i]),
-  };
+  const passed = mergeTable(a, b, roomy, TRAVERSALS);
+  const queued = mergeTable(a, b, roomy, QUEUES);
+  const out = emptyScreenDay(a.day, a.methodVersion, { movements: passed.rows, traversals: passed.entries, legs: queued.rows, legQuarters: queued.entries });
+  trimTable(roomy, out, TRAVERSAL_TABLE, passed);
+  trimTable(roomy, out, QUEUE_TABLE, queued);
+  return out;
 }
 
-/** One entry for each traversal of each slice. */
-function flatten(slices: readonly ScreenDay[]) {
-  const length = slices.reduce((sum, slice) => sum + slice.delayS.length, 0);
-  const rows = {
-    quarter: new Uint8Array(length),
-    movement: new Uint32Array(length),
-    vehicle: new Uint32Array(length),
-    delayS: new Float32Array(length),
-    stops: new Uint8Array(length),
-  };
-  let from = 0;
-  for (const slice of slices) {
-    for (let c = 0; c < slice.cells; c++) {
-      rows.quarter.fill(slice.quarter[c], from + slice.offset[c], from + slice.offset[c + 1]);
-      rows.movement.fill(slice.movement[c], from + slice.offset[c], from + slice.offset[c + 1]);
-    }
-    rows.vehicle.set(slice.vehicle, from);
-    rows.delayS.set(slice.delayS, from);
-    rows.stops.set(slice.stops, from);
-    from += slice.delayS.length;
+interface Filled {
+  rows: number;
+  entries: number;
+}
+
+function mergeTable(a: ScreenDay, b: ScreenDay, to: ScreenDay, meeting: Meeting): Filled {
+  const { key, start } = meeting.table;
+  const [rowsOfA, rowsOfB] = [a[key].length, b[key].length];
+  let [i, k, rows, entries] = [0, 0, 0, 0];
+  while (i < rowsOfA || k < rowsOfB) {
+    const keyOfA = i < rowsOfA ? a[key][i] : Infinity;
+    const keyOfB = k < rowsOfB ? b[key][k] : Infinity;
+    to[key][rows] = Math.min(keyOfA, keyOfB);
+    const ofA = keyOfA <= keyOfB ? { from: a[start][i], end: a[start][++i] } : NONE;
+    const ofB = keyOfB <= keyOfA ? { from: b[start][k], end: b[start][++k] } : NONE;
+    entries = mergeRow(a, ofA, b, ofB, to, entries, meeting);
+    to[start][++rows] = entries;
   }
-  return rows;
+  return { rows, entries };
 }
 
-const LEG_FIGURES = ["reachM", "reachEstimateM", "spilledS", "observedS"] as const;
+interface Stretch {
+  from: number;
+  end: number;
+}
 
-function mergedLegs(slices: readonly ScreenDay[]) {
-  const best = new Map<number, { leg: number; quarter: number } & Record<(typeof LEG_FIGURES)[number], number>>();
-  for (const slice of slices) {
-    for (let k = 0; k < slice.legQuarters; k++) {
-      const key = slice.legQuarter[k] * 2 ** 32 + slice.leg[k];
-      const row = best.get(key) ?? { leg: slice.leg[k], quarter: slice.legQuarter[k], reachM: NaN, reachEstimateM: NaN, spilledS: NaN, observedS: NaN };
-      for (const name of LEG_FIGURES) row[name] = larger(row[name], slice[name][k]);
-      best.set(key, row);
-    }
+const NONE: Stretch = { from: 0, end: 0 };
+
+/** Returns where the next row begins. */
+function mergeRow(a: ScreenDay, ofA: Stretch, b: ScreenDay, ofB: Stretch, to: ScreenDay, from: number, { table, compare, join }: Meeting): number {
+  let at = from;
+  let [i, k] = [ofA.from, ofB.from];
+  while (i < ofA.end && k < ofB.end) {
+    const order = compare(a, i, b, k);
+    if (order <= 0) copyEntries(a, i, i + 1, to, at, table);
+    else copyEntries(b, k, k + 1, to, at, table);
+    if (order === 0) join(to, at, b, k);
+    if (order <= 0) i += 1;
+    if (order >= 0) k += 1;
+    at += 1;
   }
-  const rows = [...best.values()].sort((a, b) => a.quarter - b.quarter || a.leg - b.leg);
-  return {
-    legQuarters: rows.length,
-    leg: Uint32Array.from(rows, (r) => r.leg),
-    legQuarter: Uint8Array.from(rows, (r) => r.quarter),
-    reachM: Float32Array.from(rows, (r) => r.reachM),
-    reachEstimateM: Float32Array.from(rows, (r) => r.reachEstimateM),
-    spilledS: Float32Array.from(rows, (r) => r.spilledS),
-    observedS: Float32Array.from(rows, (r) => r.observedS),
-  };
+  copyEntries(a, i, ofA.end, to, at, table);
+  at += ofA.end - i;
+  copyEntries(b, k, ofB.end, to, at, table);
+  return at + ofB.end - k;
 }
 
-function larger(a: number, b: number): number {
-  return Number.isNaN(a) || b > a ? b : a;
+/** Below this many entries a loop is faster than a copy of the stretch. */
+const FEW = 32;
+
+function copyEntries(from: ScreenDay, first: number, end: number, to: ScreenDay, at: number, { columns }: SliceTable): void {
+  for (const name of columns) {
+    const [source, target] = [from[name], to[name]];
+    if (end - first > FEW) target.set(source.subarray(first, end), at);
+    else for (let i = first; i < end; i++) target[at + i - first] = source[i];
+  }
+}
+
+function trimTable(from: ScreenDay, to: ScreenDay, { key, start, columns }: SliceTable, { rows, entries }: Filled): void {
+  to[key].set(from[key].subarray(0, rows));
+  to[start].set(from[start].subarray(0, rows + 1));
+  for (const name of columns) to[name].set(from[name].subarray(0, entries));
 }

@@ -57,51 +57,49 @@ export function addToTally(tally: RatioTally, unit: number, base: number, total:
   tally.open.total[unit] += total;
 }
 
-/** Adds what is open in `from` to the units that `unitOf` names: movements to their legs, say. O(units). */
-export function addOpenTo(from: RatioTally, unitOf: Uint32Array, tally: RatioTally): void {
-  for (let u = 0; u < unitOf.length; u++) {
-    if (from.open.base[u] > 0) addToTally(tally, unitOf[u], from.open.base[u], from.open.total[u]);
-  }
-}
-
 /** O(units); nothing to do where days are the clusters. */
 export function closeQuarter(tally: RatioTally): void {
-  if (tally.clusters === "quarters") closeCluster(tally);
+  for (let u = 0; u < tally.base.length; u++) closeQuarterOf(tally, u);
 }
 
 /** Also closes the quarter that is open. O(units). */
 export function closeDay(tally: RatioTally): void {
-  closeCluster(tally);
-  const { lastBase, isSeen } = tally.open;
-  for (let u = 0; u < isSeen.length; u++) tally.days[u] += isSeen[u];
-  lastBase.fill(0);
-  isSeen.fill(0);
+  for (let u = 0; u < tally.base.length; u++) closeDayOf(tally, u);
 }
 
-function closeCluster(tally: RatioTally): void {
-  const { base, total, lastBase, lastTotal, isSeen } = tally.open;
-  const isDay = tally.clusters === "days";
-  for (let u = 0; u < base.length; u++) {
-    const b = base[u];
-    if (!(b > 0)) continue;
-    const t = total[u];
-    tally.base[u] += b;
-    tally.total[u] += t;
-    tally.baseSq[u] += b * b;
-    tally.count[u] += 1;
-    isSeen[u] = 1;
-    if (isDay) addSquares(tally, u, t, b);
-    else {
-      if (lastBase[u] > 0) {
-        addSquares(tally, u, t - lastTotal[u], b - lastBase[u]);
-        tally.steps[u] += 1;
-      }
-      lastBase[u] = b;
-      lastTotal[u] = t;
+/** The same for one unit. */
+export function closeQuarterOf(tally: RatioTally, unit: number): void {
+  if (tally.clusters === "quarters") closeCluster(tally, unit);
+}
+
+export function closeDayOf(tally: RatioTally, unit: number): void {
+  closeCluster(tally, unit);
+  tally.days[unit] += tally.open.isSeen[unit];
+  tally.open.lastBase[unit] = 0;
+  tally.open.isSeen[unit] = 0;
+}
+
+function closeCluster(tally: RatioTally, u: number): void {
+  const { open } = tally;
+  const b = open.base[u];
+  if (!(b > 0)) return;
+  const t = open.total[u];
+  tally.base[u] += b;
+  tally.total[u] += t;
+  tally.baseSq[u] += b * b;
+  tally.count[u] += 1;
+  open.isSeen[u] = 1;
+  if (tally.clusters === "days") addSquares(tally, u, t, b);
+  else {
+    if (open.lastBase[u] > 0) {
+      addSquares(tally, u, t - open.lastTotal[u], b - open.lastBase[u]);
+      tally.steps[u] += 1;
     }
-    base[u] = 0;
-    total[u] = 0;
+    open.lastBase[u] = b;
+    open.lastTotal[u] = t;
   }
+  open.base[u] = 0;
+  open.total[u] = 0;
 }
 
 function addSquares(tally: RatioTally, u: number, t: number, b: number): void {

@@ -1,7 +1,11 @@
 import type { Estimate } from "@/core/types";
+import { countKnown, createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
 import { createLevel, figuresOf, type DelayLevel } from "./delay-level";
-import { addLegQuarter, createReachLevel, reachQuantiles, spillEstimate } from "./leg-level";
-import { addToTally, clustersFor, closeDay } from "./ratio-tally";
+import { addSpill, spillEstimate } from "./leg-level";
+import { addToTally, clustersFor, closeDay, createTally, type RatioTally } from "./ratio-tally";
+import { entryAt, rowOfKey } from "./rows-of-day";
+import { reachOfCode } from "./stored-figures";
+import { emptySums, sumStretch } from "./sum-stretch";
 import type { ScreenDay } from "./types";
 
 const QUARTERS = 96;
@@ -24,17 +28,16 @@ export interface ProfileOf {
   legs: readonly number[];
 }
 
-/** Day profile of some movements and legs: always 96 quarters. O(cells of the days). */
+/** Day profile of some movements and legs: always 96 quarters. O(days × movements + their traversals). */
 export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): ProfileQuarter[] {
-  const movements = new Set(of.movements);
-  const legs = new Set(of.legs);
   const clusters = clustersFor(days.length);
   const level = createLevel(QUARTERS, clusters);
-  const queues = createReachLevel(QUARTERS, clusters);
+  const spill = createTally(QUARTERS, clusters);
+  const codes = createHistogram();
   for (const day of [...days].sort((a, b) => a.day - b.day)) {
-    for (let c = 0; c < day.cells; c++) if (movements.has(day.movement[c])) addCell(level, day, c);
-    for (let k = 0; k < day.legQuarters; k++) if (legs.has(day.leg[k])) addLegQuarter(queues, day.legQuarter[k], day, k);
-    for (const tally of [level.delay, queues.spill]) closeDay(tally);
+    for (const key of of.movements) addMovement(level, day, rowOfKey(day.movement, key), codes);
+    for (const key of of.legs) addLeg(spill, day, rowOfKey(day.leg, key));
+    for (const tally of [level.delay, spill]) closeDay(tally);
   }
   const figures = figuresOf(level, new Uint8Array(QUARTERS));
   return Array.from({ length: QUARTERS }, (_, quarter) => ({
@@ -42,18 +45,41 @@ export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): Profile
     vehicles: figures.vehicles(quarter),
     days: figures.days(quarter),
     delay: figures.delay(quarter),
-    reachP95M: reachQuantiles(queues.reachM[quarter]).reachP95M,
-    spill: spillEstimate(queues, quarter),
+    reachP95M: reachP95Of(days, of.legs, quarter, codes),
+    spill: spillEstimate(spill, quarter),
   }));
 }
 
-function addCell(level: DelayLevel, day: ScreenDay, cell: number): void {
-  const quarter = day.quarter[cell];
-  for (let i = day.offset[cell]; i < day.offset[cell + 1]; i++) {
-    const delayS = day.delayS[i];
-    addToTally(level.delay, quarter, 1, delayS);
-    level.sumSq[quarter] += delayS * delayS;
-    level.stops[quarter] += day.stops[i];
-    if (day.stops[i] > 0) level.stopped[quarter] += 1;
+function addMovement(level: DelayLevel, day: ScreenDay, row: number, codes: CodeHistogram): void {
+  if (row < 0) return;
+  const sums = emptySums();
+  for (let from = day.movementStart[row]; from < day.movementStart[row + 1]; ) {
+    const quarter = day.quarter[from];
+    const to = entryAt(day.quarter, from, day.movementStart[row + 1], quarter + 1);
+    sumStretch(day, from, to, codes, sums);
+    addToTally(level.delay, quarter, sums.vehicles, sums.delayS);
+    level.sumSq[quarter] += sums.delaySq;
+    level.stops[quarter] += sums.stops;
+    level.stopped[quarter] += sums.stopped;
+    from = to;
   }
+}
+
+function addLeg(spill: RatioTally, day: ScreenDay, row: number): void {
+  if (row < 0) return;
+  for (let k = day.legStart[row]; k < day.legStart[row + 1]; k++) addSpill(spill, day.legQuarter[k], day, k, k + 1);
+}
+
+function reachP95Of(days: readonly ScreenDay[], legs: readonly number[], quarter: number, codes: CodeHistogram): number {
+  emptyHistogram(codes);
+  let known = 0;
+  for (const day of days) {
+    for (const key of legs) {
+      const row = rowOfKey(day.leg, key);
+      if (row < 0) continue;
+      const from = entryAt(day.legQuarter, day.legStart[row], day.legStart[row + 1], quarter);
+      known += countKnown(codes, day.reach, from, entryAt(day.legQuarter, from, day.legStart[row + 1], quarter + 1));
+    }
+  }
+  return histogramQuantile(codes, known, 0.95, reachOfCode);
 }

@@ -2,10 +2,10 @@ import { competitionRanks } from "@/core/stats/competition-ranks";
 import { rankIntervals } from "@/core/stats/rank-draws";
 import { TURNS, type Estimate } from "@/core/types";
 import { indexCatalogue, type CatalogueIndex } from "./catalogue-index";
-import { delayQuantiles, figuresOf } from "./delay-level";
+import { figuresOf } from "./delay-level";
 import { evidenceOf } from "./evidence";
 import { gatherScreen, type GatheredScreen } from "./gather-screen";
-import { quantileEstimate, reachQuantiles, spillEstimate } from "./leg-level";
+import { spillEstimate } from "./leg-level";
 import { shrinkByGroup, type ShrunkUnits } from "./shrink-by-group";
 import type { Catalogue, JunctionScore, LegScore, MovementScore, ScoreFilter, ScreenDay, ScreenScores } from "./types";
 
@@ -23,91 +23,97 @@ const LEAST_OBSERVED_S = 900;
 /**
  * Scores of every movement, leg and junction of the catalogue for the given days and window of the day. Which days
  * count (dates, weekdays) is the caller's choice; they may stand in any order. Junctions come in order of their key.
- * Only movements of `filter.turn` enter delays and stops; queues are the whole leg's. O(traversals + draws × junctions × log).
+ * Only movements of `filter.turn` enter delays and stops; queues are the whole leg's. Sums are exact over delays kept
+ * to 1/64 s, medians and percentiles exact order statistics of them. O(days × movements + traversals and leg quarters
+ * of the window + draws × junctions).
  */
 export function scoreScreen(days: readonly ScreenDay[], catalogue: Catalogue, filter: ScoreFilter, options: Partial<ScoreOptions> = {}): ScreenScores {
   const chosen: ScoreOptions = { ...DEFAULT_SCORE_OPTIONS, ...options };
   const index = indexCatalogue(catalogue);
   const gathered = gatherScreen(days, index, filter);
-  const movements = scoreMovements(index, gathered);
-  const legs = scoreLegs(index, gathered);
-  const junctions = scoreJunctions(index, gathered, movements, legs);
+  const movement = movementScores(index, gathered);
+  const leg = legScores(index, gathered);
+  const junctions = scoreJunctions(index, gathered, movement, leg);
   rankJunctions(junctions.scores, junctions.shrunk, chosen);
-  return { junctions: junctions.scores, movements, legs, traversals: gathered.delayS.length };
+  const scored = <T>(of: (unit: number) => T, unit: number | undefined): T | undefined => (unit === undefined ? undefined : of(unit));
+  return {
+    junctions: junctions.scores,
+    movement: (key) => scored(movement, index.movementByKey.get(key)),
+    leg: (key) => scored(leg, index.legByKey.get(key)),
+    traversals: gathered.traversals,
+  };
 }
 
-function scoreMovements(index: CatalogueIndex, gathered: GatheredScreen): MovementScore[] {
+/** Scores by dense number, put together where they are asked for: a city has some ten thousand movements. */
+function movementScores(index: CatalogueIndex, gathered: GatheredScreen): (unit: number) => MovementScore {
   const figures = figuresOf(gathered.movements, index.turnOf);
   const shrunk = shrinkByGroup(figures.intervals, gathered.movements.delay.base, index.turnOf, TURNS.length);
-  return index.movements.map(({ key }, u) => {
-    const sample = {
-      vehicles: figures.vehicles(u),
-      distinctVehicles: gathered.distinct(gathered.offset[u], gathered.offset[u + 1]),
-      days: figures.days(u),
-      delay: figures.delay(u),
-    };
+  return (u) => {
+    const sample = { vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct.movements[u], days: figures.days(u), delay: figures.delay(u) };
     return {
-      movement: key,
+      movement: index.movements[u].key,
       ...sample,
-      ...delayQuantiles(gathered.delayS, gathered.offset[u], gathered.offset[u + 1]),
       shrunk: shrunk.estimate(u),
       stopShare: figures.stopShare(u),
       stopsPerVehicle: figures.stopsPerVehicle(u),
       evidence: evidenceOf(sample),
     };
-  });
+  };
 }
 
-function scoreLegs(index: CatalogueIndex, gathered: GatheredScreen): LegScore[] {
+function legScores(index: CatalogueIndex, gathered: GatheredScreen): (unit: number) => LegScore {
   const figures = figuresOf(gathered.legs, new Uint8Array(index.legs.length));
-  return index.legs.map(({ key }, u) => {
-    const sample = {
-      vehicles: figures.vehicles(u),
-      distinctVehicles: gathered.distinct(gathered.offset[index.legOffset[u]], gathered.offset[index.legOffset[u + 1]]),
-      days: figures.days(u),
-      delay: figures.delay(u),
-    };
+  return (u) => {
+    const sample = { vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct.legs[u], days: figures.days(u), delay: figures.delay(u) };
     return {
-      leg: key,
+      leg: index.legs[u].key,
       vehicles: sample.vehicles,
       delay: sample.delay,
-      ...reachQuantiles(gathered.queues.reachM[u]),
-      reachEstimateP95M: quantileEstimate(gathered.queues.reachEstimateM[u], 0.95),
-      spill: spillEstimate(gathered.queues, u),
+      reachP95M: gathered.reachP95M[u],
+      spill: spillEstimate(gathered.spill, u),
       evidence: evidenceOf(sample),
     };
-  });
+  };
 }
 
-function scoreJunctions(index: CatalogueIndex, gathered: GatheredScreen, movements: MovementScore[], legs: LegScore[]): { scores: JunctionScore[]; shrunk: ShrunkUnits } {
+type ScoreOf<T> = (unit: number) => T;
+
+function scoreJunctions(
+  index: CatalogueIndex,
+  gathered: GatheredScreen,
+  movementOf: ScoreOf<MovementScore>,
+  legOf: ScoreOf<LegScore>,
+): { scores: JunctionScore[]; shrunk: ShrunkUnits } {
   const group = new Uint8Array(index.junctions.length);
   const figures = figuresOf(gathered.junctions, group);
   const shrunk = shrinkByGroup(figures.intervals, gathered.junctions.delay.base, group, 1);
-  const legsOf: number[][] = index.junctions.map(() => []);
-  index.junctionOfLeg.forEach((j, leg) => legsOf[j].push(leg));
   const scores = index.junctions.map((junction, u): JunctionScore => {
-    const from = gathered.offset[index.junctionOffset[u]];
-    const to = gathered.offset[index.junctionOffset[u + 1]];
     const delay = figures.delay(u);
-    const sample = { vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct(from, to), days: figures.days(u), delay };
+    const sample = { vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct.junctions[u], days: figures.days(u), delay };
+    const legs = range(index.junctionLegOffset[u], index.junctionLegOffset[u + 1]);
     return {
       junction,
       ...sample,
-      ...delayQuantiles(gathered.delayS, from, to),
+      medianS: gathered.medianS[u],
+      p95S: gathered.p95S[u],
       shrunk: shrunk.estimate(u),
       rank: NaN,
       rankLow: NaN,
       rankHigh: NaN,
-      worstMovement: worstMovement(movements.slice(index.junctionOffset[u], index.junctionOffset[u + 1])),
+      worstMovement: worstMovement(range(index.junctionOffset[u], index.junctionOffset[u + 1]).map(movementOf)),
       stopShare: figures.stopShare(u),
       stopsPerVehicle: figures.stopsPerVehicle(u),
-      worstLeg: worstLeg(legsOf[u], index, legs),
-      spill: greatestSpill(legsOf[u], legs, gathered),
+      worstLeg: worstLeg(legs, index, gathered),
+      spill: greatestSpill(legs, legOf, gathered),
       hoursSeen: (sample.vehicles * (sample.vehicles > 0 ? delay.value : 0)) / 3600,
       evidence: evidenceOf(sample),
     };
   });
   return { scores, shrunk };
+}
+
+function range(from: number, to: number): number[] {
+  return Array.from({ length: to - from }, (_, k) => from + k);
 }
 
 function worstMovement(movements: MovementScore[]): number {
@@ -120,23 +126,24 @@ function worstMovement(movements: MovementScore[]): number {
 }
 
 /** By share of the storage; among legs without a known storage by metres, and only when no leg has one. */
-function worstLeg(candidates: number[], index: CatalogueIndex, legs: LegScore[]): number {
-  const hasStorage = candidates.filter((u) => index.legs[u].storageM > 0 && !Number.isNaN(legs[u].reachP95M));
+function worstLeg(candidates: number[], index: CatalogueIndex, { reachP95M }: GatheredScreen): number {
+  const hasStorage = candidates.filter((u) => index.legs[u].storageM > 0 && !Number.isNaN(reachP95M[u]));
   const chosen = hasStorage.length > 0 ? hasStorage : candidates;
   let worst = -1;
   let most = -Infinity;
   for (const u of chosen) {
-    const fill = legs[u].reachP95M / (hasStorage.length > 0 ? index.legs[u].storageM : 1);
-    if (fill > most) [worst, most] = [legs[u].leg, fill];
+    const fill = reachP95M[u] / (hasStorage.length > 0 ? index.legs[u].storageM : 1);
+    if (fill > most) [worst, most] = [index.legs[u].key, fill];
   }
   return worst;
 }
 
-function greatestSpill(candidates: number[], legs: LegScore[], gathered: GatheredScreen): Estimate {
+function greatestSpill(candidates: number[], legOf: ScoreOf<LegScore>, gathered: GatheredScreen): Estimate {
   let greatest: Estimate = { value: NaN, low: NaN, high: NaN };
   for (const u of candidates) {
-    if (gathered.queues.spill.base[u] < LEAST_OBSERVED_S) continue;
-    if (Number.isNaN(greatest.value) || legs[u].spill.value > greatest.value) greatest = legs[u].spill;
+    if (gathered.spill.base[u] < LEAST_OBSERVED_S) continue;
+    const { spill } = legOf(u);
+    if (Number.isNaN(greatest.value) || spill.value > greatest.value) greatest = spill;
   }
   return greatest;
 }

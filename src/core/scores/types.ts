@@ -2,30 +2,32 @@ import type { Estimate, Evidence, Turn } from "@/core/types";
 
 /**
  * Everything that ranking needs of one local day, as columns: small enough to keep a city's months in memory.
- * A cell is one movement in one local quarter of an hour (0 to 95) with at least one traversal.
+ * Two tables of rows: a movement's traversals and a leg's quarters of an hour, each in ascending order of its key, so
+ * that a window of the day is one stretch of each row. Codes are those of `stored-figures`.
  */
 export interface ScreenDay {
   /** Days since 1970-01-01 of the local calendar day. */
   day: number;
   methodVersion: number;
-  cells: number;
-  /** Key of the movement: the number that the caller knows it by. */
+  /** Keys of the movements that were passed: the numbers that the caller knows them by. */
   movement: Uint32Array;
-  quarter: Uint8Array;
-  /** Traversals of cell c: entries offset[c] to offset[c + 1] of the columns below. */
-  offset: Uint32Array;
-  delayS: Float32Array;
-  stops: Uint8Array;
+  /** Traversals of row r: entries movementStart[r] to movementStart[r + 1], in order of quarter, vehicle, delay. */
+  movementStart: Uint32Array;
   /** Hash of the vehicle, for counting distinct ones. */
   vehicle: Uint32Array;
-  /** One entry for each leg and quarter that the sample saw. */
-  legQuarters: number;
+  delay: Uint16Array;
+  /** Local quarter of an hour, 0 to 95. */
+  quarter: Uint8Array;
+  stops: Uint8Array;
+  /** Keys of the legs that the sample saw. */
   leg: Uint32Array;
+  /** Quarters of row r: entries legStart[r] to legStart[r + 1], ascending. */
+  legStart: Uint32Array;
+  reach: Uint16Array;
+  reachEstimate: Uint16Array;
+  spilled: Uint16Array;
+  observed: Uint16Array;
   legQuarter: Uint8Array;
-  reachM: Float32Array;
-  reachEstimateM: Float32Array;
-  spilledS: Float32Array;
-  observedS: Float32Array;
 }
 
 /** Which movement belongs to which leg and junction; keys are the caller's. */
@@ -49,8 +51,6 @@ export interface MovementScore {
   distinctVehicles: number;
   days: number;
   delay: Estimate;
-  medianS: number;
-  p95S: number;
   shrunk: Estimate;
   stopShare: Estimate;
   stopsPerVehicle: number;
@@ -61,9 +61,7 @@ export interface LegScore {
   leg: number;
   vehicles: number;
   delay: Estimate;
-  reachP50M: number;
   reachP95M: number;
-  reachEstimateP95M: Estimate;
   spill: Estimate;
   evidence: Evidence;
 }
@@ -96,7 +94,19 @@ export interface JunctionScore {
 
 export interface ScreenScores {
   junctions: JunctionScore[];
-  movements: MovementScore[];
-  legs: LegScore[];
+  /** By key; undefined for what the catalogue does not list. */
+  movement(key: number): MovementScore | undefined;
+  leg(key: number): LegScore | undefined;
   traversals: number;
+}
+
+/** What a page of one junction shows beside the scores, and no ranking needs. NaN where too few were seen. */
+export interface MovementDetail {
+  medianS: number;
+  p95S: number;
+}
+
+export interface LegDetail {
+  reachP50M: number;
+  reachEstimateP95M: Estimate;
 }

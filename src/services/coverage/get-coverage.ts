@@ -9,7 +9,7 @@ import { loadScreenDays } from "../screens/screen-data";
 
 const MOST_UNCOVERED = 500;
 
-/** Every cell of every day is looked at for it, and the page asks again and again: once for each state of the data. */
+/** Every movement of every day is looked at for it, and the page asks again and again: once for each state of the data. */
 const remembered = new WeakMap<object, { version: number; view: Promise<CoverageView> }>();
 
 export async function getCoverage(ctx: Context): Promise<CoverageView> {
@@ -40,8 +40,8 @@ async function readCoverage(db: Db, catalogue: CityCatalogue): Promise<CoverageV
   const seenOn = new Map<number, number>();
   for (const day of days) {
     const seen = new Set<number>();
-    for (let c = 0; c < day.cells; c++) {
-      const leg = catalogue.movements.get(day.movement[c])?.legId;
+    for (const key of day.movement) {
+      const leg = catalogue.movements.get(key)?.legId;
       const junction = leg === undefined ? undefined : catalogue.legs.get(leg)?.junctionId;
       if (junction !== undefined) seen.add(junction);
     }

@@ -135,7 +135,7 @@ async function matchAndStore(
         day: slice.day,
         methodVersion: METHOD_VERSION,
         medianIntervalS: Number.isFinite(matched.facts.medianIntervalS) ? Math.round(matched.facts.medianIntervalS) : null,
-        traversals: slice.offset[slice.cells],
+        traversals: slice.delay.length,
         payload: encodeScreenDay(slice),
       });
     }

@@ -221,7 +221,7 @@ async function insertSlice(db: Db, uploadId: string, medianIntervalS: number | n
     day: slice.day,
     methodVersion: METHOD_VERSION,
     medianIntervalS,
-    traversals: slice.offset[slice.cells],
+    traversals: slice.delay.length,
     payload: encodeScreenDay(slice),
   });
 }

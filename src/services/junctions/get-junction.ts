@@ -7,7 +7,7 @@ import { WhenQuery, type JunctionView, type ProfilePoint } from "@/domain/juncti
 import { estimateView } from "@/domain/screen";
 import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
-import { profileOf } from "../screens/profile-of";
+import { detailsOf } from "../screens/details-of";
 import { finite, rowOf } from "../screens/ranked-row";
 import { basisOf, scoreCity } from "../screens/score-city";
 import { exitView, legView, movementView } from "./leg-view";
@@ -45,14 +45,15 @@ export async function getJunction(ctx: Context, input: z.input<typeof GetJunctio
     readMovements(ctx.db, legIds),
     scoreCity(ctx, { ...when, turn: "any" }),
   ]);
+  const details = await detailsOf(ctx, { ...when, turn: "any" }, scored, movementRows, legIds);
   const listed = scored.catalogue.junctions.get(junctionId);
   return {
     ...row,
     score: listed ? rowOf(listed, scored) : null,
-    legs: legRows.map((leg) => legView(leg, scored.legScores.get(leg.id))),
+    legs: legRows.map((leg) => legView(leg, scored.scores.leg(leg.id), details.legs.get(leg.id))),
     exits: exitRows.map(exitView),
-    movements: movementRows.map((movement) => movementView(movement, scored.movementScores.get(movement.id))),
-    profile: profileOf(scored, movementRows, legIds).map(profilePoint),
+    movements: movementRows.map((movement) => movementView(movement, scored.scores.movement(movement.id), details.movements.get(movement.id))),
+    profile: details.profile.map(profilePoint),
     basis: basisOf(scored),
   };
 }

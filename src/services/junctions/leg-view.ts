@@ -1,6 +1,6 @@
 import { lengthOf } from "@/core/geometry/polyline";
 import type { Evidence } from "@/core/types";
-import type { LegScore, MovementScore } from "@/core/scores/types";
+import type { LegDetail, LegScore, MovementDetail, MovementScore } from "@/core/scores/types";
 import type { ExitView, LegView, MovementView } from "@/domain/junction";
 import { estimateView } from "@/domain/screen";
 import { finite, losView } from "../screens/ranked-row";
@@ -14,7 +14,7 @@ export function pairsOf(line: readonly number[]): [number, number][] {
 
 const NO_EVIDENCE: Evidence = "none";
 
-export function legView(row: LegRow, score: LegScore | undefined): LegView {
+export function legView(row: LegRow, score: LegScore | undefined, detail: LegDetail | undefined): LegView {
   return {
     id: row.id,
     name: row.name,
@@ -29,9 +29,9 @@ export function legView(row: LegRow, score: LegScore | undefined): LegView {
     doubts: row.doubts,
     vehicles: score?.vehicles ?? 0,
     delay: score ? estimateView(score.delay) : null,
-    reachP50M: score ? finite(score.reachP50M) : null,
+    reachP50M: detail ? finite(detail.reachP50M) : null,
     reachP95M: score ? finite(score.reachP95M) : null,
-    reachEstimateP95M: score ? estimateView(score.reachEstimateP95M) : null,
+    reachEstimateP95M: detail ? estimateView(detail.reachEstimateP95M) : null,
     spill: score ? estimateView(score.spill) : null,
     evidence: score?.evidence ?? NO_EVIDENCE,
   };
@@ -41,15 +41,15 @@ export function exitView(row: { id: number; bearingDeg: number; line: number[] }
   return { id: row.id, bearingDeg: row.bearingDeg, line: pairsOf(row.line) };
 }
 
-export function movementView(row: MovementRow, score: MovementScore | undefined): MovementView {
+export function movementView(row: MovementRow, score: MovementScore | undefined, detail: MovementDetail | undefined): MovementView {
   const delay = score ? estimateView(score.delay) : null;
   return {
     ...row,
     vehicles: score?.vehicles ?? 0,
     days: score?.days ?? 0,
     delay,
-    medianS: score ? finite(score.medianS) : null,
-    p95S: score ? finite(score.p95S) : null,
+    medianS: detail ? finite(detail.medianS) : null,
+    p95S: detail ? finite(detail.p95S) : null,
     // A grade is a verdict, for which such a sample is too small; the interval tells an engineer as much.
     los: score?.evidence === "none" ? null : losView(delay),
     stopShare: score ? estimateView(score.stopShare) : null,

@@ -66,7 +66,7 @@ const UNSEEN = {
 
 function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["worst"] {
   const movement = scored.catalogue.movements.get(score.worstMovement);
-  const figures = scored.movementScores.get(score.worstMovement);
+  const figures = scored.scores.movement(score.worstMovement);
   const leg = movement && scored.catalogue.legs.get(movement.legId);
   if (!movement || !figures || !leg) return null;
   return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: figures.delay.value };
@@ -74,7 +74,7 @@ function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["wors
 
 /** Figures of a leg for lists, map and exports: none without evidence. */
 function supportedLeg(legId: number, scored: ScoredCity): LegScore | undefined {
-  const score = scored.legScores.get(legId);
+  const score = scored.scores.leg(legId);
   return score?.evidence === "none" ? undefined : score;
 }
 

@@ -1,6 +1,6 @@
 import { METHOD_VERSION } from "@/core/method-version";
 import { scoreScreen } from "@/core/scores/score-screen";
-import type { JunctionScore, LegScore, MovementScore, ScreenScores } from "@/core/scores/types";
+import type { JunctionScore, ScreenScores } from "@/core/scores/types";
 import { AppError } from "@/domain/errors";
 import { isoFromDay } from "@/domain/local-time";
 import type { ScreenQuery, ScreenResult } from "@/domain/screen";
@@ -13,11 +13,10 @@ import { loadScreenDays, type ScreenDays } from "./screen-data";
 export interface ScoredCity {
   catalogue: CityCatalogue;
   scores: ScreenScores;
-  data: ScreenDays;
+  /** What the figures rest on; the slices themselves are held elsewhere. */
+  data: Omit<ScreenDays, "days"> & { dayCount: number };
   window: TimeWindow;
   settings: CitySettings;
-  movementScores: Map<number, MovementScore>;
-  legScores: Map<number, LegScore>;
   junctionScores: Map<number, JunctionScore>;
 }
 
@@ -35,11 +34,11 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
   if (!known) remembered.set(ctx.db, (known = new Map()));
   const hit = known.get(key);
   if (hit) return hit;
-  // Scores of former data hold on to their slices, and nobody asks for them again.
+  // Nobody asks for scores of former data again.
   for (const [former, { catalogue: of }] of known) if (of.version < catalogue.version) known.delete(former);
 
-  const data = await loadScreenDays(ctx.db, query);
-  const scores = scoreScreen(data.days, catalogue.keys, {
+  const { days, ...data } = await loadScreenDays(ctx.db, query);
+  const scores = scoreScreen(days, catalogue.keys, {
     fromQuarter: window.fromMin / 15,
     toQuarter: window.toMin / 15,
     turn: query.turn === "any" ? null : query.turn,
@@ -47,11 +46,9 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
   const scored: ScoredCity = {
     catalogue,
     scores,
-    data,
+    data: { ...data, dayCount: days.length },
     window,
     settings,
-    movementScores: new Map(scores.movements.map((score) => [score.movement, score])),
-    legScores: new Map(scores.legs.map((score) => [score.leg, score])),
     junctionScores: new Map(scores.junctions.map((score) => [score.junction, score])),
   };
   if (known.size >= MAX_REMEMBERED) known.delete(known.keys().next().value as string);
@@ -72,11 +69,10 @@ export function basisOf(scored: ScoredCity): ScreenResult["basis"] {
   return {
     firstDate: data.firstDay === null ? null : isoFromDay(data.firstDay),
     lastDate: data.lastDay === null ? null : isoFromDay(data.lastDay),
-    days: data.days.length,
+    days: data.dayCount,
     traversals: scores.traversals,
     medianIntervalS: data.medianIntervalS,
-    // The oldest that any of the figures rests on.
-    methodVersion: data.days.reduce((least, day) => Math.min(least, day.methodVersion), METHOD_VERSION),
+    methodVersion: METHOD_VERSION,
     fromMin: window.fromMin,
     toMin: window.toMin,
   };

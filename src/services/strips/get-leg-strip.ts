@@ -8,7 +8,7 @@ import { requirePermission, type Context } from "../context";
 import { profilePoint } from "../junctions/get-junction";
 import { legView, movementView } from "../junctions/leg-view";
 import { readLegs, readMovements } from "../junctions/junction-rows";
-import { profileOf } from "../screens/profile-of";
+import { detailsOf } from "../screens/details-of";
 import { basisOf, scoreCity } from "../screens/score-city";
 import { chosenDates } from "./chosen-dates";
 
@@ -28,6 +28,7 @@ export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStri
     scoreCity(ctx, query),
     chosenDates(ctx.db, { ...query, day: undefined }),
   ]);
+  const details = await detailsOf(ctx, query, scored, movementRows, [legId]);
   const counted =
     dates.length === 0
       ? []
@@ -39,10 +40,10 @@ export async function getLegStrip(ctx: Context, input: z.input<typeof GetLegStri
           .orderBy(traversals.localDay);
   return {
     junction,
-    leg: legView(leg, scored.legScores.get(legId)),
-    movements: movementRows.map((movement) => movementView(movement, scored.movementScores.get(movement.id))),
+    leg: legView(leg, scored.scores.leg(legId), details.legs.get(legId)),
+    movements: movementRows.map((movement) => movementView(movement, scored.scores.movement(movement.id), details.movements.get(movement.id))),
     days: counted,
-    profile: profileOf(scored, movementRows, [legId]).map(profilePoint),
+    profile: details.profile.map(profilePoint),
     basis: basisOf(scored),
   };
 }

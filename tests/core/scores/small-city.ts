@@ -1,4 +1,6 @@
 import { METHOD_VERSION } from "@/core/method-version";
+import { emptyScreenDay } from "@/core/scores/screen-day-columns";
+import { delayCode, delayOfCode, reachCode, secondsCode } from "@/core/scores/stored-figures";
 import type { Catalogue, ScreenDay } from "@/core/scores/types";
 import { TURNS } from "@/core/types";
 
@@ -21,30 +23,41 @@ export interface Queue {
 
 /** A slice with the given passages (in quarter 32, 08:00, unless said), each by a vehicle of its own unless said. */
 export function screenDay(day: number, passages: Passage[], queues: Queue[] = []): ScreenDay {
-  const quarter = (p: { quarter?: number }): number => p.quarter ?? 32;
   const rows = passages
-    .map((p, i) => ({ stops: 0, vehicle: 1000 * day + i, ...p, quarter: quarter(p) }))
-    .sort((a, b) => a.quarter - b.quarter || a.movement - b.movement);
-  const starts = rows.flatMap((r, k) => (k === 0 || r.quarter !== rows[k - 1].quarter || r.movement !== rows[k - 1].movement ? [k] : []));
-  const legs = queues.map((q) => ({ reachM: 0, spilledS: 0, observedS: 900, ...q, quarter: quarter(q) })).sort((a, b) => a.quarter - b.quarter || a.leg - b.leg);
-  return {
-    day,
-    methodVersion: METHOD_VERSION,
-    cells: starts.length,
-    movement: Uint32Array.from(starts, (k) => rows[k].movement),
-    quarter: Uint8Array.from(starts, (k) => rows[k].quarter),
-    offset: Uint32Array.from([...starts, rows.length]),
-    delayS: Float32Array.from(rows, (r) => r.delayS),
-    stops: Uint8Array.from(rows, (r) => r.stops),
-    vehicle: Uint32Array.from(rows, (r) => r.vehicle),
-    legQuarters: legs.length,
-    leg: Uint32Array.from(legs, (l) => l.leg),
-    legQuarter: Uint8Array.from(legs, (l) => l.quarter),
-    reachM: Float32Array.from(legs, (l) => l.reachM),
-    reachEstimateM: Float32Array.from(legs, (l) => l.reachEstimateM ?? l.reachM),
-    spilledS: Float32Array.from(legs, (l) => l.spilledS),
-    observedS: Float32Array.from(legs, (l) => l.observedS),
-  };
+    .map((p, i) => ({ stops: 0, vehicle: 1000 * day + i, quarter: 32, ...p, code: delayCode(p.delayS) }))
+    .sort((a, b) => a.movement - b.movement || a.quarter - b.quarter || a.vehicle - b.vehicle || a.code - b.code);
+  const legs = queues
+    .map((q) => ({ reachM: 0, spilledS: 0, observedS: 900, quarter: 32, ...q }))
+    .sort((a, b) => a.leg - b.leg || a.quarter - b.quarter);
+  const movements = [...new Set(rows.map((r) => r.movement))];
+  const legKeys = [...new Set(legs.map((l) => l.leg))];
+  const out = emptyScreenDay(day, METHOD_VERSION, { movements: movements.length, traversals: rows.length, legs: legKeys.length, legQuarters: legs.length });
+  out.movement.set(movements);
+  out.movementStart.set(movements.map((key) => rows.findIndex((r) => r.movement === key)));
+  out.movementStart[movements.length] = rows.length;
+  out.vehicle.set(rows.map((r) => r.vehicle));
+  out.delay.set(rows.map((r) => r.code));
+  out.quarter.set(rows.map((r) => r.quarter));
+  out.stops.set(rows.map((r) => r.stops));
+  out.leg.set(legKeys);
+  out.legStart.set(legKeys.map((key) => legs.findIndex((l) => l.leg === key)));
+  out.legStart[legKeys.length] = legs.length;
+  out.reach.set(legs.map((l) => reachCode(l.reachM)));
+  out.reachEstimate.set(legs.map((l) => reachCode(l.reachEstimateM ?? l.reachM)));
+  out.spilled.set(legs.map((l) => secondsCode(l.spilledS)));
+  out.observed.set(legs.map((l) => secondsCode(l.observedS)));
+  out.legQuarter.set(legs.map((l) => l.quarter));
+  return out;
+}
+
+/** What a slice says of its traversals. */
+export function passagesOf(day: ScreenDay): Required<Passage>[] {
+  return Array.from(day.movement).flatMap((movement, row) =>
+    Array.from({ length: day.movementStart[row + 1] - day.movementStart[row] }, (_, k) => {
+      const at = day.movementStart[row] + k;
+      return { movement, delayS: delayOfCode(day.delay[at]), quarter: day.quarter[at], vehicle: day.vehicle[at], stops: day.stops[at] };
+    }),
+  );
 }
 
 /** Junctions 1 to n, each with leg 10 j and one movement for each turn, 100 j + turn. */

@@ -1,8 +1,8 @@
 import { describe, expect, it } from "vitest";
 import { scoreProfile } from "@/core/scores/score-profile";
-import type { ScreenDay } from "@/core/scores/types";
 import { delayOverTime } from "@/core/strips/delay-over-time";
 import { crossingTimes } from "@/core/strips/track-crossings";
+import { screenDay } from "../scores/small-city";
 import { setOf, type ToyTrack } from "./support";
 
 const passing = (day: number, crossS: number, delayS: number): ToyTrack => ({
@@ -34,24 +34,7 @@ describe("delay over time", () => {
   it("gives the figures of the day profile in quarters of an hour", () => {
     const delays = [[12, 40, 3], [55, 9, 21], [30, 31, 18]];
     const set = setOf(delays.flatMap((ofDay, day) => ofDay.map((delay, k) => passing(day + 1, 8 * 3600 + 50 + 200 * k, delay))));
-    const days: ScreenDay[] = delays.map((ofDay, day) => ({
-      day: day + 1,
-      methodVersion: 1,
-      cells: 1,
-      movement: Uint32Array.of(1),
-      quarter: Uint8Array.of(32),
-      offset: Uint32Array.of(0, 3),
-      delayS: Float32Array.from(ofDay),
-      stops: new Uint8Array(3),
-      vehicle: Uint32Array.of(1, 2, 3),
-      legQuarters: 0,
-      leg: new Uint32Array(0),
-      legQuarter: new Uint8Array(0),
-      reachM: new Float32Array(0),
-      reachEstimateM: new Float32Array(0),
-      spilledS: new Float32Array(0),
-      observedS: new Float32Array(0),
-    }));
+    const days = delays.map((ofDay, day) => screenDay(day + 1, ofDay.map((delayS) => ({ movement: 1, delayS }))));
     const stored = scoreProfile(days, { movements: [1], legs: [] })[32].delay;
     const read = delayOverTime(set, crossingTimes(set), 8 * 3600, 8 * 3600 + 900, 900);
     expect(read.meanS[0]).toBeCloseTo(stored.value, 6);

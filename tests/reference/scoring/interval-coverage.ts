@@ -38,7 +38,7 @@ export function coverIntervals({ network, traversals, vehicles, input }: CoreRun
     );
     for (const truth of leg.movements) {
       const own = catalogue.movements.filter((movement) => movement.leg === ours && movement.turn === truth.turn);
-      const score = scores.movements.find((movement) => own.length === 1 && movement.movement === own[0].key);
+      const score = own.length === 1 ? scores.movement(own[0].key) : undefined;
       if (!score || truth.exits.length > 1 || score.vehicles < LEAST_SHOWN) continue;
       const meanS = truth.figures.all.meanDelayS;
       coverage.intervals++;

@@ -1,0 +1,104 @@
+import { mergeScreenDays } from "@/core/scores/merge-screen-days";
+import { decodeScreenDay } from "@/core/scores/screen-day-codec";
+import type { ScreenDay } from "@/core/scores/types";
+import { poolOf } from "@/db/bulk-transaction";
+import type { Db } from "@/db/client";
+import { readBlobs } from "@/db/read-blobs";
+
+/** The slices of one local day, by their keys in order. */
+export interface SlicesOfDay {
+  day: number;
+  ids: readonly number[];
+  bytes: number;
+}
+
+/**
+ * What a process holds of the slices between questions, at most: 20 million traversals of 1,000 junctions take some
+ * 290 MiB. Days beyond it that were asked for longest ago are read again when somebody asks for them.
+ */
+export const MOST_HELD_BYTES = 512 * 2 ** 20;
+
+interface HeldDay {
+  ids: string;
+  day: ScreenDay;
+  bytes: number;
+}
+
+interface Held {
+  /** By local day, the one that was asked for longest ago first. */
+  days: Map<number, HeldDay>;
+  /** Settles when the reading that is under way is over: two questions never read the same days side by side. */
+  reading: Promise<unknown>;
+}
+
+const heldBy = new WeakMap<object, Held>();
+
+/**
+ * Merged slices of the days, in their order, from memory as far as they are held, the others from the database; null
+ * where some have been replaced meanwhile. A day of which slices came, went or changed is read anew, no other. All
+ * days together must not exceed `MOST_HELD_BYTES`.
+ */
+export async function holdDays(db: Db, wanted: readonly SlicesOfDay[]): Promise<ScreenDay[] | null> {
+  const held = heldBy.get(db) ?? { days: new Map<number, HeldDay>(), reading: Promise.resolve() };
+  heldBy.set(db, held);
+  if (missingOf(held, wanted).length === 0) return collect(held, wanted);
+  const reading = held.reading.then(async () => {
+    const missing = missingOf(held, wanted);
+    makeRoom(held, wanted, missing);
+    await readDays(db, held, missing);
+    return collect(held, wanted);
+  });
+  // What failed is told to who asked for it.
+  held.reading = reading.catch(() => undefined);
+  return reading;
+}
+
+function keyOf(ids: readonly number[]): string {
+  return ids.join(",");
+}
+
+function missingOf(held: Held, wanted: readonly SlicesOfDay[]): SlicesOfDay[] {
+  return wanted.filter(({ day, ids }) => held.days.get(day)?.ids !== keyOf(ids));
+}
+
+/** Marks the days as asked for just now. */
+function collect(held: Held, wanted: readonly SlicesOfDay[]): ScreenDay[] | null {
+  const days: ScreenDay[] = [];
+  for (const { day, ids } of wanted) {
+    const known = held.days.get(day);
+    if (known?.ids !== keyOf(ids)) return null;
+    held.days.delete(day);
+    held.days.set(day, known);
+    days.push(known.day);
+  }
+  return days;
+}
+
+function makeRoom(held: Held, wanted: readonly SlicesOfDay[], missing: readonly SlicesOfDay[]): void {
+  for (const { day } of missing) held.days.delete(day);
+  let bytes = 0;
+  for (const day of [...missing, ...held.days.values()]) bytes += day.bytes;
+  const kept = new Set(wanted.map(({ day }) => day));
+  for (const [day, known] of held.days) {
+    if (bytes <= MOST_HELD_BYTES) return;
+    if (kept.has(day)) continue;
+    held.days.delete(day);
+    bytes -= known.bytes;
+  }
+}
+
+async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[]): Promise<void> {
+  if (missing.length === 0) return;
+  const dayOf = new Map(missing.flatMap((slices) => slices.ids.map((id) => [id, slices] as const)));
+  const waiting = new Map<number, ScreenDay[]>();
+  const query = `select id, payload from screen_days where id in (${[...dayOf.keys()].join(",")}) order by day`;
+  for await (const { key, bytes } of readBlobs(poolOf(db), query)) {
+    const { day, ids } = dayOf.get(key) as SlicesOfDay;
+    const slices = [...(waiting.get(day) ?? []), decodeScreenDay(bytes)];
+    waiting.set(day, slices);
+    if (slices.length < ids.length) continue;
+    waiting.delete(day);
+    const merged = mergeScreenDays(slices);
+    held.days.set(day, { ids: keyOf(ids), day: merged, bytes: merged.vehicle.buffer.byteLength });
+  }
+}
