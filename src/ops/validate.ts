@@ -1,6 +1,6 @@
 import { accuracyText, measureAccuracy, writeAccuracy } from "@tests/reference/accuracy";
 import { readRecording } from "@tests/reference/recording";
-import { MAIN_SAMPLINGS, MORE_SAMPLINGS } from "@tests/reference/samplings";
+import { samplingsOf } from "@tests/reference/samplings";
 import { HOLD_OUT, TUNING } from "@tests/reference/scenarios/index";
 
 const USAGE = `Usage: npm run validate -- [--write] [--main] [scenario ...]
@@ -17,12 +17,11 @@ if (unknown.length > 0 || (isWrite && (wanted.length > 0 || args.includes("--mai
   process.stderr.write(`${USAGE}\n`);
   process.exitCode = 1;
 } else {
-  const samplings = args.includes("--main") ? MAIN_SAMPLINGS : [...MAIN_SAMPLINGS, ...MORE_SAMPLINGS];
   const scenarios = [...TUNING, ...HOLD_OUT].filter(({ id }) => wanted.length === 0 || wanted.includes(id));
   const rows = scenarios.flatMap((scenario) => {
     const recording = readRecording(scenario.id);
     process.stderr.write(`${scenario.id} ...\n`);
-    const possible = samplings.filter(({ share }) => share * 100 in recording.oracle);
+    const possible = samplingsOf(scenario.id, args.includes("--main")).filter(({ share }) => share * 100 in recording.oracle);
     return possible.map((sampling) => measureAccuracy(recording, sampling, HOLD_OUT.includes(scenario)));
   });
   if (isWrite) writeAccuracy(rows);

@@ -14,6 +14,7 @@ import type { RecordedTruth } from "./recording";
 import { isSampled } from "./sampling";
 import { HOLD_OUT, TUNING } from "./scenarios/index";
 import type { Scenario } from "./scenarios/types";
+import { drawStreets, rebuildAround, withGuessedSignals } from "./simulator/draw-streets";
 import { readNetwork } from "./simulator/read-network";
 import { simulate } from "./simulator/simulate";
 import { writeNetwork } from "./simulator/write-network";
@@ -28,14 +29,17 @@ import { writeWorkingFiles } from "./working-files";
 const START_MS = Date.UTC(2026, 8, 15, 7);
 const ORACLE_SHARES = [1, 0.2, 0.1, 0.05, 0.02];
 
-async function measure(scenario: Scenario): Promise<Measured> {
-  const folder = mkdtempSync(join(tmpdir(), `reference-${scenario.id}-`));
+async function measure(defined: Scenario): Promise<Measured> {
+  const folder = mkdtempSync(join(tmpdir(), `reference-${defined.id}-`));
   try {
-    const networkPath = writeNetwork(scenario, folder);
+    const drawn = drawStreets(defined, folder);
+    const plainPath = writeNetwork(drawn, folder);
+    const scenario = withGuessedSignals(drawn, readNetwork(plainPath));
+    const networkPath = rebuildAround(scenario, plainPath, folder);
     const network = readNetwork(networkPath);
     const legs = findLegStreets(network);
     const index = indexLegs(legs);
-    const courses = await simulate(scenario, networkPath, folder);
+    const courses = await simulate(scenario, networkPath, network, folder);
     const passages = [...courses.values()].flatMap((course) => findPassages(course, index));
     const referenceS = await findReferenceTimes(scenario, networkPath, network, folder, passages, index);
     const known = passages.filter((passage) => !passage.isComplete || referenceS.has(movementKey(passage)));

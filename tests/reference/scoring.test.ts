@@ -20,7 +20,7 @@ function straightCourse(id: string, seconds: number, speedMs: number): SampledCo
 describe("the truth", () => {
   it("stands from below 5 km/h until above 10 km/h", () => {
     const speedMs = [10, 3, 1.3, 2.5, 2.7, 2.9, 2.5].map(Number);
-    const course = { id: "a", t: [], x: [], y: [], edge: [], pos: [], lane: [], speedMs };
+    const course = { id: "a", t: [], x: [], y: [], edge: [], pos: [], lane: [], dwells: [], speedMs };
     expect([...standingFlags({ ...course, t: speedMs.map((_, i) => i) })]).toEqual([0, 0, 1, 1, 1, 0, 0]);
   });
 

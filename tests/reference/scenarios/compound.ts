@@ -87,7 +87,7 @@ export function compoundScenario(): Scenario {
     routeSpread: 1.1,
     warmUpS: 480,
     recordedS: 3600,
-    recordedShare: 0.2,
+    recordedShare: 1,
     vehicles: "default",
   };
 }

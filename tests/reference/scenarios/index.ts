@@ -1,11 +1,22 @@
 import { arterialBScenario, arterialScenario } from "./arterial";
 import { compoundScenario } from "./compound";
+import { drawnCityScenario } from "./drawn-city";
 import { gridScenario } from "./grid";
 import { mirrorScenario } from "./mirror";
 import { oddScenario } from "./odd";
 import { oddBScenario } from "./odd-b";
 import { townScenario } from "./town";
 import type { Scenario } from "./types";
+
+const RANDOM_STREETS = [
+  "--rand", "--rand.iterations", "62", "--rand.min-distance", "60", "--rand.max-distance", "240", "--rand.min-angle", "50",
+  "--rand.num-tries", "60", "--rand.connectivity", "0.96",
+];
+
+const RING_STREETS = [
+  "--spider", "--spider.arm-number", "7", "--spider.circle-number", "4", "--spider.space-radius", "150",
+  "--perturb-x", "normc(0,28,-55,55)", "--perturb-y", "normc(0,28,-55,55)",
+];
 
 /** Scenarios to tune on. */
 export const TUNING: Scenario[] = [
@@ -33,6 +44,13 @@ export const TUNING: Scenario[] = [
     seed: 919, columns: 7, rows: 6, spacingM: 98, jitterM: 22, gapShare: 0.12, diagonalShare: 0.12,
     perHour: 235, cycleS: 72, signalShare: 0.6, oneWayColumns: [2, 3], oneWayRows: [2, 3], vehicles: "default",
   }),
+  drawnCityScenario({
+    id: "drawn",
+    title: "city drawn at random: bent streets of mixed widths and speeds, yards, buses, errands, people crossing, turns at red",
+    seed: 1207, driveSide: "right", cycleS: 88, perLane: 130, perYard: 35, mainStreets: 5, fringeShare: 0, oneWayShare: 0.15, yardShare: 0.35,
+    busLines: 4, vehicles: "calm", recordedShare: 1, draw: RANDOM_STREETS, signalFromMs: 50, walkersPerHour: 90,
+    turnOnRedShare: 0.4, errandShare: 0.06,
+  }),
 ];
 
 /** Kept aside while the core was tuned. */
@@ -45,6 +63,13 @@ export const HOLD_OUT: Scenario[] = [
     title: "another irregular town, denser and busier",
     seed: 818, columns: 5, rows: 5, spacingM: 160, jitterM: 34, gapShare: 0.14, diagonalShare: 0.25,
     perHour: 250, cycleS: 76, signalShare: 1, oneWayColumns: [], oneWayRows: [], vehicles: "calm",
+  }),
+  drawnCityScenario({
+    id: "rings",
+    title: "city of rings and radials drawn askew: bent streets of mixed widths and speeds, yards, buses, errands, people crossing",
+    seed: 1311, driveSide: "left", cycleS: 80, perLane: 150, perYard: 35, mainStreets: 5, fringeShare: 0.75, oneWayShare: 0.12, yardShare: 0.3,
+    busLines: 4, vehicles: "default", recordedShare: 0.2, draw: RING_STREETS, signalFromMs: 50, walkersPerHour: 90,
+    turnOnRedShare: 0.3, errandShare: 0.06,
   }),
 ];
 

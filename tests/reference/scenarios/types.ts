@@ -35,6 +35,8 @@ export interface ConnectionSpec {
 
 export interface SignalSpec {
   offsetS?: number;
+  /** The near turn may be made at red after a stop. */
+  turnOnRed?: boolean;
   /** Stretch or shorten the phase that gives protected green to a movement of one edge (SUMO's l, s, r). */
   greens?: { from: string; dir: "l" | "s" | "r"; factor: number }[];
 }
@@ -47,6 +49,44 @@ export interface Demand {
   exits: Record<string, number>;
   /** Edges on which trips may also start and end part-way. */
   inner: string[];
+}
+
+/** Streets as the simulator's generator drew them: kinds of nodes, lanes and speeds are still open. */
+export interface DrawnStreets {
+  nodes: { id: string; x: number; y: number }[];
+  edges: { id: string; from: string; to: string }[];
+}
+
+/** A way through the town on which one bus after another stops at the kerb. */
+export interface BusLine {
+  from: string;
+  to: string;
+  /** Edge and distance of the stop before its end, metres, in order. */
+  stops: { edge: string; beforeEndM: number }[];
+  everyS: number;
+}
+
+/** What a street network of the simulator's own making has beside nodes and edges. */
+export interface Dressed {
+  nodes: NodeSpec[];
+  edges: EdgeSpec[];
+  demand: Demand[];
+  buses: BusLine[];
+}
+
+/** A network that the simulator's programs draw and sign; `nodes`, `edges`, `signals` and `demand` of its scenario are filled in then. */
+export interface Generated {
+  /** Arguments of netgenerate. */
+  draw: string[];
+  dress: (streets: DrawnStreets) => Dressed;
+  /** Sum of the speeds of all lanes that reach a crossing, m/s, from which it is given a signal. */
+  signalFromMs: number;
+  /** Footways, crossings and people who walk over them, so many an hour at each signal. */
+  walkersPerHour: number;
+  /** Share of the signals at which the near turn may be made at red after a stop. */
+  turnOnRedShare: number;
+  /** Share of the trips that stop on the way, beside the lane or, on wide streets, in it. */
+  errandShare: number;
 }
 
 export interface Scenario {
@@ -75,6 +115,8 @@ export interface Scenario {
   warmUpS: number;
   recordedS: number;
   vehicles: "calm" | "default";
+  generated?: Generated;
+  buses?: BusLine[];
   /** Share of the vehicles whose courses are kept; 1 lets strips be tested on full data. */
   recordedShare: number;
 }

@@ -1,7 +1,7 @@
 import { execFileSync } from "node:child_process";
 
 /** Runs one of the simulator's programs and turns a failure into its own words. */
-export function runProgram(program: "netconvert" | "duarouter" | "sumo", args: string[]): void {
+export function runProgram(program: "netgenerate" | "netconvert" | "duarouter" | "sumo", args: string[]): void {
   try {
     execFileSync(program, args, { stdio: ["ignore", "pipe", "pipe"], maxBuffer: 1 << 26 });
   } catch (error) {

@@ -3,6 +3,8 @@ import { readFileSync } from "node:fs";
 export interface LaneGeometry {
   lengthM: number;
   speedMs: number;
+  /** A footway, on which nobody drives. */
+  forWalkers: boolean;
   /** x then y of each vertex. */
   shape: number[];
 }
@@ -37,6 +39,7 @@ export function readNetwork(path: string): SimulatedNetwork {
     const lanes = [...body.matchAll(/<lane ([^>]*?)\/?>/g)].map(([, lane]) => ({
       lengthM: Number(attribute(lane, "length")),
       speedMs: Number(attribute(lane, "speed")),
+      forWalkers: attribute(lane, "allow") === "pedestrian",
       shape: attribute(lane, "shape").split(/[ ,]/).map(Number),
     }));
     const edge = { id, from: attribute(head, "from"), to: attribute(head, "to"), lanes, lengthM: lanes[0].lengthM };

@@ -1,4 +1,4 @@
-import { createReadStream } from "node:fs";
+import { createReadStream, readFileSync } from "node:fs";
 import { createInterface } from "node:readline";
 
 /** One vehicle's recorded second-by-second course; t in seconds from the start of the recording. */
@@ -12,6 +12,8 @@ export interface Course {
   /** Metres from the start of the lane to the front bumper. */
   pos: number[];
   lane: number[];
+  /** When it stopped for its own sake, as at a bus stop: from, to, seconds from the start of the recording. */
+  dwells: [number, number][];
 }
 
 const VEHICLE = /<vehicle id="([^"]+)" x="([^"]+)" y="([^"]+)" .*?speed="([^"]+)" pos="([^"]+)" lane="([^"]+)"/;
@@ -29,7 +31,7 @@ export async function readTrajectories(path: string, startS: number): Promise<Ma
     if (!found) continue;
     const [, id, x, y, speed, pos, laneId] = found;
     let course = courses.get(id);
-    if (!course) courses.set(id, (course = { id, t: [], x: [], y: [], speedMs: [], edge: [], pos: [], lane: [] }));
+    if (!course) courses.set(id, (course = { id, t: [], x: [], y: [], speedMs: [], edge: [], pos: [], lane: [], dwells: [] }));
     let place = edgeNames.get(laneId);
     if (!place) {
       const cut = laneId.lastIndexOf("_");
@@ -44,4 +46,12 @@ export async function readTrajectories(path: string, startS: number): Promise<Ma
     course.lane.push(place[1]);
   }
   return courses;
+}
+
+/** Notes the stops that vehicles made for their own sake in their courses. */
+export function readDwells(path: string, startS: number, courses: Map<string, Course>) {
+  for (const [, head] of readFileSync(path, "utf8").matchAll(/<stopinfo ([^>]*)\/?>/g)) {
+    const value = (name: string) => new RegExp(`(?:^|\\s)${name}="([^"]*)"`).exec(head)?.[1] ?? "";
+    courses.get(value("id"))?.dwells.push([Number(value("started")) - startS, Number(value("ended")) - startS]);
+  }
 }

@@ -24,10 +24,18 @@ export function writeNetwork(scenario: Scenario, folder: string): string {
     "-n", files.nodes, "-e", files.edges, "-x", files.connections, "-o", network,
     "--offset.disable-normalization", "--no-turnarounds", String(!scenario.turnarounds),
     "--tls.cycle.time", String(scenario.cycleS), "--tls.left-green.time", String(scenario.leftGreenS),
-    "--tls.yellow.time", "3", "--tls.allred.time", "1", "--tls.default-type", "static",
+    "--tls.yellow.time", "3", "--tls.allred.time", "1", "--tls.default-type", scenario.generated ? "actuated" : "static",
     "--junctions.corner-detail", "5", "--lefthand", String(scenario.driveSide === "left"), "--no-warnings",
+    ...guesses(scenario),
   ]);
   return network;
+}
+
+/** What netconvert is to find for itself: which crossings have a signal, and where people walk. */
+function guesses({ generated }: Scenario): string[] {
+  if (!generated) return [];
+  const footways = generated.walkersPerHour > 0 ? ["--sidewalks.guess", "true", "--crossings.guess", "true"] : [];
+  return ["--tls.guess", "true", "--tls.guess.threshold", String(generated.signalFromMs), "--xml-validation", "never", ...footways];
 }
 
 function edgeXml(scenario: Scenario, edge: EdgeSpec): string {
@@ -58,22 +66,31 @@ function write(folder: string, name: string, root: string, lines: string[]): str
 export function writeSignals(scenario: Scenario, networkPath: string, folder: string, allGreen: boolean): string {
   const xml = readFileSync(networkPath, "utf8");
   const links = readSignalLinks(xml);
-  const programs = [...xml.matchAll(/<tlLogic id="([^"]+)"[^>]*>([\s\S]*?)<\/tlLogic>/g)].map(([, id, body]) => {
-    const phases = [...body.matchAll(/<phase duration="([^"]+)"\s+state="([^"]+)"/g)];
+  const programs = [...xml.matchAll(/<tlLogic id="([^"]+)" type="(\w+)"[^>]*>([\s\S]*?)<\/tlLogic>/g)].map(([, id, type, body]) => {
+    const phases = [...body.matchAll(/<phase duration="([^"]+)"\s+state="([^"]+)"([^>]*)\/>/g)];
     const signal = scenario.signals?.[id] ?? {};
-    if (allGreen) return program(id, 0, [`<phase duration="90" state="${"G".repeat(phases[0][2].length)}"/>`]);
-    const lines = phases.map(([, duration, state]) => {
+    if (allGreen) return program(id, "static", 0, [`<phase duration="90" state="${"G".repeat(phases[0][2].length)}"/>`]);
+    const lines = phases.map(([, duration, state, limits]) => {
       const stretched = (signal.greens ?? []).filter(({ from, dir }) => isProtected(links.get(id) ?? [], state, from, dir));
       const factor = stretched.reduce((product, green) => product * green.factor, 1);
-      return `<phase duration="${Math.max(3, Math.round(Number(duration) * factor))}" state="${state}"/>`;
+      const shown = signal.turnOnRed ? withTurnOnRed(state, links.get(id) ?? [], scenario.driveSide === "right" ? "r" : "l") : state;
+      return `<phase duration="${Math.max(3, Math.round(Number(duration) * factor))}" state="${shown}"${limits}/>`;
     });
-    return program(id, signal.offsetS ?? 0, lines);
+    return program(id, type, signal.offsetS ?? 0, lines);
   });
   return write(folder, allGreen ? "green.add.xml" : "signals.add.xml", "additional", programs);
 }
 
-function program(id: string, offsetS: number, phases: string[]): string {
-  return `<tlLogic id="${id}" type="static" programID="reference" offset="${offsetS}">${phases.join("")}</tlLogic>`;
+/** SUMO's "s": red, but who turns to the near side may go after a stop; not while people have green. */
+function withTurnOnRed(state: string, links: SignalLink[], dir: string): string {
+  const lamps = [...state];
+  if (links.some((link) => link.from.startsWith(":") && /[Gg]/.test(lamps[link.index]))) return state;
+  for (const link of links) if (link.dir === dir && lamps[link.index] === "r") lamps[link.index] = "s";
+  return lamps.join("");
+}
+
+function program(id: string, type: string, offsetS: number, phases: string[]): string {
+  return `<tlLogic id="${id}" type="${type}" programID="reference" offset="${offsetS}">${phases.join("")}</tlLogic>`;
 }
 
 interface SignalLink {

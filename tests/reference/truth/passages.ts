@@ -17,7 +17,7 @@ export interface RawPassage {
   stopLineS: number;
   exitS: number;
   stops: number;
-  /** Seen from the upstream cordon to the exit cordon, on the streets of leg and exit all the way. */
+  /** Seen from the upstream cordon to the exit cordon, on the streets of leg and exit all the way, and not parked or at a bus stop there. */
   isComplete: boolean;
   /** Edge before the leg and edge after the exit: where the vehicle came from and goes to. */
   context: string[];
@@ -78,15 +78,18 @@ function measure(
   };
   let stops = 0;
   for (let k = from + 1; k < to; k++) if (standing[k] && !standing[k - 1]) stops++;
+  const enterS = timeAt(course, odometer, enterOdo, from, last);
+  const exitS = timeAt(course, odometer, exitOdo, first - 1, to);
+  const dwelt = course.dwells.some(([begin, end]) => end > enterS && begin < exitS);
   return {
     vehicleId: course.id,
     leg,
     exit,
-    enterS: timeAt(course, odometer, enterOdo, from, last),
+    enterS,
     stopLineS: timeAt(course, odometer, lineOdo, last, first),
-    exitS: timeAt(course, odometer, exitOdo, first - 1, to),
+    exitS,
     stops,
-    isComplete: odometer[from] <= enterOdo + SLACK_M && odometer[to] >= exitOdo && staysOnStreets(),
+    isComplete: !dwelt && odometer[from] <= enterOdo + SLACK_M && odometer[to] >= exitOdo && staysOnStreets(),
     context: contextOf(course, from, to),
   };
 }

@@ -33,7 +33,7 @@ export async function findReferenceTimes(
   const path = join(folder, "lone.rou.xml");
   writeFileSync(path, `<routes>\n${loneVehicleType(scenario)}\n${routes.join("\n")}\n</routes>\n`);
   const output = join(folder, "lone.fcd.xml");
-  runSimulator(networkPath, path, writeSignals(scenario, networkPath, folder, true), output, []);
+  runSimulator(networkPath, [path], [writeSignals(scenario, networkPath, folder, true)], output, []);
   const courses = await readTrajectories(output, 0);
   const sums = new Map<string, { time: number; weight: number }>();
   for (const course of courses.values()) {
