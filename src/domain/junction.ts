@@ -1,6 +1,8 @@
 import { z } from "zod";
 import type { Evidence, Origin, ReferenceSource, Turn } from "@/core/types";
-import { ScreenQuery, type EstimateView, type RankedJunction, type RawParams, type ScreenResult } from "./screen";
+import type { EstimateView } from "./estimate";
+import { ScreenQuery, type RankedJunction, type ScreenResult } from "./screen";
+import { PATHS, SMOOTHING, STRIP_SHAPES } from "./screen-choices";
 
 /** The part of a screen query that says when: what a junction page and a leg strip are opened with. */
 export const WhenQuery = ScreenQuery.pick({ period: true, from: true, to: true, days: true, since: true, until: true });
@@ -102,59 +104,16 @@ export const StripQuery = WhenQuery.extend({
   day: z.iso.date().optional(),
   turn: ScreenQuery.shape.turn,
   /** Along the wave by default: travel times read off such cells are the nearer to the vehicles' own (tests/reference/strips). */
-  shape: z.enum(["rectangles", "waves"]).default("waves"),
+  shape: z.enum(STRIP_SHAPES).default("waves"),
   /** Backward wave speed, km/h. */
   wave: z.coerce.number().min(10).max(20).default(15),
   cellM: z.coerce.number().min(5).max(50).default(10),
   cellS: z.coerce.number().min(5).max(900).default(120),
   /** Fine cells can be evened out along the two wave directions. */
-  smooth: z.enum(["off", "on"]).default("off"),
-  paths: z.enum(["shown", "hidden"]).default("hidden"),
+  smooth: z.enum(SMOOTHING).default("off"),
+  paths: z.enum(PATHS).default("hidden"),
 });
 export type StripQuery = z.infer<typeof StripQuery>;
-
-/** A hand-edited address never breaks the page: fields that fail fall back to their default. */
-export function whenQueryFromParams(params: RawParams): WhenQuery {
-  return withWholeWindow(parseLeniently(WhenQuery, params));
-}
-
-export function stripQueryFromParams(params: RawParams): StripQuery {
-  return withWholeWindow(parseLeniently(StripQuery, params));
-}
-
-/** Leaves defaults out, so that two people who look at the same thing have the same address. */
-export function whenQueryToParams(query: WhenQuery): URLSearchParams {
-  return paramsBesideDefaults(WhenQuery.parse(query), WhenQuery.parse({}));
-}
-
-export function stripQueryToParams(query: StripQuery): URLSearchParams {
-  return paramsBesideDefaults(query, StripQuery.parse({}));
-}
-
-function parseLeniently<T extends z.ZodType>(schema: T, params: RawParams): z.infer<T> {
-  const first: Record<string, string | undefined> = {};
-  for (const [key, value] of Object.entries(params)) first[key] = Array.isArray(value) ? value[0] : value;
-  const strict = schema.safeParse(first);
-  if (strict.success) return strict.data;
-  for (const issue of strict.error.issues) delete first[String(issue.path[0])];
-  return schema.parse(first);
-}
-
-function withWholeWindow<Q extends WhenQuery>(query: Q): Q {
-  const isWhole = query.from !== undefined && query.to !== undefined && query.from < query.to;
-  return isWhole ? query : { ...query, from: undefined, to: undefined };
-}
-
-function paramsBesideDefaults(query: Record<string, unknown>, defaults: Record<string, unknown>): URLSearchParams {
-  const params = new URLSearchParams();
-  for (const [key, value] of Object.entries(query)) {
-    if (value !== undefined && value !== defaults[key]) params.set(key, String(value));
-  }
-  return params;
-}
-
-/** A strip of more tracks than this would not be drawn any better; of more, the newest days are shown. */
-export const MOST_TRACKS = 20_000;
 
 /** All about a leg but its tracks, which travel as bytes. */
 export interface LegStripView {

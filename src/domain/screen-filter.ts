@@ -1,4 +1,5 @@
-import { EVIDENCE_FLOORS, type RankedJunction, type ScreenQuery, type SortKey } from "./screen";
+import type { RankedJunction, ScreenQuery } from "./screen";
+import { EVIDENCE_FLOORS, type SortKey } from "./screen-choices";
 
 /** The part of a query that chooses and orders rows; the rest (when, which turn) decides the figures in them. */
 export type RowFilter = Pick<ScreenQuery, "minDelay" | "minSpill" | "evidence" | "corridor" | "q" | "sort" | "dir">;

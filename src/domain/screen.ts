@@ -1,27 +1,16 @@
 import { z } from "zod";
-import { TURNS, type Evidence, type Estimate, type Turn } from "@/core/types";
-import { PERIOD_KEYS } from "./settings";
-
-export const DAY_TYPES = ["weekdays", "saturday", "sunday", "every"] as const;
-export type DayType = (typeof DAY_TYPES)[number];
-
-export const DAY_TYPE_NAMES: Record<DayType, string> = {
-  weekdays: "weekdays",
-  saturday: "Saturdays",
-  sunday: "Sundays",
-  every: "all days",
-};
-
-export const SORT_KEYS = ["rank", "name", "delay", "p95", "hours", "stops", "reach", "storage", "spill", "vehicles", "evidence"] as const;
-export type SortKey = (typeof SORT_KEYS)[number];
-
-/** Weakest evidence that is still listed. */
-export const EVIDENCE_FLOORS = ["none", "thin", "fair", "strong"] as const satisfies readonly Evidence[];
+import { TURNS, type Evidence, type Turn } from "@/core/types";
+import type { EstimateView } from "./estimate";
+import { PERIOD_KEYS } from "./periods";
+import { DAY_TYPES, EVIDENCE_FLOORS, SORT_KEYS } from "./screen-choices";
 
 const Quarter = z.coerce.number().int().min(0).max(1440).multipleOf(15);
 const IsoDate = z.iso.date();
 
-/** What a screen shows: page address, list, map, export and published report all hold this one object. */
+/**
+ * What a screen shows: page address, list, map, export and published report all hold this one object.
+ * `query-address.ts` reads the same from an address.
+ */
 export const ScreenQuery = z.object({
   period: z.enum(PERIOD_KEYS).default("pm"),
   /** A window of its own replaces the period: minutes after local midnight. */
@@ -42,45 +31,6 @@ export const ScreenQuery = z.object({
   dir: z.enum(["asc", "desc"]).optional(),
 });
 export type ScreenQuery = z.infer<typeof ScreenQuery>;
-
-export type RawParams = Record<string, string | string[] | undefined>;
-
-/** A hand-edited address never breaks the page: fields that fail fall back to their default. */
-export function screenQueryFromParams(params: RawParams): ScreenQuery {
-  const first: Record<string, string | undefined> = {};
-  for (const [key, value] of Object.entries(params)) first[key] = Array.isArray(value) ? value[0] : value;
-  const strict = ScreenQuery.safeParse(first);
-  const query = strict.success ? strict.data : lenient(first, strict.error);
-  const hasWindow = query.from !== undefined && query.to !== undefined && query.from < query.to;
-  return hasWindow ? query : { ...query, from: undefined, to: undefined };
-}
-
-function lenient(first: Record<string, string | undefined>, error: z.ZodError): ScreenQuery {
-  for (const issue of error.issues) delete first[String(issue.path[0])];
-  return ScreenQuery.parse(first);
-}
-
-/** Leaves defaults out, so that two people who look at the same thing have the same address. */
-export function screenQueryToParams(query: ScreenQuery): URLSearchParams {
-  const defaults: Record<string, unknown> = ScreenQuery.parse({});
-  const params = new URLSearchParams();
-  for (const [key, value] of Object.entries(query)) {
-    if (value !== undefined && value !== defaults[key]) params.set(key, String(value));
-  }
-  return params;
-}
-
-/** `null` stands for "the sample cannot say". */
-export interface EstimateView {
-  value: number;
-  low: number;
-  high: number;
-}
-
-/** A figure without an interval is no figure: one vehicle says nothing about a mean. */
-export function estimateView(e: Estimate): EstimateView | null {
-  return [e.value, e.low, e.high].every(Number.isFinite) ? { value: e.value, low: e.low, high: e.high } : null;
-}
 
 export interface NeedleView {
   legId: number;

@@ -1,8 +1,5 @@
 import { z } from "zod";
 
-export const PERIOD_KEYS = ["am", "midday", "pm", "evening", "all"] as const;
-export type PeriodKey = (typeof PERIOD_KEYS)[number];
-
 /** Minutes after local midnight, in quarters of an hour; `to` is exclusive. */
 export const TimeWindow = z
   .object({
@@ -10,7 +7,6 @@ export const TimeWindow = z
     toMin: z.number().int().min(15).max(1440).multipleOf(15),
   })
   .refine((w) => w.fromMin < w.toMin, { message: "The window must end after it begins.", path: ["toMin"] });
-export type TimeWindow = z.infer<typeof TimeWindow>;
 
 export const CitySettings = z.object({
   cityName: z.string().trim().min(1).max(80).default("My city"),
@@ -30,18 +26,6 @@ export const CitySettings = z.object({
     }),
 });
 export type CitySettings = z.infer<typeof CitySettings>;
-
-export const PERIOD_NAMES: Record<PeriodKey, string> = {
-  am: "AM peak",
-  midday: "midday",
-  pm: "PM peak",
-  evening: "evening",
-  all: "all day",
-};
-
-export function periodWindow(settings: CitySettings, key: PeriodKey): TimeWindow {
-  return key === "all" ? { fromMin: 0, toMin: 1440 } : settings.periods[key];
-}
 
 export function isTimeZone(name: string): boolean {
   try {

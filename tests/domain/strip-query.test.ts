@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { stripQueryFromParams, stripQueryToParams, whenQueryFromParams, whenQueryToParams } from "@/domain/junction";
+import { stripQueryFromParams, stripQueryToParams, whenQueryFromParams, whenQueryToParams } from "@/domain/query-address";
 
 describe("strip query in the address", () => {
   it("is the default view when the address says nothing", () => {

@@ -1,4 +1,5 @@
-import { DAY_TYPES, ScreenQuery } from "@/domain/screen";
+import { ScreenQuery } from "@/domain/screen";
+import { DAY_TYPES } from "@/domain/screen-choices";
 import { rankJunctions } from "@/services/screens/rank-junctions";
 import type { OpenContext } from "./bench-place";
 import { figure, p95, sum, timesOf, type Figure } from "./figures";

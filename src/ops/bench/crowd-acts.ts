@@ -1,7 +1,7 @@
 import type { Random } from "@/core/stats/random";
 import type { Role } from "@/domain/actor";
-import { DAY_TYPES } from "@/domain/screen";
-import { PERIOD_KEYS } from "@/domain/settings";
+import { DAY_TYPES } from "@/domain/screen-choices";
+import { PERIOD_KEYS } from "@/domain/periods";
 
 export interface City {
   junctionIds: readonly number[];

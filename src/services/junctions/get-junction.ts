@@ -4,7 +4,7 @@ import type { ProfileQuarter } from "@/core/scores/score-profile";
 import { corridors, junctions } from "@/db/schema";
 import { notFound } from "@/domain/errors";
 import { WhenQuery, type JunctionView, type ProfilePoint } from "@/domain/junction";
-import { estimateView } from "@/domain/screen";
+import { estimateView } from "@/domain/estimate";
 import { RowKey } from "@/domain/row-key";
 import { requirePermission, type Context } from "../context";
 import { detailsOf } from "../screens/details-of";

@@ -2,7 +2,7 @@ import { lengthOf } from "@/core/geometry/polyline";
 import type { Evidence } from "@/core/types";
 import type { LegDetail, LegScore, MovementDetail, MovementScore } from "@/core/scores/types";
 import type { ExitView, LegView, MovementView } from "@/domain/junction";
-import { estimateView } from "@/domain/screen";
+import { estimateView } from "@/domain/estimate";
 import { finite, losView } from "../screens/ranked-row";
 import type { LegRow, MovementRow } from "./junction-rows";
 

@@ -1,6 +1,7 @@
 import { levelOfService } from "@/core/stats/level-of-service";
 import type { JunctionScore, LegScore } from "@/core/scores/types";
-import { estimateView, type EstimateView, type NeedleView, type RankedJunction } from "@/domain/screen";
+import { estimateView, type EstimateView } from "@/domain/estimate";
+import type { NeedleView, RankedJunction } from "@/domain/screen";
 import type { CatalogueJunction } from "../catalogue/catalogue";
 import type { ScoredCity } from "./score-city";
 

@@ -5,7 +5,7 @@ import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { dayFromIso, weekdayOf } from "@/domain/local-time";
-import type { DayType } from "@/domain/screen";
+import type { DayType } from "@/domain/screen-choices";
 import { holdDays, MOST_HELD_BYTES, type SlicesOfDay } from "./held-days";
 
 interface Slice {

@@ -1,4 +1,4 @@
-import type { PeriodKey, TimeWindow } from "@/domain/settings";
+import type { PeriodKey, TimeWindow } from "@/domain/periods";
 import { formatClock } from "@/ui/format";
 import { Select } from "@/ui/primitives/field";
 

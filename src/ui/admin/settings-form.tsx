@@ -3,7 +3,8 @@
 import { useRouter } from "next/navigation";
 import { useState, type FormEvent } from "react";
 import type { ActionResult } from "@/domain/errors";
-import { PERIOD_NAMES, type CitySettings, type TimeWindow } from "@/domain/settings";
+import { PERIOD_NAMES, type TimeWindow } from "@/domain/periods";
+import type { CitySettings } from "@/domain/settings";
 import { FormProblem } from "@/ui/forms/form-problem";
 import { useAction } from "@/ui/forms/use-action";
 import { useIsReady } from "@/ui/forms/use-is-ready";

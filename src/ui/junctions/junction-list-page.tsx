@@ -4,7 +4,7 @@ import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { useId } from "react";
 import type { ListedJunction } from "@/domain/junction";
-import type { RawParams } from "@/domain/screen";
+import type { RawParams } from "@/domain/address";
 import { counted } from "@/ui/format";
 import { Input } from "@/ui/primitives/field";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";

@@ -2,7 +2,8 @@
 
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
-import { whenQueryFromParams, whenQueryToParams, type JunctionView, type WhenQuery } from "@/domain/junction";
+import type { JunctionView, WhenQuery } from "@/domain/junction";
+import { whenQueryFromParams, whenQueryToParams } from "@/domain/query-address";
 import { formatDay } from "@/ui/format";
 import { CAUTIONS } from "@/ui/primitives/caution";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";

@@ -1,7 +1,8 @@
 "use client";
 
 import Link from "next/link";
-import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } from "@/domain/junction";
+import type { JunctionView, LegView, WhenQuery } from "@/domain/junction";
+import { whenQueryToParams } from "@/domain/query-address";
 import { formatLength } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";
 import { useCity } from "@/ui/shell/city";

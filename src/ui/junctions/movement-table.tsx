@@ -1,7 +1,8 @@
 "use client";
 
 import Link from "next/link";
-import { whenQueryToParams, type ExitView, type JunctionView, type LegView, type MovementView, type WhenQuery } from "@/domain/junction";
+import type { ExitView, JunctionView, LegView, MovementView, WhenQuery } from "@/domain/junction";
+import { whenQueryToParams } from "@/domain/query-address";
 import { formatLength, formatNumber, formatSeconds, formatShare, shareNumber } from "@/ui/format";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { IntervalMark } from "@/ui/primitives/interval-mark";

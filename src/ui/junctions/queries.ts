@@ -1,5 +1,6 @@
 import { keepPreviousData, queryOptions } from "@tanstack/react-query";
-import { whenQueryToParams, type JunctionView, type ListedJunction, type WhenQuery } from "@/domain/junction";
+import type { JunctionView, ListedJunction, WhenQuery } from "@/domain/junction";
+import { whenQueryToParams } from "@/domain/query-address";
 import { getJson } from "@/ui/query-client";
 
 /** All junctions of the city: the list is searched in the browser. */

@@ -1,7 +1,8 @@
 "use client";
 
 import Link from "next/link";
-import { whenQueryToParams, type JunctionView, type LegView, type WhenQuery } from "@/domain/junction";
+import type { JunctionView, LegView, WhenQuery } from "@/domain/junction";
+import { whenQueryToParams } from "@/domain/query-address";
 import { formatLength, type Units } from "@/ui/format";
 import { COLORS, delayColor } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";

@@ -3,7 +3,7 @@
 import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useEffect, useRef, useState } from "react";
 import type { LegCheckView } from "@/domain/leg-check";
-import type { RawParams } from "@/domain/screen";
+import type { RawParams } from "@/domain/address";
 import { Button } from "@/ui/primitives/button";
 import { Empty } from "@/ui/primitives/states";
 import { useCan } from "@/ui/shell/city";

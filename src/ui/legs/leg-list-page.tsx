@@ -4,7 +4,7 @@ import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { useDeferredValue, useId, useMemo } from "react";
 import type { LegToCheck } from "@/domain/leg-check";
-import type { RawParams } from "@/domain/screen";
+import type { RawParams } from "@/domain/address";
 import { counted, formatNumber } from "@/ui/format";
 import { ChoiceList, type Choice } from "@/ui/primitives/choice";
 import { Input } from "@/ui/primitives/field";

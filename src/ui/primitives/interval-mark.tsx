@@ -1,4 +1,4 @@
-import type { EstimateView } from "@/domain/screen";
+import type { EstimateView } from "@/domain/estimate";
 
 const WIDTH = 64;
 

@@ -2,7 +2,8 @@
 
 import { useQuery } from "@tanstack/react-query";
 import { TURNS } from "@/core/types";
-import { EVIDENCE_FLOORS, SORT_KEYS, type ScreenQuery } from "@/domain/screen";
+import type { ScreenQuery } from "@/domain/screen";
+import { EVIDENCE_FLOORS, SORT_KEYS } from "@/domain/screen-choices";
 import { defaultDirection } from "@/domain/screen-filter";
 import { ChoiceList } from "@/ui/primitives/choice";
 import { SentenceControl } from "@/ui/primitives/sentence";

@@ -1,6 +1,7 @@
 import type { Turn } from "@/core/types";
-import { DAY_TYPE_NAMES, type ScreenQuery, type ScreenResult, type SortKey } from "@/domain/screen";
-import { PERIOD_NAMES } from "@/domain/settings";
+import type { ScreenQuery, ScreenResult } from "@/domain/screen";
+import { DAY_TYPE_NAMES, type SortKey } from "@/domain/screen-choices";
+import { PERIOD_NAMES } from "@/domain/periods";
 import { formatClockRange, formatDayRange } from "@/ui/format";
 
 /** The words of the sentence, one function for each phrase that is a control. */

@@ -1,11 +1,12 @@
 import { keepPreviousData, queryOptions } from "@tanstack/react-query";
-import { screenQueryToParams, ScreenQuery, type CorridorName, type ScreenResult } from "@/domain/screen";
+import { screenQueryToParams, USUAL_SCREEN } from "@/domain/query-address";
+import type { CorridorName, ScreenQuery, ScreenResult } from "@/domain/screen";
 import { getJson } from "@/ui/query-client";
 
 /** What decides the figures: filters that only choose among rows are left out, so that dragging them fetches nothing. */
 export function figuresParams(query: ScreenQuery): string {
   const { period, from, to, days, since, until, turn } = query;
-  return screenQueryToParams(ScreenQuery.parse({ period, from, to, days, since, until, turn })).toString();
+  return screenQueryToParams({ ...USUAL_SCREEN, period, from, to, days, since, until, turn }).toString();
 }
 
 export function screenQuery(query: ScreenQuery) {

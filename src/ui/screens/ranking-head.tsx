@@ -1,6 +1,7 @@
 "use client";
 
-import type { ScreenQuery, SortKey } from "@/domain/screen";
+import type { ScreenQuery } from "@/domain/screen";
+import type { SortKey } from "@/domain/screen-choices";
 import { defaultDirection } from "@/domain/screen-filter";
 import type { Units } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";

@@ -2,7 +2,8 @@
 
 import { useTable } from "@tanstack/react-table";
 import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
-import type { RankedJunction, ScreenQuery, SortKey } from "@/domain/screen";
+import type { RankedJunction, ScreenQuery } from "@/domain/screen";
+import type { SortKey } from "@/domain/screen-choices";
 import { useCity } from "@/ui/shell/city";
 import { oppositeOf } from "./filter-controls";
 import { RankingDetail } from "./ranking-detail";

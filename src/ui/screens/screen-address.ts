@@ -1,4 +1,5 @@
-import { screenQueryFromParams, screenQueryToParams, type ScreenQuery } from "@/domain/screen";
+import { screenQueryFromParams, screenQueryToParams, whenQueryToParams } from "@/domain/query-address";
+import type { ScreenQuery } from "@/domain/screen";
 
 /** What the address of the screen page holds: the query, and the junction that is selected. */
 export interface ScreenAddress {
@@ -18,7 +19,7 @@ export function screenAddressToParams({ query, at }: ScreenAddress): URLSearchPa
 }
 
 /** The part that a junction page or a leg strip is opened with, as "?…" or nothing. */
-export function whenSuffix({ period, from, to, days, since, until }: ScreenQuery): string {
-  const all = screenQueryToParams({ period, from, to, days, since, until } as ScreenQuery).toString();
+export function whenSuffix(query: ScreenQuery): string {
+  const all = whenQueryToParams(query).toString();
   return all ? `?${all}` : "";
 }

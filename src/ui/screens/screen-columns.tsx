@@ -1,7 +1,8 @@
 "use client";
 
 import { createColumnHelper, rowSortingFeature, tableFeatures } from "@tanstack/react-table";
-import type { RankedJunction, SortKey } from "@/domain/screen";
+import type { RankedJunction } from "@/domain/screen";
+import type { SortKey } from "@/domain/screen-choices";
 import { formatNumber, formatSeconds, formatShare, lengthNumber, lengthUnit, NO_FIGURE, shareNumber, type Units } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";

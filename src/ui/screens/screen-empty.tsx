@@ -1,12 +1,13 @@
 "use client";
 
 import Link from "next/link";
-import { ScreenQuery } from "@/domain/screen";
+import { USUAL_SCREEN } from "@/domain/query-address";
+import type { ScreenQuery } from "@/domain/screen";
 import { Button } from "@/ui/primitives/button";
 import { Empty } from "@/ui/primitives/states";
 import { useCan } from "@/ui/shell/city";
 
-const { minDelay, minSpill, evidence, corridor, q, turn } = ScreenQuery.parse({});
+const { minDelay, minSpill, evidence, corridor, q, turn } = USUAL_SCREEN;
 const WIDE_OPEN = { minDelay, minSpill, evidence, corridor, q, turn };
 
 export interface ScreenEmptyProps {

@@ -1,6 +1,7 @@
 "use client";
 
-import { screenQueryToParams, type ScreenQuery } from "@/domain/screen";
+import { screenQueryToParams } from "@/domain/query-address";
+import type { ScreenQuery } from "@/domain/screen";
 import { Button, ButtonLink } from "@/ui/primitives/button";
 import { Input } from "@/ui/primitives/field";
 import { useCan } from "@/ui/shell/city";

@@ -1,7 +1,9 @@
 "use client";
 
-import { DAY_TYPE_NAMES, DAY_TYPES, type ScreenQuery, type ScreenResult } from "@/domain/screen";
-import { PERIOD_KEYS, PERIOD_NAMES, periodWindow, type CitySettings } from "@/domain/settings";
+import type { ScreenQuery, ScreenResult } from "@/domain/screen";
+import { DAY_TYPE_NAMES, DAY_TYPES } from "@/domain/screen-choices";
+import { PERIOD_KEYS, PERIOD_NAMES, periodWindow } from "@/domain/periods";
+import type { CitySettings } from "@/domain/settings";
 import { formatClock, formatClockRange } from "@/ui/format";
 import { ChoiceList } from "@/ui/primitives/choice";
 import { Field, Input, Select } from "@/ui/primitives/field";

@@ -1,6 +1,5 @@
 "use client";
 
-import { signOut } from "next-auth/react";
 import { useState } from "react";
 import type { Role } from "@/domain/actor";
 import { Button } from "@/ui/primitives/button";
@@ -18,6 +17,8 @@ export function PersonMenu({ person, cityName }: { person: Person; cityName: str
 
   async function leave() {
     setLeaving(true);
+    // Needed once in a session: pages do not wait for it.
+    const { signOut } = await import("next-auth/react");
     await signOut({ callbackUrl: "/sign-in" });
   }
 

@@ -2,7 +2,7 @@
 
 import type { ReactNode } from "react";
 import { formatClockRange, formatLength, formatNumber, formatSeconds, formatShare, NO_FIGURE } from "@/ui/format";
-import type { EstimateView } from "@/domain/screen";
+import type { EstimateView } from "@/domain/estimate";
 import { classNames } from "@/ui/primitives/class-names";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { useCity } from "@/ui/shell/city";

@@ -3,7 +3,9 @@
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { useState } from "react";
-import { MOST_TRACKS, stripQueryFromParams, stripQueryToParams, whenQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
+import type { LegStripView, StripQuery } from "@/domain/junction";
+import { stripQueryFromParams, stripQueryToParams, whenQueryToParams } from "@/domain/query-address";
+import { MOST_TRACKS } from "@/domain/screen-choices";
 import { Caution } from "@/ui/primitives/caution";
 import { Empty, Failed, Loading } from "@/ui/primitives/states";
 import { useCity } from "@/ui/shell/city";

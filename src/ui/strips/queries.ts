@@ -1,12 +1,13 @@
 import { keepPreviousData, queryOptions } from "@tanstack/react-query";
 import { decodeTrackSet } from "@/core/strips/track-set";
-import { StripQuery, stripQueryToParams, whenQueryToParams, type LegStripView } from "@/domain/junction";
+import type { LegStripView, StripQuery } from "@/domain/junction";
+import { stripQueryToParams, USUAL_STRIP, whenQueryToParams } from "@/domain/query-address";
 import { getBytes, getJson } from "@/ui/query-client";
 
 /** What decides the figures: how the cells are cut and drawn is done in the browser and fetches nothing. */
 export function figuresParams(query: StripQuery): string {
   const { period, from, to, days, since, until, turn } = query;
-  return stripQueryToParams(StripQuery.parse({ period, from, to, days, since, until, turn })).toString();
+  return stripQueryToParams({ ...USUAL_STRIP, period, from, to, days, since, until, turn }).toString();
 }
 
 /** What decides the tracks. Movements are told apart in the browser, since a queue holds all of them. */

@@ -4,7 +4,8 @@ import { useQuery } from "@tanstack/react-query";
 import { useEffect, useMemo, useRef } from "react";
 import { reachOfDays } from "@/core/strips/reach-of-days";
 import { crossingTimes } from "@/core/strips/track-crossings";
-import { StripQuery, type WhenQuery } from "@/domain/junction";
+import type { StripQuery, WhenQuery } from "@/domain/junction";
+import { USUAL_STRIP } from "@/domain/query-address";
 import { loadFaces } from "./draw-picture";
 import { drawSmall, smallHeight } from "./draw-small";
 import { paintCanvas } from "./paint-canvas";
@@ -61,5 +62,5 @@ export function SmallStrip({ view, when, longestM }: { view: PictureView; when: 
 function smallQuery(when: WhenQuery, view: PictureView): StripQuery {
   const seconds = (view.basis.toMin - view.basis.fromMin) * 60;
   const cellS = Math.min(900, Math.max(60, Math.ceil(seconds / COLUMNS / 60) * 60));
-  return StripQuery.parse({ ...when, cellM: CELL_M, cellS });
+  return { ...USUAL_STRIP, ...when, cellM: CELL_M, cellS };
 }

@@ -3,7 +3,7 @@ import { spillShare, type DayReaches } from "@/core/strips/reach-of-days";
 import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Evidence } from "@/core/types";
 import type { LegStripView, MovementView } from "@/domain/junction";
-import { estimateView, type EstimateView } from "@/domain/screen";
+import { estimateView, type EstimateView } from "@/domain/estimate";
 import type { StripPicture } from "./strip-picture";
 
 /** What stands under a strip. Null where the sample cannot say. */

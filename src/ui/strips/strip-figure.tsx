@@ -1,7 +1,8 @@
 "use client";
 
 import { useMemo, useState } from "react";
-import { stripQueryToParams, type LegStripView, type StripQuery } from "@/domain/junction";
+import type { LegStripView, StripQuery } from "@/domain/junction";
+import { stripQueryToParams } from "@/domain/query-address";
 import { formatLength, formatSpeed } from "@/ui/format";
 import { Button, ButtonLink } from "@/ui/primitives/button";
 import { CAUTIONS } from "@/ui/primitives/caution";

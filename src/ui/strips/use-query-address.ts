@@ -2,7 +2,7 @@
 
 import { useSearchParams } from "next/navigation";
 import { useCallback, useEffect, useRef, useState } from "react";
-import type { RawParams } from "@/domain/screen";
+import type { RawParams } from "@/domain/address";
 
 /** Browsers refuse more than about 200 address changes in half a minute: a drag writes its end, not its way. */
 const WRITE_AFTER_MS = 250;

@@ -3,7 +3,7 @@ import { drawableCellS } from "@/core/strips/cell-width";
 import { reachOfDays } from "@/core/strips/reach-of-days";
 import { crossingTimes } from "@/core/strips/track-crossings";
 import type { LegStripView } from "@/domain/junction";
-import { stripQueryFromParams } from "@/domain/junction";
+import { stripQueryFromParams } from "@/domain/query-address";
 import { firstCell, moveCursor, readOut, readOutText } from "@/ui/strips/strip-cursor";
 import { buildPicture, delayStepS, includeTurn, referencePace, windowOfView } from "@/ui/strips/strip-picture";
 import { setOf } from "@tests/core/strips/support";

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { stripQueryFromParams, type LegStripView, type MovementView } from "@/domain/junction";
+import type { LegStripView, MovementView } from "@/domain/junction";
+import { stripQueryFromParams } from "@/domain/query-address";
 import { delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-delay";
 import { wrapWords } from "@/ui/strips/draw-lines";
 import { factsText } from "@/ui/strips/facts-text";

@@ -1,6 +1,7 @@
 import { dehydrate, HydrationBoundary } from "@tanstack/react-query";
 import type { Metadata } from "next";
-import { screenQueryFromParams, type RawParams } from "@/domain/screen";
+import type { RawParams } from "@/domain/address";
+import { screenQueryFromParams } from "@/domain/query-address";
 import { forPage, pageContext } from "@/server/page";
 import { getQueryClient } from "@/server/query-client";
 import { listCorridors } from "@/services/corridors/list-corridors";

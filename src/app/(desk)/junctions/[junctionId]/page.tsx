@@ -1,7 +1,7 @@
 import { dehydrate, HydrationBoundary } from "@tanstack/react-query";
 import type { Metadata } from "next";
-import { whenQueryFromParams } from "@/domain/junction";
-import type { RawParams } from "@/domain/screen";
+import { whenQueryFromParams } from "@/domain/query-address";
+import type { RawParams } from "@/domain/address";
 import { forPage, pageContext } from "@/server/page";
 import { getQueryClient } from "@/server/query-client";
 import { getJunction } from "@/services/junctions/get-junction";

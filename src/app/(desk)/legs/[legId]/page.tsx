@@ -1,7 +1,7 @@
 import { dehydrate, HydrationBoundary } from "@tanstack/react-query";
 import type { Metadata } from "next";
-import { stripQueryFromParams } from "@/domain/junction";
-import type { RawParams } from "@/domain/screen";
+import { stripQueryFromParams } from "@/domain/query-address";
+import type { RawParams } from "@/domain/address";
 import { forPage, pageContext } from "@/server/page";
 import { getQueryClient } from "@/server/query-client";
 import { getLegStrip } from "@/services/strips/get-leg-strip";

@@ -1,4 +1,4 @@
-import { screenQueryFromParams } from "@/domain/screen";
+import { screenQueryFromParams } from "@/domain/query-address";
 import { route } from "@/server/route";
 import { getJunction } from "@/services/junctions/get-junction";
 

@@ -1,4 +1,4 @@
-import { stripQueryFromParams } from "@/domain/junction";
+import { stripQueryFromParams } from "@/domain/query-address";
 import { route } from "@/server/route";
 import { getLegStrip } from "@/services/strips/get-leg-strip";
 

@@ -1,4 +1,4 @@
-import { screenQueryFromParams } from "@/domain/screen";
+import { screenQueryFromParams } from "@/domain/query-address";
 import { csvResponse } from "@/server/csv-response";
 import { route } from "@/server/route";
 import { exportScreen } from "@/services/screens/export-screen";

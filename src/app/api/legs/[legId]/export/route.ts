@@ -1,4 +1,4 @@
-import { stripQueryFromParams } from "@/domain/junction";
+import { stripQueryFromParams } from "@/domain/query-address";
 import { csvResponse } from "@/server/csv-response";
 import { route } from "@/server/route";
 import { exportStrip } from "@/services/strips/export-strip";

@@ -1,4 +1,4 @@
-import { stripQueryFromParams } from "@/domain/junction";
+import { stripQueryFromParams } from "@/domain/query-address";
 import { route } from "@/server/route";
 import { getTracks } from "@/services/strips/get-tracks";
 
