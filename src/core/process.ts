@@ -1,6 +1,7 @@
 import type { JunctionIndex } from "@/core/index/junction-index";
 import { learnFromTrips } from "@/core/legs/learn-network";
 import { createGraph } from "@/core/match/graph";
+import { cellAt } from "@/core/match/link-grid";
 import { matchTrips } from "@/core/match/match-trips";
 import type { CoreOptions } from "@/core/options";
 import { cleanPings } from "@/core/pings/clean";
@@ -43,8 +44,8 @@ export function learnNetwork(
 }
 
 /** Stage 5: matches batches of whole vehicles over one network: build it once, call it for each batch. Each vehicle's result is independent of all others. O(pings). */
-export function createMatcher(network: Network, index: JunctionIndex): (pings: PingColumns) => Matched {
-  const graph = createGraph(network, index);
+export function createMatcher(network: Network): (pings: PingColumns) => Matched {
+  const graph = createGraph(network);
   return (pings) => {
     const cleaned = cleanPings(pings);
     return matchCleaned(cleaned.trips, cleaned.report, graph, pings);
@@ -57,7 +58,7 @@ export function processCity(
 ): CityResult {
   const cleaned = cleanPings(pings);
   const network = learnFromTrips(cleaned.trips, junctions, index, options, prior);
-  const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network, index), pings);
+  const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network), pings);
   setReferences(network, matched.traversals);
   const facts = { ...matched.facts, penetration: penetrationFromQueues(network, matched.traversals) };
   return { network, traversals: matched.traversals, openTracks: matched.openTracks, clean: matched.report, facts };
@@ -75,7 +76,7 @@ function matchCleaned(
     incompleteTraversals += extractor.addChain(chain);
   });
   let farFromJunctions = 0;
-  for (let i = 0; i < trips.length; i++) if (graph.claims.find(trips.lat[i], trips.lon[i]) < 0) farFromJunctions += 1;
+  for (let i = 0; i < trips.length; i++) if (cellAt(graph.grid, trips.lat[i], trips.lon[i]) < 0) farFromJunctions += 1;
   return {
     traversals: builder.finish(),
     openTracks: open.finish(),

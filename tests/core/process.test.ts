@@ -147,7 +147,7 @@ describe("invariance", () => {
 
   it("changes no mean when every vehicle comes twice, against the same references", () => {
     const twins = rowsOf(town.pings).map(([v, ...rest]) => [v + TOWN.vehicles, ...rest]);
-    const { traversals } = createMatcher(whole.network, index)(columnsOf([...rowsOf(town.pings), ...twins]));
+    const { traversals } = createMatcher(whole.network)(columnsOf([...rowsOf(town.pings), ...twins]));
     for (let i = 0; i < traversals.length; i++) {
       const seconds = (traversals.exitMs[i] - traversals.enterMs[i]) / 1000;
       traversals.delayS[i] = seconds - whole.network.movements[traversals.movement[i]].referenceS;
@@ -160,7 +160,7 @@ describe("invariance", () => {
   });
 
   it("gives the whole file's traversals when it is matched in buckets of vehicles", () => {
-    const match = createMatcher(whole.network, index);
+    const match = createMatcher(whole.network);
     const rows = rowsOf(town.pings);
     const lines = [0, 1, 2].flatMap((bucket) => {
       const part = match(columnsOf(rows.filter(([v]) => v % 3 === bucket)));
@@ -179,7 +179,7 @@ describe("a vehicle whose pings end before the stop line", () => {
   const before = rowsOf(town.pings).filter(([v, tMs]) => v === 0 && tMs < whole.traversals.stopLineMs[first] - 4000);
 
   it("is no traversal and leaves an open track on its leg", () => {
-    const { traversals, openTracks } = createMatcher(whole.network, index)(columnsOf(before));
+    const { traversals, openTracks } = createMatcher(whole.network)(columnsOf(before));
     expect(traversals.length).toBe(0);
     expect([...openTracks.leg]).toEqual([leg]);
     for (let p = 1; p < openTracks.trackS.length; p++) expect(openTracks.trackS[p]).toBeLessThanOrEqual(openTracks.trackS[p - 1]);
@@ -191,7 +191,7 @@ describe("a vehicle whose pings end before the stop line", () => {
     const [vehicle, tMs, lat, lon] = before[before.length - 1];
     // 85 m and more off every street, north-east, at 11 m/s.
     const away = Array.from({ length: 12 }, (_, n) => [vehicle, tMs + (n + 1) * 5000, lat + (n + 1) * 0.00035, lon + (n + 1) * 0.0005, 11, 45]);
-    expect(createMatcher(whole.network, index)(columnsOf([...before, ...away])).openTracks.length).toBe(0);
+    expect(createMatcher(whole.network)(columnsOf([...before, ...away])).openTracks.length).toBe(0);
   });
 });
 

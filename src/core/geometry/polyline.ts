@@ -99,8 +99,17 @@ export function projectPoint(line: Polyline, x: number, y: number): Projection {
 
 /** Douglas and Peucker's simplification: no dropped vertex lies farther than `toleranceM` from the result. */
 export function simplify(line: Polyline, toleranceM: number): Polyline {
+  const out: number[] = [];
+  for (const i of keptVertices(line, toleranceM)) out.push(line[2 * i], line[2 * i + 1]);
+  return out.length < line.length ? Float64Array.from(out) : line;
+}
+
+/**
+ * Numbers of the vertices, ascending, that Douglas and Peucker's simplification keeps (Algorithms for the Reduction of
+ * the Number of Points Required to Represent a Digitized Line, 1973). The first and the last always stay. O(n log n) as a rule.
+ */
+export function keptVertices(line: Polyline, toleranceM: number): number[] {
   const count = line.length / 2;
-  if (count < 3) return line;
   const keep = new Uint8Array(count);
   keep[0] = keep[count - 1] = 1;
   const stack = [0, count - 1];
@@ -122,8 +131,8 @@ export function simplify(line: Polyline, toleranceM: number): Polyline {
     }
   }
   const out: number[] = [];
-  for (let i = 0; i < count; i++) if (keep[i]) out.push(line[2 * i], line[2 * i + 1]);
-  return Float64Array.from(out);
+  for (let i = 0; i < count; i++) if (keep[i]) out.push(i);
+  return out;
 }
 
 function distanceToSegment(line: Polyline, first: number, last: number, i: number): number {

@@ -32,7 +32,7 @@ export function learnFromTrips(
   const draft = proposeLegs(trips, frame, index, options, prior);
   const drafted = { junctions, legs: draft.legs, exits: draft.exits, driveSide: options.driveSide };
   const network: Network = { ...drafted, movements: listMovements(drafted) };
-  const usage = measureUsage(trips, createGraph(network, index));
+  const usage = measureUsage(trips, createGraph(network));
   const kept = keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));

@@ -1,6 +1,8 @@
 import { eastM } from "@/core/geometry/plane";
 import type { StreetGraph } from "@/core/match/graph";
-import { MATCHING } from "@/core/match/matching";
+import { CELL } from "@/core/match/link-grid";
+import { DEAREST, MATCHING } from "@/core/match/matching";
+import { SEGMENT } from "@/core/match/segments";
 
 /** Places on links where each ping of a trip may have been; row n holds ping n's, `count[n]` of them. */
 export interface Candidates {
@@ -23,51 +25,66 @@ export function createCandidates(pings: number): Candidates {
 
 /** Only across the 180th meridian does a plain difference of longitudes reach this far, m. */
 const HALF_TURN_M = 1e6;
+const SIDE_LIMIT2 = MATCHING.sideLimitM ** 2;
+const COST_PER_SIDE2 = 0.5 / MATCHING.sideSpreadM ** 2;
+/** In a box at a link's end up to this far before its end, m. */
+const BOX_M = 5;
 
-/** Writes the best places of one ping into row `n`, the nearest on each link; returns how many. */
+/**
+ * Writes the best places of one ping, whose cell has the record `cell`, into row `n`, the nearest on each link; returns
+ * how many. O(segments in its cell).
+ */
 export function findCandidates(
-  graph: StreetGraph, lat: number, lon: number, headingDeg: number, speedMs: number, out: Candidates, n: number,
+  graph: StreetGraph, cell: number, lat: number, lon: number, headingDeg: number, speedMs: number, out: Candidates, n: number,
 ): number {
   out.count[n] = 0;
-  const slot = graph.claims.find(lat, lon);
-  if (slot < 0) return 0;
-  const { segments } = graph;
-  let plane = -1;
+  if (cell < 0) return 0;
+  const { entries, records } = graph.grid;
+  const { columns, link: linkOf } = graph.segments;
+  const isFast = speedMs > MATCHING.headingMinSpeedMs;
+  const hasHeading = headingDeg >= 0;
+  // Once for each ping: the remainder of floating numbers is slow.
+  const heading = headingDeg < 360 ? headingDeg : headingDeg % 360;
+  const end = records[cell + CELL.end];
+  let home = -1;
   let x = 0;
   let y = 0;
-  for (let k = graph.claims.offsets[slot]; k < graph.claims.offsets[slot + 1]; k++) {
-    const segment = graph.claims.owners[k];
-    const link = segments.link[segment];
-    if (graph.home[link] !== plane) {
-      plane = graph.home[link];
-      const { lat0, lon0, metresPerLat, metresPerLon } = graph.planes[plane];
+  for (let k = records[cell + CELL.first]; k < end; k++) {
+    const segment = entries[k];
+    const at = segment * SEGMENT.width;
+    let angle = 0;
+    if (hasHeading) {
+      const off = Math.abs(columns[at + SEGMENT.bearingDeg] - heading);
+      angle = off > 180 ? 360 - off : off;
+      if (isFast && angle > MATCHING.headingLimitDeg) continue;
+    }
+    const link = linkOf[segment];
+    if (graph.home[link] !== home) {
+      home = graph.home[link];
+      const { lat0, lon0, metresPerLat, metresPerLon } = graph.planes[home];
       x = (lon - lon0) * metresPerLon;
       y = (lat - lat0) * metresPerLat;
-      if (x > HALF_TURN_M || x < -HALF_TURN_M) x = eastM(graph.planes[plane], lon);
+      if (x > HALF_TURN_M || x < -HALF_TURN_M) x = eastM(graph.planes[home], lon);
     }
-    const px = x - segments.x0[segment];
-    const py = y - segments.y0[segment];
-    const ux = segments.ux[segment];
-    const uy = segments.uy[segment];
+    const px = x - columns[at + SEGMENT.x];
+    const py = y - columns[at + SEGMENT.y];
+    const ux = columns[at + SEGMENT.ux];
+    const uy = columns[at + SEGMENT.uy];
     const across = px * uy - py * ux;
-    if (across > MATCHING.sideLimitM || across < -MATCHING.sideLimitM) continue;
     const along = px * ux + py * uy;
-    const within = Math.min(segments.lengthM[segment], Math.max(0, along));
+    const length = columns[at + SEGMENT.lengthM];
+    const within = along < 0 ? 0 : along > length ? length : along;
     const beyond = along - within;
     const side2 = across * across + beyond * beyond;
-    if (side2 > MATCHING.sideLimitM * MATCHING.sideLimitM) continue;
-    const position = segments.at[segment] + within;
-    let cost = (0.5 * side2) / (MATCHING.sideSpreadM * MATCHING.sideSpreadM);
-    if (headingDeg >= 0) {
-      const isInBox = position < 5 || position > graph.stopAt[link] - 5;
-      const off = Math.abs(segments.bearingDeg[segment] - headingDeg) % 360;
-      const angle = off > 180 ? 360 - off : off;
-      if (angle > MATCHING.headingLimitDeg && speedMs > MATCHING.headingMinSpeedMs) continue;
-      const spread = isInBox ? MATCHING.boxHeadingSpreadDeg : MATCHING.headingSpreadDeg;
-      const weight = speedMs > MATCHING.headingMinSpeedMs ? 0.5 : 0.2;
-      cost += Math.min(MATCHING.headingMostCost, weight * (angle / spread) ** 2);
+    if (!(side2 <= SIDE_LIMIT2)) continue;
+    const position = columns[at + SEGMENT.startM] + within;
+    let cost = side2 * COST_PER_SIDE2;
+    if (hasHeading) {
+      const isInBox = position < BOX_M || position > graph.stopAt[link] - BOX_M;
+      const share = angle / (isInBox ? MATCHING.boxHeadingSpreadDeg : MATCHING.headingSpreadDeg);
+      cost += Math.min(MATCHING.headingMostCost, (isFast ? 0.5 : 0.2) * share * share);
     }
-    keep(out, n, link, position, cost);
+    if (cost < DEAREST) keep(out, n, link, position, cost);
   }
   return out.count[n];
 }
@@ -75,16 +92,20 @@ export function findCandidates(
 /** One place for each link; when the row is full the dearest gives way. */
 function keep(out: Candidates, n: number, link: number, position: number, cost: number): void {
   const row = n * MATCHING.candidates;
+  const count = out.count[n];
   let at = -1;
   let dearest = row;
-  for (let c = row; c < row + out.count[n]; c++) {
+  for (let c = row; c < row + count; c++) {
     if (out.link[c] === link) at = c;
     if (out.cost[c] > out.cost[dearest]) dearest = c;
   }
-  if (at < 0 && out.count[n] < MATCHING.candidates) at = row + out.count[n]++;
-  else if (at < 0) at = dearest;
-  else if (out.cost[at] <= cost) return;
-  if (at === dearest && out.count[n] === MATCHING.candidates && out.link[at] !== link && out.cost[at] <= cost) return;
+  if (at < 0 && count < MATCHING.candidates) {
+    at = row + count;
+    out.count[n] = count + 1;
+  } else {
+    if (at < 0) at = dearest;
+    if (out.cost[at] <= cost) return;
+  }
   out.link[at] = link;
   out.position[at] = position;
   out.cost[at] = cost;

@@ -1,8 +1,8 @@
 import { eastM, northM, planeAt } from "@/core/geometry/plane";
 import { createCandidates, findCandidates, type Candidates } from "@/core/match/candidates";
 import type { StreetGraph } from "@/core/match/graph";
-import { MATCHING } from "@/core/match/matching";
-import { createRouter, linksBetween, type Routes } from "@/core/match/routes";
+import { cellAt } from "@/core/match/link-grid";
+import { DEAREST, MATCHING } from "@/core/match/matching";
 import type { Trips } from "@/core/pings/trips";
 
 /**
@@ -24,14 +24,13 @@ export interface Chain {
  * Calls `visit` for each stretch on the network. O(pings x candidates squared).
  */
 export function matchTrips(trips: Trips, graph: StreetGraph, visit: (chain: Chain) => void): void {
-  const router = createRouter(graph);
   const work = createWork(trips);
   for (let k = 0; k < trips.count; k++) {
     const states = thinTrip(trips, k, work);
     if (states < 2) continue;
     if (!placePings(trips, graph, work, states)) continue;
-    decode(trips, graph, router, work, states);
-    collectChains(trips, graph, router, work, states, k, visit);
+    decode(trips, graph, work, states);
+    collectChains(trips, graph, work, states, k, visit);
   }
 }
 
@@ -40,6 +39,7 @@ const OFF: number = MATCHING.candidates;
 
 interface Work {
   ping: Uint32Array;
+  cell: Int32Array;
   x: Float64Array;
   y: Float64Array;
   near: Candidates;
@@ -53,6 +53,7 @@ function createWork(trips: Trips): Work {
   for (let k = 0; k < trips.count; k++) longest = Math.max(longest, trips.tripOffset[k + 1] - trips.tripOffset[k]);
   return {
     ping: new Uint32Array(longest),
+    cell: new Int32Array(longest),
     x: new Float64Array(longest),
     y: new Float64Array(longest),
     near: createCandidates(longest),
@@ -64,50 +65,53 @@ function createWork(trips: Trips): Work {
 
 /** Keeps pings at least MATCHING.thinS apart; the first and the last always stay. */
 function thinTrip(trips: Trips, k: number, work: Work): number {
+  const { tMs, lat, lon } = trips;
   const from = trips.tripOffset[k];
   const to = trips.tripOffset[k + 1];
-  const plane = planeAt(trips.lat[from], trips.lon[from]);
+  const plane = planeAt(lat[from], lon[from]);
   let n = 0;
+  let nextMs = -Infinity;
   for (let i = from; i < to; i++) {
-    const x = eastM(plane, trips.lon[i]);
-    const y = northM(plane, trips.lat[i]);
-    if (n > 0 && i < to - 1) {
-      if (trips.tMs[i] - trips.tMs[work.ping[n - 1]] < MATCHING.thinS * 1000) continue;
-    }
+    if (tMs[i] < nextMs && i < to - 1) continue;
+    nextMs = tMs[i] + MATCHING.thinS * 1000;
     work.ping[n] = i;
-    work.x[n] = x;
-    work.y[n] = y;
+    work.x[n] = eastM(plane, lon[i]);
+    work.y[n] = northM(plane, lat[i]);
     n += 1;
   }
   return n;
 }
 
 function placePings(trips: Trips, graph: StreetGraph, work: Work, states: number): boolean {
+  // Cells first, in a loop of their own: looked up apart from each other, their memory is waited for but once.
+  for (let n = 0; n < states; n++) work.cell[n] = cellAt(graph.grid, trips.lat[work.ping[n]], trips.lon[work.ping[n]]);
   let any = false;
   for (let n = 0; n < states; n++) {
     const i = work.ping[n];
-    any = findCandidates(graph, trips.lat[i], trips.lon[i], trips.headingDeg[i], trips.speedMs[i], work.near, n) > 0 || any;
+    any = findCandidates(graph, work.cell[n], trips.lat[i], trips.lon[i], trips.headingDeg[i], trips.speedMs[i], work.near, n) > 0 || any;
   }
   return any;
 }
 
-function decode(trips: Trips, graph: StreetGraph, router: (link: number) => Routes, work: Work, states: number): void {
+function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): void {
   const { near, cost, back } = work;
   for (let c = 0; c < near.count[0]; c++) cost[c] = near.cost[c];
   cost[OFF] = MATCHING.offCost;
   for (let n = 1; n < states; n++) {
-    const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[n - 1]]) / 1000;
-    const chord = Math.hypot(work.x[n] - work.x[n - 1], work.y[n] - work.y[n - 1]);
+    const seconds = secondsBetween(trips, work, n - 1, n);
+    const chord = chordBetween(work, n - 1, n);
     const row = n * WIDTH;
     const before = row - WIDTH;
+    const places = near.count[n - 1];
+    const first = (n - 1) * MATCHING.candidates;
     for (let c = 0; c < near.count[n]; c++) {
       const to = n * MATCHING.candidates + c;
       let best = cost[before + OFF] + MATCHING.joinCost;
       let from = OFF;
-      for (let p = 0; p < near.count[n - 1]; p++) {
+      for (let p = 0; p < places; p++) {
         const reached = cost[before + p];
         if (reached >= best) continue;
-        const step = stepCost(graph, router, near, (n - 1) * MATCHING.candidates + p, to, chord, seconds);
+        const step = stepCost(graph, near, first + p, to, chord, seconds);
         if (reached + step < best) {
           best = reached + step;
           from = p;
@@ -118,7 +122,7 @@ function decode(trips: Trips, graph: StreetGraph, router: (link: number) => Rout
     }
     let best = cost[before + OFF];
     let from = OFF;
-    for (let p = 0; p < near.count[n - 1]; p++) {
+    for (let p = 0; p < places; p++) {
       if (cost[before + p] + MATCHING.leaveCost < best) {
         best = cost[before + p] + MATCHING.leaveCost;
         from = p;
@@ -128,6 +132,16 @@ function decode(trips: Trips, graph: StreetGraph, router: (link: number) => Rout
     back[row + OFF] = from;
   }
   trackBack(work, states);
+}
+
+function secondsBetween(trips: Trips, work: Work, a: number, b: number): number {
+  return (trips.tMs[work.ping[b]] - trips.tMs[work.ping[a]]) / 1000;
+}
+
+function chordBetween(work: Work, a: number, b: number): number {
+  const dx = work.x[b] - work.x[a];
+  const dy = work.y[b] - work.y[a];
+  return Math.sqrt(dx * dx + dy * dy);
 }
 
 function trackBack(work: Work, states: number): void {
@@ -140,32 +154,33 @@ function trackBack(work: Work, states: number): void {
   }
 }
 
-/** Cost of going from one place to another in the given time; Infinity where there is no way. */
-function stepCost(
-  graph: StreetGraph, router: (link: number) => Routes, near: Candidates,
-  a: number, b: number, chord: number, seconds: number,
-): number {
+/** Cost of going from one place to another in the given time; Infinity where no way costs less than DEAREST. */
+function stepCost(graph: StreetGraph, near: Candidates, a: number, b: number, chord: number, seconds: number): number {
   const from = near.link[a];
   const to = near.link[b];
+  const reach = MATCHING.fastestMs * seconds + MATCHING.reachSpareM;
   let cost = 0;
   let way = near.position[b] - near.position[a];
-  if (from !== to || way < -60) {
-    const routes = router(from);
-    const row = routes.row.get(to);
-    if (row === undefined) return Infinity;
+  if (from !== to || way < -MATCHING.loopM) {
+    const { routes } = graph;
+    const row = routes.find(from, to, longestWay(reach, chord));
+    if (row < 0) return Infinity;
     way = graph.stopAt[from] - near.position[a] + routes.wayM[row] + near.position[b];
     cost = routes.cost[row];
   }
-  if (way < 0) cost += Math.max(0, -way - MATCHING.backFreeM) / MATCHING.backSpreadM;
-  const reach = MATCHING.fastestMs * seconds + 30;
-  if (way > reach) cost += (way - reach) / 10;
-  const detour = Math.abs(Math.max(0, way) - chord);
+  if (way < -MATCHING.backFreeM) cost += (-way - MATCHING.backFreeM) / MATCHING.backSpreadM;
+  if (way > reach) cost += (way - reach) / MATCHING.reachSpreadM;
+  const detour = way > 0 ? Math.abs(way - chord) : chord;
   return cost + detour / (MATCHING.detourM + MATCHING.detourShare * chord);
 }
 
+/** Any longer way costs DEAREST or more. */
+function longestWay(reach: number, chord: number): number {
+  return Math.min(reach + DEAREST * MATCHING.reachSpreadM, chord + DEAREST * (MATCHING.detourM + MATCHING.detourShare * chord));
+}
+
 function collectChains(
-  trips: Trips, graph: StreetGraph, router: (link: number) => Routes, work: Work, states: number, trip: number,
-  visit: (chain: Chain) => void,
+  trips: Trips, graph: StreetGraph, work: Work, states: number, trip: number, visit: (chain: Chain) => void,
 ): void {
   let chain: Chain | null = null;
   let strays = 0;
@@ -177,7 +192,7 @@ function collectChains(
       continue;
     }
     const at = n * MATCHING.candidates + c;
-    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, router, trips, work, last, n, at, strays);
+    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, trips, work, last, n, at, strays);
     if (!joined) {
       if (chain && chain.pings.length > 1) visit(chain);
       chain = { trip, links: [work.near.link[at]], pings: [work.ping[n]], step: [0], position: [work.near.position[at]] };
@@ -190,29 +205,25 @@ function collectChains(
 
 /** Whether a vehicle hardly moved between two states: stray pings in between are the noise of a long wait. */
 function isWaiting(trips: Trips, work: Work, before: number, n: number): boolean {
-  const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[before]]) / 1000;
-  const chord = Math.hypot(work.x[n] - work.x[before], work.y[n] - work.y[before]);
-  return chord < MATCHING.waitingM && seconds < MATCHING.waitingMostS;
+  return chordBetween(work, before, n) < MATCHING.waitingM && secondsBetween(trips, work, before, n) < MATCHING.waitingMostS;
 }
 
 /** Adds a place to a chain; after stray pings only where the way fits the time and the chord. */
 function append(
-  chain: Chain, graph: StreetGraph, router: (link: number) => Routes, trips: Trips, work: Work,
-  before: number, n: number, at: number, strays: number,
+  chain: Chain, graph: StreetGraph, trips: Trips, work: Work, before: number, n: number, at: number, strays: number,
 ): boolean {
   const from = chain.links[chain.links.length - 1];
   const link = work.near.link[at];
   const position = work.near.position[at];
   const previous = before * MATCHING.candidates + work.chosen[before];
   if (strays > 0) {
-    const seconds = (trips.tMs[work.ping[n]] - trips.tMs[work.ping[before]]) / 1000;
-    const chord = Math.hypot(work.x[n] - work.x[before], work.y[n] - work.y[before]);
-    if (stepCost(graph, router, work.near, previous, at, chord, seconds) > MATCHING.leaveCost + MATCHING.joinCost) return false;
+    const cost = stepCost(graph, work.near, previous, at, chordBetween(work, before, n), secondsBetween(trips, work, before, n));
+    if (cost > MATCHING.leaveCost + MATCHING.joinCost) return false;
   }
-  if (link !== from || position - work.near.position[previous] < -60) {
-    const routes = router(from);
-    if (!routes.row.has(link)) return false;
-    chain.links.push(...linksBetween(routes, link), link);
+  if (link !== from || position - work.near.position[previous] < -MATCHING.loopM) {
+    const row = graph.routes.find(from, link, 0);
+    if (row < 0) return false;
+    chain.links.push(...graph.routes.linksOn(row), link);
   }
   chain.pings.push(work.ping[n]);
   chain.step.push(chain.links.length - 1);

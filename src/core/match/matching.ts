@@ -12,8 +12,10 @@ export const MATCHING = Object.freeze({
   headingMinSpeedMs: 2,
   /** How far links go on into the boxes at their ends, m. */
   boxOverlapM: 16,
-  /** Distance between claimed points along a link, m. */
-  claimStepM: 24,
+  /** Links are matched without vertices that lie this near to the rest of their line: far below the pings' spread, m. */
+  simplifyM: 0.4,
+  /** Side of the cells in which a ping looks for links, m. */
+  cellM: 24,
   candidates: 6,
   /** Cost of a ping off the network, of leaving it and of joining it. */
   offCost: 5,
@@ -25,12 +27,18 @@ export const MATCHING = Object.freeze({
   /** Moving back along a link is free up to this noise, m; then costs one for each backSpreadM. */
   backFreeM: 8,
   backSpreadM: 4,
+  /** Who falls back farther than this on a link has driven round to it, m. */
+  loopM: 60,
   /** Detours cost one for each detourM plus this share of the chord. */
   detourM: 12,
   detourShare: 0.15,
   fastestMs: 38,
-  /** Farthest way searched between two pings, m, and most junctions on it. */
+  /** What a vehicle may drive beyond that, m, and how far more costs one. */
+  reachSpareM: 30,
+  reachSpreadM: 10,
+  /** Farthest way searched between two pings, m, and most junctions on it; how far the first search goes. */
   routeMostM: 1500,
+  routeNearM: 500,
   routeMostJunctions: 8,
   /** Pings that follow sooner than this are passed over, s. */
   thinS: 2.9,
@@ -40,3 +48,9 @@ export const MATCHING = Object.freeze({
   waitingM: 60,
   waitingMostS: 180,
 });
+
+/**
+ * No place and no step as dear as leaving the network, one ping off it and joining it again is ever on the likeliest path:
+ * both may be left out without a change to it.
+ */
+export const DEAREST: number = MATCHING.leaveCost + MATCHING.offCost + MATCHING.joinCost;

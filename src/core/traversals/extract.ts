@@ -1,6 +1,7 @@
 import { eastM, northM } from "@/core/geometry/plane";
 import { lengthOf, projectPoint } from "@/core/geometry/polyline";
-import { boxLine, type StreetGraph } from "@/core/match/graph";
+import { boxLine } from "@/core/match/box";
+import type { StreetGraph } from "@/core/match/graph";
 import type { Chain } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";

@@ -7,7 +7,6 @@ import { createGraph } from "@/core/match/graph";
 import { matchTrips, type Chain } from "@/core/match/match-trips";
 import { cleanPings } from "@/core/pings/clean";
 import type { Network } from "@/core/types";
-import { createH3Index } from "@/geo/h3-index";
 import { columnsOf } from "../two-crossings";
 
 const plane = planeAt(45.6, -38.3);
@@ -29,7 +28,7 @@ function street(): Network {
 /** Chains of one vehicle's pings: seconds, east and north metres; speed and heading as given or eastbound at 12 m/s. */
 function chainsOf(pings: [number, number, number, number?, number?][]): { chains: Chain[]; legs: string[] } {
   const network = street();
-  const graph = createGraph(network, createH3Index());
+  const graph = createGraph(network);
   const rows = pings.map(([s, x, y, speed = 12, heading = 90]) => [0, s * 1000, at(x, y).lat, at(x, y).lon, speed, heading]);
   const chains: Chain[] = [];
   matchTrips(cleanPings(columnsOf(rows)).trips, graph, (chain) => chains.push({ ...chain }));
