@@ -4,36 +4,60 @@ import type { Box, StripScales } from "./strip-layout";
 import type { StripPicture } from "./strip-picture";
 
 const SHADES = 64;
-/** Overlap that hides the hairlines between neighbouring cells whose edges are blended. */
-const OVERLAP_PX = 0.6;
 let shades: string[] | undefined;
+let pixels: Uint32Array | undefined;
 
 /** Colour of a speed as a share of free speed; computed once for the whole ramp. */
 export function shadeOf(share: number): string {
   shades ??= Array.from({ length: SHADES }, (_, i) => rampColor(SPEED_RAMP, i / (SHADES - 1)));
-  return shades[Math.round(Math.min(1, Math.max(0, share)) * (SHADES - 1))];
+  return shades[shadeIndex(share)];
 }
 
-/** Speed of every cell as colour. Leaning cells are rectangles under a sheared transformation. */
+function shadeIndex(share: number): number {
+  return Math.round(Math.min(1, Math.max(0, share)) * (SHADES - 1));
+}
+
+/**
+ * Speed of every cell as colour: an image with one pixel for each cell, stretched over the plot in one stroke.
+ * Leaning cells are rectangles under a sheared transformation.
+ */
 export function drawCells(ctx: CanvasRenderingContext2D, plot: Box, scales: StripScales, picture: StripPicture): void {
-  const { strip, speeds, freeMs } = picture;
-  const { startS, cellS, columns, bottomM, cellM, rows } = strip.spec;
+  const { startS, cellS, columns, bottomM, cellM, rows } = picture.strip.spec;
+  const image = document.createElement("canvas");
+  image.width = columns;
+  image.height = rows;
+  image.getContext("2d")?.putImageData(new ImageData(cellPixels(picture), columns, rows), 0, 0);
+  const left = scales.x(startS);
+  const top = scales.y(bottomM + rows * cellM);
+  const width = scales.x(startS + columns * cellS) - left;
   ctx.save();
   clipTo(ctx, plot);
-  shear(ctx, strip.spec, scales);
-  const left = scales.x(startS);
-  const widthPx = scales.x(startS + cellS) - left;
+  shear(ctx, picture.strip.spec, scales);
+  // Cells have edges; only cells that are narrower than a pixel are blended.
+  ctx.imageSmoothingEnabled = width < columns;
+  ctx.drawImage(image, left, top, width, scales.y(bottomM) - top);
+  ctx.restore();
+}
+
+/** RGBA of each cell, the farthest row first; cells where no vehicle was seen stay clear. */
+export function cellPixels({ strip, speeds, freeMs }: Pick<StripPicture, "strip" | "speeds" | "freeMs">): Uint8ClampedArray<ArrayBuffer> {
+  const { columns, rows } = strip.spec;
+  const image = new Uint32Array(columns * rows);
+  pixels ??= Uint32Array.from({ length: SHADES }, (_, i) => pixelOf(shadeOf(i / (SHADES - 1))));
   for (let row = 0; row < rows; row++) {
-    const top = scales.y(bottomM + (row + 1) * cellM);
-    const heightPx = scales.y(bottomM + row * cellM) - top;
+    const to = (rows - 1 - row) * columns;
     for (let column = 0; column < columns; column++) {
       const speed = speeds[row * columns + column];
-      if (Number.isNaN(speed)) continue;
-      ctx.fillStyle = shadeOf(speed / freeMs);
-      ctx.fillRect(left + column * widthPx, top - OVERLAP_PX, widthPx + OVERLAP_PX, heightPx + OVERLAP_PX);
+      if (!Number.isNaN(speed)) image[to + column] = pixels[shadeIndex(speed / freeMs)];
     }
   }
-  ctx.restore();
+  return new Uint8ClampedArray(image.buffer);
+}
+
+/** The bytes R, G, B and 255 of "#RRGGBB" as the machine orders them in a word. */
+function pixelOf(color: string): number {
+  const channels = [1, 3, 5].map((at) => parseInt(color.slice(at, at + 2), 16));
+  return new Uint32Array(Uint8Array.of(...channels, 255).buffer)[0];
 }
 
 /** Every vehicle's path as a fine line of ink. */

@@ -16,7 +16,22 @@ export function drawPicture(ctx: CanvasRenderingContext2D, layout: StripLayout, 
   drawDelay(ctx, layout, scales, picture, words);
 }
 
+const FACES = [`14px ${FONT}`, `600 14px ${FONT}`];
+
 /** A canvas draws with what is loaded: ask for the faces before the first stroke. */
 export async function loadFaces(): Promise<void> {
-  await Promise.all([document.fonts.load(`14px ${FONT}`), document.fonts.load(`600 14px ${FONT}`)]);
+  await Promise.all(FACES.map((face) => document.fonts.load(face)));
+}
+
+/** Draws at once where the faces are there, else as soon as they are. Answers a function that calls it off. */
+export function drawWithFaces(draw: () => void): () => void {
+  if (FACES.every((face) => document.fonts.check(face))) {
+    draw();
+    return () => undefined;
+  }
+  let isOff = false;
+  void loadFaces().then(() => isOff || draw());
+  return () => {
+    isOff = true;
+  };
 }

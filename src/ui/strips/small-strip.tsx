@@ -6,7 +6,7 @@ import { reachOfDays } from "@/core/strips/reach-of-days";
 import { crossingTimes } from "@/core/strips/track-crossings";
 import type { StripQuery, WhenQuery } from "@/domain/junction";
 import { USUAL_STRIP } from "@/domain/query-address";
-import { loadFaces } from "./draw-picture";
+import { drawWithFaces } from "./draw-picture";
 import { drawSmall, smallHeight } from "./draw-small";
 import { paintCanvas } from "./paint-canvas";
 import { tracksQuery } from "./queries";
@@ -35,15 +35,7 @@ export function SmallStrip({ view, when, longestM }: { view: PictureView; when: 
 
   useEffect(() => {
     if (!picture || width === 0) return;
-    let frame = 0;
-    let isGone = false;
-    void loadFaces().then(() => {
-      if (!isGone) frame = requestAnimationFrame(() => paintCanvas(canvas.current, width, height, ratio, (ctx) => drawSmall(ctx, width, height, picture)));
-    });
-    return () => {
-      isGone = true;
-      cancelAnimationFrame(frame);
-    };
+    return drawWithFaces(() => paintCanvas(canvas.current, width, height, ratio, (ctx) => drawSmall(ctx, width, height, picture)));
   }, [picture, width, height, ratio]);
 
   return (

@@ -1,9 +1,9 @@
 "use client";
 
-import { useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from "react";
+import { useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from "react";
 import { cellAt, cellCentre } from "@/core/strips/strip";
 import { StripOverlay } from "./strip-overlay";
-import { drawPicture, loadFaces } from "./draw-picture";
+import { drawPicture, drawWithFaces } from "./draw-picture";
 import type { StripWords } from "./draw-lines";
 import { firstCell, moveCursor, readOut, readOutText, type CursorMove, type ReadOutWords } from "./strip-cursor";
 import { paintCanvas } from "./paint-canvas";
@@ -31,18 +31,10 @@ export function StripCanvas({ picture, words, reads, label }: { picture: StripPi
   const [cursor, setCursor] = useState<{ tS: number; sM: number } | null>(null);
   const [spoken, setSpoken] = useState("");
 
-  useEffect(() => {
+  // Before the browser paints: words and strip change in one frame.
+  useLayoutEffect(() => {
     if (width === 0) return;
-    let frame = 0;
-    let isGone = false;
-    void loadFaces().then(() => {
-      if (isGone) return;
-      frame = requestAnimationFrame(() => paintCanvas(canvas.current, layout.width, layout.height, ratio, (ctx) => drawPicture(ctx, layout, picture, words)));
-    });
-    return () => {
-      isGone = true;
-      cancelAnimationFrame(frame);
-    };
+    return drawWithFaces(() => paintCanvas(canvas.current, layout.width, layout.height, ratio, (ctx) => drawPicture(ctx, layout, picture, words)));
   }, [picture, words, layout, width, ratio]);
 
   const { spec } = picture.strip;
