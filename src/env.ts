@@ -7,6 +7,9 @@ const MODES = ["production", "demo", "development", "test"] as const;
 /** Known to everyone who reads this file, hence refused in production. */
 const DEFAULT_SECRET = "tailmark-development-secret-known-to-all";
 
+/** Pieces of this size keep a worker well below a gigabyte. */
+const USUAL_PIECE_ROWS = 500_000;
+
 const positive = (fallback: number, max: number) => z.coerce.number().int().min(1).max(max).default(fallback);
 
 const Env = z.object({
@@ -41,6 +44,8 @@ const Env = z.object({
   SESSION_HOURS: positive(12, 24 * 30),
   /** Jobs that one worker process runs at the same time. */
   WORKER_CONCURRENCY: positive(1, 16),
+  /** Rows of pings in a piece of work that workers share; files of fewer are read by one worker. Memory of a worker grows with it. */
+  INGEST_PIECE_ROWS: positive(USUAL_PIECE_ROWS, 5_000_000),
   /** First administrator of an empty production database; receives an invitation. */
   ADMIN_EMAIL: z.email().optional(),
 });

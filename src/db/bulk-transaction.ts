@@ -29,17 +29,23 @@ export async function bulkTransaction<T>(db: Db, work: (tx: Db, client: PoolClie
   }
 }
 
-/** Holds an advisory lock for as long as the work takes; a process that dies lets go of it. */
-export async function withAdvisoryLock<T>(db: Db, key: number, work: () => Promise<T>): Promise<T> {
+/** A machine that vanishes, power and all, is missed after a minute, and its locks are free again. */
+const MISS_SOON = "set tcp_keepalives_idle = 30; set tcp_keepalives_interval = 10; set tcp_keepalives_count = 3; set idle_in_transaction_session_timeout = 0";
+
+/** Holds an advisory lock, by number or by name, for as long as the work takes; a process that dies lets go of it. */
+export async function withAdvisoryLock<T>(db: Db, key: number | string, work: () => Promise<T>): Promise<T> {
   const client = await poolOf(db).connect();
   const onError = () => undefined;
   client.on("error", onError);
   try {
-    await client.query("select pg_advisory_lock($1)", [key]);
+    await client.query(MISS_SOON);
+    if (typeof key === "number") await client.query("select pg_advisory_lock($1)", [key]);
+    else await client.query("select pg_advisory_lock(hashtextextended($1, 1))", [key]);
     return await work();
   } finally {
+    // Closing the connection releases the lock too, whatever state it is in, but a moment later.
+    await client.query("select pg_advisory_unlock_all()").catch(() => undefined);
     client.off("error", onError);
-    // Closing the connection releases the lock, whatever state it is in.
     client.release(true);
   }
 }

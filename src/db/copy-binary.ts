@@ -9,14 +9,13 @@ const CHUNK_BYTES = 1 << 20;
 // "PGCOPY\n", 0xff, "\r\n", 0, then flags and extension length (PostgreSQL documentation, COPY, binary format).
 const SIGNATURE = Buffer.from([80, 71, 67, 79, 80, 89, 10, 255, 13, 10, 0, 0, 0, 0, 0, 0, 0, 0, 0]);
 
+/** After the last row: a count of columns of -1. */
+const TRAILER = Buffer.from([255, 255]);
+
 /** Writes rows in PostgreSQL's binary COPY format; `take` hands over what is ready. */
 export class CopyWriter {
   private buffer = Buffer.allocUnsafe(CHUNK_BYTES * 2);
   private at = 0;
-
-  constructor() {
-    this.at = SIGNATURE.copy(this.buffer, 0);
-  }
 
   row(columns: number): void {
     this.room(2);
@@ -45,7 +44,10 @@ export class CopyWriter {
     this.int4(day - POSTGRES_EPOCH_DAY);
   }
   instant(ms: number): void {
-    this.int8(BigInt(Math.round((ms - POSTGRES_EPOCH_MS) * 1000)));
+    const microseconds = Math.round((ms - POSTGRES_EPOCH_MS) * 1000);
+    this.size(8);
+    this.at = this.buffer.writeInt32BE(Math.floor(microseconds / 2 ** 32), this.at);
+    this.at = this.buffer.writeUInt32BE(microseconds - Math.floor(microseconds / 2 ** 32) * 2 ** 32, this.at);
   }
   bytes(value: Uint8Array): void {
     this.size(value.length);
@@ -65,11 +67,6 @@ export class CopyWriter {
     this.at = 0;
     return ready;
   }
-  end(): Buffer {
-    this.room(2);
-    this.at = this.buffer.writeInt16BE(-1, this.at);
-    return this.take();
-  }
 
   private size(bytes: number): void {
     this.room(4 + bytes);
@@ -83,20 +80,22 @@ export class CopyWriter {
   }
 }
 
-/** Runs a binary COPY; `writeRow` writes one row for each index from 0 to `rows`. */
-export async function copyRows(
-  client: PoolClient,
-  target: string,
-  rows: number,
-  writeRow: (writer: CopyWriter, index: number) => void,
-): Promise<void> {
-  function* chunks(): Generator<Buffer> {
-    const writer = new CopyWriter();
-    for (let i = 0; i < rows; i++) {
-      writeRow(writer, i);
-      if (writer.isFull) yield writer.take();
-    }
-    yield writer.end();
+/** Rows without what stands before the first and after the last of them; `writeRow` writes the row of each index from 0 to `rows`. */
+export function* encodeRows(rows: number, writeRow: (writer: CopyWriter, index: number) => void): Generator<Buffer> {
+  const writer = new CopyWriter();
+  for (let i = 0; i < rows; i++) {
+    writeRow(writer, i);
+    if (writer.isFull) yield writer.take();
   }
-  await pipeline(Readable.from(chunks(), { objectMode: true, highWaterMark: 2 }), client.query(copyFrom(`copy ${target} from stdin (format binary)`)));
+  yield writer.take();
+}
+
+/** Runs a binary COPY of rows that `encodeRows` made, wherever they were kept meanwhile. */
+export async function copyRows(client: PoolClient, target: string, rows: AsyncIterable<Uint8Array> | Iterable<Uint8Array>): Promise<void> {
+  async function* whole(): AsyncGenerator<Uint8Array> {
+    yield SIGNATURE;
+    yield* rows;
+    yield TRAILER;
+  }
+  await pipeline(Readable.from(whole(), { objectMode: true, highWaterMark: 2 }), client.query(copyFrom(`copy ${target} from stdin (format binary)`)));
 }

@@ -9,6 +9,8 @@ export interface Queue {
    * Throws a ZodError for a payload of the wrong shape.
    */
   enqueue<P extends object>(job: JobDefinition<P>, payload: NoInfer<P>, options?: EnqueueOptions): Promise<boolean>;
+  /** Takes back the jobs whose payload holds `part` and that nobody has begun. */
+  withdraw<P extends object>(job: JobDefinition<P>, part: NoInfer<Partial<P>>): Promise<void>;
   /** How far the newest jobs are whose payload holds `part`; null where none waits, runs or has failed last. */
   stateOf<P extends object>(job: JobDefinition<P>, part: NoInfer<Partial<P>>): Promise<JobState | null>;
   stop(): Promise<void>;
@@ -38,6 +40,11 @@ export function openQueue(db: Db): Queue {
       });
       if (id !== null && options.afterS !== undefined) await postpone(options.db ?? db, job.name, id, options.afterS);
       return id !== null;
+    },
+    async withdraw(job, part) {
+      await db.execute(
+        sql`delete from pgboss.job where name = ${job.name} and data @> ${JSON.stringify(part)}::jsonb and state in ('created', 'retry')`,
+      );
     },
     async stateOf(job, part) {
       const { rows } = await db.execute<{ state: string }>(

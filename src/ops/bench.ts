@@ -2,7 +2,7 @@ import { writeFileSync } from "node:fs";
 import { benchArguments, USAGE, type BenchArguments } from "./bench/bench-arguments";
 import { benchBrowser } from "./bench/bench-browser";
 import { benchCrowd } from "./bench/bench-crowd";
-import { benchIngest, benchWorkers } from "./bench/bench-ingest";
+import { benchIngest, benchMemory, benchWorkers } from "./bench/bench-ingest";
 import { benchParse } from "./bench/bench-parse";
 import { openContext, openPlace, type BenchPlace, type OpenContext } from "./bench/bench-place";
 import { benchRanking } from "./bench/bench-ranking";
@@ -48,6 +48,7 @@ async function* measure(place: BenchPlace, wanted: BenchArguments): AsyncGenerat
   if (parts.includes("parse")) yield* await benchParse(place.folder, rows);
   if (parts.includes("ingest")) yield* await benchIngest(place, rows);
   if (parts.includes("workers")) yield* await benchWorkers(place, rows);
+  if (parts.includes("memory")) yield* await benchMemory(place, wanted.memoryRows);
   if (SCREEN_PARTS.some((part) => parts.includes(part))) yield* measureScreens(place, wanted);
 }
 

@@ -15,6 +15,8 @@ export interface Context {
   mailer: Mailer;
   /** Address of the web application as people reach it, without a trailing slash. */
   baseUrl: string;
+  /** Rows of pings in a piece of work that workers share; the usual number where absent. */
+  pieceRows?: number;
 }
 
 export function requirePermission(ctx: Context, permission: Permission): void {

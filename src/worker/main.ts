@@ -20,7 +20,7 @@ const mailer = openMailer({ smtpUrl: smtpUrl(settings), from: settings.MAIL_FROM
 const storage = openStorage(settings);
 
 function contextFor(job: string): Context {
-  return { actor: { type: "job", job }, db: database.db, now: new Date(), storage, queue, mailer, baseUrl: settings.BASE_URL };
+  return { actor: { type: "job", job }, db: database.db, now: new Date(), storage, queue, mailer, baseUrl: settings.BASE_URL, pieceRows: settings.INGEST_PIECE_ROWS };
 }
 
 /** A second worker on this machine uses the stand-in of the first. */

@@ -58,13 +58,10 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
   function keep(j: number, x: number, y: number, pings: PingColumns, i: number): void {
     const priority = draw(pings, i);
     if (priority >= limit[j]) return;
-    let sample = kept[j];
-    if (sample.length === 2 * most) {
-      sample = kept[j] = smallest([sample], most);
-      limit[j] = sample.priority[most - 1];
-      if (priority >= limit[j]) return;
-    }
-    if (sample.length === sample.priority.length) sample = kept[j] = smallest([sample], Infinity, Math.min(2 * most, sample.length * 2));
+    const sample = kept[j];
+    if (sample.length === 2 * most) limit[j] = thin(sample, most);
+    if (priority >= limit[j]) return;
+    if (sample.length === sample.priority.length) grow(sample, Math.min(2 * most, sample.length * 2));
     const at = sample.length++;
     sample.eastM[at] = x;
     sample.northM[at] = y;
@@ -87,7 +84,7 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
       }
     },
     finish() {
-      const samples = kept.map((sample) => smallest([sample], most));
+      const samples = kept.map((sample) => joinNearSamples([sample], most));
       kept = junctions.map(() => emptySample(FIRST_ROOM));
       limit = Float64Array.from(share);
       return samples;
@@ -97,22 +94,39 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
 
 const FIRST_ROOM = 16;
 
-/** The sample of one junction from those of several samplers. O(pings × log). */
+/** The sample of one junction from those of several samplers, in order of priority. O(pings × log). */
 export function joinNearSamples(parts: readonly NearSample[], most: number = NEAR_SAMPLE.most): NearSample {
-  return smallest(parts, most);
+  const all = emptySample(parts.reduce((sum, part) => sum + part.length, 0));
+  for (const part of parts) {
+    for (const name of SAMPLE_COLUMNS) all[name].set(part[name].subarray(0, part.length), all.length);
+    all.length += part.length;
+  }
+  const order = Uint32Array.from({ length: all.length }, (_, i) => i).sort((a, b) => all.priority[a] - all.priority[b]);
+  const out = emptySample(Math.min(most, all.length));
+  out.length = out.priority.length;
+  for (const name of SAMPLE_COLUMNS) for (let k = 0; k < out.length; k++) out[name][k] = all[name][order[k]];
+  return out;
 }
 
-/** The pings of least priority, ascending, in columns with room for `room` of them. */
-function smallest(parts: readonly NearSample[], most: number, room = 0): NearSample {
-  const from = parts.flatMap((part, p) => Array.from({ length: part.length }, (_, i) => ({ p, i, priority: part.priority[i] })));
-  from.sort((a, b) => a.priority - b.priority);
-  if (from.length > most) from.length = most;
-  const out = emptySample(Math.max(room, from.length));
-  out.length = from.length;
-  from.forEach(({ p, i }, k) => {
-    for (const name of SAMPLE_COLUMNS) out[name][k] = parts[p][name][i];
-  });
-  return out;
+/** Keeps the `most` pings of least priority, in the order in which they are; answers with the first priority that is too large. */
+function thin(sample: NearSample, most: number): number {
+  const limit = sample.priority.slice(0, sample.length).sort()[most];
+  let to = 0;
+  for (let i = 0; i < sample.length; i++) {
+    if (sample.priority[i] >= limit) continue;
+    for (const name of SAMPLE_COLUMNS) sample[name][to] = sample[name][i];
+    to += 1;
+  }
+  sample.length = to;
+  return limit;
+}
+
+function grow(sample: NearSample, room: number): void {
+  const larger = emptySample(room);
+  for (const name of SAMPLE_COLUMNS) {
+    larger[name].set(sample[name]);
+    Object.assign(sample, { [name]: larger[name] });
+  }
 }
 
 const SAMPLE_COLUMNS = ["eastM", "northM", "headingDeg", "speedMs", "priority"] as const;

@@ -63,6 +63,11 @@ export class CsvScanner {
     this.scan(this.carry.length === 0 ? plain : joined(this.carry, plain), false);
   }
 
+  /** Lines that were read to their end; after `finish` the last one too. */
+  get lines(): number {
+    return this.line - 1;
+  }
+
   finish(): void {
     this.scan(this.carry, true);
     this.carry = new Uint8Array(0);

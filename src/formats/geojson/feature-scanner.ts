@@ -37,6 +37,11 @@ export class FeatureScanner {
     this.checkLength(this.carry.length);
   }
 
+  /** Lines that were read to their end. */
+  get lines(): number {
+    return this.line - 1;
+  }
+
   finish(): void {
     if (!this.hasBegun) throw unusable("The file is empty.");
     if (this.depth > 0) throw unusable(`The GeoJSON ends too early, on line ${this.line}: the file is cut off.`);

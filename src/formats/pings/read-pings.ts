@@ -14,6 +14,8 @@ export interface PingSink {
   onBatch(batch: PingColumns): void | Promise<void>;
   /** Every rejected row, in the order of the file. */
   onReject?(row: RejectedRow): void | Promise<void>;
+  /** Once, at the end: lines of the file. */
+  onEnd?(lines: number): void;
 }
 
 export interface PingReadOptions {
@@ -56,6 +58,7 @@ export async function readPings(
   await drain(batcher, tally, sink);
   const rest = batcher.takeRest();
   if (rest !== null) await sink.onBatch(rest);
+  sink.onEnd?.(scanner.lines);
   return tally.counts();
 }
 

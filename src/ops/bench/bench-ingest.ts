@@ -1,80 +1,95 @@
 import { spawn } from "node:child_process";
 import { createReadStream } from "node:fs";
+import { rm } from "node:fs/promises";
 import { basename, join } from "node:path";
+import { Readable } from "node:stream";
 import { pipeline } from "node:stream/promises";
+import { setTimeout as delay } from "node:timers/promises";
 import { fileURLToPath } from "node:url";
 import { eq } from "drizzle-orm";
 import { from as copyFrom } from "pg-copy-streams";
 import { uploads } from "@/db/schema";
+import { ScreenQuery } from "@/domain/screen";
 import type { UploadKind } from "@/domain/upload";
 import type { Context } from "@/services/context";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
+import { rankJunctions } from "@/services/screens/rank-junctions";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
 import { PING_START_MS } from "./bench-parse";
 import { openContext, type BenchPlace, type OpenContext } from "./bench-place";
 import { figure, secondsSince, type Figure } from "./figures";
-import { writeJunctions, writePings } from "./traffic";
+import { pingChunks, writeJunctions, writePings } from "./traffic";
 
 const MEMORY_BOUND_MIB = 1024;
-const DAY_MS = 86_400_000;
+const LOOK_MS = 10;
 
-interface Run {
-  startMs: number;
-  endMs: number;
+interface Reading {
+  seconds: number;
+  /** Of the worker that needed most. */
   peakMiB: number;
-  ranked: number;
+  /** Of all workers. */
+  cpuS: number;
 }
 
-/** File on disk to ranked screen in a worker's process, beside a bare COPY of the same bytes. */
+/** File on disk to ranked screen by two workers, as a machine of two cores runs them, beside a bare COPY of the same bytes. */
 export async function benchIngest(place: BenchPlace, rows: number): Promise<Figure[]> {
   const file = join(place.folder, "pings.csv");
   await writePings(file, rows, 2, PING_START_MS);
-  const { url, uploadIds } = await cityWith(place, "ingest", [file]);
-  const copyS = await bareCopy(url, place.folder, file);
-  const run = await ingestIn(url, place.folder, uploadIds);
-  await requireDone(url, place.folder, uploadIds, run);
+  const city = await cityWith(place, "ingest", createReadStream(file));
+  const copyS = await bareCopy(city.url, place.folder, file);
+  const { seconds, peakMiB, cpuS } = await read(city, place.folder, 2);
+  await rm(file);
   return [
-    figure("ingest, file to ranked screen", secondsOf([run]), "s", "bare COPY into one logged table", copyS),
-    figure("ingest, peak memory of the worker", run.peakMiB, "MiB", "bound", MEMORY_BOUND_MIB),
+    figure("ingest, file to ranked screen", seconds, "s", "bare COPY into one logged table", copyS),
+    figure("ingest, processor time of its workers", cpuS, "s", "bare COPY into one logged table", copyS),
+    figure("ingest, peak memory of a worker", peakMiB, "MiB", "bound", MEMORY_BOUND_MIB),
   ];
 }
 
-/** Two files by two workers at once, beside the same two files by one. */
+/** One file by two workers, beside the same file by one. */
 export async function benchWorkers(place: BenchPlace, rows: number): Promise<Figure[]> {
-  const half = Math.ceil(rows / 2);
-  const files = [join(place.folder, "first.csv"), join(place.folder, "second.csv")];
-  await writePings(files[0], half, 3, PING_START_MS);
-  await writePings(files[1], half, 4, PING_START_MS + DAY_MS);
-  const alone = await cityWith(place, "one_worker", files);
-  const one = await ingestIn(alone.url, place.folder, alone.uploadIds);
-  await requireDone(alone.url, place.folder, alone.uploadIds, one);
-  const shared = await cityWith(place, "two_workers", files);
-  const two = await Promise.all(shared.uploadIds.map((id) => ingestIn(shared.url, place.folder, [id])));
-  await requireDone(shared.url, place.folder, shared.uploadIds, two[0]);
-  return [figure("two files by two workers", secondsOf(two), "s", "by one worker", secondsOf([one]))];
+  const file = join(place.folder, "shared.csv");
+  await writePings(file, rows, 3, PING_START_MS);
+  const one = await read(await cityWith(place, "one_worker", createReadStream(file)), place.folder, 1);
+  const two = await read(await cityWith(place, "two_workers", createReadStream(file)), place.folder, 2);
+  await rm(file);
+  return [figure("one file by two workers", two.seconds, "s", "by one worker", one.seconds)];
 }
 
-function secondsOf(runs: readonly Run[]): number {
-  return (Math.max(...runs.map((run) => run.endMs)) - Math.min(...runs.map((run) => run.startMs))) / 1000;
+/** A file that is made on the fly and fits into no worker's memory. */
+export async function benchMemory(place: BenchPlace, rows: number): Promise<Figure[]> {
+  const made = Readable.from(pingChunks(rows, 5, PING_START_MS), { objectMode: true, highWaterMark: 2 }).map((text: string) => Buffer.from(text));
+  const { seconds, peakMiB } = await read(await cityWith(place, "memory", made), place.folder, 2);
+  return [
+    figure(`a file of ${rows / 1e6} million rows, peak memory of a worker`, peakMiB, "MiB", "bound", MEMORY_BOUND_MIB),
+    figure(`a file of ${rows / 1e6} million rows`, rows / seconds / 1e6, "M rows/s", "a million a second", 1),
+  ];
 }
 
-async function cityWith(place: BenchPlace, name: string, files: readonly string[]): Promise<{ url: string; uploadIds: string[] }> {
+interface City {
+  url: string;
+  /** Starts the reading of the file; answers with the upload. */
+  start: (ctx: Context) => Promise<string>;
+}
+
+async function cityWith(place: BenchPlace, name: string, file: AsyncIterable<Uint8Array>): Promise<City> {
   const url = await place.newDatabase(name);
   return within(url, place.folder, async ({ ctx }) => {
     const junctions = join(place.folder, "junctions.csv");
     await writeJunctions(junctions);
-    await ingestUpload(ctx, { uploadId: await receive(ctx, "junctions", junctions) });
-    const uploadIds: string[] = [];
-    for (const file of files) uploadIds.push(await receive(ctx, "pings", file));
-    return { url, uploadIds };
+    const uploadId = await (await receive(ctx, "junctions", basename(junctions), createReadStream(junctions)))(ctx);
+    await ingestUpload(ctx, { uploadId });
+    return { url, start: await receive(ctx, "pings", `${name}.csv`, file) };
   });
 }
 
-async function receive(ctx: Context, kind: UploadKind, path: string): Promise<string> {
-  const { uploadId, detected } = await receiveUpload(ctx, { kind, name: basename(path) }, createReadStream(path));
-  await startUpload(ctx, { uploadId, mapping: detected.mapping, supplier: "Bench fleets" });
-  return uploadId;
+async function receive(ctx: Context, kind: UploadKind, name: string, content: AsyncIterable<Uint8Array>): Promise<City["start"]> {
+  const { uploadId, detected } = await receiveUpload(ctx, { kind, name }, content);
+  return async (by) => {
+    await startUpload(by, { uploadId, mapping: detected.mapping, supplier: "Bench fleets" });
+    return uploadId;
+  };
 }
 
 function bareCopy(url: string, folder: string, file: string): Promise<number> {
@@ -91,14 +106,55 @@ function bareCopy(url: string, folder: string, file: string): Promise<number> {
   });
 }
 
-function requireDone(url: string, folder: string, uploadIds: readonly string[], run: Run): Promise<void> {
-  return within(url, folder, async ({ ctx }) => {
-    for (const id of uploadIds) {
-      const [row] = await ctx.db.select({ state: uploads.state, failure: uploads.failure }).from(uploads).where(eq(uploads.id, id));
-      if (row.state !== "done") throw new Error(`A generated file could not be read in: ${row.failure}`);
-    }
-    if (run.ranked === 0) throw new Error("No junction of the generated city was ranked.");
+/** From the order to read the file to the ranked screen, by so many workers that are there already. */
+async function read({ url, start }: City, folder: string, workers: number): Promise<Reading> {
+  const started = await Promise.all(Array.from({ length: workers }, () => startWorker(url, folder)));
+  const seconds = await within(url, folder, async ({ ctx }) => {
+    const startMs = performance.now();
+    await untilDone(ctx, await start(ctx));
+    const { rows } = await rankJunctions(ctx, ScreenQuery.parse({ period: "all", days: "every" }));
+    if (!rows.some((row) => row.rank !== null)) throw new Error("No junction of the generated city was ranked.");
+    return secondsSince(startMs);
   });
+  const ends = await Promise.all(started.map((worker) => worker.stop()));
+  return { seconds, peakMiB: Math.max(...ends.map((end) => end.peakMiB)), cpuS: ends.reduce((sum, end) => sum + end.cpuS, 0) };
+}
+
+async function untilDone(ctx: Context, uploadId: string): Promise<void> {
+  for (;;) {
+    const [row] = await ctx.db.select({ state: uploads.state, failure: uploads.failure }).from(uploads).where(eq(uploads.id, uploadId));
+    if (row.state === "failed") throw new Error(`A generated file could not be read in: ${row.failure}`);
+    if (row.state === "done") return;
+    await delay(LOOK_MS);
+  }
+}
+
+interface Worker {
+  stop(): Promise<{ peakMiB: number; cpuS: number }>;
+}
+
+async function startWorker(url: string, folder: string): Promise<Worker> {
+  const program = fileURLToPath(new URL("./ingest-process.ts", import.meta.url));
+  // With the options of this process: the loader of TypeScript, and a profiler where one is on.
+  const child = spawn(process.execPath, [...process.execArgv, program, url, folder], { stdio: ["ignore", "pipe", "inherit"] });
+  let out = "";
+  const ready = new Promise<void>((resolve, reject) => {
+    child.on("error", reject);
+    child.stdout.on("data", (chunk: Buffer) => {
+      out += chunk.toString();
+      if (out.includes("ready")) resolve();
+    });
+  });
+  const ended = new Promise<number | null>((resolve) => child.on("close", resolve));
+  await Promise.race([ready, ended.then((code) => Promise.reject(new Error(`A worker of the bench ended with code ${code}.`)))]);
+  return {
+    async stop() {
+      child.kill("SIGTERM");
+      const code = await ended;
+      if (code !== 0) throw new Error(`A worker of the bench ended with code ${code}.`);
+      return JSON.parse(out.trim().split("\n").at(-1) ?? "") as { peakMiB: number; cpuS: number };
+    },
+  };
 }
 
 async function within<T>(url: string, folder: string, work: (open: OpenContext) => Promise<T>): Promise<T> {
@@ -108,19 +164,4 @@ async function within<T>(url: string, folder: string, work: (open: OpenContext) 
   } finally {
     await open.close();
   }
-}
-
-function ingestIn(url: string, folder: string, uploadIds: readonly string[]): Promise<Run> {
-  const program = fileURLToPath(new URL("./ingest-process.ts", import.meta.url));
-  // With the options of this process: the loader of TypeScript, and a profiler where one is on.
-  const child = spawn(process.execPath, [...process.execArgv, program, url, folder, ...uploadIds], { stdio: ["ignore", "pipe", "inherit"] });
-  let out = "";
-  child.stdout.on("data", (chunk: Buffer) => (out += chunk.toString()));
-  return new Promise((resolve, reject) => {
-    child.on("error", reject);
-    child.on("close", (code) => {
-      if (code === 0) resolve(JSON.parse(out.trim().split("\n").at(-1) ?? "") as Run);
-      else reject(new Error(`The ingest process ended with code ${code}.`));
-    });
-  });
 }

@@ -57,7 +57,7 @@ export interface OpenContext {
 
 /** A worker's context on a database and a folder of stored files; its mail goes nowhere. */
 export function openContext(url: string, folder: string): OpenContext {
-  const database = openDatabase(url, { max: 6 });
+  const database = openDatabase(url, { max: 20 });
   const queue = openQueue(database.db);
   const ctx: Context = {
     actor: { type: "job", job: "bench" },

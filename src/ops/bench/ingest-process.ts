@@ -1,14 +1,25 @@
-/** A worker's share of the bench in a process of its own, so that its memory can be told: URL FOLDER UPLOAD... */
-import { ScreenQuery } from "@/domain/screen";
-import { ingestUpload } from "@/services/ingest/ingest-upload";
-import { rankJunctions } from "@/services/screens/rank-junctions";
+/** A worker of the bench in a process of its own, so that its memory can be told: URL FOLDER. It works until it is told to stop. */
+import { helpUploadHandler } from "@/worker/handlers/help-upload";
+import { ingestUploadHandler } from "@/worker/handlers/ingest-upload";
+import { runJobs } from "@/worker/run-jobs";
 import { openContext } from "./bench-place";
 
-const [url, folder, ...uploadIds] = process.argv.slice(2);
-const { ctx, close } = openContext(url, folder);
-const startMs = Date.now();
-for (const uploadId of uploadIds) await ingestUpload(ctx, { uploadId });
-const { rows } = await rankJunctions(ctx, ScreenQuery.parse({ period: "all", days: "every" }));
-const endMs = Date.now();
-await close();
-console.log(JSON.stringify({ startMs, endMs, peakMiB: process.resourceUsage().maxRSS / 1024, ranked: rows.filter((row) => row.rank !== null).length }));
+const [url, folder] = process.argv.slice(2);
+const { ctx, database, close } = openContext(url, folder);
+const runner = await runJobs({
+  databaseUrl: url,
+  pool: database.pool,
+  handlers: [ingestUploadHandler, helpUploadHandler],
+  concurrency: 1,
+  contextFor: () => ({ ...ctx, now: new Date() }),
+});
+process.once("SIGTERM", () => void stop());
+console.log("ready");
+
+async function stop(): Promise<void> {
+  await runner.stop();
+  await close();
+  const { maxRSS, userCPUTime, systemCPUTime } = process.resourceUsage();
+  console.log(JSON.stringify({ peakMiB: maxRSS / 1024, cpuS: (userCPUTime + systemCPUTime) / 1e6 }));
+  process.exit(0);
+}

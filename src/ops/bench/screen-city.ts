@@ -9,7 +9,7 @@ import type { Db } from "@/db/client";
 import { screenDays, uploads } from "@/db/schema";
 import { raiseDataVersion } from "@/services/catalogue/catalogue";
 import { storeNetwork, type NetworkKeys } from "@/services/ingest/network-rows";
-import { makePartitions, storeTraversals } from "@/services/ingest/store-traversals";
+import { copyTraversals, encodeTraversals, makePartitions } from "@/services/ingest/store-traversals";
 import { emptyTraversals } from "@/services/ingest/join-traversals";
 
 /** A Monday. */
@@ -54,7 +54,7 @@ async function storeDay(db: Db, network: Network, keys: NetworkKeys, day: number
       .values({ kind: "pings", fileName: name, storageKey: `uploads/${name}`, bytes: 1, sha256: name, state: "done", createdAt: new Date(day * DAY_MS) })
       .returning({ id: uploads.id });
     const localDay = new Int32Array(count).fill(day);
-    await storeTraversals(client, { uploadId, network, keys, traversals, localDay, vehicleHash });
+    await copyTraversals(client, encodeTraversals({ uploadId, network, keys, traversals, localDay, vehicleHash }));
     await tx.insert(screenDays).values({ uploadId, day, methodVersion: METHOD_VERSION, medianIntervalS: 5, traversals: count, payload: encodeScreenDay(slice) });
   });
 }

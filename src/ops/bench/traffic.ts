@@ -59,7 +59,8 @@ export async function writePings(path: string, rows: number, seed: number, start
   await pipeline(Readable.from(pingChunks(rows, seed, startMs), { objectMode: true, highWaterMark: 2 }), createWriteStream(path));
 }
 
-function* pingChunks(rows: number, seed: number, startMs: number): Generator<string> {
+/** The file's text, a stretch of 5 s at a time. */
+export function* pingChunks(rows: number, seed: number, startMs: number): Generator<string> {
   const random = seededRandom(seed);
   const noise = normalRandom(random);
   let made = 0;

@@ -1,4 +1,4 @@
-import type { Traversals } from "@/core/types";
+import type { OpenTracks, Traversals } from "@/core/types";
 
 /** One list out of several; order is kept. O(traversals). */
 export function joinTraversals(parts: readonly Traversals[]): Traversals {
@@ -23,23 +23,48 @@ export function joinTraversals(parts: readonly Traversals[]): Traversals {
 /** The traversals for which `keep` says yes. O(traversals). */
 export function filterTraversals(all: Traversals, keep: (index: number) => boolean): Traversals {
   const chosen: number[] = [];
+  for (let i = 0; i < all.length; i++) if (keep(i)) chosen.push(i);
+  return chosen.length === all.length ? all : pickTraversals(all, chosen);
+}
+
+/** The traversals of these indices, in their order. O(chosen track points). */
+export function pickTraversals(all: Traversals, chosen: ArrayLike<number>): Traversals {
   let points = 0;
-  for (let i = 0; i < all.length; i++) {
-    if (!keep(i)) continue;
-    chosen.push(i);
-    points += all.trackOffset[i + 1] - all.trackOffset[i];
-  }
-  if (chosen.length === all.length) return all;
+  for (let to = 0; to < chosen.length; to++) points += all.trackOffset[chosen[to] + 1] - all.trackOffset[chosen[to]];
   const some = emptyTraversals(chosen.length, points);
-  chosen.forEach((from, to) => {
+  for (let to = 0; to < chosen.length; to++) {
+    const from = chosen[to];
     for (const name of SCALARS) some[name][to] = all[name][from];
-    const begin = all.trackOffset[from];
-    const end = all.trackOffset[from + 1];
-    some.trackT.set(all.trackT.subarray(begin, end), some.trackOffset[to]);
-    some.trackS.set(all.trackS.subarray(begin, end), some.trackOffset[to]);
-    some.trackOffset[to + 1] = some.trackOffset[to] + end - begin;
-  });
+    copyTrack(all, from, some, to);
+  }
   return some;
+}
+
+/** The open tracks of these indices, in their order. O(chosen track points). */
+export function pickOpenTracks(all: OpenTracks, chosen: ArrayLike<number>): OpenTracks {
+  let points = 0;
+  for (let to = 0; to < chosen.length; to++) points += all.trackOffset[chosen[to] + 1] - all.trackOffset[chosen[to]];
+  const some: OpenTracks = {
+    length: chosen.length,
+    leg: Uint32Array.from(chosen, (i) => all.leg[i]),
+    vehicle: Uint32Array.from(chosen, (i) => all.vehicle[i]),
+    enterMs: Float64Array.from(chosen, (i) => all.enterMs[i]),
+    trackOffset: new Uint32Array(chosen.length + 1),
+    trackT: new Float32Array(points),
+    trackS: new Float32Array(points),
+  };
+  for (let to = 0; to < chosen.length; to++) copyTrack(all, chosen[to], some, to);
+  return some;
+}
+
+type Tracks = Pick<Traversals, "trackOffset" | "trackT" | "trackS">;
+
+function copyTrack(all: Tracks, from: number, some: Tracks, to: number): void {
+  const begin = all.trackOffset[from];
+  const end = all.trackOffset[from + 1];
+  some.trackT.set(all.trackT.subarray(begin, end), some.trackOffset[to]);
+  some.trackS.set(all.trackS.subarray(begin, end), some.trackOffset[to]);
+  some.trackOffset[to + 1] = some.trackOffset[to] + end - begin;
 }
 
 const SCALARS = [

@@ -4,6 +4,7 @@ import type { Db } from "@/db/client";
 import { screenDays, traversals as table } from "@/db/schema";
 import { isoFromDay } from "@/domain/local-time";
 import { filterTraversals } from "./join-traversals";
+import type { NetworkKeys } from "./network-rows";
 
 /** The same vehicle cannot pass the same stop line twice within this time. */
 const SAME_PASSAGE_MS = 30_000;
@@ -11,16 +12,18 @@ const SAME_PASSAGE_MS = 30_000;
 export interface OverlapQuestion {
   uploadId: string;
   network: Network;
-  /** Database key of each leg code; legs that are not stored yet are absent. */
-  legKeys: ReadonlyMap<string, number>;
-  days: readonly number[];
+  keys: NetworkKeys;
+  /** Of the legs that the traversals are of. */
+  legKeys: Int32Array;
+  days: ReadonlySet<number>;
+  /** By the traversals' vehicle numbers. */
   vehicleHash: BigInt64Array;
 }
 
 /** Leaves out what another upload has brought already, so that overlapping files count once. */
 export async function dropKnown(db: Db, all: Traversals, question: OverlapQuestion): Promise<Traversals> {
-  const { uploadId, network, legKeys, days, vehicleHash } = question;
-  if (days.length === 0) return all;
+  const { uploadId, network, keys, legKeys, days, vehicleHash } = question;
+  if (days.size === 0) return all;
   const others = await db
     .select({ day: screenDays.day })
     .from(screenDays)
@@ -40,6 +43,7 @@ export async function dropKnown(db: Db, all: Traversals, question: OverlapQuesti
       and(
         inArray(table.localDay, others.map((row) => isoFromDay(row.day))),
         ne(table.uploadId, uploadId),
+        sql`${table.legId} = any(${sql.param([...legKeys])}::int[])`,
         // Files of neighbouring days share a local day and hardly a moment: what lies outside this one's span is not read.
         between(table.stopLineAt, new Date(firstMs - SAME_PASSAGE_MS), new Date(lastMs + SAME_PASSAGE_MS)),
       ),
@@ -52,8 +56,8 @@ export async function dropKnown(db: Db, all: Traversals, question: OverlapQuesti
     else known.set(key, [row.stopLineMs]);
   }
   return filterTraversals(all, (i) => {
-    const leg = legKeys.get(network.legs[network.movements[all.movement[i]].leg].id);
-    const times = leg === undefined ? undefined : known.get(`${vehicleHash[all.vehicle[i]]}:${leg}`);
+    const leg = keys.legs[network.movements[all.movement[i]].leg];
+    const times = known.get(`${vehicleHash[all.vehicle[i]]}:${leg}`);
     return !times?.some((ms) => Math.abs(ms - all.stopLineMs[i]) < SAME_PASSAGE_MS);
   });
 }

@@ -30,11 +30,6 @@ export async function readJunctionPoints(db: Db): Promise<KeyedPoint[]> {
     .orderBy(asc(junctions.id));
 }
 
-export async function storedLegKeys(db: Db): Promise<Map<string, number>> {
-  const rows = await db.select({ id: legs.id, code: legs.code }).from(legs);
-  return new Map(rows.map((row) => [row.code, row.id]));
-}
-
 /** The network that earlier uploads taught, in the core's shape. `junctions` carry their database keys. */
 export async function readNetwork(db: Db, points: KeyedPoint[], driveSide: DriveSide): Promise<Network | undefined> {
   const indexOf = new Map(points.map((point, index) => [point.key, index]));
@@ -87,13 +82,35 @@ export async function readNetwork(db: Db, points: KeyedPoint[], driveSide: Drive
   };
 }
 
+/**
+ * The keys that the rows of a network have, or that new ones will have when `storeNetwork` writes them: the database
+ * gives out no key twice, so nobody sees these before. They hold for as long as nobody else writes networks.
+ */
+export async function reserveKeys(db: Db, network: Network): Promise<NetworkKeys> {
+  return {
+    legs: await keysOf(db, legs, "legs_id_seq", network.legs),
+    exits: await keysOf(db, exits, "exits_id_seq", network.exits),
+    movements: await keysOf(db, movements, "movements_id_seq", network.movements),
+  };
+}
+
+async function keysOf(db: Db, table: typeof legs | typeof movements | typeof exits, sequence: string, list: readonly { id: string }[]): Promise<Int32Array> {
+  const known = new Map((await db.select({ id: table.id, code: table.code }).from(table)).map((row) => [row.code, row.id]));
+  const fresh = list.filter((item) => !known.has(item.id)).length;
+  const { rows } = await db.execute<{ id: number }>(sql`select nextval(${sequence})::int as id from generate_series(1, ${fresh}::int)`);
+  let next = 0;
+  return Int32Array.from(list, (item) => known.get(item.id) ?? rows[next++].id);
+}
+
 /** Writes what the pings taught; rows keep their keys by the identity that the core carries on. */
-export async function storeNetwork(db: Db, network: Network, junctionKeys: readonly number[]): Promise<NetworkKeys> {
-  const exitKeys = await upsert(network.exits, async (some) =>
+export async function storeNetwork(db: Db, network: Network, junctionKeys: readonly number[], reserved?: NetworkKeys): Promise<NetworkKeys> {
+  const keys = reserved ?? (await reserveKeys(db, network));
+  await inSteps(network.exits, async (some, from) =>
     db
       .insert(exits)
       .values(
-        some.map((exit) => ({
+        some.map((exit, i) => ({
+          id: keys.exits[from + i],
           code: exit.id,
           junctionId: junctionKeys[exit.junction],
           bearingDeg: exit.bearingDeg,
@@ -102,20 +119,20 @@ export async function storeNetwork(db: Db, network: Network, junctionKeys: reado
           methodVersion: METHOD_VERSION,
         })),
       )
-      .onConflictDoUpdate({ target: exits.code, set: incoming(exits, ["bearingDeg", "line", "support", "methodVersion"]) })
-      .returning({ id: exits.id, code: exits.code }),
+      .onConflictDoUpdate({ target: exits.code, set: incoming(exits, ["bearingDeg", "line", "support", "methodVersion"]) }),
   );
-  const legKeys = await upsert(network.legs, async (some) =>
+  await inSteps(network.legs, async (some, from) =>
     db
       .insert(legs)
       .values(
-        some.map((leg) => ({
+        some.map((leg, i) => ({
+          id: keys.legs[from + i],
           code: leg.id,
           junctionId: junctionKeys[leg.junction],
           name: leg.name,
           bearingDeg: leg.bearingDeg,
           line: Array.from(leg.line),
-          upstreamExitId: leg.upstreamExit < 0 ? null : exitKeys[leg.upstreamExit],
+          upstreamExitId: leg.upstreamExit < 0 ? null : keys.exits[leg.upstreamExit],
           storageM: nullable(leg.storageM),
           freeSpeedMs: nullable(leg.freeSpeedMs),
           speedLimitMs: nullable(leg.speedLimitMs),
@@ -143,17 +160,17 @@ export async function storeNetwork(db: Db, network: Network, junctionKeys: reado
           "doubts",
           "methodVersion",
         ]),
-      })
-      .returning({ id: legs.id, code: legs.code }),
+      }),
   );
-  const movementKeys = await upsert(network.movements, async (some) =>
+  await inSteps(network.movements, async (some, from) =>
     db
       .insert(movements)
       .values(
-        some.map((movement) => ({
+        some.map((movement, i) => ({
+          id: keys.movements[from + i],
           code: movement.id,
-          legId: legKeys[movement.leg],
-          exitId: exitKeys[movement.exit],
+          legId: keys.legs[movement.leg],
+          exitId: keys.exits[movement.exit],
           turnDeg: movement.turnDeg,
           turn: movement.turn,
           referenceS: nullable(movement.referenceS),
@@ -176,11 +193,10 @@ export async function storeNetwork(db: Db, network: Network, junctionKeys: reado
           "cordonDownM",
           "methodVersion",
         ]),
-      })
-      .returning({ id: movements.id, code: movements.code }),
+      }),
   );
   await dropUnused(db, network);
-  return { legs: legKeys, exits: exitKeys, movements: movementKeys };
+  return keys;
 }
 
 /** Rows that the core no longer knows and that no traversal rests on would only haunt the plan of a junction. */
@@ -210,15 +226,8 @@ async function dropUnused(db: Db, network: Network): Promise<void> {
   }
 }
 
-async function upsert<T extends { id: string }>(
-  list: readonly T[],
-  write: (some: T[]) => Promise<{ id: number; code: string }[]>,
-): Promise<Int32Array> {
-  const keyOf = new Map<string, number>();
-  for (let i = 0; i < list.length; i += ROWS_PER_STATEMENT) {
-    for (const row of await write(list.slice(i, i + ROWS_PER_STATEMENT))) keyOf.set(row.code, row.id);
-  }
-  return Int32Array.from(list, (item) => keyOf.get(item.id) as number);
+async function inSteps<T>(list: readonly T[], write: (some: T[], from: number) => Promise<unknown>): Promise<void> {
+  for (let from = 0; from < list.length; from += ROWS_PER_STATEMENT) await write(list.slice(from, from + ROWS_PER_STATEMENT), from);
 }
 
 /** `excluded.<column>` for each of the named columns. */

@@ -1,7 +1,7 @@
 import { and, asc, eq } from "drizzle-orm";
 import type { Db } from "@/db/client";
 import { uploads } from "@/db/schema";
-import type { PingUpload } from "./read-into-store";
+import type { PingUpload } from "./read-file";
 
 /** Every pings file that was read in, in order of receipt: references rest on it, so two runs must see the same. */
 export async function pingFiles(db: Db): Promise<PingUpload[]> {

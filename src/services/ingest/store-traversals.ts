@@ -4,7 +4,7 @@ import { METHOD_VERSION } from "@/core/method-version";
 import { encodeTrack } from "@/core/strips/track-codec";
 import type { Network, Traversals } from "@/core/types";
 import type { Db } from "@/db/client";
-import { copyRows } from "@/db/copy-binary";
+import { copyRows, encodeRows } from "@/db/copy-binary";
 import { isoFromDay } from "@/domain/local-time";
 import type { NetworkKeys } from "./network-rows";
 
@@ -37,11 +37,11 @@ export interface TraversalRows {
   vehicleHash: BigInt64Array;
 }
 
-/** Loads all traversals of one upload into the partitions of their days, which are there already. */
-export async function storeTraversals(client: PoolClient, rows: TraversalRows): Promise<void> {
+/** The traversals of one upload, or some of them, as rows in PostgreSQL's binary format. */
+export function encodeTraversals(rows: TraversalRows): Iterable<Uint8Array> {
   const { traversals, network, keys, localDay } = rows;
   const uploadId = Buffer.from(rows.uploadId.replaceAll("-", ""), "hex");
-  await copyRows(client, `traversals (${COLUMNS.join(", ")})`, traversals.length, (writer, i) => {
+  return encodeRows(traversals.length, (writer, i) => {
     const movement = traversals.movement[i];
     const from = traversals.trackOffset[i];
     const to = traversals.trackOffset[i + 1];
@@ -62,6 +62,11 @@ export async function storeTraversals(client: PoolClient, rows: TraversalRows): 
     writer.int2(METHOD_VERSION);
     writer.bytes(encodeTrack(traversals.trackT.subarray(from, to), traversals.trackS.subarray(from, to)));
   });
+}
+
+/** Loads encoded rows into the partitions of their days, which are there already. */
+export async function copyTraversals(client: PoolClient, rows: AsyncIterable<Uint8Array> | Iterable<Uint8Array>): Promise<void> {
+  await copyRows(client, `traversals (${COLUMNS.join(", ")})`, rows);
 }
 
 /**

@@ -12,11 +12,19 @@ export async function vehicleKey(db: Db): Promise<Buffer> {
   return Buffer.from(String(row.value), "hex");
 }
 
-/** 64 bits of HMAC-SHA-256 over the supplier's identifier, by dense vehicle number. */
-export function vehicleHashes(key: Buffer, names: { size: number; nameOf(vehicle: number): string }): BigInt64Array {
-  const hashes = new BigInt64Array(names.size);
-  for (let v = 0; v < names.size; v++) {
-    hashes[v] = createHmac("sha256", key).update(names.nameOf(v)).digest().readBigInt64BE(0);
-  }
-  return hashes;
+/** 64 bits of HMAC-SHA-256 over the supplier's identifiers, by dense vehicle number; each is hashed once, as names come up. */
+export function createHasher(key: Buffer, names: { size: number; nameOf(vehicle: number): string }): () => BigInt64Array {
+  let hashes = new BigInt64Array(0);
+  let known = 0;
+  return () => {
+    if (names.size > hashes.length) {
+      const larger = new BigInt64Array(Math.max(names.size, hashes.length * 2));
+      larger.set(hashes);
+      hashes = larger;
+    }
+    for (; known < names.size; known++) {
+      hashes[known] = createHmac("sha256", key).update(names.nameOf(known)).digest().readBigInt64BE(0);
+    }
+    return hashes.subarray(0, known);
+  };
 }

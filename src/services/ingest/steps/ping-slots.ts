@@ -1,0 +1,193 @@
+import type { PingColumns } from "@/core/types";
+import { emptyColumns } from "@/formats/pings/ping-columns";
+import type { PieceStore } from "../pieces/piece-store";
+
+/** Vehicles are dealt out to so many slots by the first bits of their keyed hash: whole vehicles, whoever read them. */
+export const SLOTS = 1024;
+const SLOT_SHIFT = 54n;
+
+/** An object of pings in the order of their vehicles' hashes, a section for each slot. */
+export interface SlottedPings {
+  name: string;
+  /** Bytes at which each slot begins and the last one ends. */
+  offsets: Float64Array;
+  /** Pings by slot. */
+  pings: Uint32Array;
+}
+
+/** Vehicles and pings of a slot, then hashes, then pings by vehicle, then rows of four float64 (the last: two float32). */
+const HEAD_BYTES = 8;
+const ROW_BYTES = 32;
+
+const slotOf = (hash: bigint): number => Number(BigInt.asUintN(64, hash) >> SLOT_SHIFT);
+const padded = (bytes: number): number => (bytes + 7) & ~7;
+
+/** Sorts pings by vehicle and writes them. `hashOf` gives the keyed hash by dense vehicle number. O(pings + vehicles × log). */
+export async function writeSlots(store: PieceStore, name: string, pings: PingColumns, hashOf: BigInt64Array): Promise<SlottedPings> {
+  const counts = new Uint32Array(hashOf.length);
+  for (let i = 0; i < pings.length; i++) counts[pings.vehicle[i]] += 1;
+  const seen = Array.from({ length: hashOf.length }, (_, v) => v).filter((v) => counts[v] > 0);
+  const unsigned = BigUint64Array.from(hashOf, (hash) => BigInt.asUintN(64, hash));
+  seen.sort((a, b) => (unsigned[a] < unsigned[b] ? -1 : unsigned[a] > unsigned[b] ? 1 : 0));
+
+  const vehiclesIn = new Uint32Array(SLOTS);
+  const pingsIn = new Uint32Array(SLOTS);
+  const slots = seen.map((v) => slotOf(hashOf[v]));
+  seen.forEach((v, k) => {
+    vehiclesIn[slots[k]] += 1;
+    pingsIn[slots[k]] += counts[v];
+  });
+  const offsets = new Float64Array(SLOTS + 1);
+  for (let s = 0; s < SLOTS; s++) {
+    const bytes = vehiclesIn[s] === 0 ? 0 : HEAD_BYTES + 8 * vehiclesIn[s] + padded(4 * vehiclesIn[s]) + ROW_BYTES * pingsIn[s];
+    offsets[s + 1] = offsets[s] + bytes;
+  }
+  const buffer = new ArrayBuffer(offsets[SLOTS]);
+  // Index of the first row of each vehicle, in rows of eight bytes from the beginning of the object.
+  const nextRow = new Float64Array(hashOf.length);
+  for (let k = 0; k < seen.length; ) {
+    const slot = slots[k];
+    const [vehicles, at] = [vehiclesIn[slot], offsets[slot]];
+    new Uint32Array(buffer, at, 2).set([vehicles, pingsIn[slot]]);
+    const hashes = new BigInt64Array(buffer, at + HEAD_BYTES, vehicles);
+    const perVehicle = new Uint32Array(buffer, at + HEAD_BYTES + 8 * vehicles, vehicles);
+    let row = (at + HEAD_BYTES + 8 * vehicles + padded(4 * vehicles)) / 8;
+    for (let n = 0; n < vehicles; n++, k++) {
+      hashes[n] = hashOf[seen[k]];
+      perVehicle[n] = counts[seen[k]];
+      nextRow[seen[k]] = row;
+      row += (counts[seen[k]] * ROW_BYTES) / 8;
+    }
+  }
+  const wide = new Float64Array(buffer);
+  const narrow = new Float32Array(buffer);
+  for (let i = 0; i < pings.length; i++) {
+    const row = nextRow[pings.vehicle[i]];
+    nextRow[pings.vehicle[i]] = row + ROW_BYTES / 8;
+    wide[row] = pings.tMs[i];
+    wide[row + 1] = pings.lat[i];
+    wide[row + 2] = pings.lon[i];
+    narrow[2 * row + 6] = pings.speedMs[i];
+    narrow[2 * row + 7] = pings.headingDeg[i];
+  }
+  await store.put(name, [new Uint8Array(buffer)]);
+  return { name, offsets, pings: pingsIn };
+}
+
+/** Some slots of an object. */
+export interface SlotRange {
+  name: string;
+  from: number;
+  to: number;
+}
+
+export interface VehiclePings {
+  pings: PingColumns;
+  /** Keyed hash by dense vehicle number; numbers are in the order of the hashes. */
+  hashes: BigInt64Array;
+}
+
+/** All pings of the vehicles of some slots, from every object that has any. O(pings + vehicles × log). */
+export async function readSlots(store: PieceStore, ranges: readonly SlotRange[]): Promise<VehiclePings> {
+  const parts: Section[] = [];
+  for (const { name, from, to } of ranges) {
+    if (to > from) parts.push(...sectionsIn(aligned(await store.read(name, { from, to }))));
+  }
+  const hashes = unionOf(parts);
+  const total = parts.reduce((sum, part) => sum + part.rows, 0);
+  const pings = emptyColumns(total);
+  pings.length = total;
+  let at = 0;
+  for (const part of parts) {
+    let vehicle = 0;
+    let row = 0;
+    part.hashes.forEach((hash, n) => {
+      while (hashes[vehicle] !== hash) vehicle += 1;
+      const end = at + part.counts[n];
+      pings.vehicle.fill(vehicle, at, end);
+      for (; at < end; at++, row += 4) {
+        pings.tMs[at] = part.wide[row];
+        pings.lat[at] = part.wide[row + 1];
+        pings.lon[at] = part.wide[row + 2];
+        pings.speedMs[at] = part.narrow[2 * row + 6];
+        pings.headingDeg[at] = part.narrow[2 * row + 7];
+      }
+    });
+  }
+  return { pings, hashes };
+}
+
+interface Section {
+  hashes: BigInt64Array;
+  counts: Uint32Array;
+  rows: number;
+  wide: Float64Array;
+  narrow: Float32Array;
+}
+
+function sectionsIn(bytes: Uint8Array): Section[] {
+  const sections: Section[] = [];
+  const { buffer, byteOffset } = bytes;
+  for (let at = byteOffset; at < byteOffset + bytes.length; ) {
+    const [vehicles, rows] = new Uint32Array(buffer, at, 2);
+    const counts = at + HEAD_BYTES + 8 * vehicles;
+    const first = counts + padded(4 * vehicles);
+    sections.push({
+      hashes: new BigInt64Array(buffer, at + HEAD_BYTES, vehicles),
+      counts: new Uint32Array(buffer, counts, vehicles),
+      rows,
+      wide: new Float64Array(buffer, first, rows * 4),
+      narrow: new Float32Array(buffer, first, rows * 8),
+    });
+    at = first + rows * ROW_BYTES;
+  }
+  return sections;
+}
+
+/** Every hash once, ascending as unsigned numbers: the order in which each section has its own. */
+function unionOf(parts: readonly Section[]): BigInt64Array {
+  const all = new BigUint64Array(parts.reduce((sum, part) => sum + part.hashes.length, 0));
+  let at = 0;
+  for (const { hashes } of parts) {
+    all.set(new BigUint64Array(hashes.buffer, hashes.byteOffset, hashes.length), at);
+    at += hashes.length;
+  }
+  all.sort();
+  const unique = all.filter((hash, i) => i === 0 || hash !== all[i - 1]);
+  return new BigInt64Array(unique.buffer, unique.byteOffset, unique.length);
+}
+
+function aligned(bytes: Uint8Array): Uint8Array {
+  return bytes.byteOffset % 8 === 0 ? bytes : new Uint8Array(bytes);
+}
+
+/** Cuts the slots into runs of at most about `most` pings, and into no fewer than `least` where there are enough. */
+export function cutSlots(objects: readonly SlottedPings[], most: number, least: number): SlotRange[][] {
+  const pings = new Float64Array(SLOTS);
+  for (const object of objects) object.pings.forEach((n, s) => (pings[s] += n));
+  const bound = Math.min(most, pings.reduce((sum, n) => sum + n, 0) / least);
+  const cuts: SlotRange[][] = [];
+  for (let from = 0; from < SLOTS; ) {
+    let to = from;
+    let held = 0;
+    while (to < SLOTS && (held === 0 || held + pings[to] <= bound)) held += pings[to++];
+    if (held > 0) cuts.push(rangesOf(objects, from, to));
+    from = to;
+  }
+  return cuts;
+}
+
+/** The first slots that hold at least so many pings, and how many those are. */
+export function firstSlots(objects: readonly SlottedPings[], wanted: number): { ranges: SlotRange[]; pings: number } {
+  let held = 0;
+  let to = 0;
+  while (to < SLOTS && held < wanted) {
+    for (const object of objects) held += object.pings[to];
+    to += 1;
+  }
+  return { ranges: rangesOf(objects, 0, to), pings: held };
+}
+
+function rangesOf(objects: readonly SlottedPings[], from: number, to: number): SlotRange[] {
+  return objects.map(({ name, offsets }) => ({ name, from: offsets[from], to: offsets[to] })).filter((range) => range.to > range.from);
+}
