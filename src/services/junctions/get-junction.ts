@@ -62,7 +62,8 @@ export function profilePoint(quarter: ProfileQuarter): ProfilePoint {
   return {
     fromMin: quarter.quarter * 15,
     vehicles: quarter.vehicles,
-    delay: estimateView(quarter.delay),
+    // One vehicle says nothing about a mean.
+    delay: quarter.vehicles > 1 ? estimateView(quarter.delay) : null,
     reachM: finite(quarter.reachP95M),
     spill: finite(quarter.spill.value),
   };

@@ -6,7 +6,7 @@ import { formatClock, formatClockRange, formatNumber, formatShare } from "@/ui/f
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
 import { COLORS } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";
-import { delayTop, losBands, spreadUpwards } from "@/ui/strips/draw-delay";
+import { delayTicks, delayTop, losBands, spreadUpwards } from "@/ui/strips/draw-delay";
 import { timeTicks } from "@/ui/strips/strip-layout";
 import { useBoxWidth } from "@/ui/strips/use-box-width";
 import { profileRuns, type ProfileRun } from "./profile-runs";
@@ -55,15 +55,18 @@ function ProfileChart({ profile, fromMin, toMin, width }: { profile: ProfilePoin
       {bands.map((band, k) => (
         <g key={band.letter}>
           <line x1={LEFT} x2={LEFT + plotWidth} y1={y(band.fromS)} y2={y(band.fromS)} stroke={COLORS.rule} />
-          {y(band.fromS) - y(band.toS) >= 11 || band.fromS === 0 ? (
-            <text x={LEFT - 8} y={y(band.fromS) + 4.5} textAnchor="end" fontSize="13" fill={COLORS.inkSoft}>
-              {band.fromS}
-            </text>
-          ) : null}
           <line x1={LEFT + plotWidth + 1} y1={(y(band.fromS) + y(band.toS)) / 2} x2={LEFT + plotWidth + 14} y2={places[k]} stroke={COLORS.rule} />
           <rect x={LEFT + plotWidth + 14.5} y={Math.round(places[k]) - 7.5} width="16" height="16" fill={COLORS.sheet} stroke={COLORS.ink} strokeWidth="1.25" />
           <text x={LEFT + plotWidth + 22.5} y={Math.round(places[k]) + 5} textAnchor="middle" fontSize="12" fontWeight="600" fill={COLORS.ink}>
             {band.letter}
+          </text>
+        </g>
+      ))}
+      {delayTicks(topS, PLOT, 13).map((value) => (
+        <g key={value}>
+          {bands.some((band) => band.fromS === value) ? null : <line x1={LEFT} x2={LEFT + plotWidth} y1={y(value)} y2={y(value)} stroke={COLORS.rule} />}
+          <text x={LEFT - 8} y={y(value) + 4.5} textAnchor="end" fontSize="13" fill={COLORS.inkSoft}>
+            {value}
           </text>
         </g>
       ))}

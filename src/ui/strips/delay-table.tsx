@@ -3,8 +3,12 @@
 import { formatClockRange, formatLength, formatNumber } from "@/ui/format";
 import { RuledTable, Td, Th } from "@/ui/primitives/table";
 import { useCity } from "@/ui/shell/city";
+import { EVIDENCE_RULES } from "@/core/scores/evidence";
 import { levelOfService } from "@/core/stats/level-of-service";
 import type { StripPicture } from "./strip-picture";
+
+/** A grade is a verdict, for which fewer vehicles than thin evidence asks for are too few. */
+const LEAST_GRADED = Math.min(...EVIDENCE_RULES.map((rule) => rule.vehicles));
 
 /** The curves as figures, for those who do not see the drawing and those who want to copy them. */
 export function DelayTable({ picture }: { picture: StripPicture }) {
@@ -35,7 +39,7 @@ export function DelayTable({ picture }: { picture: StripPicture }) {
                 <Td numeric className="whitespace-nowrap">
                   {Number.isFinite(delay.lowS[k]) ? `${formatNumber(delay.lowS[k], locale)} to ${formatNumber(delay.highS[k], locale)}` : "–"}
                 </Td>
-                <Td>{levelOfService(meanS) ?? "–"}</Td>
+                <Td>{delay.vehicles[k] >= LEAST_GRADED ? (levelOfService(meanS) ?? "–") : "–"}</Td>
                 <Td numeric>{formatLength(farthestTail(tail, fromS, fromS + delay.stepS), settings.units, locale)}</Td>
               </tr>
             ))}

@@ -60,20 +60,28 @@ function pixelOf(color: string): number {
   return new Uint32Array(Uint8Array.of(...channels, 255).buffer)[0];
 }
 
-/** Every vehicle's path as a fine line of ink. */
+/** Every vehicle's path as a fine line of ink with a pale edge, which shows it in a queue too. */
 export function drawPaths(ctx: CanvasRenderingContext2D, plot: Box, scales: StripScales, { set, include }: StripPicture): void {
   ctx.save();
   clipTo(ctx, plot);
-  ctx.strokeStyle = COLORS.ink;
-  ctx.globalAlpha = set.tracks > 1500 ? 0.16 : set.tracks > 300 ? 0.35 : 0.7;
-  ctx.lineWidth = set.tracks > 1500 ? 0.6 : 0.9;
+  ctx.lineJoin = "round";
+  const [alpha, width] = set.tracks > 1500 ? [0.16, 0.6] : set.tracks > 300 ? [0.35, 0.9] : [0.8, 0.9];
   for (let i = 0; i < set.tracks; i++) {
     if (include[i] === 0) continue;
     ctx.beginPath();
     for (let p = set.offset[i]; p < set.offset[i + 1]; p++) ctx.lineTo(scales.x(set.tS[p]), scales.y(set.sM[p]));
-    ctx.stroke();
+    // Edges of many would bleach the cells.
+    if (set.tracks <= 1500) stroke(ctx, COLORS.sheet, width * 2.8, alpha * 0.75);
+    stroke(ctx, COLORS.ink, width, alpha);
   }
   ctx.restore();
+}
+
+function stroke(ctx: CanvasRenderingContext2D, color: string, width: number, alpha: number): void {
+  ctx.strokeStyle = color;
+  ctx.lineWidth = width;
+  ctx.globalAlpha = alpha;
+  ctx.stroke();
 }
 
 export function clipTo(ctx: CanvasRenderingContext2D, box: Box): void {

@@ -29,6 +29,19 @@ export function losBands(topS: number): LosBand[] {
   );
 }
 
+/** Where F begins. */
+const LAST_BOUND_S = Math.max(...SIGNALISED_LOS.map(({ upToS }) => upToS).filter(Number.isFinite));
+
+/** Values that the axis names, from 0 up: bounds of the levels of service, and whole steps above the last; those too near to the one below are left out. */
+export function delayTicks(topS: number, heightPx: number, leastPx: number): number[] {
+  const bounds = losBands(topS).map((band) => band.fromS);
+  const step = niceStep(topS, heightPx / (2 * leastPx));
+  const steps = Array.from({ length: Math.floor(topS / step) }, (_, k) => (k + 1) * step).filter((value) => value > LAST_BOUND_S);
+  const kept: number[] = [];
+  for (const value of [...bounds, ...steps]) if (kept.length === 0 || ((value - kept[kept.length - 1]) * heightPx) / topS >= leastPx) kept.push(value);
+  return kept;
+}
+
 /** Mean delay as a line with its 95 % band, on the strip's time axis; letters stand between their bounds. */
 export function drawDelay(ctx: CanvasRenderingContext2D, layout: StripLayout, scales: StripScales, { delay }: StripPicture, words: StripWords): void {
   const { delay: box } = layout;
@@ -86,21 +99,19 @@ function drawBounds(ctx: CanvasRenderingContext2D, layout: StripLayout, box: Box
   ctx.strokeStyle = COLORS.rule;
   ctx.textBaseline = "middle";
   const squareX = box.left + box.width + (layout.isNarrow ? 7 : 16);
-  let lastLabel = Infinity;
-  for (const band of losBands(topS)) {
-    const line = Math.round(y(band.fromS)) + 0.5;
-    ctx.lineWidth = 1;
+  const bands = losBands(topS);
+  const ticks = delayTicks(topS, box.height, layout.fontPx);
+  ctx.lineWidth = 1;
+  for (const value of new Set([...bands.map((band) => band.fromS), ...ticks])) {
+    const line = Math.round(y(value)) + 0.5;
     ctx.beginPath();
     ctx.moveTo(box.left, line);
     ctx.lineTo(box.left + box.width, line);
     ctx.stroke();
-    ctx.fillStyle = COLORS.inkSoft;
-    ctx.textAlign = "right";
-    if (lastLabel - line < layout.fontPx) continue;
-    ctx.fillText(String(band.fromS), box.left - 9, line);
-    lastLabel = line;
   }
-  const bands = losBands(topS);
+  ctx.fillStyle = COLORS.inkSoft;
+  ctx.textAlign = "right";
+  for (const value of ticks) ctx.fillText(String(value), box.left - 9, Math.round(y(value)) + 0.5);
   const middles = bands.map((band) => (y(band.fromS) + y(band.toS)) / 2);
   const places = spreadUpwards(middles, LETTER_PX + 2, box.top + box.height);
   bands.forEach((band, k) => drawLetter(ctx, band.letter, squareX, places[k], { x: box.left + box.width, y: middles[k] }));

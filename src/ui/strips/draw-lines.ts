@@ -59,23 +59,20 @@ export function drawStorage(ctx: CanvasRenderingContext2D, layout: StripLayout, 
   ctx.lineTo(plot.left + plot.width, y);
   ctx.stroke();
   ctx.restore();
-  drawFull(ctx, layout, scales, picture, storageM, y);
+  drawFull(ctx, layout, scales, picture, y);
   const label = words.storage ?? "storage";
   if (layout.isNarrow) return drawTag(ctx, layout, label, plot.left + plot.width - 4, Math.max(plot.top + 11, y - 10));
   drawSideLabel(ctx, layout, words.upstream === null ? label : `${label},`, y + 5, true);
   if (words.upstream !== null) drawSideLabel(ctx, layout, words.upstream, y + 23, false);
 }
 
-/** From this share of the storage on a queue counts as spilling back. */
-const FULL_SHARE = 0.9;
-
-/** The storage line in vermilion while the tail line says that the leg is full. */
-function drawFull(ctx: CanvasRenderingContext2D, { plot }: StripLayout, scales: StripScales, { tail }: StripPicture, storageM: number, y: number): void {
+/** The storage line in vermilion while the leg is full. */
+function drawFull(ctx: CanvasRenderingContext2D, { plot }: StripLayout, scales: StripScales, { tail, full }: StripPicture, y: number): void {
   ctx.save();
   clipTo(ctx, plot);
   ctx.fillStyle = COLORS.tail;
   for (let column = 0; column < tail.columns; column++) {
-    if (!(tail.reachM[column] >= FULL_SHARE * storageM)) continue;
+    if (full[column] === 0) continue;
     const x = scales.x(tail.fromS + column * tail.columnS);
     ctx.fillRect(x, y - 2, scales.x(tail.fromS + (column + 1) * tail.columnS) - x + 0.5, 4);
   }

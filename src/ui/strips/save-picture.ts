@@ -14,6 +14,8 @@ export interface PictureWords {
   facts: string;
   free: string;
   tail: string;
+  /** Of the storage line while it is solid; null where there is none. */
+  full: string | null;
   cautions: string[];
 }
 
@@ -105,5 +107,11 @@ function drawKey(ctx: CanvasRenderingContext2D, left: number, y: number, told: P
   ctx.strokeRect(x + 0.5, y - 5.5, 16, 11);
   x += 26;
   say("no vehicle seen");
+  if (told.full === null) return void (ctx.textBaseline = "alphabetic");
+  x += 30;
+  ctx.fillStyle = COLORS.tail;
+  ctx.fillRect(x, y - 2, 30, 4);
+  x += 40;
+  say(told.full);
   ctx.textBaseline = "alphabetic";
 }

@@ -4,7 +4,7 @@ import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Evidence } from "@/core/types";
 import type { LegStripView, MovementView } from "@/domain/junction";
 import { estimateView, type EstimateView } from "@/domain/estimate";
-import type { StripPicture } from "./strip-picture";
+import { withoutSingles, type StripPicture } from "./strip-picture";
 
 /** What stands under a strip. Null where the sample cannot say. */
 export interface StripFacts {
@@ -30,8 +30,8 @@ export function pooledStopShare(movements: MovementView[]): EstimateView | null 
   return vehicles > 0 ? estimateView({ value: stopped / vehicles, ...wilsonInterval(stopped / vehicles, vehicles) }) : null;
 }
 
-/** Of a typical day: the figures of the scores, so that every page says the same. */
-export function typicalFacts(view: LegStripView, turn: string): StripFacts {
+/** Of a typical day: the figures of the scores, so that every page says the same. `daysSeen` counts days with such a vehicle. */
+export function typicalFacts(view: LegStripView, turn: string, daysSeen: number): StripFacts {
   const chosen = view.movements.filter((movement) => turn === "any" || movement.turn === turn);
   return {
     delay: view.leg.delay,
@@ -41,16 +41,24 @@ export function typicalFacts(view: LegStripView, turn: string): StripFacts {
     storageM: view.leg.storageM,
     spill: view.leg.spill,
     vehicles: view.leg.vehicles,
-    days: view.basis.days,
+    // The tracks are of the newest days where there are many.
+    days: Math.max(daysSeen, ...chosen.map((movement) => movement.days)),
     medianIntervalS: view.basis.medianIntervalS,
     evidence: view.leg.evidence,
   };
 }
 
+/** Local days on which a vehicle that counts crossed in the window. */
+export function daysSeen({ set, include, window }: Pick<StripPicture, "set" | "include" | "window">, crossingS: Float32Array): number {
+  const days = new Set<number>();
+  for (let i = 0; i < set.tracks; i++) if (include[i] === 1 && crossingS[i] >= window.fromS && crossingS[i] < window.toS) days.add(set.day[i]);
+  return days.size;
+}
+
 /** Of a single day: read off its own tracks by the same methods. */
 export function dayFacts(view: LegStripView, picture: StripPicture, reaches: DayReaches, crossingS: Float32Array): StripFacts {
   const { window, set, include } = picture;
-  const whole = delayOverTime(set, crossingS, window.fromS, window.toS, window.toS - window.fromS, include);
+  const whole = withoutSingles(delayOverTime(set, crossingS, window.fromS, window.toS, window.toS - window.fromS, include));
   const reached = Array.from(reaches.reachM).filter((reach) => reach >= 0);
   const spill = view.leg.storageM === null ? NaN : spillShare(reaches, view.leg.storageM);
   // A queue lasts: a quarter of an hour of sight counts as one observation, as in the scores.

@@ -71,6 +71,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
         facts: `${factsText(drawn.facts, units, locale)} Method version ${view.basis.methodVersion}.`,
         free: `free, ${formatSpeed(drawn.picture.freeMs, units, locale)}`,
         tail: query.day === undefined ? "tail line, 95th percentile of observed reach" : "tail line, farthest reach observed",
+        full: view.leg.storageM === null ? null : "storage 90 % full, unseen tail counted",
         cautions: [referenceSentence(view.movements, query.turn, locale), ...CAUTIONS].filter((line): line is string => line !== null),
       });
       download(blob, `strip-${view.junction.code}-${view.leg.id}${query.day ? `-${query.day}` : ""}.png`);
@@ -81,7 +82,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
 
   const params = stripQueryToParams({ ...query, cellS: drawn.picture.strip.spec.cellS }).toString();
   return (
-    <div className="flex shrink-0 flex-wrap gap-2 px-4 pb-3 sm:px-6">
+    <div className="flex min-w-0 flex-wrap gap-2 px-4 pb-3 sm:px-6 xl:shrink-0 xl:flex-nowrap">
       <Button onClick={() => void savePicture()}>Save picture</Button>
       {mayExport ? (
         <ButtonLink href={`/api/legs/${view.leg.id}/export?${params}`} download>
@@ -89,7 +90,7 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
         </ButtonLink>
       ) : null}
       {mayExport && (query.day !== undefined || view.days.length <= 1) ? (
-        <p className="self-center text-sm text-ink-soft">Of a single day, cells with fewer than two vehicles are left out of the CSV.</p>
+        <p className="max-w-56 self-center text-sm leading-tight text-ink-soft">Of a single day, cells with fewer than two vehicles are left out of the CSV.</p>
       ) : null}
       {failure ? (
         <p role="alert" className="w-full text-sm text-tail">

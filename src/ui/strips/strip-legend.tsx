@@ -39,7 +39,7 @@ export function StripLegend({ freeMs, isTypical, hasStorage }: { freeMs: number;
             <line x2="26" y1="5.5" y2="5.5" stroke={COLORS.ink} strokeWidth="1.4" strokeDasharray="8 5" />
             <line x1="26" x2="46" y1="5.5" y2="5.5" stroke={COLORS.tail} strokeWidth="4" />
           </svg>
-          storage, solid while 90 % full
+          storage, solid while 90 % full, unseen tail counted
         </li>
       ) : null}
     </ul>

@@ -40,7 +40,8 @@ export const SMOOTH_PHRASES: Record<StripQuery["smooth"], string> = { off: "as m
 
 /** Title of a leg's page: "Leg from the south, northbound". */
 export function legTitle(leg: LegStripView["leg"]): string {
-  return /^leg\b/i.test(leg.name) ? leg.name : `Leg ${leg.name.charAt(0).toLowerCase()}${leg.name.slice(1)}`;
+  if (/^leg\b/i.test(leg.name)) return leg.name;
+  return `Leg ${leg.name.replace(/^From\b/, "from")}`;
 }
 
 /** The sentence as plain text, for the picture that leaves the page. */

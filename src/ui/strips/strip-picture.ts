@@ -1,3 +1,5 @@
+import { fullFromM } from "@/core/queues/full-from";
+import { DEFAULT_QUEUE_OPTIONS } from "@/core/queues/options";
 import { drawableCellS } from "@/core/strips/cell-width";
 import { addTracks } from "@/core/strips/add-tracks";
 import { delayOverTime, type DelayOverTime } from "@/core/strips/delay-over-time";
@@ -19,6 +21,8 @@ export interface StripPicture {
   speeds: Float32Array;
   freeMs: number;
   tail: TailLine;
+  /** 1 for each column of the tail line in which the queue fills the storage, its unseen end counted as in the share of spillback. */
+  full: Uint8Array;
   delay: DelayOverTime;
   /** Excess over the reference pace in each row of cells, seconds per vehicle. */
   delayByRowS: Float32Array;
@@ -91,6 +95,7 @@ export function buildPicture({ view, query, set, include, crossingS, reaches }: 
   const freeMs = view.leg.freeSpeedMs ?? USUAL_FREE_MS;
   const speeds = query.smooth === "on" ? smoothSpeeds(strip, kernelOf(strip.spec, freeMs, query.wave / 3.6)) : speedsOf(strip);
   const vehicles = include.reduce((sum, one) => sum + one, 0);
+  const columnS = Math.max(60, cellS);
   return {
     window,
     set,
@@ -98,10 +103,23 @@ export function buildPicture({ view, query, set, include, crossingS, reaches }: 
     strip,
     speeds,
     freeMs,
-    tail: tailLine(reaches, Math.max(60, cellS)),
-    delay: delayOverTime(set, crossingS, window.fromS, window.toS, delayStepS(vehicles, window), include),
+    tail: tailLine(reaches, columnS),
+    full: fullColumns(reaches, columnS, view.leg.storageM),
+    delay: withoutSingles(delayOverTime(set, crossingS, window.fromS, window.toS, delayStepS(vehicles, window), include)),
     delayByRowS: delayByRow(strip, referencePace(set, include, view.movements, freeMs)),
     storageM: view.leg.storageM,
     hasPaths: query.paths === "shown",
   };
+}
+
+function fullColumns(reaches: DayReaches, columnS: number, storageM: number | null): Uint8Array {
+  const { reachM } = tailLine({ ...reaches, reachM: reaches.leastTailM }, columnS);
+  const fromM = fullFromM(storageM ?? NaN, DEFAULT_QUEUE_OPTIONS);
+  return Uint8Array.from(reachM, (tailM) => (tailM >= fromM ? 1 : 0));
+}
+
+/** One vehicle says nothing about a mean: its step has a number of vehicles and no figure. */
+export function withoutSingles(delay: DelayOverTime): DelayOverTime {
+  const [meanS, lowS, highS] = [delay.meanS, delay.lowS, delay.highS].map((values) => values.map((value, k) => (delay.vehicles[k] > 1 ? value : NaN)));
+  return { ...delay, meanS, lowS, highS };
 }

@@ -5,7 +5,7 @@ import { reachOfDays } from "@/core/strips/reach-of-days";
 import { crossingTimes } from "@/core/strips/track-crossings";
 import type { TrackSet } from "@/core/strips/track-set";
 import type { LegStripView, StripQuery } from "@/domain/junction";
-import { dayFacts, typicalFacts, type StripFacts } from "./strip-facts";
+import { dayFacts, daysSeen, typicalFacts, type StripFacts } from "./strip-facts";
 import { buildPicture, includeTurn, windowOfView, type StripPicture } from "./strip-picture";
 
 /** A picture together with what it was drawn from: they belong together even while the next choice is read. */
@@ -28,7 +28,7 @@ export function useStripPicture(view: LegStripView | undefined, set: TrackSet | 
   return useMemo(() => {
     if (!view || !set || !include || !crossingS || !reaches) return null;
     const picture = buildPicture({ view, query, set, include, crossingS, reaches });
-    const facts = query.day === undefined ? typicalFacts(view, query.turn) : dayFacts(view, picture, reaches, crossingS);
+    const facts = query.day === undefined ? typicalFacts(view, query.turn, daysSeen(picture, crossingS)) : dayFacts(view, picture, reaches, crossingS);
     return { view, query, picture, facts };
   }, [view, query, set, include, crossingS, reaches]);
 }

@@ -1,10 +1,12 @@
 import { describe, expect, it } from "vitest";
+import type { TrackSet } from "@/core/strips/track-set";
 import type { LegStripView, MovementView } from "@/domain/junction";
 import { stripQueryFromParams } from "@/domain/query-address";
-import { delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-delay";
+import { delayTicks, delayTop, losBands, runsOf, spreadUpwards } from "@/ui/strips/draw-delay";
 import { wrapWords } from "@/ui/strips/draw-lines";
 import { factsText } from "@/ui/strips/facts-text";
-import { pooledStopShare } from "@/ui/strips/strip-facts";
+import { daysSeen, pooledStopShare, typicalFacts } from "@/ui/strips/strip-facts";
+import { withoutSingles } from "@/ui/strips/strip-picture";
 import { captionOf, cellsPhrase, legTitle, shapePhrase, weekdayPhrase } from "@/ui/strips/strip-phrases";
 import { referenceSentence } from "@/ui/strips/reference-words";
 import { figuresParams, tracksParams } from "@/ui/strips/queries";
@@ -32,7 +34,9 @@ describe("sentence of a strip", () => {
 
   it("titles a leg by where it comes from", () => {
     expect(legTitle({ name: "from the south, northbound" } as LegStripView["leg"])).toBe("Leg from the south, northbound");
+    expect(legTitle({ name: "From the south, northbound" } as LegStripView["leg"])).toBe("Leg from the south, northbound");
     expect(legTitle({ name: "Leg of the ferry" } as LegStripView["leg"])).toBe("Leg of the ferry");
+    expect(legTitle({ name: "Quay Street" } as LegStripView["leg"])).toBe("Leg Quay Street");
   });
 });
 
@@ -80,6 +84,13 @@ describe("axis of the delay", () => {
     expect(losBands(60).map((band) => [band.letter, band.fromS, band.toS])).toEqual([["A", 0, 10], ["B", 10, 20], ["C", 20, 35], ["D", 35, 55], ["E", 55, 60]]);
   });
 
+  it("names the bounds that have room, and whole steps above the last", () => {
+    // 118 px for 650 s: 5.5 s a pixel, so that a label needs 77 s; 80 is the first bound with that room.
+    expect(delayTicks(650, 118, 14)).toEqual([0, 80, 200, 400, 600]);
+    expect(delayTicks(40, 118, 14)).toEqual([0, 10, 20, 35]);
+    expect(delayTicks(116.6, 118, 14)).toEqual([0, 20, 35, 55, 80, 100]);
+  });
+
   it("keeps letters apart by moving the upper ones up", () => {
     expect(spreadUpwards([95, 90, 50], 19, 100)).toEqual([94.5, 75.5, 50]);
   });
@@ -91,7 +102,27 @@ describe("axis of the delay", () => {
   });
 });
 
+describe("one vehicle", () => {
+  it("says nothing about a mean", () => {
+    const values = Float64Array.of(5, 6, 7);
+    const { vehicles, meanS, highS } = withoutSingles({ fromS: 0, stepS: 900, vehicles: Uint32Array.of(2, 1, 0), meanS: values, lowS: values, highS: values });
+    expect([[...vehicles], [...meanS], [...highS]]).toEqual([[2, 1, 0], [5, NaN, NaN], [5, NaN, NaN]]);
+  });
+});
+
 describe("figures under a strip", () => {
+  it("count the days on which a vehicle of the movement crossed in the window", () => {
+    const set = { tracks: 5, day: Int32Array.of(1, 1, 2, 3, 4) } as TrackSet;
+    const window = { fromS: 100, toS: 200, bottomM: 0, topM: 50 };
+    // The vehicle of day 2 turned elsewhere, that of day 3 came too late.
+    expect(daysSeen({ set, include: Uint8Array.of(1, 1, 0, 1, 1), window }, Float32Array.of(100, 150, 150, 200, 199))).toBe(2);
+  });
+
+  it("never count fewer days than a movement was seen on", () => {
+    const view = { leg: {}, movements: [{ turn: "left", days: 70, vehicles: 0, stopShare: null }], basis: { days: 90 } } as unknown as LegStripView;
+    expect([typicalFacts(view, "any", 60).days, typicalFacts(view, "right", 3).days]).toEqual([70, 3]);
+  });
+
   const movement = (vehicles: number, share: number | null) => ({ vehicles, stopShare: share === null ? null : { value: share, low: 0, high: 1 } }) as MovementView;
 
   it("pool the share stopping by vehicles, with Wilson's interval", () => {
