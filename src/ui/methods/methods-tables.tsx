@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import { EVIDENCE_RULES } from "@/core/scores/evidence";
 import { SIGNALISED_LOS } from "@/core/stats/level-of-service";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
@@ -106,9 +107,9 @@ export function IntervalTable() {
       <tbody>
         {BY_INTERVAL.map((row) => (
           <tr key={row.every}>
-            <Th scope="row" className="whitespace-nowrap border-b-rule align-top font-medium text-ink">
+            <RowHead>
               {row.every}
-            </Th>
+            </RowHead>
             <Td>{row.delay}</Td>
             <Td>{row.stops}</Td>
             <Td>{row.queues}</Td>
@@ -122,7 +123,7 @@ export function IntervalTable() {
 export function AccuracyTable({ sampling }: { sampling: (typeof MAIN_SAMPLINGS)[number] }) {
   const [share, every] = sampling.split(", ");
   return (
-    <RuledTable caption={`${share} of the vehicles, a ping every ${every}`} className="min-w-[46rem]">
+    <RuledTable caption={`${share} of the vehicles, a ping every ${every}`} showCaption className="min-w-[54rem]">
       <thead>
         <tr>
           <Th>network</Th>
@@ -139,15 +140,15 @@ export function AccuracyTable({ sampling }: { sampling: (typeof MAIN_SAMPLINGS)[
       <tbody>
         {MEASURED_ACCURACY.filter((row) => row.sampling === sampling).map((row) => (
           <tr key={row.network}>
-            <Th scope="row" className="whitespace-nowrap border-b-rule font-medium text-ink">
+            <RowHead>
               {row.network}
               {row.isKeptAside ? " *" : ""}
-            </Th>
-            <Td numeric>{row.delayErrorS.toFixed(1)} s</Td>
-            <Td numeric>{row.sampleErrorS.toFixed(1)} s</Td>
-            <Td numeric>{row.biasS.toFixed(1)} s</Td>
-            <Td numeric>{percent(row.turnsRight, 1)}</Td>
-            <Td numeric>
+            </RowHead>
+            <Td numeric className="whitespace-nowrap">{row.delayErrorS.toFixed(1)} s</Td>
+            <Td numeric className="whitespace-nowrap">{row.sampleErrorS.toFixed(1)} s</Td>
+            <Td numeric className="whitespace-nowrap">{row.biasS.toFixed(1)} s</Td>
+            <Td numeric className="whitespace-nowrap">{percent(row.turnsRight, 1)}</Td>
+            <Td numeric className="whitespace-nowrap">
               {percent(row.legsFound, 1)}, {percent(row.legsTrue, 1)}
             </Td>
             <Td numeric>{Math.round(row.reachErrorM)} m</Td>
@@ -161,3 +162,12 @@ export function AccuracyTable({ sampling }: { sampling: (typeof MAIN_SAMPLINGS)[
 }
 
 const percent = (share: number, digits: number) => `${(share * 100).toFixed(digits)} %`;
+
+/** Looks like a cell and is read out before each of its row. */
+function RowHead({ children }: { children: ReactNode }) {
+  return (
+    <th scope="row" className="whitespace-nowrap border-b border-rule px-2 py-2 text-left align-top font-medium">
+      {children}
+    </th>
+  );
+}

@@ -2,7 +2,8 @@
 
 import { useCallback, useEffect, useId, useLayoutEffect, useRef, useState, type ReactNode } from "react";
 
-const FIRST_CONTROL = "input:checked, input:not([type=radio]), select, button, a[href], [tabindex='0'], input";
+/** What is chosen comes before what could be. */
+const FIRST_CONTROLS = ["input[type=radio]:checked", "input, select, button, a[href], [tabindex='0']"];
 
 /** What a trigger needs to open its panel, and the panel to stand under it. */
 export function usePopover() {
@@ -18,7 +19,8 @@ export function usePopover() {
 
   useEffect(() => {
     if (!isOpen) return;
-    panel.current?.querySelector<HTMLElement>(FIRST_CONTROL)?.focus({ preventScroll: true });
+    const [chosen, first] = FIRST_CONTROLS.map((selector) => panel.current?.querySelector<HTMLElement>(selector));
+    (chosen ?? first)?.focus({ preventScroll: true });
     const onKey = (event: KeyboardEvent) => {
       if (event.key === "Escape") close(true);
     };

@@ -9,10 +9,10 @@ export function movementName(worst: NonNullable<RankedJunction["worst"]>): strin
   return `${turn} ${legPlace(worst.from)}`;
 }
 
-/** Where a leg comes from, out of its name: "From the south, northbound" is "from the south". */
+/** Where a leg comes from, out of its name: "From the south, northbound" is "from the south", and "Quay Street, slip" is "from Quay Street". */
 export function legPlace(legName: string): string {
   const place = legName.split(",")[0];
-  return place.charAt(0).toLowerCase() + place.slice(1);
+  return /^from\b/i.test(place) ? `f${place.slice(1)}` : `from ${place}`;
 }
 
 /** Two to five short sentences that say why a junction stands where it stands, and how sure that is. */

@@ -2,7 +2,7 @@ import type { Turn } from "@/core/types";
 import type { ScreenQuery, ScreenResult } from "@/domain/screen";
 import { DAY_TYPE_NAMES, type SortKey } from "@/domain/screen-choices";
 import { PERIOD_NAMES } from "@/domain/periods";
-import { formatClockRange, formatDayRange } from "@/ui/format";
+import { formatClockRange, formatDay, formatDayRange } from "@/ui/format";
 
 /** The words of the sentence, one function for each phrase that is a control. */
 
@@ -52,7 +52,8 @@ export function daysPhrase(query: Pick<ScreenQuery, "days" | "since" | "until">,
   const first = query.since ?? basis?.firstDate;
   const last = query.until ?? basis?.lastDate;
   const days = DAY_TYPE_NAMES[query.days];
-  if (!first || !last) return days;
+  if (!first && !last) return days;
+  if (!first || !last) return first ? `${days} from ${formatDay(first, locale)}` : `${days} until ${formatDay(last ?? "", locale)}`;
   return first > last ? `${days}, no dates` : `${days}, ${formatDayRange(first, last, locale)}`;
 }
 

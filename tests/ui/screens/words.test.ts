@@ -47,6 +47,7 @@ describe("explanation of a junction", () => {
 
   it("names a movement by its turn and leg", () => {
     expect(movementName(ROW.worst!)).toBe("left from the south");
+    expect(movementName({ ...ROW.worst!, from: "Quay Street, slip" })).toBe("left from Quay Street");
   });
 });
 
@@ -56,6 +57,10 @@ describe("phrases", () => {
   it("say days and hours as they are", () => {
     expect(daysPhrase({ days: "weekdays" }, basis, "en-GB")).toBe("weekdays, 2 to 6 March 2026");
     expect(daysPhrase({ days: "saturday" }, undefined, "en-GB")).toBe("Saturdays");
+    // Asked for, and no data there: the address still shows in the sentence.
+    const none = { ...basis, firstDate: null, lastDate: null };
+    expect(daysPhrase({ days: "weekdays", since: "2030-01-02" }, none, "en-GB")).toBe("weekdays from 2 January 2030");
+    expect(daysPhrase({ days: "weekdays", until: "2020-01-02" }, none, "en-GB")).toBe("weekdays until 2 January 2020");
     expect(windowPhrase({ period: "pm" }, basis)).toBe("PM peak, 16:00 to 18:30");
     expect(windowPhrase({ period: "pm", from: 960, to: 1110 }, basis)).toBe("16:00 to 18:30");
     expect(minDelayPhrase(0)).toBe("by any time");
