@@ -74,16 +74,22 @@ export function estimateSpeeds(course: Course): void {
 export function timeAt(course: Course, distanceM: number): number {
   const { length } = course;
   if (length === 0 || distanceM < course.distanceM[0] || distanceM > course.distanceM[length - 1]) return NaN;
-  let low = 0;
-  let high = length - 1;
-  // Invariant: distance[low] <= wanted; distance[high + 1] > wanted or high is the last.
-  while (low < high) {
-    const mid = (low + high + 1) >> 1;
-    if (course.distanceM[mid] <= distanceM) low = mid;
-    else high = mid - 1;
-  }
+  const low = lastUpTo(course, distanceM);
   if (low === length - 1 || course.distanceM[low] === distanceM) return course.tMs[low];
   return timeWithin(course, low, distanceM);
+}
+
+/** The last point that lies no farther than a distance; the first where none does. O(log n). */
+export function lastUpTo({ distanceM, length }: Course, wantedM: number): number {
+  let low = 0;
+  let high = length - 1;
+  // Invariant: distance[low] <= wanted, if any is; distance[high + 1] > wanted or high is the last.
+  while (low < high) {
+    const mid = (low + high + 1) >> 1;
+    if (distanceM[mid] <= wantedM) low = mid;
+    else high = mid - 1;
+  }
+  return low;
 }
 
 function timeWithin(course: Course, i: number, distanceM: number): number {
@@ -94,7 +100,7 @@ function timeWithin(course: Course, i: number, distanceM: number): number {
   let v1 = course.speedMs[i + 1];
   const wanted = (distanceM - course.distanceM[i]) / step;
   if (!(v0 >= 0 && v1 >= 0)) return course.tMs[i] + wanted * span * 1000;
-  const norm = Math.hypot(v0, v1) / secant;
+  const norm = Math.sqrt(v0 * v0 + v1 * v1) / secant;
   if (norm > 3) {
     v0 *= 3 / norm;
     v1 *= 3 / norm;

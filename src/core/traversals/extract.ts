@@ -5,7 +5,7 @@ import type { StreetGraph } from "@/core/match/graph";
 import type { Chain } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";
-import { createCourse, estimateSpeeds, KNOTS, smoothForward, timeAt, type Course } from "@/core/traversals/course";
+import { createCourse, estimateSpeeds, KNOTS, lastUpTo, smoothForward, timeAt, type Course } from "@/core/traversals/course";
 import { fillGaps } from "@/core/traversals/fill-gaps";
 import { KNOTS_A_STEP } from "@/core/traversals/share-wait";
 import { filledEndMs, filledStartMs } from "@/core/traversals/fill-ends";
@@ -32,13 +32,19 @@ export interface Extractor {
   addChain(chain: Chain): number;
 }
 
+/** The way through a junction from a leg to an exit, in the junction's plane. */
+interface Box {
+  line: Float64Array;
+  lengthM: number;
+}
+
 /** Turns matched stretches into traversals with crossing times, stops and tracks, and what breaks off on a leg into open tracks. */
 export function createExtractor(trips: Trips, graph: StreetGraph, builder: TraversalBuilder, open: OpenTrackBuilder): Extractor {
   const { network } = graph;
   const movementOf = new Map<number, number>();
   network.movements.forEach((m, i) => movementOf.set(m.leg * network.exits.length + m.exit, i));
-  const boxes = new Map<number, { line: Float64Array; lengthM: number }>();
-  const box = (leg: number, exit: number): { line: Float64Array; lengthM: number } => {
+  const boxes = new Map<number, Box>();
+  const box = (leg: number, exit: number): Box => {
     const key = leg * network.exits.length + exit;
     let found = boxes.get(key);
     if (!found) {
@@ -130,20 +136,23 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
 
   /** The pings between the leg's upstream end and the exit cordon, with one point on each end where it was passed. */
   function fillTrack(from: number, to: number, stopAt: number): number {
-    let n = 0;
-    const put = (tMs: number, distance: number): void => {
-      if (!(tMs >= 0) || (n > 0 && tMs <= trackMs[n - 1])) return;
-      trackMs[n] = tMs;
-      trackS[n] = stopAt - distance;
-      n += 1;
-    };
-    put(timeAt(course, from), from);
-    for (let i = 0; i < course.length; i++) {
-      const d = course.distanceM[i];
-      if (d >= from && d <= to && course.kind[i] !== KNOTS.unplaced) put(course.tMs[i], d);
+    let n = putPoint(0, timeAt(course, from), stopAt - from);
+    let i = lastUpTo(course, from);
+    // Several points may lie at the very beginning.
+    while (i > 0 && course.distanceM[i - 1] >= from) i -= 1;
+    for (; i < course.length && course.distanceM[i] <= to; i++) {
+      const isPlace = course.distanceM[i] >= from && course.kind[i] !== KNOTS.unplaced;
+      if (isPlace) n = putPoint(n, course.tMs[i], stopAt - course.distanceM[i]);
     }
-    put(timeAt(course, to), to);
-    return n;
+    return putPoint(n, timeAt(course, to), stopAt - to);
+  }
+
+  /** Adds point n of the track unless its time is unknown or not later; returns how many there are. */
+  function putPoint(n: number, tMs: number, s: number): number {
+    if (!(tMs >= 0) || (n > 0 && tMs <= trackMs[n - 1])) return n;
+    trackMs[n] = tMs;
+    trackS[n] = s;
+    return n + 1;
   }
 }
 
@@ -167,7 +176,7 @@ function basesOf(chain: Chain, graph: StreetGraph, box: (leg: number, exit: numb
 /** The pings of the stretch on the path: by the links' lines, inside boxes by the way through. */
 function fillCourse(
   course: Course, chain: Chain, base: Float64Array, trips: Trips, graph: StreetGraph,
-  box: (leg: number, exit: number) => { line: Float64Array; lengthM: number },
+  box: (leg: number, exit: number) => Box,
 ): void {
   let n = 0;
   for (let c = 0; c < chain.pings.length; c++) {
@@ -177,11 +186,11 @@ function fillCourse(
     const p = chain.position[c];
     let distance = base[k] + p;
     if (p > graph.stopAt[link] - 4 && k + 1 < chain.links.length) {
-      distance = base[k] + graph.stopAt[link] + inBox(graph, trips, i, box(graph.leg[link], graph.exit[chain.links[k + 1]]).line, graph.leg[link], p - graph.stopAt[link]);
+      distance = base[k] + graph.stopAt[link] + inBox(graph, trips, i, box(graph.leg[link], graph.exit[chain.links[k + 1]]), graph.leg[link], p - graph.stopAt[link]);
     } else if (p < 4 && k > 0) {
       const before = chain.links[k - 1];
       const way = box(graph.leg[before], graph.exit[link]);
-      distance = base[k] - way.lengthM + inBox(graph, trips, i, way.line, graph.leg[before], p + way.lengthM);
+      distance = base[k] - way.lengthM + inBox(graph, trips, i, way, graph.leg[before], p + way.lengthM);
     }
     course.tMs[n] = trips.tMs[i];
     course.distanceM[n] = distance;
@@ -195,11 +204,10 @@ function fillCourse(
 }
 
 /** Distance along the way through a box; outside its ends the given straight distance holds. */
-function inBox(graph: StreetGraph, trips: Trips, i: number, line: Float64Array, leg: number, straight: number): number {
+function inBox(graph: StreetGraph, trips: Trips, i: number, box: Box, leg: number, straight: number): number {
   const plane = graph.planes[graph.network.legs[leg].junction];
-  const foot = projectPoint(line, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]));
-  const length = lengthOf(line);
+  const foot = projectPoint(box.line, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]));
   if (foot.at <= 0) return Math.min(0, straight);
-  if (foot.at >= length) return Math.max(length, straight);
+  if (foot.at >= box.lengthM) return Math.max(box.lengthM, straight);
   return foot.at;
 }
