@@ -4,8 +4,12 @@ import { chordBearingDeg, lengthOf, reversed, simplify } from "@/core/geometry/p
 import type { Frame } from "@/core/legs/frame";
 import type { Exit, Leg } from "@/core/types";
 
-/** Chords over this length tell the bearing at a stop line and at an exit, m. */
+/**
+ * The bearing at a stop line and at an exit is that of the chord over this length, m, from this far off the junction's
+ * box on: nearer, those who turn have begun to, and a line learned from pings bends with them.
+ */
 export const BEARING_CHORD_M = 30;
+const BEARING_CLEAR_M = 8;
 const SIMPLIFY_M = 0.7;
 const DEFAULT_FREE_SPEED_MS = 13.9;
 
@@ -47,11 +51,13 @@ export function draftExit(frame: Frame, junction: number, line: Float64Array, su
 }
 
 export function legBearingDeg(line: Float64Array): number {
-  return normaliseDeg(chordBearingDeg(line, 0, Math.min(BEARING_CHORD_M, lengthOf(line))) + 180);
+  return normaliseDeg(exitBearingDeg(line) + 180);
 }
 
 export function exitBearingDeg(line: Float64Array): number {
-  return chordBearingDeg(line, 0, Math.min(BEARING_CHORD_M, lengthOf(line)));
+  const lengthM = lengthOf(line);
+  const from = Math.min(BEARING_CLEAR_M, lengthM / 4);
+  return chordBearingDeg(line, from, Math.min(from + BEARING_CHORD_M, lengthM));
 }
 
 /** "from the south, northbound" for vehicles that travel north. */

@@ -34,6 +34,8 @@ export const LEARNING = Object.freeze({
   leastPoints: 5,
   /** A trace ends at another junction whose point it passes within this distance. */
   meetsWithinM: 25,
+  /** Shortest link between two junctions, m. */
+  leastLinkM: 5,
   /** Pings at longer intervals than this count as sparse, s. */
   sparseIntervalS: 8,
 });

@@ -176,11 +176,20 @@ function junctionAhead(frame: Frame, own: number, x: number, y: number, ux: numb
   return -1;
 }
 
+/** Between junctions so near that a trace meets the next one at its first point: a straight line to its box, of some length at least. */
+function straightTo(line: number[], other: { x: number; y: number }): number[] {
+  const [dx, dy] = [other.x - line[0], other.y - line[1]];
+  const distance = Math.hypot(dx, dy);
+  const share = Math.max(LEARNING.leastLinkM, distance - LEARNING.boxM) / distance;
+  return [line[0], line[1], line[0] + share * dx, line[1] + share * dy];
+}
+
 /** Ends the line where it enters the met junction's box, judged along its own direction there. */
 function cutAtBox(line: number[], frame: Frame, own: number, meets: number): number[] {
   const other = frame.near[own].find((n) => n.junction === meets);
   const n = line.length;
-  if (!other || n < 4) return line;
+  if (!other) return line;
+  if (n < 4) return straightTo(line, other);
   const back = Math.max(0, n - 6);
   const length = Math.hypot(line[n - 2] - line[back], line[n - 1] - line[back + 1]) || 1;
   const ux = (line[n - 2] - line[back]) / length;

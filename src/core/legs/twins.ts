@@ -3,7 +3,7 @@ import { pointAt, projectPoint } from "@/core/geometry/polyline";
 import type { Joined } from "@/core/legs/join";
 import type { Exit, Leg } from "@/core/types";
 
-/** Two lines of one junction that run together from fromM on, nearer than besideM on average, are one street. */
+/** Two lines of one junction that run together from fromM on, nearer than besideM on average, are one street; shorter ones are compared as a whole. */
 const FROM_M = 30;
 const TO_M = 170;
 const STEP_M = 20;
@@ -45,9 +45,12 @@ function twinOf(items: (Leg | Exit)[]): Int32Array {
 function runAlong(a: Leg | Exit, b: Leg | Exit): boolean {
   if (angleBetweenDeg(a.bearingDeg, b.bearingDeg) > MOST_TURN_DEG) return false;
   const end = Math.min(TO_M, a.lengthM, b.lengthM);
+  const isShort = end < FROM_M + (LEAST_POINTS - 1) * STEP_M;
+  const from = isShort ? end / LEAST_POINTS : FROM_M;
+  const step = isShort ? from : STEP_M;
   let sum = 0;
   let points = 0;
-  for (let at = FROM_M; at <= end; at += STEP_M, points++) {
+  for (let at = from; at <= end + 1e-6; at += step, points++) {
     const [x, y] = pointAt(b.line, at);
     sum += Math.abs(projectPoint(a.line, x, y).offset);
   }

@@ -2,7 +2,7 @@ import { eastM, northM, planeAt } from "@/core/geometry/plane";
 import { createCandidates, findCandidates, type Candidates } from "@/core/match/candidates";
 import type { StreetGraph } from "@/core/match/graph";
 import { cellAt } from "@/core/match/link-grid";
-import { DEAREST, MATCHING } from "@/core/match/matching";
+import { DEAREST_STEP, MATCHING } from "@/core/match/matching";
 import type { Trips } from "@/core/pings/trips";
 
 /**
@@ -104,10 +104,13 @@ function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): v
     const before = row - WIDTH;
     const places = near.count[n - 1];
     const first = (n - 1) * MATCHING.candidates;
+    const likeliest = cheapest(work, n - 1);
+    const left = likeliest < 0 ? Infinity : cost[before + likeliest] + MATCHING.leaveCost;
+    const isOff = cost[before + OFF] <= left;
     for (let c = 0; c < near.count[n]; c++) {
       const to = n * MATCHING.candidates + c;
-      let best = cost[before + OFF] + MATCHING.joinCost;
-      let from = OFF;
+      let best = Math.min(cost[before + OFF], left) + MATCHING.joinCost;
+      let from = isOff ? OFF : likeliest;
       for (let p = 0; p < places; p++) {
         const reached = cost[before + p];
         if (reached >= best) continue;
@@ -120,18 +123,17 @@ function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): v
       cost[row + c] = best + near.cost[to];
       back[row + c] = from;
     }
-    let best = cost[before + OFF];
-    let from = OFF;
-    for (let p = 0; p < places; p++) {
-      if (cost[before + p] + MATCHING.leaveCost < best) {
-        best = cost[before + p] + MATCHING.leaveCost;
-        from = p;
-      }
-    }
-    cost[row + OFF] = best + MATCHING.offCost;
-    back[row + OFF] = from;
+    cost[row + OFF] = Math.min(cost[before + OFF], left) + MATCHING.offCost;
+    back[row + OFF] = isOff ? OFF : likeliest;
   }
   trackBack(work, states);
+}
+
+/** The likeliest place of a ping so far, -1 without any: from there a step may lead over unknown streets to any other. */
+function cheapest({ near, cost }: Work, n: number): number {
+  let least = near.count[n] > 0 ? 0 : -1;
+  for (let p = 1; p < near.count[n]; p++) if (cost[n * WIDTH + p] < cost[n * WIDTH + least]) least = p;
+  return least;
 }
 
 function secondsBetween(trips: Trips, work: Work, a: number, b: number): number {
@@ -154,7 +156,7 @@ function trackBack(work: Work, states: number): void {
   }
 }
 
-/** Cost of going from one place to another in the given time; Infinity where no way costs less than DEAREST. */
+/** Cost of going from one place to another in the given time; Infinity where no way costs less than DEAREST_STEP. */
 function stepCost(graph: StreetGraph, near: Candidates, a: number, b: number, chord: number, seconds: number): number {
   const from = near.link[a];
   const to = near.link[b];
@@ -174,9 +176,9 @@ function stepCost(graph: StreetGraph, near: Candidates, a: number, b: number, ch
   return cost + detour / (MATCHING.detourM + MATCHING.detourShare * chord);
 }
 
-/** Any longer way costs DEAREST or more. */
+/** Any longer way costs DEAREST_STEP or more. */
 function longestWay(reach: number, chord: number): number {
-  return Math.min(reach + DEAREST * MATCHING.reachSpreadM, chord + DEAREST * (MATCHING.detourM + MATCHING.detourShare * chord));
+  return Math.min(reach + DEAREST_STEP * MATCHING.reachSpreadM, chord + DEAREST_STEP * (MATCHING.detourM + MATCHING.detourShare * chord));
 }
 
 function collectChains(
@@ -192,7 +194,7 @@ function collectChains(
       continue;
     }
     const at = n * MATCHING.candidates + c;
-    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, trips, work, last, n, at, strays);
+    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, trips, work, last, n, at);
     if (!joined) {
       if (chain && chain.pings.length > 1) visit(chain);
       chain = { trip, links: [work.near.link[at]], pings: [work.ping[n]], step: [0], position: [work.near.position[at]] };
@@ -208,18 +210,16 @@ function isWaiting(trips: Trips, work: Work, before: number, n: number): boolean
   return chordBetween(work, before, n) < MATCHING.waitingM && secondsBetween(trips, work, before, n) < MATCHING.waitingMostS;
 }
 
-/** Adds a place to a chain; after stray pings only where the way fits the time and the chord. */
+/** Adds a place to a chain where the way fits the time and the chord; else the step led over unknown streets. */
 function append(
-  chain: Chain, graph: StreetGraph, trips: Trips, work: Work, before: number, n: number, at: number, strays: number,
+  chain: Chain, graph: StreetGraph, trips: Trips, work: Work, before: number, n: number, at: number,
 ): boolean {
   const from = chain.links[chain.links.length - 1];
   const link = work.near.link[at];
   const position = work.near.position[at];
   const previous = before * MATCHING.candidates + work.chosen[before];
-  if (strays > 0) {
-    const cost = stepCost(graph, work.near, previous, at, chordBetween(work, before, n), secondsBetween(trips, work, before, n));
-    if (cost > MATCHING.leaveCost + MATCHING.joinCost) return false;
-  }
+  const cost = stepCost(graph, work.near, previous, at, chordBetween(work, before, n), secondsBetween(trips, work, before, n));
+  if (cost > DEAREST_STEP) return false;
   if (link !== from || position - work.near.position[previous] < -MATCHING.loopM) {
     const row = graph.routes.find(from, link, 0);
     if (row < 0) return false;

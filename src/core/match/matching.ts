@@ -50,7 +50,8 @@ export const MATCHING = Object.freeze({
 });
 
 /**
- * No place and no step as dear as leaving the network, one ping off it and joining it again is ever on the likeliest path:
- * both may be left out without a change to it.
+ * No place as dear as leaving the network, one ping off it and joining it again is ever on the likeliest path, and no
+ * step as dear as leaving and joining: they may be left out without a change to it.
  */
 export const DEAREST: number = MATCHING.leaveCost + MATCHING.offCost + MATCHING.joinCost;
+export const DEAREST_STEP: number = MATCHING.leaveCost + MATCHING.joinCost;

@@ -14,6 +14,12 @@ describe("twins", () => {
     expect(dropTwins({ legs: [crooked, north], exits: [] }).legs).toEqual([north]);
   });
 
+  it("knows one street of 12 m by the whole of it", () => {
+    const short = draftLeg(frame, 0, line(0, 14, 0, 26), 80);
+    const beside = draftLeg(frame, 0, line(2, 15, 3, 24), 20);
+    expect(dropTwins({ legs: [beside, short], exits: [] }).legs).toEqual([short]);
+  });
+
   it("keeps legs 45 degrees apart, and a frontage road 30 m beside", () => {
     const skewed = draftLeg(frame, 0, line(10, 10, 210, 210), 20);
     const frontage = draftLeg(frame, 0, line(30, 14, 30, 300), 20);

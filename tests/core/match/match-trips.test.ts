@@ -63,6 +63,12 @@ describe("matched paths", () => {
     expect(chains[0].pings).toEqual([0, 1, 3, 4]);
   });
 
+  it("breaks where a step leads over unknown streets, and loses no ping over it", () => {
+    const { chains, legs } = chainsOf([[0, 240, 0], [10, 340, 0], [60, -100, 0], [70, 20, 0], [80, 140, 0]]);
+    expect(legs).toEqual(["C", "A", "B"]);
+    expect(chains.map((chain) => chain.pings)).toEqual([[0, 1], [2, 3, 4]]);
+  });
+
   it("breaks where a vehicle turns off the street for good", () => {
     const { chains } = chainsOf([[0, -100, 0], [10, -60, 0, 3], [20, -60, -60, 12, 180], [30, -60, -180, 12, 180], [40, -60, -300, 12, 180]]);
     expect(chains).toHaveLength(1);

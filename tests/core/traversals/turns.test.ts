@@ -15,6 +15,11 @@ describe("turn names of an eastbound leg", () => {
     expect(turnsTo([50, 100, 130])).toEqual(["left", "through", "right"]);
   });
 
+  it("keeps through for the straightest exit up to a bend of 50 degrees", () => {
+    expect(turnsTo([42, 180])).toEqual(["through", "right"]);
+    expect(turnsTo([38, 180])).toEqual(["left", "right"]);
+  });
+
   it("finds no through where a stem meets a bar", () => {
     expect(turnsTo([0, 180])).toEqual(["left", "right"]);
   });
