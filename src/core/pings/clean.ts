@@ -1,9 +1,12 @@
-import { eastM, northM, planeAt } from "@/core/geometry/plane";
+import { planeAt } from "@/core/geometry/plane";
 import { CLEANING } from "@/core/options";
 import { groupByVehicle } from "@/core/pings/group-by-vehicle";
 import { fillMotion } from "@/core/pings/motion";
 import type { Trips } from "@/core/pings/trips";
 import type { CleanReport, PingColumns } from "@/core/types";
+
+/** Of a degree of longitude, at most: the largest radius of curvature of WGS 84, 6,399.6 km, times a degree. */
+const MOST_METRES_PER_LON = 111_700;
 
 export interface Cleaned {
   trips: Trips;
@@ -61,14 +64,21 @@ function nextInstant(pings: PingColumns, order: Uint32Array, k: number, end: num
 }
 
 function createWalker(pings: PingColumns): { isJump(a: number, b: number): boolean } {
-  const plane = pings.length > 0 ? planeAt(pings.lat[0], pings.lon[0]) : planeAt(0, 0);
+  const { tMs, lat, lon } = pings;
+  const plane = pings.length > 0 ? planeAt(lat[0], lon[0]) : planeAt(0, 0);
+  const cosHere = Math.cos((plane.lat0 * Math.PI) / 180);
   return {
     isJump(a, b) {
+      const reach = (CLEANING.maxSpeedMs * (tMs[b] - tMs[a])) / 1000 + CLEANING.noiseM;
+      const dy = (lat[b] - lat[a]) * plane.metresPerLat;
+      let dLon = lon[b] - lon[a];
+      if (dLon > 180) dLon -= 360;
+      else if (dLon < -180) dLon += 360;
+      // No degree of longitude is longer than one at the equator: nearly every step is plain without a cosine.
+      const widest = dLon * MOST_METRES_PER_LON;
+      if (widest * widest + dy * dy <= reach * reach) return false;
       // The scale east to west is set at the step's own latitude: files may span a country.
-      const scale = Math.cos((pings.lat[a] * Math.PI) / 180) / Math.cos((plane.lat0 * Math.PI) / 180);
-      const dx = (eastM(plane, pings.lon[b]) - eastM(plane, pings.lon[a])) * scale;
-      const dy = northM(plane, pings.lat[b]) - northM(plane, pings.lat[a]);
-      const reach = (CLEANING.maxSpeedMs * (pings.tMs[b] - pings.tMs[a])) / 1000 + CLEANING.noiseM;
+      const dx = (dLon * plane.metresPerLon * Math.cos((lat[a] * Math.PI) / 180)) / cosHere;
       return dx * dx + dy * dy > reach * reach;
     },
   };
@@ -105,16 +115,21 @@ function gather(pings: PingColumns, kept: Uint32Array, length: number, starts: n
     const trip = turn[k];
     const end = trip + 1 < count ? starts[trip + 1] : length;
     trips.tripVehicle[k] = pings.vehicle[kept[starts[trip]]];
-    for (let n = starts[trip]; n < end; n++, at++) {
-      const i = kept[n];
-      trips.tMs[at] = pings.tMs[i];
-      trips.lat[at] = pings.lat[i];
-      trips.lon[at] = pings.lon[i];
-      trips.speedMs[at] = pings.speedMs[i];
-      trips.headingDeg[at] = pings.headingDeg[i];
-    }
+    copyPings(pings, kept, starts[trip], end, trips, at);
+    at += end - starts[trip];
     trips.tripOffset[k + 1] = at;
   }
   fillMotion(trips);
   return trips;
+}
+
+/** A column at a time: the reading jumps, and the jumps of one column wait for each other least. */
+function copyPings(pings: PingColumns, kept: Uint32Array, from: number, to: number, trips: Trips, at: number): void {
+  const { tMs, lat, lon, speedMs, headingDeg } = pings;
+  const shift = at - from;
+  for (let n = from; n < to; n++) trips.tMs[n + shift] = tMs[kept[n]];
+  for (let n = from; n < to; n++) trips.lat[n + shift] = lat[kept[n]];
+  for (let n = from; n < to; n++) trips.lon[n + shift] = lon[kept[n]];
+  for (let n = from; n < to; n++) trips.speedMs[n + shift] = speedMs[kept[n]];
+  for (let n = from; n < to; n++) trips.headingDeg[n + shift] = headingDeg[kept[n]];
 }

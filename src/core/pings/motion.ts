@@ -1,5 +1,5 @@
 import { bearingDeg } from "@/core/geometry/angles";
-import { eastM, northM, planeAt } from "@/core/geometry/plane";
+import { eastM, northM, planeAt, type Plane } from "@/core/geometry/plane";
 import type { Trips } from "@/core/pings/trips";
 
 /** Below this speed a reported heading is noise, m/s. */
@@ -31,31 +31,38 @@ export function fillMotion(trips: Trips): void {
 
 /** Gives the pings of a standstill the direction from where the vehicle came from to where it went on, 12 m or more away. */
 function faceStanding(trips: Trips, from: number, to: number): void {
-  const plane = planeAt(trips.lat[from], trips.lon[from]);
-  const step = (i: number, k: number): [number, number] => [
-    eastM(plane, trips.lon[k]) - eastM(plane, trips.lon[i]), northM(plane, trips.lat[k]) - northM(plane, trips.lat[i]),
-  ];
+  const { lat, lon, headingDeg } = trips;
+  const plane = planeAt(lat[from], lon[from]);
   for (let a = from; a < to; a++) {
-    if (!Number.isNaN(trips.headingDeg[a])) continue;
+    if (headingDeg[a] === headingDeg[a]) continue;
     let b = a;
-    while (b + 1 < to && Number.isNaN(trips.headingDeg[b + 1])) b += 1;
+    while (b + 1 < to && Number.isNaN(headingDeg[b + 1])) b += 1;
     let before = Math.max(from, a - 1);
-    while (before > from && a - before < STANDING_LOOKS && Math.hypot(...step(a, before)) < HEADING_MIN_STEP_M) before -= 1;
+    while (before > from && a - before < STANDING_LOOKS && isNear(trips, plane, a, before)) before -= 1;
     let after = Math.min(to - 1, b + 1);
-    while (after < to - 1 && after - b < STANDING_LOOKS && Math.hypot(...step(b, after)) < HEADING_MIN_STEP_M) after += 1;
-    const [dx, dy] = step(before, after);
-    if (Math.hypot(dx, dy) >= HEADING_MIN_STEP_M) trips.headingDeg.fill(bearingDeg(dx, dy), a, b + 1);
+    while (after < to - 1 && after - b < STANDING_LOOKS && isNear(trips, plane, b, after)) after += 1;
+    if (!isNear(trips, plane, before, after)) {
+      const bearing = bearingDeg(eastM(plane, lon[after]) - eastM(plane, lon[before]), northM(plane, lat[after]) - northM(plane, lat[before]));
+      headingDeg.fill(bearing, a, b + 1);
+    }
     a = b;
   }
 }
 
+function isNear({ lat, lon }: Trips, plane: Plane, a: number, b: number): boolean {
+  const dx = eastM(plane, lon[b]) - eastM(plane, lon[a]);
+  const dy = northM(plane, lat[b]) - northM(plane, lat[a]);
+  return dx * dx + dy * dy < HEADING_MIN_STEP_M * HEADING_MIN_STEP_M;
+}
+
 function fillTrip(trips: Trips, from: number, to: number): void {
+  const { speedMs, headingDeg } = trips;
   const plane = planeAt(trips.lat[from], trips.lon[from]);
   for (let i = from; i < to; i++) {
-    const speedGiven = Number.isFinite(trips.speedMs[i]);
-    const headingGiven = Number.isFinite(trips.headingDeg[i]);
+    const speedGiven = Number.isFinite(speedMs[i]);
+    const headingGiven = Number.isFinite(headingDeg[i]);
     if (speedGiven && headingGiven) {
-      if (trips.speedMs[i] < HEADING_MIN_SPEED_MS) trips.headingDeg[i] = NaN;
+      if (speedMs[i] < HEADING_MIN_SPEED_MS) headingDeg[i] = NaN;
       continue;
     }
     const a = Math.max(from, i - 1);
@@ -63,7 +70,7 @@ function fillTrip(trips: Trips, from: number, to: number): void {
     const seconds = (trips.tMs[b] - trips.tMs[a]) / 1000;
     const dx = eastM(plane, trips.lon[b]) - eastM(plane, trips.lon[a]);
     const dy = northM(plane, trips.lat[b]) - northM(plane, trips.lat[a]);
-    const step = Math.hypot(dx, dy);
+    const step = Math.sqrt(dx * dx + dy * dy);
     if (!speedGiven && seconds > 0) trips.speedMs[i] = step / seconds;
     const moving = trips.speedMs[i] >= HEADING_MIN_SPEED_MS;
     if (!headingGiven) {
@@ -76,15 +83,26 @@ function fillTrip(trips: Trips, from: number, to: number): void {
 function describeTrip(trips: Trips, k: number): void {
   const from = trips.tripOffset[k];
   const to = trips.tripOffset[k + 1];
-  const steps = new Float64Array(Math.max(0, to - from - 1));
   let speeds = 0;
-  for (let i = from; i < to; i++) {
-    if (Number.isFinite(trips.speedMs[i])) speeds += 1;
-    if (i > from) steps[i - from - 1] = (trips.tMs[i] - trips.tMs[i - 1]) / 1000;
-  }
-  steps.sort();
-  trips.tripIntervalS[k] = steps.length > 0 ? steps[steps.length >> 1] : NaN;
+  for (let i = from; i < to; i++) if (Number.isFinite(trips.speedMs[i])) speeds += 1;
+  trips.tripIntervalS[k] = medianStepS(trips.tMs, from, to);
   trips.tripHasSpeed[k] = speeds * 2 > to - from ? 1 : 0;
+}
+
+/** The upper of two middle ones; NaN without any. A trip of even steps, the usual one, is told without sorting. */
+function medianStepS(tMs: Float64Array, from: number, to: number): number {
+  if (to - from < 2) return NaN;
+  const first = tMs[from + 1] - tMs[from];
+  let [shorter, longer] = [0, 0];
+  for (let i = from + 1; i < to; i++) {
+    const step = tMs[i] - tMs[i - 1];
+    if (step < first) shorter += 1;
+    else if (step > first) longer += 1;
+  }
+  const rank = (to - from - 1) >> 1;
+  if (shorter <= rank && rank < to - from - 1 - longer) return first / 1000;
+  const steps = Float64Array.from({ length: to - from - 1 }, (_, n) => tMs[from + n + 1] - tMs[from + n]).sort();
+  return steps[rank] / 1000;
 }
 
 /** Median over at most about 20 000 intervals, taken evenly. */
