@@ -2,6 +2,7 @@
  * `npm start`, and with --dev `npm run dev`: from a fresh clone to a running city.
  * Plain Node: it runs before any package is installed.
  */
+import { availableParallelism } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { bundlePrograms, ensureWebBuild, placeMapWorker } from "./setup/build.mjs";
@@ -19,6 +20,8 @@ const isDev = process.argv.includes("--dev");
 const dataDir = process.env.DATA_DIR || join(root, ".data");
 const host = process.env.HOST || "127.0.0.1";
 const WORKER_RESTARTS = 5;
+/** Worker processes where WORKERS says nothing: they share a large file, and pages and database want their turn too. */
+const MOST_WORKERS = 2;
 
 /** What is to be undone at the end, last first. */
 const undo = [];
@@ -58,21 +61,30 @@ async function settingsFor(mode, secrets, databaseUrl) {
   return { port, baseUrl, env, readyUrl: `http://${shownHost}:${port}/sign-in` };
 }
 
-function startWorker(record, programs, env) {
+function workersWanted() {
+  const given = process.env.WORKERS;
+  // With reload on change one is enough.
+  if (!given) return isDev ? 1 : Math.min(MOST_WORKERS, availableParallelism());
+  const count = Number(given);
+  if (!Number.isInteger(count) || count < 1) throw new SetupError(`WORKERS=${given} is no number of worker processes from 1 on.`);
+  return count;
+}
+
+function startWorker(name, record, programs, env) {
   let restarts = 0;
   let child;
   const start = () => {
     const args = isDev ? ["--import", "tsx", "--watch-path=src", "--watch-preserve-output", "src/worker/main.ts"] : ["--enable-source-maps", programs.worker];
-    child = startProcess(process.execPath, args, { cwd: root, env, print: printFrom("worker") });
-    record.noteChild("worker", child.pid);
+    child = startProcess(process.execPath, args, { cwd: root, env, print: printFrom(name) });
+    record.noteChild(name, child.pid);
     void child.ended.then((how) => {
       if (isStopping) return;
       restarts += 1;
       if (restarts > WORKER_RESTARTS) {
-        console.error(`The worker ended ${restarts} times, the last time with ${how}.`);
+        console.error(`The ${name} ended ${restarts} times, the last time with ${how}.`);
         void stop(1);
       } else {
-        console.error(`The worker ended (${how}); starting it again.`);
+        console.error(`The ${name} ended (${how}); starting it again.`);
         setTimeout(() => isStopping || start(), 1000 * restarts);
       }
     });
@@ -123,6 +135,7 @@ async function prepare(programs, env) {
 
 async function main() {
   const mode = modeOf();
+  const workers = workersWanted();
   await ensurePackages(root);
   const secrets = cloneSecrets(dataDir);
   const record = await takeRun(dataDir, root);
@@ -141,7 +154,7 @@ async function main() {
   // One waits for the database, the other for the compiler: side by side they take little longer than the longer one.
   const [closingLines] = await Promise.all([prepare(programs, settings.env), isDev || ensureWebBuild(root)]);
   await startWeb(record, settings);
-  startWorker(record, programs, settings.env);
+  for (let n = 1; n <= workers; n++) startWorker(n === 1 ? "worker" : `worker ${n}`, record, programs, settings.env);
   record.noteAddress(settings.baseUrl);
 
   console.log(`\nTailmark runs at ${settings.baseUrl}`);

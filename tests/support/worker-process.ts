@@ -22,12 +22,14 @@ export interface WorkerPlace {
   databaseUrl: string;
   /** Its files lie in `storage` below this. */
   dataDir: string;
+  /** Rows in a piece of work; the usual number where absent. */
+  pieceRows?: number;
 }
 
 let program: Promise<string> | undefined;
 
 /** The product's own second process on a test's database, once it says that it is ready. */
-export async function startWorkerProcess({ databaseUrl, dataDir }: WorkerPlace): Promise<WorkerProcess> {
+export async function startWorkerProcess({ databaseUrl, dataDir, pieceRows }: WorkerPlace): Promise<WorkerProcess> {
   program ??= bundlePrograms(ROOT).then((programs) => programs.worker);
   const env: NodeJS.ProcessEnv = {
     ...process.env,
@@ -36,6 +38,7 @@ export async function startWorkerProcess({ databaseUrl, dataDir }: WorkerPlace):
     DATABASE_URL: databaseUrl,
     DATA_DIR: dataDir,
     BASE_URL: "http://city.example",
+    ...(pieceRows !== undefined && { INGEST_PIECE_ROWS: String(pieceRows) }),
     KEPT_MAIL_PORT: String(await anyFreePort()),
   };
   const child = spawn(process.execPath, ["--enable-source-maps", await program], { cwd: ROOT, env, stdio: ["ignore", "pipe", "pipe"] });

@@ -55,9 +55,10 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
   let kept = junctions.map(() => emptySample(FIRST_ROOM));
   let limit = Float64Array.from(share);
 
-  function keep(j: number, x: number, y: number, pings: PingColumns, i: number): void {
-    const priority = draw(pings, i);
-    if (priority >= limit[j]) return;
+  function keep(j: number, priority: number, pings: PingColumns, i: number): void {
+    const x = eastM(planes[j], pings.lon[i]);
+    const y = northM(planes[j], pings.lat[i]);
+    if (x * x + y * y > radiusM * radiusM) return;
     const sample = kept[j];
     if (sample.length === 2 * most) limit[j] = thin(sample, most);
     if (priority >= limit[j]) return;
@@ -75,11 +76,11 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
       for (let i = 0; i < pings.length; i++) {
         const slot = claims.find(pings.lat[i], pings.lon[i]);
         if (slot < 0) continue;
+        // Of most pings a first look says that they are not among the smallest.
+        const first = draw.first(pings, i);
         for (let k = claims.offsets[slot]; k < claims.offsets[slot + 1]; k++) {
           const j = claims.owners[k];
-          const x = eastM(planes[j], pings.lon[i]);
-          const y = northM(planes[j], pings.lat[i]);
-          if (x * x + y * y <= radiusM * radiusM) keep(j, x, y, pings, i);
+          if (first < limit[j]) keep(j, draw.whole(first, pings, i), pings, i);
         }
       }
     },
@@ -131,28 +132,39 @@ function grow(sample: NearSample, room: number): void {
 
 const SAMPLE_COLUMNS = ["eastM", "northM", "headingDeg", "speedMs", "priority"] as const;
 
-/** A number in [0, 1) from a ping's time, place and speed: multiply and rotate over their bits (as MurmurHash3, Appleby, public domain). */
-function createDraw(): (pings: PingColumns, i: number) => number {
+/**
+ * A number in [0, 1) from a ping's time, place and speed: multiply and rotate over their bits (as MurmurHash3, Appleby,
+ * public domain). `first` is its upper 32 bits, `whole` adds 21 more to it.
+ */
+function createDraw() {
   const values = new Float64Array(4);
   const words = new Uint32Array(values.buffer);
   const mixed = (seed: number): number => {
     let h = seed;
-    for (let w = 0; w < words.length; w++) {
-      let k = Math.imul(words[w], 0xcc9e2d51);
-      k = Math.imul((k << 15) | (k >>> 17), 0x1b873593);
-      h ^= k;
+    for (let w = 0; w < 8; w++) {
+      const k = Math.imul(words[w], 0xcc9e2d51);
+      h ^= Math.imul((k << 15) | (k >>> 17), 0x1b873593);
       h = Math.imul((h << 13) | (h >>> 19), 5) + 0xe6546b64;
     }
     h = Math.imul(h ^ (h >>> 16), 0x85ebca6b);
     h = Math.imul(h ^ (h >>> 13), 0xc2b2ae35);
     return (h ^ (h >>> 16)) >>> 0;
   };
-  return (pings, i) => {
+  const take = (pings: PingColumns, i: number): void => {
     values[0] = pings.tMs[i];
     values[1] = pings.lat[i];
     values[2] = pings.lon[i];
     values[3] = pings.speedMs[i];
-    return (mixed(1) + (mixed(2) >>> 11) / 2 ** 21) / 2 ** 32;
+  };
+  return {
+    first(pings: PingColumns, i: number): number {
+      take(pings, i);
+      return mixed(1) / 2 ** 32;
+    },
+    whole(first: number, pings: PingColumns, i: number): number {
+      take(pings, i);
+      return first + (mixed(2) >>> 11) / 2 ** 53;
+    },
   };
 }
 

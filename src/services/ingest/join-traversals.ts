@@ -32,11 +32,11 @@ export function pickTraversals(all: Traversals, chosen: ArrayLike<number>): Trav
   let points = 0;
   for (let to = 0; to < chosen.length; to++) points += all.trackOffset[chosen[to] + 1] - all.trackOffset[chosen[to]];
   const some = emptyTraversals(chosen.length, points);
-  for (let to = 0; to < chosen.length; to++) {
-    const from = chosen[to];
-    for (const name of SCALARS) some[name][to] = all[name][from];
-    copyTrack(all, from, some, to);
+  for (const name of SCALARS) {
+    const [from, into] = [all[name], some[name]];
+    for (let to = 0; to < chosen.length; to++) into[to] = from[chosen[to]];
   }
+  for (let to = 0; to < chosen.length; to++) copyTrack(all, chosen[to], some, to);
   return some;
 }
 

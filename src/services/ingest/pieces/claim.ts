@@ -1,6 +1,7 @@
 import type { PoolClient } from "pg";
 import { sql } from "drizzle-orm";
 import { bulkTransaction } from "@/db/bulk-transaction";
+import { helpUpload } from "@/jobs/definitions/help-upload";
 import type { Context } from "@/services/context";
 import { PIECE_KINDS } from "../steps";
 import { storedPieces } from "./piece-store";
@@ -68,6 +69,7 @@ async function sweepRun(ctx: Context, client: PoolClient, run: string): Promise<
   const { rowCount: held } = await client.query("select 1 from ingest_pieces where run = $1 for update skip locked", [run]);
   const { rows } = await client.query<{ n: number }>("select count(*)::int as n from ingest_pieces where run = $1", [run]);
   if (held !== rows[0].n) return;
+  await ctx.queue.withdraw(helpUpload, { run });
   // The rows go last: whoever is killed in between leaves them to the next sweep.
   await storedPieces(ctx.storage, run).clear();
   await client.query("delete from ingest_pieces where run = $1", [run]);

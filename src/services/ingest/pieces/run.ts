@@ -90,13 +90,8 @@ async function conduct<T>(ctx: Context, uploadId: string, work: (run: Run) => Pr
     conducted.delete(run);
     forget(store);
     // Where this fails the next reading sweeps; what went wrong before says more.
-    await tidy(ctx, run).catch((error: Error) => console.error("Sweep of pieces:", error.message));
+    await sweepRuns(ctx).catch((error: Error) => console.error("Sweep of pieces:", error.message));
   }
-}
-
-async function tidy(ctx: Context, run: string): Promise<void> {
-  await ctx.queue.withdraw(helpUpload, { run });
-  await sweepRuns(ctx);
 }
 
 async function list(ctx: Context, phase: Omit<typeof ingestPieces.$inferInsert, "number">, pieces: number): Promise<void> {
