@@ -21,7 +21,8 @@ export interface JobRunner {
   stop(): Promise<void>;
 }
 
-const POLL_S = 1;
+/** The least that the queue library takes. */
+const POLL_S = 0.5;
 const RESCUE_MS = 10_000;
 const STOP_MS = 15_000;
 const STOP_STEP_MS = 50;

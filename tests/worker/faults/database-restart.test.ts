@@ -1,4 +1,5 @@
 import { chmodSync, mkdtempSync, rmSync } from "node:fs";
+import { readdir } from "node:fs/promises";
 import { join } from "node:path";
 import { Readable } from "node:stream";
 import { setTimeout as delay } from "node:timers/promises";
@@ -23,6 +24,8 @@ import { startWorkerProcess } from "@tests/support/worker-process";
 
 /** Enough for a reading that takes longer than the order to restart. */
 const VEHICLES = 3000;
+/** Of some 200,000 rows: two workers share them. */
+const PIECE_ROWS = 20_000;
 
 let home: string;
 let server: { url: string; stop: () => Promise<void> };
@@ -97,7 +100,7 @@ describe("a connection that is lost while somebody holds it between two queries"
 });
 
 describe("PostgreSQL that goes down and comes up again while a file is read", () => {
-  it("leaves the tables as if it had not, with the same worker going on", async () => {
+  it("leaves the tables as if it had not, with the same two workers going on", async () => {
     const junctions = await receive("junctions", "junctions.csv", JUNCTIONS_CSV);
     await junctions.start();
     await ingestUpload(ctx, { uploadId: junctions.uploadId });
@@ -110,7 +113,8 @@ describe("PostgreSQL that goes down and comes up again while a file is read", ()
     expect(undisturbed.traversals.rows).toBe(VEHICLES);
     await forgetResults(database.db);
 
-    const worker = await startWorkerProcess({ databaseUrl: server.url, dataDir: join(home, "data") });
+    const place = { databaseUrl: server.url, dataDir: join(home, "data"), pieceRows: PIECE_ROWS };
+    const workers = [await startWorkerProcess(place), await startWorkerProcess(place)];
     try {
       await file.start();
       await untilState(file.uploadId, ["reading"]);
@@ -119,14 +123,18 @@ describe("PostgreSQL that goes down and comes up again while a file is read", ()
       expect(await stateOf(file.uploadId), "the restart came in the middle").toBe("reading");
       await database.db.execute(sql`update pgboss.job set started_on = now() - interval '1 minute' where state = 'active'`);
       await untilState(file.uploadId, ["done", "failed"]);
-      expect(worker.hasEnded(), worker.output()).toBe(false);
+      for (const worker of workers) expect(worker.hasEnded(), worker.output()).toBe(false);
       expect(await resultChecksums(database.db)).toEqual(undisturbed);
 
       const next = await receive("pings", "next.csv", crossingPings({ vehicles: 40, startMs: Date.parse("2026-03-04T08:00:00Z") }));
       await next.start();
       await untilState(next.uploadId, ["done"]);
+      await vi.waitFor(async () => {
+        expect((await database.db.execute(sql`select 1 from ingest_pieces`)).rows).toEqual([]);
+        expect(await readdir(join(home, "data/storage/pieces"))).toEqual([]);
+      }, 20_000);
     } finally {
-      await worker.kill();
+      for (const worker of workers) await worker.kill();
     }
   });
 });
