@@ -65,6 +65,8 @@ export const FileMapping = z.object({
   hasHeader: z.boolean(),
   /** Field to column number from 0; for GeoJSON field to property name. */
   columns: z.record(z.string(), z.union([z.number().int().min(0).max(199), z.string().max(100)])),
+  /** Names of the file's columns, as far as they go: by them a supplier's next file is read. */
+  header: z.array(z.string().max(100)).max(200).optional(),
   timeFormat: z.enum(TIME_FORMATS),
   /** Zone of local times; ignored where the file says its own. */
   timeZone: z.string(),

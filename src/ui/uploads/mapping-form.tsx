@@ -8,7 +8,7 @@ import { Button } from "@/ui/primitives/button";
 import { Field, Input } from "@/ui/primitives/field";
 import { DiscardButton } from "./discard-button";
 import { MappingSentence } from "./mapping-sentence";
-import { fieldList, missingFields } from "./mapping-state";
+import { fieldList, headerToKeep, missingFields } from "./mapping-state";
 import { PreviewTable } from "./preview-table";
 import { suppliersQuery, uploadsQuery, type SettledShape } from "./queries";
 import { startReading } from "./send-file";
@@ -43,7 +43,7 @@ export function MappingForm({ upload, detection, onReshape }: Props) {
     setError(null);
     setStarting(true);
     try {
-      await startReading(upload.id, mapping, supplier);
+      await startReading(upload.id, { ...mapping, header: headerToKeep(mapping, detection.header) }, supplier);
       await client.invalidateQueries({ queryKey: uploadsQuery().queryKey });
     } catch (failure) {
       setStarting(false);

@@ -54,10 +54,34 @@ export function fieldList(fields: readonly string[]): string {
   return names.length < 2 ? names.join("") : `${names.slice(0, -1).join(", ")} and ${names[names.length - 1]}`;
 }
 
-/** A supplier's mapping if it fits the file at hand: same format and shape, and no column beyond the file's. */
+/** What is kept of a header: names beyond these do not tell columns apart. */
+export function headerToKeep(mapping: FileMapping, header: readonly string[]): string[] | undefined {
+  return mapping.format === "csv" && !mapping.hasHeader ? undefined : header.slice(0, 200).map((name) => name.slice(0, 100));
+}
+
+/** A supplier's mapping if it fits the file at hand: same format and shape, and its columns among the file's, by name where they have names. */
 export function remembered(mapping: FileMapping | null, detected: FileMapping, header: readonly string[]): FileMapping | null {
   if (mapping === null || mapping.format !== detected.format) return null;
   if (mapping.format === "csv" && (mapping.delimiter !== detected.delimiter || mapping.hasHeader !== detected.hasHeader)) return null;
+  if (mapping.header && headerToKeep(mapping, header)) return byName(mapping, mapping.header, detected, header);
   const fits = (column: number | string) => (typeof column === "number" ? column < header.length : header.includes(column));
   return Object.values(mapping.columns).every(fits) ? mapping : null;
+}
+
+/** The earlier file's columns wherever they stand now, and those that it did not have as they were found. */
+function byName(before: FileMapping, namesBefore: readonly string[], found: FileMapping, header: readonly string[]): FileMapping | null {
+  const names = header.map((name) => name.slice(0, 100));
+  const columns: FileMapping["columns"] = {};
+  for (const [field, column] of Object.entries(before.columns)) {
+    const at = names.indexOf(typeof column === "number" ? namesBefore[column] : column);
+    if (at < 0) return null;
+    columns[field] = columnKey(before, header, at);
+  }
+  const used = new Set(Object.values(columns));
+  for (const [field, column] of Object.entries(found.columns)) {
+    const isNew = !namesBefore.includes(typeof column === "number" ? names[column] : column);
+    if (isNew && columns[field] === undefined && !used.has(column)) columns[field] = column;
+  }
+  const hadSpeed = before.columns.speed !== undefined;
+  return { ...before, columns, header: undefined, speedUnit: hadSpeed ? before.speedUnit : found.speedUnit };
 }

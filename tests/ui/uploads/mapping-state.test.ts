@@ -44,6 +44,19 @@ describe("a mapping in the form", () => {
     expect(remembered(null, CSV, HEADER)).toBeNull();
   });
 
+  it("reads a supplier's next file by the names of its columns", () => {
+    const before: FileMapping = { ...CSV, header: ["id", "when", "y", "x", "angle"], columns: { vehicle_id: 0, timestamp: 1, lat: 2, lon: 3 } };
+    const found: FileMapping = { ...CSV, speedUnit: "mph", columns: { lon: 0, lat: 1, vehicle_id: 2, timestamp: 3, speed: 4, heading: 5 } };
+    const next = remembered(before, found, ["x", "y", "id", "when", "speed_mph", "angle"]);
+    // Places by name; the speed is new, and its unit with it; the angle was there before and went unused.
+    expect(next?.columns).toEqual({ vehicle_id: 2, timestamp: 3, lat: 1, lon: 0, speed: 4 });
+    expect(next?.speedUnit).toBe("mph");
+    expect(remembered(before, found, ["x", "id", "when", "speed_mph"])).toBeNull();
+    const geojson: FileMapping = { ...CSV, format: "geojson", header: ["car", "at"], columns: { vehicle_id: "car", timestamp: "at" } };
+    const features: FileMapping = { ...geojson, columns: { timestamp: "at", heading: "course" } };
+    expect(remembered(geojson, features, ["at", "car", "course"])?.columns).toEqual({ vehicle_id: "car", timestamp: "at", heading: "course" });
+  });
+
   it("lists fields as a person would", () => {
     expect(fieldList(["lat"])).toBe("latitude");
     expect(fieldList(["timestamp", "lat", "lon"])).toBe("time, latitude and longitude");
