@@ -122,6 +122,7 @@ describe("a batch", () => {
   it.each([
     ["", "The batch is empty."],
     ["v1,2026-03-03T08:00:00Z,45.6,-38.3\n", "A batch of CSV begins with a header row, as vehicle_id,timestamp,lat,lon,speed_kmh,heading."],
+    ["[{}]", "This is a JSON array. Send one JSON object on each line, without brackets around them or commas between them."],
     ["vehicle_id,timestamp,lat,lon\nv1,2026-03-03 08:00:00,45.6,-38.3\n", "The times carry no zone. Send them as ISO 8601 with a zone or as milliseconds since 1970."],
     ["vehicle_id,when,lat,lon\nv1,soon,45.6,-38.3\n", "The file has no column for timestamp. Name the column or choose it in the mapping."],
     [gzipSync(Buffer.alloc(20_000_001, 32)), "The batch is larger than 20 MB unpacked. Send it in parts."],

@@ -15,7 +15,7 @@ export async function recordAudit(db: Db, ctx: Pick<Context, "actor" | "now">, e
   await db.insert(auditEvents).values({
     at: ctx.now,
     userId: actor.type === "user" ? actor.userId : null,
-    actor: actor.type === "user" ? actor.email : actor.type === "job" ? `worker: ${actor.job}` : "signed out",
+    actor: actor.type === "user" ? actor.email : actor.type === "job" ? `worker: ${actor.job}` : "somebody not signed in",
     action: entry.action,
     subject: entry.subject,
     detail: entry.detail ?? {},

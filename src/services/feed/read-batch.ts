@@ -10,6 +10,7 @@ import type { RowCounts } from "@/formats/row-tally";
 import type { VehicleNames } from "@/formats/vehicle-names";
 
 const OPENING_BRACE = 123;
+const OPENING_BRACKET = 91;
 
 /** The whole batch, unpacked. Throws a sentence for one that is empty, too large or damaged. */
 export async function unpackBatch(content: AsyncIterable<Uint8Array>): Promise<Buffer> {
@@ -32,6 +33,7 @@ export interface ReadBatch {
 /** One JSON object a line, or CSV with a header row; which of them it is shows in the first character. */
 export async function readBatch(bytes: Buffer, names: VehicleNames): Promise<ReadBatch> {
   const start = bytes.findIndex((byte) => byte > 32);
+  if (bytes[start] === OPENING_BRACKET) throw new AppError("invalid", "This is a JSON array. Send one JSON object on each line, without brackets around them or commas between them.");
   return bytes[start] === OPENING_BRACE ? readNdjsonPings(bytes, names) : readCsv(bytes, names);
 }
 

@@ -34,5 +34,5 @@ export async function getReport(ctx: Context, input: { reportId: string }): Prom
 
 export async function exportReport(ctx: Context, input: { reportId: string }): Promise<AsyncGenerator<string>> {
   const report = await getReport(ctx, input);
-  return screenCsv(report.result.rows, report.result.basis);
+  return screenCsv(report.result.rows, report.result.basis, report.query);
 }

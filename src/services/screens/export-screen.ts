@@ -29,7 +29,9 @@ const HEADER = [
   "vehicles_seen",
   "days_seen",
   "evidence",
+  "days",
   "period",
+  "movements",
   "first_date",
   "last_date",
   "method_version",
@@ -38,7 +40,8 @@ const HEADER = [
 const round = (value: number | null | undefined, digits: number): number | null =>
   value === null || value === undefined ? null : Number(value.toFixed(digits));
 
-export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["basis"]): AsyncGenerator<string> {
+/** Each row says what it is of, so that two files are told apart. */
+export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["basis"], query: Pick<ScreenQuery, "days" | "turn">): AsyncGenerator<string> {
   const period = `${clockText(basis.fromMin)}-${clockText(basis.toMin)}`;
   return csvText(
     HEADER,
@@ -66,7 +69,9 @@ export function screenCsv(rows: readonly RankedJunction[], basis: ScreenResult["
       row.vehicles,
       row.days,
       row.evidence,
+      query.days ?? null,
       period,
+      query.turn ?? null,
       basis.firstDate ?? null,
       basis.lastDate ?? null,
       basis.methodVersion,
@@ -79,5 +84,5 @@ export async function exportScreen(ctx: Context, input: ScreenQuery): Promise<As
   requirePermission(ctx, "screen.export");
   const query = ScreenQuery.parse(input);
   const { rows, basis } = await rankCity(ctx, query);
-  return screenCsv(applyScreenFilter(rows, query), basis);
+  return screenCsv(applyScreenFilter(rows, query), basis, query);
 }

@@ -3,6 +3,7 @@ import { addTracks } from "@/core/strips/add-tracks";
 import { drawableCellS } from "@/core/strips/cell-width";
 import { cellCentre, createStrip, specOfWindow, speedsOf } from "@/core/strips/strip";
 import { decodeTrackSet } from "@/core/strips/track-set";
+import { clockText } from "@/domain/local-time";
 import { csvText, type Cell } from "@/formats/csv/write-csv";
 import { requirePermission, type Context } from "../context";
 import { windowOf } from "../screens/score-city";
@@ -21,6 +22,9 @@ const HEADER = [
   "cell_width_s",
   "cell_height_m",
   "backward_wave_kmh",
+  "days",
+  "period",
+  "movements",
   "first_date",
   "last_date",
   "method_version",
@@ -59,6 +63,9 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
         cellS,
         query.cellM,
         waveKmh,
+        query.day === undefined ? query.days : "single",
+        `${clockText(fromMin)}-${clockText(toMin)}`,
+        query.turn,
         query.day ?? view.basis.firstDate,
         query.day ?? view.basis.lastDate,
         view.basis.methodVersion,

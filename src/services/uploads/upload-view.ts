@@ -26,7 +26,8 @@ export async function readUploads(db: Db, by: { id?: string }, limit: number): P
     .leftJoin(suppliers, eq(suppliers.id, uploads.supplierId))
     .leftJoin(users, eq(users.id, uploads.createdBy))
     .where(by.id === undefined ? undefined : eq(uploads.id, by.id))
-    .orderBy(desc(uploads.createdAt), desc(uploads.id))
+    // Files of one instant in the order in which they came.
+    .orderBy(desc(uploads.createdAt), desc(uploads.receivedNo))
     .limit(limit);
   return rows.map((row) => ({
     ...row,

@@ -71,6 +71,7 @@ export function DrawForm({ view, drawing, controls, actions, onSaved }: Props) {
         <Button onClick={controls.end} disabled={isBusy}>
           Leave as it was
         </Button>
+        {drawing.kind === "add" && name.trim() === "" ? <p className="self-center text-sm text-ink-soft">Still needed: a name.</p> : null}
       </div>
     </form>
   );

@@ -123,7 +123,7 @@ export function IntervalTable() {
 export function AccuracyTable({ sampling }: { sampling: (typeof MAIN_SAMPLINGS)[number] }) {
   const [share, every] = sampling.split(", ");
   return (
-    <RuledTable caption={`${share} of the vehicles, a ping every ${every}`} showCaption className="min-w-[54rem]">
+    <RuledTable caption={`${share} of the vehicles, a ping every ${every}`} showCaption className="min-w-[52rem]">
       <thead>
         <tr>
           <Th>network</Th>

@@ -25,7 +25,7 @@ const NARROW_PX = 720;
 /** Strip above, delay below on the same time axis; `tall` is the height of the strip itself. */
 export function layoutStrip(width: number, tall: number): StripLayout {
   const isNarrow = width < NARROW_PX;
-  const left = isNarrow ? 42 : 78;
+  const left = isNarrow ? 48 : 78;
   const right = isNarrow ? 30 : 286;
   const plot = { left, top: 14, width: Math.max(60, width - left - right), height: tall };
   const delay = { left, top: plot.top + tall + (isNarrow ? 60 : 64), width: plot.width, height: isNarrow ? 96 : 118 };

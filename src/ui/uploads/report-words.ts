@@ -42,7 +42,8 @@ function pingWords(report: IngestReport, locale: string, timeZone: string): stri
     words.push(`They come from ${counted(vehicles, "vehicle", "vehicles", locale)} on ${counted(trips ?? 0, "trip", "trips", locale)}, ${span}.`);
   }
   if (report.medianIntervalS !== undefined) words.push(intervalWords(report, locale));
-  if (traversals !== undefined) {
+  if (traversals === 0) words.push("No traversal was added.");
+  else if (traversals !== undefined) {
     const where = junctionsTotal === undefined ? "" : ` of ${formatNumber(junctionsCovered ?? 0, locale)} of the city's ${counted(junctionsTotal, "junction", "junctions", locale)}`;
     const onLegs = legsFound === undefined ? "" : `, on ${counted(legsFound, "leg", "legs", locale)},`;
     words.push(`${counted(traversals, "traversal", "traversals", locale)}${where}${onLegs} ${traversals === 1 ? "was" : "were"} added.`);

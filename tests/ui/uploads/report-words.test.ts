@@ -39,6 +39,11 @@ describe("a report in words", () => {
     ]);
   });
 
+  it("says so where a file brought nothing new", () => {
+    const report = { rowsRead: 2, accepted: 2, rejected: {}, samples: [], traversals: 0, junctionsCovered: 0, junctionsTotal: 9, legsFound: 0, knownTraversals: 3 };
+    expect(reportWords(report, "pings", "en-GB", "UTC")).toEqual(["2 rows were read: 2 accepted, none rejected.", "No traversal was added.", "3 traversals were known from an earlier file and left out."]);
+  });
+
   it("tells of junctions", () => {
     const report = { rowsRead: 1, accepted: 1, rejected: {}, samples: [], created: 1, updated: 0 };
     expect(reportWords(report, "junctions", "en-GB", "UTC")).toEqual([

@@ -5,5 +5,6 @@ import { exportStrip } from "@/services/strips/export-strip";
 
 export const GET = route<{ legId: string }>(async (ctx, { legId }, request) => {
   const query = stripQueryFromParams(Object.fromEntries(new URL(request.url).searchParams));
-  return csvResponse(await exportStrip(ctx, { legId, query }), `leg-${legId}-strip.csv`);
+  const parts = [query.day, query.turn === "any" ? undefined : query.turn].filter((part) => part !== undefined);
+  return csvResponse(await exportStrip(ctx, { legId, query }), `${["leg", legId, "strip", ...parts].join("-")}.csv`);
 });
