@@ -13,7 +13,9 @@ export function signedTurnDeg(fromDeg: number, toDeg: number): number {
 
 /** Unsigned angle between two bearings, 0 to 180 degrees. */
 export function angleBetweenDeg(aDeg: number, bDeg: number): number {
-  const d = Math.abs(aDeg - bDeg) % 360;
+  const apart = Math.abs(aDeg - bDeg);
+  // The remainder of floating numbers is slow, and mostly not needed.
+  const d = apart < 360 ? apart : apart % 360;
   return d > 180 ? 360 - d : d;
 }
 

@@ -5,15 +5,22 @@ export type Polyline = Float64Array;
 
 export function lengthOf(line: ArrayLike<number>): number {
   let length = 0;
-  for (let i = 2; i < line.length; i += 2) length += Math.hypot(line[i] - line[i - 2], line[i + 1] - line[i - 1]);
+  for (let i = 2; i < line.length; i += 2) length += stepOf(line, i);
   return length;
+}
+
+/** From the vertex before to the one whose x stands at i. Math.hypot is many times slower than a root. */
+function stepOf(line: ArrayLike<number>, i: number): number {
+  const dx = line[i] - line[i - 2];
+  const dy = line[i + 1] - line[i - 1];
+  return Math.sqrt(dx * dx + dy * dy);
 }
 
 /** Arc length from the first vertex to each vertex. */
 export function arcLengths(line: Polyline): Float64Array {
   const out = new Float64Array(line.length / 2);
   for (let i = 1; i < out.length; i++) {
-    out[i] = out[i - 1] + Math.hypot(line[2 * i] - line[2 * i - 2], line[2 * i + 1] - line[2 * i - 1]);
+    out[i] = out[i - 1] + stepOf(line, 2 * i);
   }
   return out;
 }
@@ -26,7 +33,7 @@ export function pointAt(line: Polyline, at: number): [number, number] {
   for (let i = 0; i < last; i++) {
     const dx = line[2 * i + 2] - line[2 * i];
     const dy = line[2 * i + 3] - line[2 * i + 1];
-    const length = Math.hypot(dx, dy);
+    const length = Math.sqrt(dx * dx + dy * dy);
     if (at <= from + length || i === last - 1) {
       const share = length > 0 ? (at - from) / length : 0;
       return [line[2 * i] + share * dx, line[2 * i + 1] + share * dy];
@@ -72,29 +79,52 @@ export interface Projection {
 
 /** Nearest point of a polyline, O(vertices). The end segments are not prolonged. */
 export function projectPoint(line: Polyline, x: number, y: number): Projection {
-  let best = Infinity;
-  let at = 0;
+  return projectWithin(line, x, y, 0, 0, line.length / 2 - 1);
+}
+
+/**
+ * Nearest point of the part of a polyline within `reachM` of the arc length `at`; `arcs` are the line's arcLengths.
+ * O(log vertices + vertices within reach).
+ */
+export function projectNear(line: Polyline, arcs: Float64Array, x: number, y: number, at: number, reachM: number): Projection {
+  const last = arcs.length - 1;
+  let low = 0;
+  let high = last;
+  // Invariant: the vertex `low` lies before the part, or is the first.
+  while (low + 1 < high) {
+    const mid = (low + high) >> 1;
+    if (arcs[mid] <= at - reachM) low = mid;
+    else high = mid;
+  }
+  let end = low + 1;
+  while (end < last && arcs[end] < at + reachM) end += 1;
+  return projectWithin(line, x, y, arcs[low], low, end);
+}
+
+/** Nearest point between two vertices, the first of them at arc length `from`. */
+function projectWithin(line: Polyline, x: number, y: number, from: number, first: number, last: number): Projection {
+  let best2 = Infinity;
+  let at = from;
   let offset = 0;
-  let from = 0;
-  for (let i = 0; i + 3 < line.length; i += 2) {
+  for (let i = 2 * first; i < 2 * last; i += 2) {
     const dx = line[i + 2] - line[i];
     const dy = line[i + 3] - line[i + 1];
-    const length = Math.hypot(dx, dy);
+    const length = Math.sqrt(dx * dx + dy * dy);
     if (length === 0) continue;
     const px = x - line[i];
     const py = y - line[i + 1];
     const along = Math.min(length, Math.max(0, (px * dx + py * dy) / length));
     const ex = px - (along * dx) / length;
     const ey = py - (along * dy) / length;
-    const distance = Math.hypot(ex, ey);
-    if (distance < best) {
-      best = distance;
+    const distance2 = ex * ex + ey * ey;
+    if (distance2 < best2) {
+      best2 = distance2;
       at = from + along;
-      offset = px * dy - py * dx >= 0 ? distance : -distance;
+      offset = px * dy - py * dx >= 0 ? 1 : -1;
     }
     from += length;
   }
-  return { at, offset };
+  return { at, offset: best2 < Infinity ? offset * Math.sqrt(best2) : 0 };
 }
 
 /** Douglas and Peucker's simplification: no dropped vertex lies farther than `toleranceM` from the result. */
@@ -142,5 +172,7 @@ function distanceToSegment(line: Polyline, first: number, last: number, i: numbe
   const py = line[2 * i + 1] - line[2 * first + 1];
   const length2 = dx * dx + dy * dy;
   const share = length2 > 0 ? Math.min(1, Math.max(0, (px * dx + py * dy) / length2)) : 0;
-  return Math.hypot(px - share * dx, py - share * dy);
+  const ex = px - share * dx;
+  const ey = py - share * dy;
+  return Math.sqrt(ex * ex + ey * ey);
 }

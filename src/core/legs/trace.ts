@@ -133,18 +133,21 @@ function look(
   grid: PingGrid, plane: Plane, scratch: Uint32Array, sign: number,
   x: number, y: number, ux: number, uy: number, along: number, side: number,
 ): Look {
-  const { trips } = grid;
+  const { lat, lon, headingDeg } = grid.trips;
   const outwardDeg = Math.atan2(ux, uy) / RAD;
-  const found = pingsAround(grid, latAt(plane, y), lonAt(plane, x), Math.max(along, side), plane, scratch);
+  const atLat = latAt(plane, y);
+  const atLon = lonAt(plane, x);
+  const found = pingsAround(grid, atLat, atLon, Math.max(along, side), plane, scratch);
   const seen = { count: 0, side: 0, ux: 0, uy: 0 };
   let total = 0;
   for (let n = 0; n < found; n++) {
     const i = scratch[n];
-    const dx = eastM(plane, trips.lon[i]) - x;
-    const dy = northM(plane, trips.lat[i]) - y;
+    const dx = (lon[i] - atLon) * plane.metresPerLon;
+    const dy = (lat[i] - atLat) * plane.metresPerLat;
     const right = dx * uy - dy * ux;
-    if (Math.abs(dx * ux + dy * uy) > along || Math.abs(right) > side) continue;
-    const heading = trips.headingDeg[i];
+    const ahead = dx * ux + dy * uy;
+    if (right > side || right < -side || ahead > along || ahead < -along) continue;
+    const heading = headingDeg[i];
     if (!(heading >= 0)) continue;
     const travelDeg = sign > 0 ? heading : heading + 180;
     const off = angleBetweenDeg(travelDeg, outwardDeg);

@@ -1,6 +1,6 @@
 import { angleBetweenDeg, signedTurnDeg } from "@/core/geometry/angles";
 import { eastM, northM } from "@/core/geometry/plane";
-import { projectPoint } from "@/core/geometry/polyline";
+import { arcLengths, projectNear } from "@/core/geometry/polyline";
 import { OFFSET_BIN_M } from "@/core/legs/refine";
 import type { StreetGraph } from "@/core/match/graph";
 import { matchTrips, type Chain } from "@/core/match/match-trips";
@@ -23,14 +23,19 @@ export interface Usage {
   /** Distance to the stop line at which each passage of a leg last stood, without those that wait inside the box to turn across. */
   heads: number[][];
   /** Sideways distances of moving pings from the line of each leg, and of each exit, by stretch of OFFSET_BIN_M. */
-  legOffsets: Offsets[];
-  exitOffsets: Offsets[];
+  legOffsets: LineOffsets[];
+  exitOffsets: LineOffsets[];
 }
 
 export interface Offsets {
   count: Uint32Array;
   /** Sum of offsets to the right of the line's direction of drawing, m. */
   sum: Float64Array;
+}
+
+export interface LineOffsets extends Offsets {
+  /** Arc lengths of the line's vertices. */
+  arcs: Float64Array;
 }
 
 /** Nearest to a junction at which speeds count as free of it, and from the upstream end, m. */
@@ -42,13 +47,15 @@ const MOVING_MS = 3;
 const ACROSS_DEG = 45;
 const HEAD_PAST_LINE_M = 12;
 const ALONG_DEG = 40;
+/** The place on a line beside a ping lies this near to its matched place, m. */
+const OFFSET_REACH_M = 25;
 
 /** Matches all trips and counts. O(pings). */
 export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
   const { network } = graph;
-  const offsets = (line: { lengthM: number }): Offsets => {
-    const bins = Math.ceil(line.lengthM / OFFSET_BIN_M) + 1;
-    return { count: new Uint32Array(bins), sum: new Float64Array(bins) };
+  const offsets = ({ line, lengthM }: { line: Float64Array; lengthM: number }): LineOffsets => {
+    const bins = Math.ceil(lengthM / OFFSET_BIN_M) + 1;
+    return { arcs: arcLengths(line), count: new Uint32Array(bins), sum: new Float64Array(bins) };
   };
   const usage: Usage = {
     leg: new Uint32Array(network.legs.length),
@@ -94,7 +101,7 @@ function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage
     const leg = graph.leg[link];
     const i = chain.pings[c];
     const speed = trips.speedMs[i];
-    if (speed >= MOVING_MS) addOffset(trips, i, link, graph, usage);
+    if (speed >= MOVING_MS) addOffset(trips, i, chain, c, graph, usage);
     if (leg < 0) continue;
     if (seenStep !== k && speed >= MOVING_MS && angleBetweenDeg(trips.headingDeg[i], graph.network.legs[leg].bearingDeg) < ALONG_DEG) {
       seenStep = k;
@@ -116,15 +123,17 @@ function keepHead(chain: Chain, step: number, head: number, graph: StreetGraph, 
   if (!isAcross) usage.heads[leg].push(head);
 }
 
-function addOffset(trips: Trips, i: number, link: number, graph: StreetGraph, usage: Usage): void {
+function addOffset(trips: Trips, i: number, chain: Chain, c: number, graph: StreetGraph, usage: Usage): void {
   const { legs, exits } = graph.network;
+  const link = chain.links[chain.step[c]];
   const leg = graph.leg[link];
   const plane = graph.planes[graph.home[link]];
-  const line = leg >= 0 ? legs[leg].line : exits[graph.exit[link]].line;
+  const { line, lengthM } = leg >= 0 ? legs[leg] : exits[graph.exit[link]];
   const offsets = leg >= 0 ? usage.legOffsets[leg] : usage.exitOffsets[graph.exit[link]];
-  const { at, offset } = projectPoint(line, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]));
-  const end = leg >= 0 ? legs[leg].lengthM : exits[graph.exit[link]].lengthM;
-  if (at <= 0 || at >= end) return;
+  // A leg is drawn from its stop line upstream, its link in the direction of travel.
+  const near = leg >= 0 ? graph.stopAt[link] - chain.position[c] : chain.position[c];
+  const { at, offset } = projectNear(line, offsets.arcs, eastM(plane, trips.lon[i]), northM(plane, trips.lat[i]), near, OFFSET_REACH_M);
+  if (at <= 0 || at >= lengthM) return;
   const bin = Math.floor(at / OFFSET_BIN_M);
   offsets.count[bin] += 1;
   offsets.sum[bin] += offset;
