@@ -20,6 +20,7 @@ export interface CatalogueIndex {
   junctionOfLeg: Uint32Array;
   movementByKey: ReadonlyMap<number, number>;
   legByKey: ReadonlyMap<number, number>;
+  junctionByKey: ReadonlyMap<number, number>;
 }
 
 const known = new WeakMap<Catalogue, CatalogueIndex>();
@@ -59,6 +60,7 @@ function build(catalogue: Catalogue): CatalogueIndex {
     junctionOfLeg,
     movementByKey: new Map(movements.map((m, k) => [m.key, k])),
     legByKey,
+    junctionByKey,
   };
 }
 

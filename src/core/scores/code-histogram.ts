@@ -1,6 +1,6 @@
-const CODES = 65_536;
-/** Codes of one coarse bin; 64 of them are a second of delay. */
-const BIN_SHIFT = 6;
+export const CODES = 65_536;
+/** A coarse bin holds as many codes as there are such bins: a walk to a code is as short as it can be. */
+const BIN_SHIFT = 8;
 const BIN = 2 ** BIN_SHIFT;
 
 /**
@@ -14,8 +14,21 @@ export interface CodeHistogram {
 
 export const COARSE_SHIFT = BIN_SHIFT;
 
-export function createHistogram(): CodeHistogram {
-  return { fine: new Uint32Array(CODES), coarse: new Uint32Array(CODES / BIN) };
+/** One or, one behind the other in the same arrays, several of them. */
+export function createHistogram(count = 1): CodeHistogram {
+  return { fine: new Uint32Array(count * CODES), coarse: new Uint32Array((count * CODES) / BIN) };
+}
+
+/** One of several. */
+export function histogramOf({ fine, coarse }: CodeHistogram, slot: number): CodeHistogram {
+  return { fine: fine.subarray(slot * CODES, (slot + 1) * CODES), coarse: coarse.subarray((slot * CODES) / BIN, ((slot + 1) * CODES) / BIN) };
+}
+
+/** How many codes it holds. O(bins). */
+export function countOf({ coarse }: CodeHistogram): number {
+  let count = 0;
+  for (let bin = 0; bin < coarse.length; bin++) count += coarse[bin];
+  return count;
 }
 
 /** O(bins in use). */
@@ -27,24 +40,11 @@ export function emptyHistogram({ fine, coarse }: CodeHistogram): void {
   }
 }
 
-export function countCodes({ fine, coarse }: CodeHistogram, codes: Uint16Array, from: number, to: number): void {
-  for (let i = from; i < to; i++) {
-    fine[codes[i]] += 1;
-    coarse[codes[i] >> BIN_SHIFT] += 1;
-  }
-}
-
-/** Counts codes `from` to `to` except zeros, which stand for "unknown"; returns how many there were. */
-export function countKnown({ fine, coarse }: CodeHistogram, codes: Uint16Array, from: number, to: number): number {
-  let known = 0;
-  for (let i = from; i < to; i++) {
-    const code = codes[i];
-    if (code === 0) continue;
-    fine[code] += 1;
-    coarse[code >> BIN_SHIFT] += 1;
-    known += 1;
-  }
-  return known;
+/** Returns 1: what it adds to a count. */
+export function addCode({ fine, coarse }: CodeHistogram, code: number): number {
+  fine[code] += 1;
+  coarse[code >> BIN_SHIFT] += 1;
+  return 1;
 }
 
 /**

@@ -21,6 +21,15 @@ export function createLevel(units: number, clusters: Clusters): DelayLevel {
   return { delay: createTally(units, clusters), sumSq: zeros(), stopped: zeros(), stops: zeros() };
 }
 
+/** Adds squares and stops of each unit to the unit that holds it; the tallies are filled cluster by cluster. O(units). */
+export function rollUp(from: DelayLevel, unitOf: Uint32Array, to: DelayLevel): void {
+  for (let u = 0; u < unitOf.length; u++) {
+    to.sumSq[unitOf[u]] += from.sumSq[u];
+    to.stopped[unitOf[u]] += from.stopped[u];
+    to.stops[unitOf[u]] += from.stops[u];
+  }
+}
+
 export interface LevelFigures {
   intervals: MeanIntervals;
   vehicles(unit: number): number;

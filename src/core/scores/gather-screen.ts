@@ -1,76 +1,69 @@
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
-import { createHistogram, countKnown, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
-import { createLevel, LEAST_FOR_MEDIAN, LEAST_FOR_P95, type DelayLevel } from "./delay-level";
+import { createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { QUARTERS, renumberDay, type DayByJunction } from "./day-by-junction";
+import { LEAST_FOR_MEDIAN, LEAST_FOR_P95, rollUp } from "./delay-level";
 import { createDistinctSets, type DistinctSets } from "./distinct-sets";
 import { ENOUGH_VEHICLES } from "./evidence";
-import { addSpill } from "./leg-level";
-import { addToTally, closeDayOf, closeQuarterOf, clustersFor, createTally, type Clusters, type RatioTally } from "./ratio-tally";
-import { entryAt, rowsOfDay, type RowsOfDay } from "./rows-of-day";
-import { delayOfCode, reachOfCode } from "./stored-figures";
-import { emptySums, sumStretch, type DelaySums } from "./sum-stretch";
-import type { ScoreFilter, ScreenDay } from "./types";
-
-/** All that one screen adds up, by the dense numbers of the catalogue index. */
-export interface GatheredScreen {
-  movements: DelayLevel;
-  legs: DelayLevel;
-  junctions: DelayLevel;
-  /** Of legs: seconds spilled by seconds observed. */
-  spill: RatioTally;
-  /** Of legs; NaN where nothing was seen. */
-  reachP95M: Float64Array;
-  /** Of junctions; NaN where too few were seen. */
-  medianS: Float64Array;
-  p95S: Float64Array;
-  /** Distinct vehicles, counted as far as evidence asks for them. */
-  distinct: Record<"movements" | "legs" | "junctions", Uint8Array>;
-  traversals: number;
-}
-
-interface DayOfScreen {
-  slice: ScreenDay;
-  rows: RowsOfDay;
-}
+import { fetchPassages } from "./fetch-ahead";
+import { gatherQueues } from "./gather-queues";
+import { emptyScreen, type GatheredScreen, type QuarterWindow } from "./gathered";
+import { addDayOf, addToTally, closeDayOf, closeQuarterOf, clustersFor, finishDays, type Clusters, type RatioTally } from "./ratio-tally";
+import { delayOfCode } from "./stored-figures";
+import { createSums, delaySqOf, emptySums, stopsIn, sumEntries, takeDelays, type EntrySums, type Taken } from "./sum-entries";
+import type { ScoreFilter } from "./types";
 
 interface Gathering {
   index: CatalogueIndex;
-  days: readonly DayOfScreen[];
-  /** Windows of the day, each one cluster: the whole one, or its quarters. */
-  windows: readonly { from: number; to: number }[];
-  closeCluster(tally: RatioTally, unit: number): void;
+  clusters: Clusters;
+  /** Each one cluster: the whole window of the day, or its quarters. */
+  windows: readonly QuarterWindow[];
+  /** 1 by dense movement. */
   isChosen: Uint8Array;
   out: GatheredScreen;
-  /** Scratch. */
+  /** Scratch, for one junction: 1 by number of the movement, and the sums of each. */
+  isWanted: Uint8Array;
+  sums: EntrySums;
+  taken: Taken;
   codes: CodeHistogram;
   vehicles: DistinctSets;
-  sums: DelaySums;
 }
 
 /**
  * One pass over the traversals of the window, junction by junction, so that all that is added up for one stays in the
- * processor's cache. O(days × movements + traversals and leg quarters of the window); a traversal takes 2 to 4 ns.
+ * processor's cache. O(days × movements + traversals and leg quarters of the window).
  */
-export function gatherScreen(days: readonly ScreenDay[], index: CatalogueIndex, filter: ScoreFilter): GatheredScreen {
+export function gatherScreen(days: readonly DayByJunction[], index: CatalogueIndex, filter: ScoreFilter): GatheredScreen {
   checkFilter(filter);
   const clusters = clustersFor(days.length);
+  const most = mostMovements(index);
   const gathering: Gathering = {
     index,
-    days: [...days].sort((a, b) => a.day - b.day).map((slice) => ({ slice, rows: rowsOfDay(slice, index) })),
+    clusters,
     windows: windowsOf(filter, clusters),
-    closeCluster: clusters === "days" ? closeDayOf : closeQuarterOf,
     isChosen: chosenTurns(index, filter),
     out: emptyScreen(index, clusters),
+    isWanted: new Uint8Array(256),
+    sums: createSums(most),
+    taken: { vehicles: 0, delayS: 0 },
     codes: createHistogram(),
-    vehicles: createDistinctSets(mostMovements(index), ENOUGH_VEHICLES),
-    sums: emptySums(),
+    vehicles: createDistinctSets(most, ENOUGH_VEHICLES),
   };
+  const ordered = [...days].sort((a, b) => a.day - b.day);
+  for (const day of ordered) renumberDay(day, index);
+  const whole = { from: filter.fromQuarter, to: filter.toQuarter };
   for (let junction = 0; junction < index.junctions.length; junction++) {
-    for (const day of gathering.days) addDay(gathering, day, junction);
+    beginJunction(gathering, junction);
+    fetchPassages(ordered, junction, whole);
+    for (const day of ordered) addDay(gathering, day, junction);
     finishJunction(gathering, junction);
   }
-  for (let leg = 0; leg < index.legs.length; leg++) addQueues(gathering, leg);
-  return gathering.out;
+  const { out } = gathering;
+  if (clusters === "days") for (const level of [out.movements, out.legs, out.junctions]) finishDays(level.delay);
+  rollUp(out.movements, index.legOf, out.legs);
+  rollUp(out.movements, index.junctionOf, out.junctions);
+  gatherQueues(ordered, index, gathering.windows, out);
+  return out;
 }
 
 function checkFilter({ fromQuarter, toQuarter }: ScoreFilter): void {
@@ -90,71 +83,62 @@ function chosenTurns(index: CatalogueIndex, { turn }: ScoreFilter): Uint8Array {
   return index.turnOf.map((own) => (wanted < 0 || own === wanted ? 1 : 0));
 }
 
-function emptyScreen(index: CatalogueIndex, clusters: Clusters): GatheredScreen {
-  const units = { movements: index.movements.length, legs: index.legs.length, junctions: index.junctions.length };
-  return {
-    movements: createLevel(units.movements, clusters),
-    legs: createLevel(units.legs, clusters),
-    junctions: createLevel(units.junctions, clusters),
-    spill: createTally(units.legs, clusters),
-    reachP95M: new Float64Array(units.legs),
-    medianS: new Float64Array(units.junctions).fill(NaN),
-    p95S: new Float64Array(units.junctions).fill(NaN),
-    distinct: { movements: new Uint8Array(units.movements), legs: new Uint8Array(units.legs), junctions: new Uint8Array(units.junctions) },
-    traversals: 0,
-  };
-}
-
 function mostMovements({ junctionOffset }: CatalogueIndex): number {
   return junctionOffset.reduce((most, offset, j) => Math.max(most, j === 0 ? 0 : offset - junctionOffset[j - 1]), 0);
 }
 
-function addDay(gathering: Gathering, { slice, rows }: DayOfScreen, junction: number): void {
-  const { index, out, windows } = gathering;
+function beginJunction({ index, isChosen, isWanted, sums, vehicles }: Gathering, junction: number): void {
+  isWanted.fill(0);
+  isWanted.set(isChosen.subarray(index.junctionOffset[junction], index.junctionOffset[junction + 1]));
+  emptySums(sums);
+  vehicles.begin(isWanted);
+}
+
+function addDay(gathering: Gathering, day: DayByJunction, junction: number): void {
+  const row = day.rowOf[junction];
+  if (row < 0) return;
+  const { windows, isWanted, sums, codes } = gathering;
   for (const window of windows) {
-    let [vehicles, delayS] = [0, 0];
-    for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) {
-      let [ofLeg, ofLegS] = [0, 0];
-      for (let u = index.legOffset[leg]; u < index.legOffset[leg + 1]; u++) {
-        const row = rows.movement[u];
-        if (row < 0 || gathering.isChosen[u] === 0) continue;
-        const from = entryAt(slice.quarter, slice.movementStart[row], slice.movementStart[row + 1], window.from);
-        const to = entryAt(slice.quarter, from, slice.movementStart[row + 1], window.to);
-        if (from === to) continue;
-        addStretch(gathering, slice, from, to, u, junction);
-        ofLeg += to - from;
-        ofLegS += gathering.sums.delayS;
-      }
-      closeWith(gathering, out.legs.delay, leg, ofLeg, ofLegS);
-      vehicles += ofLeg;
-      delayS += ofLegS;
-    }
-    closeWith(gathering, out.junctions.delay, junction, vehicles, delayS);
+    const from = day.passedStart[row * QUARTERS + window.from];
+    const to = day.passedStart[row * QUARTERS + window.to];
+    if (from === to) continue;
+    sumEntries(day.passed, from, to, isWanted, sums, codes);
+    gathering.vehicles.addEntries(day.passed, day.vehicle, from, to);
+    closeCluster(gathering, junction);
   }
-  if (out.junctions.delay.clusters === "quarters") closeUnits(gathering, junction);
+  if (gathering.clusters === "quarters") closeUnits(gathering, junction);
 }
 
-/** Adds traversals of one movement on one day to all that holds them, but for the clusters of leg and junction. */
-function addStretch(gathering: Gathering, slice: ScreenDay, from: number, to: number, u: number, junction: number): void {
-  const { index, out, codes, vehicles, sums } = gathering;
-  sumStretch(slice, from, to, codes, sums);
-  vehicles.add(u - index.junctionOffset[junction], slice.vehicle, from, to);
-  closeWith(gathering, out.movements.delay, u, sums.vehicles, sums.delayS);
-  addToLevel(out.movements, u, sums);
-  addToLevel(out.legs, index.legOf[u], sums);
-  addToLevel(out.junctions, junction, sums);
+/** Adds the sums to the movements of a junction, to its legs and to itself, as one cluster of each. */
+function closeCluster(gathering: Gathering, junction: number): void {
+  const { index, out, sums, taken } = gathering;
+  const first = index.junctionOffset[junction];
+  let vehicles = 0;
+  let delayS = 0;
+  for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) {
+    let ofLeg = 0;
+    let ofLegS = 0;
+    for (let u = index.legOffset[leg]; u < index.legOffset[leg + 1]; u++) {
+      if (sums.delays[u - first] === 0) continue;
+      takeDelays(sums, u - first, taken);
+      addCluster(gathering, out.movements.delay, u, taken.vehicles, taken.delayS);
+      ofLeg += taken.vehicles;
+      ofLegS += taken.delayS;
+    }
+    addCluster(gathering, out.legs.delay, leg, ofLeg, ofLegS);
+    vehicles += ofLeg;
+    delayS += ofLegS;
+  }
+  addCluster(gathering, out.junctions.delay, junction, vehicles, delayS);
 }
 
-function addToLevel(level: DelayLevel, unit: number, sums: DelaySums): void {
-  level.sumSq[unit] += sums.delaySq;
-  level.stopped[unit] += sums.stopped;
-  level.stops[unit] += sums.stops;
-}
-
-function closeWith({ closeCluster }: Gathering, tally: RatioTally, unit: number, base: number, total: number): void {
+function addCluster({ clusters }: Gathering, tally: RatioTally, unit: number, base: number, total: number): void {
   if (base === 0) return;
-  addToTally(tally, unit, base, total);
-  closeCluster(tally, unit);
+  if (clusters === "days") addDayOf(tally, unit, base, total);
+  else {
+    addToTally(tally, unit, base, total);
+    closeQuarterOf(tally, unit);
+  }
 }
 
 /** The day is over for a junction and all that belongs to it. */
@@ -164,37 +148,22 @@ function closeUnits({ index, out }: Gathering, junction: number): void {
   closeDayOf(out.junctions.delay, junction);
 }
 
-function finishJunction({ index, out, codes, vehicles }: Gathering, junction: number): void {
+function finishJunction({ index, out, codes, vehicles, sums }: Gathering, junction: number): void {
   const first = index.junctionOffset[junction];
   const count = out.junctions.delay.base[junction];
   if (count >= LEAST_FOR_MEDIAN) out.medianS[junction] = histogramQuantile(codes, count, 0.5, delayOfCode);
   if (count >= LEAST_FOR_P95) out.p95S[junction] = histogramQuantile(codes, count, 0.95, delayOfCode);
-  for (let u = first; u < index.junctionOffset[junction + 1]; u++) out.distinct.movements[u] = vehicles.count(u - first, u - first + 1);
+  for (let u = first; u < index.junctionOffset[junction + 1]; u++) {
+    const { stops, stopped } = stopsIn(sums, u - first);
+    out.movements.sumSq[u] = delaySqOf(sums, u - first);
+    out.movements.stops[u] = stops;
+    out.movements.stopped[u] = stopped;
+    out.distinct.movements[u] = vehicles.count(u - first, u - first + 1);
+  }
   for (let leg = index.junctionLegOffset[junction]; leg < index.junctionLegOffset[junction + 1]; leg++) {
     out.distinct.legs[leg] = vehicles.count(index.legOffset[leg] - first, index.legOffset[leg + 1] - first);
   }
   out.distinct.junctions[junction] = vehicles.count(0, index.junctionOffset[junction + 1] - first);
   out.traversals += count;
-  emptyHistogram(codes);
-  vehicles.clear();
-}
-
-function addQueues({ days, windows, out, codes, closeCluster }: Gathering, leg: number): void {
-  let known = 0;
-  for (const { slice, rows } of days) {
-    const row = rows.leg[leg];
-    if (row < 0) continue;
-    const end = slice.legStart[row + 1];
-    let to = entryAt(slice.legQuarter, slice.legStart[row], end, windows[0].from);
-    for (const window of windows) {
-      const from = to;
-      to = entryAt(slice.legQuarter, from, end, window.to);
-      known += countKnown(codes, slice.reach, from, to);
-      addSpill(out.spill, leg, slice, from, to);
-      closeCluster(out.spill, leg);
-    }
-    closeDayOf(out.spill, leg);
-  }
-  out.reachP95M[leg] = histogramQuantile(codes, known, 0.95, reachOfCode);
   emptyHistogram(codes);
 }

@@ -5,21 +5,18 @@ import { clusterVariance } from "./cluster-variance";
 import { histogramQuantile, type CodeHistogram } from "./code-histogram";
 import { addToTally, type RatioTally } from "./ratio-tally";
 import { reachOfCode, STEPS_PER_S } from "./stored-figures";
-import type { ScreenDay } from "./types";
 
 const QUARTER_S = 900;
 const NOTHING: Estimate = Object.freeze({ value: NaN, low: NaN, high: NaN });
 
-/** Adds the observed and spilled time of entries `from` to `to`; what is missing in one is left out. */
-export function addSpill(tally: RatioTally, unit: number, { spilled, observed }: ScreenDay, from: number, to: number): void {
-  let [seen, full] = [0, 0];
-  for (let k = from; k < to; k++) {
-    // Code 0 is unknown and code 1 is none.
-    if (observed[k] < 2 || spilled[k] === 0) continue;
-    seen += observed[k] - 1;
-    full += spilled[k] - 1;
-  }
-  if (seen > 0) addToTally(tally, unit, seen / STEPS_PER_S, full / STEPS_PER_S);
+/** Adds the observed and spilled time of one leg quarter, given by their codes, unless one of them is not known. */
+export function addSpill(tally: RatioTally, unit: number, observed: number, spilled: number): void {
+  if (isSpillKnown(observed, spilled)) addToTally(tally, unit, (observed - 1) / STEPS_PER_S, (spilled - 1) / STEPS_PER_S);
+}
+
+/** Code 0 is unknown and code 1 is none. */
+export function isSpillKnown(observed: number, spilled: number): boolean {
+  return observed > 1 && spilled > 0;
 }
 
 /**

@@ -57,6 +57,23 @@ export function addToTally(tally: RatioTally, unit: number, base: number, total:
   tally.open.total[unit] += total;
 }
 
+/**
+ * One whole day of a unit whose clusters are days: as adding and closing the day, but for what `finishDays` derives at
+ * the end. Base must be positive.
+ */
+export function addDayOf(tally: RatioTally, unit: number, base: number, total: number): void {
+  tally.base[unit] += base;
+  tally.total[unit] += total;
+  tally.count[unit] += 1;
+  addSquares(tally, unit, total, base);
+}
+
+/** After the last `addDayOf`. O(units). */
+export function finishDays(tally: RatioTally): void {
+  tally.days.set(tally.count);
+  tally.baseSq.set(tally.bb);
+}
+
 /** O(units); nothing to do where days are the clusters. */
 export function closeQuarter(tally: RatioTally): void {
   for (let u = 0; u < tally.base.length; u++) closeQuarterOf(tally, u);

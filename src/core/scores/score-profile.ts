@@ -1,14 +1,11 @@
 import type { Estimate } from "@/core/types";
-import { countKnown, createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { addCode, createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { placeOfLeg, placeOfMovement, QUARTERS, type DayByJunction } from "./day-by-junction";
 import { createLevel, figuresOf, type DelayLevel } from "./delay-level";
 import { addSpill, spillEstimate } from "./leg-level";
 import { addToTally, clustersFor, closeDay, createTally, type RatioTally } from "./ratio-tally";
-import { entryAt, rowOfKey } from "./rows-of-day";
 import { reachOfCode } from "./stored-figures";
-import { emptySums, sumStretch } from "./sum-stretch";
-import type { ScreenDay } from "./types";
-
-const QUARTERS = 96;
+import { createSums, delaySqOf, emptySums, stopsIn, sumEntries, takeDelays } from "./sum-entries";
 
 /** One quarter of the local day. */
 export interface ProfileQuarter {
@@ -28,15 +25,15 @@ export interface ProfileOf {
   legs: readonly number[];
 }
 
-/** Day profile of some movements and legs: always 96 quarters. O(days × movements + their traversals). */
-export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): ProfileQuarter[] {
+/** Day profile of some movements and legs: always 96 quarters. O(days × (movements + traversals of their junctions)). */
+export function scoreProfile(days: readonly DayByJunction[], of: ProfileOf): ProfileQuarter[] {
   const clusters = clustersFor(days.length);
   const level = createLevel(QUARTERS, clusters);
   const spill = createTally(QUARTERS, clusters);
   const codes = createHistogram();
   for (const day of [...days].sort((a, b) => a.day - b.day)) {
-    for (const key of of.movements) addMovement(level, day, rowOfKey(day.movement, key), codes);
-    for (const key of of.legs) addLeg(spill, day, rowOfKey(day.leg, key));
+    for (const [row, isWanted] of wantedByRow(day, of.movements, placeOfMovement)) addMovements(level, day, row, isWanted, codes);
+    for (const [row, isWanted] of wantedByRow(day, of.legs, placeOfLeg)) addLegs(spill, day, row, isWanted);
     for (const tally of [level.delay, spill]) closeDay(tally);
   }
   const figures = figuresOf(level, new Uint8Array(QUARTERS));
@@ -50,35 +47,56 @@ export function scoreProfile(days: readonly ScreenDay[], of: ProfileOf): Profile
   }));
 }
 
-function addMovement(level: DelayLevel, day: ScreenDay, row: number, codes: CodeHistogram): void {
-  if (row < 0) return;
-  const sums = emptySums();
-  for (let from = day.movementStart[row]; from < day.movementStart[row + 1]; ) {
-    const quarter = day.quarter[from];
-    const to = entryAt(day.quarter, from, day.movementStart[row + 1], quarter + 1);
-    sumStretch(day, from, to, codes, sums);
-    addToTally(level.delay, quarter, sums.vehicles, sums.delayS);
-    level.sumSq[quarter] += sums.delaySq;
-    level.stops[quarter] += sums.stops;
-    level.stopped[quarter] += sums.stopped;
-    from = to;
+/** For each row that has any of the keys: 1 for their numbers. */
+function wantedByRow(day: DayByJunction, keys: readonly number[], placeOf: typeof placeOfLeg): Map<number, Uint8Array> {
+  const rows = new Map<number, Uint8Array>();
+  for (const key of keys) {
+    const place = placeOf(day.index, key);
+    if (place === undefined || day.rowOf[place.junction] < 0) continue;
+    const isWanted = rows.get(day.rowOf[place.junction]) ?? new Uint8Array(256);
+    isWanted[place.number] = 1;
+    rows.set(day.rowOf[place.junction], isWanted);
+  }
+  return rows;
+}
+
+function addMovements(level: DelayLevel, day: DayByJunction, row: number, isWanted: Uint8Array, codes: CodeHistogram): void {
+  const sums = createSums(isWanted.length);
+  const taken = { vehicles: 0, delayS: 0 };
+  for (let quarter = 0; quarter < QUARTERS; quarter++) {
+    const [from, to] = [day.passedStart[row * QUARTERS + quarter], day.passedStart[row * QUARTERS + quarter + 1]];
+    if (from === to) continue;
+    emptySums(sums);
+    sumEntries(day.passed, from, to, isWanted, sums, codes);
+    isWanted.forEach((wanted, number) => {
+      if (wanted === 0 || sums.delays[number] === 0) return;
+      takeDelays(sums, number, taken);
+      const { stops, stopped } = stopsIn(sums, number);
+      addToTally(level.delay, quarter, taken.vehicles, taken.delayS);
+      level.sumSq[quarter] += delaySqOf(sums, number);
+      level.stops[quarter] += stops;
+      level.stopped[quarter] += stopped;
+    });
   }
 }
 
-function addLeg(spill: RatioTally, day: ScreenDay, row: number): void {
-  if (row < 0) return;
-  for (let k = day.legStart[row]; k < day.legStart[row + 1]; k++) addSpill(spill, day.legQuarter[k], day, k, k + 1);
+function addLegs(spill: RatioTally, day: DayByJunction, row: number, isWanted: Uint8Array): void {
+  for (let quarter = 0; quarter < QUARTERS; quarter++) {
+    for (let k = day.queueStart[row * QUARTERS + quarter]; k < day.queueStart[row * QUARTERS + quarter + 1]; k++) {
+      if (isWanted[day.ofLeg[k]] === 1) addSpill(spill, quarter, day.observed[k], day.spilled[k]);
+    }
+  }
 }
 
-function reachP95Of(days: readonly ScreenDay[], legs: readonly number[], quarter: number, codes: CodeHistogram): number {
+function reachP95Of(days: readonly DayByJunction[], legs: readonly number[], quarter: number, codes: CodeHistogram): number {
   emptyHistogram(codes);
   let known = 0;
   for (const day of days) {
-    for (const key of legs) {
-      const row = rowOfKey(day.leg, key);
-      if (row < 0) continue;
-      const from = entryAt(day.legQuarter, day.legStart[row], day.legStart[row + 1], quarter);
-      known += countKnown(codes, day.reach, from, entryAt(day.legQuarter, from, day.legStart[row + 1], quarter + 1));
+    for (const [row, isWanted] of wantedByRow(day, legs, placeOfLeg)) {
+      const first = row * QUARTERS + quarter;
+      for (let k = day.queueStart[first]; k < day.queueStart[first + 1]; k++) {
+        if (isWanted[day.ofLeg[k]] === 1 && day.reach[k] > 0) known += addCode(codes, day.reach[k]);
+      }
     }
   }
   return histogramQuantile(codes, known, 0.95, reachOfCode);

@@ -4,10 +4,12 @@ import { TURNS, type Estimate } from "@/core/types";
 import { indexCatalogue, type CatalogueIndex } from "./catalogue-index";
 import { figuresOf } from "./delay-level";
 import { evidenceOf } from "./evidence";
-import { gatherScreen, type GatheredScreen } from "./gather-screen";
+import { gatherScreen } from "./gather-screen";
+import type { GatheredScreen } from "./gathered";
 import { spillEstimate } from "./leg-level";
 import { shrinkByGroup, type ShrunkUnits } from "./shrink-by-group";
-import type { Catalogue, JunctionScore, LegScore, MovementScore, ScoreFilter, ScreenDay, ScreenScores } from "./types";
+import type { DayByJunction } from "./day-by-junction";
+import type { Catalogue, JunctionScore, LegScore, MovementScore, ScoreFilter, ScreenScores } from "./types";
 
 export interface ScoreOptions {
   /** Draws for the interval of ranks, at most 65535. */
@@ -27,7 +29,7 @@ const LEAST_OBSERVED_S = 900;
  * to 1/64 s, medians and percentiles exact order statistics of them. O(days × movements + traversals and leg quarters
  * of the window + draws × junctions).
  */
-export function scoreScreen(days: readonly ScreenDay[], catalogue: Catalogue, filter: ScoreFilter, options: Partial<ScoreOptions> = {}): ScreenScores {
+export function scoreScreen(days: readonly DayByJunction[], catalogue: Catalogue, filter: ScoreFilter, options: Partial<ScoreOptions> = {}): ScreenScores {
   const chosen: ScoreOptions = { ...DEFAULT_SCORE_OPTIONS, ...options };
   const index = indexCatalogue(catalogue);
   const gathered = gatherScreen(days, index, filter);

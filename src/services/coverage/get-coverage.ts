@@ -1,4 +1,5 @@
 import { sql } from "drizzle-orm";
+import { QUARTERS, type DayByJunction } from "@/core/scores/day-by-junction";
 import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
 import { isoFromDay } from "@/domain/local-time";
@@ -34,20 +35,7 @@ async function readCoverage(db: Db, catalogue: CityCatalogue): Promise<CoverageV
     .from(screenDays)
     .groupBy(screenDays.day)
     .orderBy(screenDays.day);
-  const { days } = await loadScreenDays(db, { days: "every" });
-
-  const everSeen = new Set<number>();
-  const seenOn = new Map<number, number>();
-  for (const day of days) {
-    const seen = new Set<number>();
-    for (const key of day.movement) {
-      const leg = catalogue.movements.get(key)?.legId;
-      const junction = leg === undefined ? undefined : catalogue.legs.get(leg)?.junctionId;
-      if (junction !== undefined) seen.add(junction);
-    }
-    seenOn.set(day.day, seen.size);
-    for (const id of seen) everSeen.add(id);
-  }
+  const { everSeen, seenOn } = await seenJunctions(db, catalogue);
   const uncovered = [...catalogue.junctions.values()].filter((junction) => !everSeen.has(junction.id));
   return {
     junctions: catalogue.junctions.size,
@@ -60,4 +48,25 @@ async function readCoverage(db: Db, catalogue: CityCatalogue): Promise<CoverageV
     })),
     uncovered: uncovered.slice(0, MOST_UNCOVERED).map(({ id, code, name }) => ({ id, code, name })),
   };
+}
+
+/** Junctions seen on any day, and how many on each: from the newest days back, as many at a time as memory holds. */
+async function seenJunctions(db: Db, catalogue: CityCatalogue): Promise<{ everSeen: Set<number>; seenOn: Map<number, number> }> {
+  const everSeen = new Set<number>();
+  const seenOn = new Map<number, number>();
+  for (let until: string | undefined; ; ) {
+    const { days, firstDay, daysLeftOut } = await loadScreenDays(db, { days: "every", until }, catalogue);
+    for (const day of days) {
+      const seen = passedJunctions(day);
+      seenOn.set(day.day, seen.length);
+      for (const id of seen) everSeen.add(id);
+    }
+    if (daysLeftOut === 0 || firstDay === null) return { everSeen, seenOn };
+    until = isoFromDay(firstDay - 1);
+  }
+}
+
+/** Junctions that somebody passed. */
+function passedJunctions({ junction, passedStart }: DayByJunction): number[] {
+  return [...junction].filter((_, row) => passedStart[row * QUARTERS] < passedStart[(row + 1) * QUARTERS]);
 }

@@ -24,7 +24,7 @@ export async function detailsOf(ctx: Context, when: WhenAndTurn, scored: ScoredC
   const key = JSON.stringify(of);
   const hit = known.get(key);
   if (hit) return hit;
-  const { days } = await loadScreenDays(ctx.db, when);
+  const { days } = await loadScreenDays(ctx.db, when, scored.catalogue);
   const window = { fromQuarter: scored.window.fromMin / 15, toQuarter: scored.window.toMin / 15 };
   const counted = of.movements.filter((id) => (scored.scores.movement(id)?.vehicles ?? 0) > 0);
   const details: Details = {

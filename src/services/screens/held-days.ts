@@ -1,9 +1,12 @@
+import { indexCatalogue } from "@/core/scores/catalogue-index";
+import { bytesOfDay, dayByJunction, type DayByJunction } from "@/core/scores/day-by-junction";
 import { mergeScreenDays } from "@/core/scores/merge-screen-days";
 import { decodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { ScreenDay } from "@/core/scores/types";
 import { poolOf } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
 import { readBlobs } from "@/db/read-blobs";
+import type { CityCatalogue } from "../catalogue/catalogue";
 
 /** The slices of one local day, by their keys in order. */
 export interface SlicesOfDay {
@@ -20,8 +23,10 @@ export const MOST_HELD_BYTES = 512 * 2 ** 20;
 
 interface HeldDay {
   ids: string;
-  day: ScreenDay;
+  day: DayByJunction;
   bytes: number;
+  /** Of the catalogue that the day was read with. */
+  version: number;
 }
 
 interface Held {
@@ -34,18 +39,18 @@ interface Held {
 const heldBy = new WeakMap<object, Held>();
 
 /**
- * Merged slices of the days, in their order, from memory as far as they are held, the others from the database; null
+ * The days, merged from their slices and ready to be scored, in their order, from memory as far as they are held, the others from the database; null
  * where some have been replaced meanwhile. A day of which slices came, went or changed is read anew, no other. All
  * days together must not exceed `MOST_HELD_BYTES`.
  */
-export async function holdDays(db: Db, wanted: readonly SlicesOfDay[]): Promise<ScreenDay[] | null> {
+export async function holdDays(db: Db, wanted: readonly SlicesOfDay[], catalogue: CityCatalogue): Promise<DayByJunction[] | null> {
   const held = heldBy.get(db) ?? { days: new Map<number, HeldDay>(), reading: Promise.resolve() };
   heldBy.set(db, held);
-  if (missingOf(held, wanted).length === 0) return collect(held, wanted);
+  if (missingOf(held, wanted, catalogue).length === 0) return collect(held, wanted);
   const reading = held.reading.then(async () => {
-    const missing = missingOf(held, wanted);
+    const missing = missingOf(held, wanted, catalogue);
     makeRoom(held, wanted, missing);
-    await readDays(db, held, missing);
+    await readDays(db, held, missing, catalogue);
     return collect(held, wanted);
   });
   // What failed is told to who asked for it.
@@ -57,13 +62,17 @@ function keyOf(ids: readonly number[]): string {
   return ids.join(",");
 }
 
-function missingOf(held: Held, wanted: readonly SlicesOfDay[]): SlicesOfDay[] {
-  return wanted.filter(({ day, ids }) => held.days.get(day)?.ids !== keyOf(ids));
+/** Also those that had movements which the catalogue of then did not list, and the present one may. */
+function missingOf(held: Held, wanted: readonly SlicesOfDay[], { version }: CityCatalogue): SlicesOfDay[] {
+  return wanted.filter(({ day, ids }) => {
+    const known = held.days.get(day);
+    return known?.ids !== keyOf(ids) || (known.day.hasUnlisted && known.version !== version);
+  });
 }
 
 /** Marks the days as asked for just now. */
-function collect(held: Held, wanted: readonly SlicesOfDay[]): ScreenDay[] | null {
-  const days: ScreenDay[] = [];
+function collect(held: Held, wanted: readonly SlicesOfDay[]): DayByJunction[] | null {
+  const days: DayByJunction[] = [];
   for (const { day, ids } of wanted) {
     const known = held.days.get(day);
     if (known?.ids !== keyOf(ids)) return null;
@@ -87,7 +96,7 @@ function makeRoom(held: Held, wanted: readonly SlicesOfDay[], missing: readonly 
   }
 }
 
-async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[]): Promise<void> {
+async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[], catalogue: CityCatalogue): Promise<void> {
   if (missing.length === 0) return;
   const dayOf = new Map(missing.flatMap((slices) => slices.ids.map((id) => [id, slices] as const)));
   const waiting = new Map<number, ScreenDay[]>();
@@ -98,7 +107,7 @@ async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[]): Pr
     waiting.set(day, slices);
     if (slices.length < ids.length) continue;
     waiting.delete(day);
-    const merged = mergeScreenDays(slices);
-    held.days.set(day, { ids: keyOf(ids), day: merged, bytes: merged.vehicle.buffer.byteLength });
+    const ready = dayByJunction(mergeScreenDays(slices), indexCatalogue(catalogue.keys));
+    held.days.set(day, { ids: keyOf(ids), day: ready, bytes: bytesOfDay(ready), version: catalogue.version });
   }
 }

@@ -38,7 +38,7 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
   // Nobody asks for scores of former data again.
   for (const [former, { catalogue: of }] of known) if (of.version < catalogue.version) known.delete(former);
 
-  const { days, ...data } = await loadScreenDays(ctx.db, query);
+  const { days, ...data } = await loadScreenDays(ctx.db, query, catalogue);
   const scores = scoreScreen(days, catalogue.keys, {
     fromQuarter: window.fromMin / 15,
     toQuarter: window.toMin / 15,

@@ -1,11 +1,12 @@
 import { sql } from "drizzle-orm";
 import { METHOD_VERSION } from "@/core/method-version";
-import type { ScreenDay } from "@/core/scores/types";
+import type { DayByJunction } from "@/core/scores/day-by-junction";
 import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
 import { AppError } from "@/domain/errors";
 import { dayFromIso, weekdayOf } from "@/domain/local-time";
 import type { DayType } from "@/domain/screen-choices";
+import type { CityCatalogue } from "../catalogue/catalogue";
 import { holdDays, MOST_HELD_BYTES, type SlicesOfDay } from "./held-days";
 
 interface Slice {
@@ -18,7 +19,7 @@ interface Slice {
 }
 
 export interface ScreenDays {
-  days: ScreenDay[];
+  days: DayByJunction[];
   firstDay: number | null;
   lastDay: number | null;
   medianIntervalS: number | null;
@@ -51,13 +52,13 @@ export function isChosenDay(day: number, choice: DateChoice): boolean {
  * beside each other. An upload or a leg that is matched anew replaces slices between the list and the reading; then
  * the list is read afresh.
  */
-export async function loadScreenDays(db: Db, choice: DateChoice): Promise<ScreenDays> {
+export async function loadScreenDays(db: Db, choice: DateChoice, catalogue: CityCatalogue): Promise<ScreenDays> {
   for (let run = 1; run <= MOST_RUNS; run++) {
     const chosen = (await listSlices(db)).filter((slice) => isChosenDay(slice.day, choice));
     const present = chosen.filter((slice) => slice.methodVersion === METHOD_VERSION);
     const all = byDay(present);
     const fitting = newestThatFit(all);
-    const days = await holdDays(db, fitting);
+    const days = await holdDays(db, fitting, catalogue);
     if (days === null) continue;
     const intervals = present.flatMap((slice) => (slice.medianIntervalS === null ? [] : [slice.medianIntervalS])).sort((a, b) => a - b);
     return {

@@ -5,11 +5,10 @@ import { QUARTER_MS } from "@/core/queues/options";
 import { buildScreenDays } from "@/core/scores/build-screen-days";
 import { mergeScreenDays } from "@/core/scores/merge-screen-days";
 import { decodeScreenDay, encodeScreenDay } from "@/core/scores/screen-day-codec";
-import { scoreScreen } from "@/core/scores/score-screen";
 import { delayCode, delayOfCode } from "@/core/scores/stored-figures";
 import type { ScreenDay, ScreenScores } from "@/core/scores/types";
 import { oneLeg, passing, stopping, traversalsOf, type TestCourse } from "../queues/one-leg";
-import { ALL_DAY, passagesOf } from "./small-city";
+import { ALL_DAY, passagesOf, scoreDays } from "./small-city";
 
 const UTC = [{ fromMs: 0, offsetMin: 0 }];
 const START = Date.UTC(2026, 5, 1, 6);
@@ -76,8 +75,8 @@ describe("slices of a screen", () => {
     fc.assert(
       fc.property(courses, fc.integer({ min: -48, max: 56 }), (all, quarters) => {
         const moved = all.map((course) => ({ ...course, enterMs: course.enterMs + quarters * QUARTER_MS }));
-        const here = scoreScreen(daysOf(all), CATALOGUE, ALL_DAY);
-        const there = scoreScreen(daysOf(moved, [{ fromMs: 0, offsetMin: -15 * quarters }]), CATALOGUE, ALL_DAY);
+        const here = scoreDays(daysOf(all), CATALOGUE, ALL_DAY);
+        const there = scoreDays(daysOf(moved, [{ fromMs: 0, offsetMin: -15 * quarters }]), CATALOGUE, ALL_DAY);
         expect(everything(there)).toEqual(everything(here));
       }),
       { numRuns: 40 },
@@ -87,7 +86,7 @@ describe("slices of a screen", () => {
   it("have a mean between the least and the greatest delay, inside its interval", () => {
     fc.assert(
       fc.property(courses, (all) => {
-        const [junction] = scoreScreen(daysOf(all), CATALOGUE, ALL_DAY).junctions;
+        const [junction] = scoreDays(daysOf(all), CATALOGUE, ALL_DAY).junctions;
         const delays = all.map((course) => delayOfCode(delayCode(course.delayS ?? 0)));
         expect(junction.vehicles).toBe(all.length);
         expect(junction.delay.value).toBeGreaterThanOrEqual(Math.min(...delays) - 1e-4);

@@ -4,6 +4,7 @@ import { QUARTER_MS } from "@/core/queues/options";
 import { scoreProfile } from "@/core/scores/score-profile";
 import { screenRows } from "@/core/scores/screen-rows";
 import { oneLeg, passing, stopping, traversalsOf } from "../queues/one-leg";
+import { daysByJunction } from "@/core/scores/day-by-junction";
 import { screenDay } from "./small-city";
 
 describe("scoreProfile", () => {
@@ -15,8 +16,13 @@ describe("scoreProfile", () => {
     screenDay(2, [{ movement: 1, delayS: 30 }], [{ leg: 9, reachM: 70, observedS: 900 }]),
   ];
 
+  const catalogue = {
+    movements: [1, 2, 3].map((key) => ({ key, leg: key === 3 ? 8 : 9, junction: 4, turn: "through" as const })),
+    legs: [8, 9].map((key) => ({ key, junction: 4, storageM: 200 })),
+  };
+
   it("has 96 quarters with the mean over days of the chosen movements, and their queues", () => {
-    const profile = scoreProfile(days, { movements: [1, 2], legs: [9] });
+    const profile = scoreProfile(daysByJunction(days, catalogue), { movements: [1, 2], legs: [9] });
     expect(profile.map((p) => p.quarter)).toEqual(Array.from({ length: 96 }, (_, q) => q));
     expect(profile[32]).toMatchObject({ vehicles: 3, days: 2, reachP95M: expect.closeTo(69, 6) });
     expect(profile[32].delay.value).toBe(20);

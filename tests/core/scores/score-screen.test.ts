@@ -1,8 +1,7 @@
 import { describe, expect, it } from "vitest";
-import { scoreScreen } from "@/core/scores/score-screen";
 import type { ScreenDay, ScreenScores } from "@/core/scores/types";
 import { normalRandom, seededRandom } from "@/core/stats/random";
-import { ALL_DAY, catalogueOf, passagesOf, screenDay, through, type Passage } from "./small-city";
+import { ALL_DAY, catalogueOf, passagesOf, scoreDays, screenDay, through, type Passage } from "./small-city";
 
 /** A city of five days: each junction's through movement with delays around its mean, as uniform waits at red are. */
 function city(means: number[], perDay: number, seed = 1): ScreenDay[] {
@@ -34,7 +33,7 @@ describe("scoreScreen", () => {
       screenDay(1, [{ movement: 101, delayS: 10, stops: 1, vehicle: 1 }, { movement: 101, delayS: 20, stops: 2, vehicle: 1 }, { movement: 102, delayS: -2, vehicle: 2 }]),
       screenDay(2, [{ movement: 101, delayS: 30, vehicle: 3, quarter: 40 }]),
     ];
-    const { movement, junctions, leg, traversals } = scoreScreen(days, catalogueOf(1), ALL_DAY);
+    const { movement, junctions, leg, traversals } = scoreDays(days, catalogueOf(1), ALL_DAY);
     expect(traversals).toBe(4);
     const straight = movement(101)!;
     expect(straight).toMatchObject({ vehicles: 3, distinctVehicles: 2, days: 2, stopsPerVehicle: 1, evidence: "none" });
@@ -52,7 +51,7 @@ describe("scoreScreen", () => {
 
   it("keeps to the window and the turn", () => {
     const days = [screenDay(1, [{ movement: 101, delayS: 10, quarter: 31 }, { movement: 101, delayS: 30, quarter: 32 }, { movement: 100, delayS: 90, quarter: 33 }, { movement: 101, delayS: 70, quarter: 34 }])];
-    const scores = (filter: Partial<typeof ALL_DAY>, turn: "left" | null = null): number => scoreScreen(days, catalogueOf(1), { ...ALL_DAY, ...filter, turn }).junctions[0].delay.value;
+    const scores = (filter: Partial<typeof ALL_DAY>, turn: "left" | null = null): number => scoreDays(days, catalogueOf(1), { ...ALL_DAY, ...filter, turn }).junctions[0].delay.value;
     expect(scores({ fromQuarter: 32, toQuarter: 34 })).toBe(60);
     expect(scores({ fromQuarter: 32, toQuarter: 33 })).toBe(30);
     expect(scores({}, "left")).toBe(90);
@@ -61,7 +60,7 @@ describe("scoreScreen", () => {
   });
 
   it("never reads missing data as no delay: junctions without evidence are listed and not ranked", () => {
-    const scores = scoreScreen(city([30, 20], 30), catalogueOf(3), ALL_DAY);
+    const scores = scoreDays(city([30, 20], 30), catalogueOf(3), ALL_DAY);
     expect(scores.junctions.map((j) => j.rank)).toEqual([1, 2, NaN]);
     expect(scores.junctions[2]).toMatchObject({ vehicles: 0, evidence: "none", hoursSeen: 0, worstLeg: -1 });
     expect(scores.junctions[2].spill).toEqual({ value: NaN, low: NaN, high: NaN });
@@ -70,9 +69,9 @@ describe("scoreScreen", () => {
 
   it("ignores movements and legs that the catalogue does not list, and takes no days at all", () => {
     const days = [screenDay(1, [{ movement: 999, delayS: 10 }], [{ leg: 999 }])];
-    expect(scoreScreen(days, catalogueOf(1), ALL_DAY).traversals).toBe(0);
-    expect(scoreScreen([], catalogueOf(2), ALL_DAY).junctions.map((j) => j.evidence)).toEqual(["none", "none"]);
-    expect(() => scoreScreen(days, { movements: [{ key: 1, leg: 5, junction: 1, turn: "left" }], legs: [] }, ALL_DAY)).toThrow(
+    expect(scoreDays(days, catalogueOf(1), ALL_DAY).traversals).toBe(0);
+    expect(scoreDays([], catalogueOf(2), ALL_DAY).junctions.map((j) => j.evidence)).toEqual(["none", "none"]);
+    expect(() => scoreDays(days, { movements: [{ key: 1, leg: 5, junction: 1, turn: "left" }], legs: [] }, ALL_DAY)).toThrow(
       "Movement 1 names leg 5, which the catalogue does not list.",
     );
   });
@@ -83,7 +82,7 @@ describe("scoreScreen", () => {
     const quiet = normal.length;
     const unlucky = screenDay(1, [20, 50, 80, 110, 140].map((delayS, vehicle) => ({ movement: through(quiet + 1), delayS, vehicle })));
     const both = [join(days[0], unlucky), ...days.slice(1)];
-    const { junctions } = scoreScreen(both, catalogueOf(quiet + 1), ALL_DAY);
+    const { junctions } = scoreDays(both, catalogueOf(quiet + 1), ALL_DAY);
     const raw = junctions[quiet];
     expect(raw.delay.value).toBe(80);
     expect(raw.evidence).toBe("none");
@@ -94,14 +93,14 @@ describe("scoreScreen", () => {
   });
 
   it("does not draw a well observed junction out of its own interval, however far it stands from the others", () => {
-    const { junctions } = scoreScreen(city([150, ...Array.from({ length: 30 }, (_, k) => 12 + k)], 25), catalogueOf(31), ALL_DAY);
+    const { junctions } = scoreDays(city([150, ...Array.from({ length: 30 }, (_, k) => 12 + k)], 25), catalogueOf(31), ALL_DAY);
     expect(junctions[0].shrunk.value).toBeGreaterThan(junctions[0].delay.low);
     expect(junctions[0].shrunk.value).toBeLessThan(junctions[0].delay.value);
     expect(junctions[0]).toMatchObject({ rank: 1, rankLow: 1, rankHigh: 1 });
   });
 
   it("ranks by shrunk delay, with an interval that holds the rank and is wide where junctions are alike", () => {
-    const { junctions } = scoreScreen(city([80, 30, 30.5, 31, 31.5, 8], 15), catalogueOf(6), ALL_DAY);
+    const { junctions } = scoreDays(city([80, 30, 30.5, 31, 31.5, 8], 15), catalogueOf(6), ALL_DAY);
     expect(junctions[0]).toMatchObject({ rank: 1, rankLow: 1, rankHigh: 1 });
     expect(junctions[5]).toMatchObject({ rank: 6, rankLow: 6, rankHigh: 6 });
     for (const alike of junctions.slice(1, 5)) {
@@ -115,13 +114,13 @@ describe("scoreScreen", () => {
 
   it("gives the same for the same seed and in any order of days", () => {
     const days = city([40, 35, 30], 20);
-    expect(everything(scoreScreen([...days].reverse(), catalogueOf(3), ALL_DAY), 3)).toEqual(everything(scoreScreen(days, catalogueOf(3), ALL_DAY), 3));
+    expect(everything(scoreDays([...days].reverse(), catalogueOf(3), ALL_DAY), 3)).toEqual(everything(scoreDays(days, catalogueOf(3), ALL_DAY), 3));
   });
 
   it("changes no mean, median or share when every vehicle is doubled", () => {
     const days = city([40, 35, 30], 20);
-    const doubled = scoreScreen(days.map((day) => join(day, day)), catalogueOf(3), ALL_DAY);
-    const once = scoreScreen(days, catalogueOf(3), ALL_DAY);
+    const doubled = scoreDays(days.map((day) => join(day, day)), catalogueOf(3), ALL_DAY);
+    const once = scoreDays(days, catalogueOf(3), ALL_DAY);
     means(doubled).forEach((value, k) => expect(value).toBeCloseTo(means(once)[k], 9));
     doubled.junctions.forEach((j, k) => {
       expect(j.vehicles).toBe(2 * once.junctions[k].vehicles);
@@ -138,7 +137,7 @@ describe("scoreScreen", () => {
         { movement: 102, delayS: 300, vehicle: day },
       ]),
     );
-    expect(scoreScreen(days, catalogueOf(1), ALL_DAY).junctions[0].worstMovement).toBe(100);
+    expect(scoreDays(days, catalogueOf(1), ALL_DAY).junctions[0].worstMovement).toBe(100);
   });
 
   it("finds the worst leg by its filled share, and spillback with an interval", () => {
@@ -154,7 +153,7 @@ describe("scoreScreen", () => {
         { leg: 3, quarter, reachM: 500, spilledS: NaN },
       ])),
     ];
-    const { junctions, leg } = scoreScreen(days, catalogue, ALL_DAY);
+    const { junctions, leg } = scoreDays(days, catalogue, ALL_DAY);
     const legs = [1, 2, 3].map((key) => leg(key)!);
     expect(junctions[0].worstLeg).toBe(2);
     expect(junctions[0].spill.value).toBeCloseTo(0.15, 12);
@@ -176,7 +175,7 @@ describe("the rank's interval", () => {
     let ranked = 0;
     for (let seed = 1; seed <= 12; seed++) {
       const truth = Array.from({ length: 25 }, () => Math.max(8, 35 + 12 * normal()));
-      const { junctions } = scoreScreen(city(truth, 12, seed), catalogueOf(25), ALL_DAY, { rankDraws: 300, seed });
+      const { junctions } = scoreDays(city(truth, 12, seed), catalogueOf(25), ALL_DAY, { rankDraws: 300, seed });
       junctions.forEach((j, k) => {
         const rank = 1 + truth.filter((value) => value > truth[k]).length;
         ranked++;

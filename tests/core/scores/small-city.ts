@@ -1,7 +1,9 @@
 import { METHOD_VERSION } from "@/core/method-version";
+import { daysByJunction } from "@/core/scores/day-by-junction";
+import { scoreScreen, type ScoreOptions } from "@/core/scores/score-screen";
 import { emptyScreenDay } from "@/core/scores/screen-day-columns";
 import { delayCode, delayOfCode, reachCode, secondsCode } from "@/core/scores/stored-figures";
-import type { Catalogue, ScreenDay } from "@/core/scores/types";
+import type { Catalogue, ScoreFilter, ScreenDay, ScreenScores } from "@/core/scores/types";
 import { TURNS } from "@/core/types";
 
 export interface Passage {
@@ -75,3 +77,8 @@ export function through(j: number): number {
 }
 
 export const ALL_DAY = { fromQuarter: 0, toQuarter: 96, turn: null };
+
+/** Scores of slices as they are stored. */
+export function scoreDays(days: readonly ScreenDay[], catalogue: Catalogue, filter: ScoreFilter, options?: Partial<ScoreOptions>): ScreenScores {
+  return scoreScreen(daysByJunction(days, catalogue), catalogue, filter, options);
+}

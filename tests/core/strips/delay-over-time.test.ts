@@ -1,4 +1,5 @@
 import { describe, expect, it } from "vitest";
+import { daysByJunction } from "@/core/scores/day-by-junction";
 import { scoreProfile } from "@/core/scores/score-profile";
 import { delayOverTime } from "@/core/strips/delay-over-time";
 import { crossingTimes } from "@/core/strips/track-crossings";
@@ -35,7 +36,8 @@ describe("delay over time", () => {
     const delays = [[12, 40, 3], [55, 9, 21], [30, 31, 18]];
     const set = setOf(delays.flatMap((ofDay, day) => ofDay.map((delay, k) => passing(day + 1, 8 * 3600 + 50 + 200 * k, delay))));
     const days = delays.map((ofDay, day) => screenDay(day + 1, ofDay.map((delayS) => ({ movement: 1, delayS }))));
-    const stored = scoreProfile(days, { movements: [1], legs: [] })[32].delay;
+    const catalogue = { movements: [{ key: 1, leg: 2, junction: 3, turn: "through" as const }], legs: [{ key: 2, junction: 3, storageM: 200 }] };
+    const stored = scoreProfile(daysByJunction(days, catalogue), { movements: [1], legs: [] })[32].delay;
     const read = delayOverTime(set, crossingTimes(set), 8 * 3600, 8 * 3600 + 900, 900);
     expect(read.meanS[0]).toBeCloseTo(stored.value, 6);
     expect(read.lowS[0]).toBeCloseTo(stored.low, 6);

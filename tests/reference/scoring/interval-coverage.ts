@@ -1,4 +1,5 @@
 import { buildScreenDays } from "@/core/scores/build-screen-days";
+import { daysByJunction } from "@/core/scores/day-by-junction";
 import { scoreScreen } from "@/core/scores/score-screen";
 import { legQuarters } from "@/core/queues/leg-quarters";
 
@@ -29,7 +30,7 @@ export function coverIntervals({ network, traversals, vehicles, input }: CoreRun
     movements: network.movements.map(({ leg, turn }, key) => ({ key, leg, junction: network.legs[leg].junction, turn })),
     legs: network.legs.map(({ junction, storageM }, key) => ({ key, junction, storageM })),
   };
-  const scores = scoreScreen(days, catalogue, { fromQuarter: 0, toQuarter: 96, turn: null }, { rankDraws: 10 });
+  const scores = scoreScreen(daysByJunction(days, catalogue), catalogue, { fromQuarter: 0, toQuarter: 96, turn: null }, { rankDraws: 10 });
   const matched = matchLegs(groupRows(input.rows.filter((row) => row.intervalStart === "all")), input.truth);
   const coverage = { inside: 0, intervals: 0 };
   for (const [leg, found] of matched) {
