@@ -17,6 +17,7 @@ import { raiseDataVersion } from "../catalogue/catalogue";
 import type { Context } from "../context";
 import { legEdits, LegsChanged, requireSameLegs } from "../legs/leg-edits";
 import { getSettings } from "../settings/get-settings";
+import { dropEdges, keepEdges, pingsAlong } from "./edges";
 import { failUpload, finishUpload } from "./finish-upload";
 import { learningSample, type LearningSample } from "./learning-sample";
 import { matchFile, type FileMatched } from "./match-file";
@@ -45,10 +46,12 @@ export async function ingestPings(ctx: Context, upload: PingUpload, signal?: Abo
         const report: IngestReport = { ...read.counts };
         return failUpload(ctx, upload.id, "No row of the file could be read as a ping; the report says why.", report, rejectsKey);
       }
+      await keepEdges(ctx, run, upload, read.pings, read.span, (share) => progress.tell("read", share, read.counts.rowsRead));
       await withAdvisoryLock(ctx.db, INGEST_LOCK, () => untilLegsStay((turn) => matchAndStore({ ctx, run, upload, read, rejectsKey, progress, turn })));
     });
   } catch (error) {
     await rejects.abandon();
+    await dropEdges(ctx, upload.id);
     throw error;
   }
 }
@@ -83,14 +86,16 @@ async function matchAndStore(reading: Reading): Promise<void> {
   const rows = read.counts.rowsRead;
   const seen = await legEdits(ctx.db);
   const prior = await readNetwork(ctx.db, points, settings.driveSide);
+  const along = await pingsAlong(ctx, run, upload, read.span, `along-${turn}`);
   await progress.tell("learn legs", 0.1, rows);
   const { network, sample } = await oneAtATime(async () => {
     const index = createH3Index();
     const { pings, ...sample } = await learningSample(run.store, read.pings, points, index);
     return { network: learnNetwork(pings, points, index, { driveSide: settings.driveSide }, prior), sample };
   });
-  const matched = await matchFile(ctx, run, network, read.pings, `network-${turn}`, {
+  const matched = await matchFile(ctx, run, network, [...read.pings, ...along.pings], `network-${turn}`, {
     cloudShare: sample.cloudShare,
+    span: along.span,
     tell: (share) => progress.tell("match", share, rows),
   });
   setReferencesFrom(network, matched.unhindered);
@@ -98,7 +103,7 @@ async function matchAndStore(reading: Reading): Promise<void> {
   const scene: Scene = { network, keys: await reserveKeys(ctx.db, network) };
   const tallied = await tallyFile(run, scene, matched, upload.id, settings.timeZone, `scene-${turn}`, (share) => progress.tell("score", share, rows));
   await makePartitions(ctx.db, tallied.days.keys());
-  await store({ ...reading, points, seen, scene, matched, tallied, sample });
+  await store({ ...reading, points, seen, scene, matched, tallied, sample, remarks: along.remarks });
 }
 
 interface Result extends Reading {
@@ -109,6 +114,7 @@ interface Result extends Reading {
   matched: FileMatched;
   tallied: FileTallied;
   sample: Omit<LearningSample, "pings">;
+  remarks: string[];
 }
 
 async function store(result: Result): Promise<void> {
@@ -153,7 +159,7 @@ async function storeClouds(db: Db, uploadId: string, points: readonly KeyedPoint
   for (let i = 0; i < rows.length; i += CLOUDS_PER_STATEMENT) await db.insert(pingClouds).values(rows.slice(i, i + CLOUDS_PER_STATEMENT));
 }
 
-function reportOf({ read, matched, tallied, scene: { network }, sample }: Result): IngestReport {
+function reportOf({ read, matched, tallied, scene: { network }, sample, remarks }: Result): IngestReport {
   const counts: RowCounts = read.counts;
   const used = legsUsed(network, tallied);
   return {
@@ -168,12 +174,13 @@ function reportOf({ read, matched, tallied, scene: { network }, sample }: Result
     junctionsCovered: new Set(used.map((leg) => network.legs[leg].junction)).size,
     junctionsTotal: network.junctions.length,
     legsFound: used.length,
-    firstAt: new Date(matched.firstMs).toISOString(),
-    lastAt: new Date(matched.lastMs).toISOString(),
+    firstAt: new Date(read.span.firstMs).toISOString(),
+    lastAt: new Date(read.span.lastMs).toISOString(),
     medianIntervalS: Number.isFinite(sample.medianIntervalS) ? sample.medianIntervalS : undefined,
     penetration: Number.isFinite(tallied.penetration) ? tallied.penetration : undefined,
     hasSpeed: sample.hasSpeed,
     hasHeading: sample.hasHeading,
+    remarks: remarks.length > 0 ? remarks : undefined,
   };
 }
 

@@ -45,7 +45,7 @@ export async function ingestUpload(ctx: Context, input: { uploadId: string }, ru
   if (!mapping) throw new TypeError(`Upload ${upload.id} was started without a mapping.`);
   const ready = { ...upload, mapping };
   if (feedHour !== null && supplierId !== null) {
-    return readInHour(ctx, ready, { uploadId: upload.id, storageKey: upload.storageKey, supplierId, feedHour }, run);
+    return readInHour(ctx, { ...ready, supplierId: null }, { uploadId: upload.id, storageKey: upload.storageKey, supplierId, feedHour }, run);
   }
   if (upload.state !== "done") await readIn(ctx, ready, run);
 }
@@ -66,6 +66,7 @@ interface ReadyUpload {
   kind: UploadKind;
   storageKey: string;
   mapping: FileMapping;
+  supplierId: number | null;
 }
 
 async function readIn(ctx: Context, upload: ReadyUpload, run?: IngestRun, prepare?: () => Promise<void>): Promise<void> {

@@ -5,6 +5,7 @@ import { pieceSizes } from "./pieces/piece-sizes";
 import { encodeRecord } from "./pieces/records";
 import type { Run, Tell } from "./pieces/run";
 import { matchVehicles, sliceOfLeg, type Totals, type VehiclesMatched } from "./steps/match-vehicles";
+import type { Span } from "./steps/cut-time";
 import { cutSlots, type SlottedPings } from "./steps/ping-slots";
 import type { ObjectRange } from "./steps/tally-legs";
 
@@ -24,6 +25,8 @@ export interface FileMatched {
 export interface MatchSteps {
   /** 1 for each leg whose traversals are wanted; all where absent. */
   wanted?: Uint8Array;
+  /** What ended before or began after is left out; nothing where absent. */
+  span?: Span;
   /** By junction: share of its pings that may be among its sample; no sample where absent. */
   cloudShare?: Float64Array;
   tell: Tell;
@@ -34,7 +37,7 @@ export async function matchFile(ctx: Context, run: Run, network: Network, pings:
   const sizes = pieceSizes(ctx);
   await run.store.put(name, [encodeRecord(network)]);
   const cuts = cutSlots(pings, sizes.pings, run.isShared ? sizes.least : 1);
-  const inputs = cuts.map((vehicles) => ({ network: name, vehicles, wanted: steps.wanted ?? null, cloudShare: steps.cloudShare ?? null }));
+  const inputs = cuts.map((vehicles) => ({ network: name, vehicles, wanted: steps.wanted ?? null, span: steps.span ?? null, cloudShare: steps.cloudShare ?? null }));
   const parts = await run.perform(matchVehicles, inputs, steps.tell);
   const totals: Totals = { pings: 0, duplicates: 0, jumps: 0, trips: 0, incompleteTraversals: 0 };
   for (const part of parts) for (const key of Object.keys(totals) as (keyof Totals)[]) totals[key] += part.totals[key];

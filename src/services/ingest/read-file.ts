@@ -7,6 +7,7 @@ import type { Context } from "../context";
 import { pieceSizes } from "./pieces/piece-sizes";
 import { decodeRecord } from "./pieces/records";
 import type { Run, Tell } from "./pieces/run";
+import type { Span } from "./steps/cut-time";
 import { rangesOf } from "./steps/file-ranges";
 import type { Place } from "./steps/near-cells";
 import type { SlottedPings } from "./steps/ping-slots";
@@ -16,6 +17,8 @@ export interface PingUpload {
   id: string;
   storageKey: string;
   mapping: FileMapping;
+  /** Null where nobody is named, and for a feed, which looks after its own seams. */
+  supplierId: number | null;
 }
 
 /** By how much files of pings shrink at most when they are packed. */
@@ -34,6 +37,8 @@ export async function isLarge(ctx: Context, { storageKey }: PingUpload): Promise
 export interface FileRead {
   counts: RowCounts;
   pings: SlottedPings[];
+  /** Of the first and the last ping in time. */
+  span: Span;
 }
 
 export interface ReadSteps {
@@ -55,6 +60,13 @@ export async function readFile(ctx: Context, run: Run, { storageKey, mapping }: 
   return join(run, parts as RowsRead[], steps);
 }
 
+function spanOf(pings: readonly SlottedPings[]): Span {
+  return {
+    firstMs: pings.reduce((least, object) => Math.min(least, object.firstMs), Infinity),
+    lastMs: pings.reduce((most, object) => Math.max(most, object.lastMs), -Infinity),
+  };
+}
+
 async function join(run: Run, parts: readonly RowsRead[], { onReject }: ReadSteps): Promise<FileRead> {
   const counts: RowCounts = { rowsRead: 0, accepted: 0, rejected: {}, samples: [] };
   let line = 0;
@@ -71,5 +83,6 @@ async function join(run: Run, parts: readonly RowsRead[], { onReject }: ReadStep
   }
   const { maxRows } = PING_READ_DEFAULTS;
   if (counts.rowsRead > maxRows) throw unusable(`The file has more than ${maxRows} rows. Send it in parts.`);
-  return { counts, pings: parts.flatMap((part) => part.pings) };
+  const pings = parts.flatMap((part) => part.pings);
+  return { counts, pings, span: spanOf(pings) };
 }

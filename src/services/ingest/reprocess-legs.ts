@@ -17,12 +17,14 @@ import { raiseDataVersion } from "../catalogue/catalogue";
 import type { Context } from "../context";
 import { legEdits, LegsChanged, requireSameLegs } from "../legs/leg-edits";
 import { getSettings } from "../settings/get-settings";
+import { pingsAlong } from "./edges";
 import { matchFile } from "./match-file";
 import { INGEST_LOCK, readJunctionPoints, readNetwork, storeNetwork, type KeyedPoint, type NetworkKeys } from "./network-rows";
 import { pingFiles } from "./ping-files";
 import { withRun, type Run } from "./pieces/run";
 import { isLarge, readFile, type PingUpload } from "./read-file";
 import { rowsOf, scoreQueues, slicesOf, tallyFile, type FileTallied } from "./score-file";
+import type { Span } from "./steps/cut-time";
 import type { DaySlice, Scene } from "./steps/tally-legs";
 import { copyTraversals, makePartitions } from "./store-traversals";
 
@@ -92,12 +94,13 @@ async function prepare(ctx: Context, junctionIds: number[]): Promise<Job | null>
 }
 
 /** False where the file has no ping near the junctions. */
-async function rematchUpload(ctx: Context, upload: PingUpload, job: Job, isFirst: boolean, signal: AbortSignal | undefined): Promise<boolean> {
+async function rematchUpload(ctx: Context, upload: PingUpload & { span: Span }, job: Job, isFirst: boolean, signal: AbortSignal | undefined): Promise<boolean> {
   const tell = async () => signal?.throwIfAborted();
   return withRun(ctx, upload.id, await isLarge(ctx, upload), async (run) => {
     const { pings } = await readFile(ctx, run, upload, { near: job.near, tell });
     if (pings.length === 0) return false;
-    const matched = await matchFile(ctx, run, job.network, pings, "network", { wanted: job.touched, tell });
+    const along = await pingsAlong(ctx, run, upload, upload.span, "along");
+    const matched = await matchFile(ctx, run, job.network, [...pings, ...along.pings], "network", { wanted: job.touched, span: along.span, tell });
     setTouchedReferences(job, matched.unhindered, isFirst);
     const scene: Scene = { network: job.network, keys: job.keys };
     const tallied = await tallyFile(run, scene, matched, upload.id, job.timeZone, "scene", tell);

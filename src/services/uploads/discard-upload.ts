@@ -4,6 +4,7 @@ import { uploads } from "@/db/schema";
 import { AppError, notFound } from "@/domain/errors";
 import { recordAudit } from "../audit/record-audit";
 import { requirePermission, type Context } from "../context";
+import { dropEdges } from "../ingest/edges";
 
 /** Forgets a file of which nothing was read in: one whose columns were never confirmed, or that failed. */
 export async function discardUpload(ctx: Context, input: { uploadId: string }): Promise<{ uploadId: string }> {
@@ -27,5 +28,6 @@ export async function discardUpload(ctx: Context, input: { uploadId: string }): 
     return [upload.storageKey, upload.rejectsKey];
   });
   for (const key of keys) if (key !== null) await ctx.storage.remove(key);
+  await dropEdges(ctx, uploadId);
   return { uploadId };
 }

@@ -6,7 +6,7 @@ import type { ByteRange, Storage } from "@/storage/storage";
 export interface PieceStore {
   /** Differs from that of every other store: what a process remembers of an object goes by it. */
   readonly id: string;
-  put(name: string, chunks: Iterable<Uint8Array>): Promise<void>;
+  put(name: string, chunks: Iterable<Uint8Array> | AsyncIterable<Uint8Array>): Promise<void>;
   /** The object, or some of its bytes. */
   read(name: string, range?: ByteRange): Promise<Uint8Array>;
   stream(name: string): AsyncIterable<Uint8Array>;
@@ -21,7 +21,9 @@ export function memoryPieces(id: string): PieceStore {
   return {
     id,
     async put(name, chunks) {
-      objects.set(name, plain([...chunks]));
+      const all: Uint8Array[] = [];
+      for await (const chunk of chunks) all.push(chunk);
+      objects.set(name, plain(all));
     },
     async read(name, range) {
       const bytes = objectOf(name);

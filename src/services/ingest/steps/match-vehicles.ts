@@ -7,6 +7,7 @@ import { filterTraversals, pickOpenTracks, pickTraversals } from "../join-traver
 import type { PieceKind } from "../pieces/piece-kind";
 import { lengthAndRecord, offsetsOf } from "../pieces/records";
 import { remembered } from "../pieces/remembered";
+import type { Span } from "./cut-time";
 import { readSlots, type SlotRange } from "./ping-slots";
 
 export interface VehiclesToMatch {
@@ -15,6 +16,8 @@ export interface VehiclesToMatch {
   vehicles: SlotRange[];
   /** 1 for each leg whose traversals are wanted; all where null. */
   wanted: Uint8Array | null;
+  /** What ended before or began after is left out; nothing where null. */
+  span: Span | null;
   /** By junction: share of its pings that may be among its sample; no sample where null. */
   cloudShare: Float64Array | null;
 }
@@ -63,9 +66,11 @@ export const matchVehicles: PieceKind<VehiclesToMatch, VehiclesMatched> = {
     const { pings, hashes } = await readSlots(bench.store, input.vehicles);
     const { network, match, sampler } = await remembered(bench.store, input.network, "matching", toMatch);
     const { traversals: all, openTracks, report, facts } = match(pings);
-    const { wanted } = input;
-    const traversals = wanted ? filterTraversals(all, (i) => wanted[network.movements[all.movement[i]].leg] === 1) : all;
-    const sections = slice(network, traversals, openTracks, hashes, wanted);
+    const { wanted, span } = input;
+    const isAsked = (leg: number, fromMs: number, toMs: number) => (!wanted || wanted[leg] === 1) && (!span || (toMs >= span.firstMs && fromMs <= span.lastMs));
+    const traversals = filterTraversals(all, (i) => isAsked(network.movements[all.movement[i]].leg, all.enterMs[i], all.exitMs[i]));
+    const lost = openTracks.enterMs.map((_, i) => i).filter((i) => isAsked(openTracks.leg[i], openTracks.enterMs[i], endOf(openTracks, i)));
+    const sections = slice(network, traversals, openTracks, lost, hashes);
     const name = `${bench.name}.legs`;
     await bench.store.put(name, sections);
     const [firstMs, lastMs] = spanOf(pings);
@@ -123,18 +128,18 @@ function flat(seconds: number[][]): VehiclesMatched["unhindered"] {
   return { counts, seconds: all };
 }
 
-function slice(network: Network, traversals: Traversals, open: OpenTracks, hashes: BigInt64Array, wanted: Uint8Array | null): Uint8Array[] {
+/** When the vehicle was last seen on the leg. */
+function endOf(open: OpenTracks, i: number): number {
+  return open.enterMs[i] + open.trackT[open.trackOffset[i + 1] - 1] * 1000;
+}
+
+/** The traversals and the chosen ones of the open tracks, slice by slice of the legs. */
+function slice(network: Network, traversals: Traversals, open: OpenTracks, chosenOpen: ArrayLike<number>, hashes: BigInt64Array): Uint8Array[] {
   const { slices, of } = sliceOfLeg(network);
-  const dealt = (length: number, legOf: (i: number) => number): number[][] => {
-    const lists: number[][] = Array.from({ length: slices }, () => []);
-    for (let i = 0; i < length; i++) {
-      const leg = legOf(i);
-      if (wanted === null || wanted[leg] === 1) lists[of(leg)].push(i);
-    }
-    return lists;
-  };
-  const passed = dealt(traversals.length, (i) => network.movements[traversals.movement[i]].leg);
-  const lost = dealt(open.length, (i) => open.leg[i]);
+  const passed: number[][] = Array.from({ length: slices }, () => []);
+  const lost: number[][] = Array.from({ length: slices }, () => []);
+  for (let i = 0; i < traversals.length; i++) passed[of(network.movements[traversals.movement[i]].leg)].push(i);
+  for (let k = 0; k < chosenOpen.length; k++) lost[of(open.leg[chosenOpen[k]])].push(chosenOpen[k]);
   return passed.map((some, s) => {
     if (some.length === 0 && lost[s].length === 0) return new Uint8Array(0);
     const part: LegPart = {

@@ -13,6 +13,9 @@ export interface SlottedPings {
   offsets: Float64Array;
   /** Pings by slot. */
   pings: Uint32Array;
+  /** Of its first and last ping in time. */
+  firstMs: number;
+  lastMs: number;
 }
 
 /** Vehicles and pings of a slot, then hashes, then pings by vehicle, then rows of four float64 (the last: two float32). */
@@ -61,7 +64,11 @@ export async function writeSlots(store: PieceStore, name: string, pings: PingCol
   }
   const wide = new Float64Array(buffer);
   const narrow = new Float32Array(buffer);
+  let firstMs = Infinity;
+  let lastMs = -Infinity;
   for (let i = 0; i < pings.length; i++) {
+    if (pings.tMs[i] < firstMs) firstMs = pings.tMs[i];
+    if (pings.tMs[i] > lastMs) lastMs = pings.tMs[i];
     const row = nextRow[pings.vehicle[i]];
     nextRow[pings.vehicle[i]] = row + ROW_BYTES / 8;
     wide[row] = pings.tMs[i];
@@ -71,7 +78,7 @@ export async function writeSlots(store: PieceStore, name: string, pings: PingCol
     narrow[2 * row + 7] = pings.headingDeg[i];
   }
   await store.put(name, [new Uint8Array(buffer)]);
-  return { name, offsets, pings: pingsIn };
+  return { name, offsets, pings: pingsIn, firstMs, lastMs };
 }
 
 /** Some slots of an object. */

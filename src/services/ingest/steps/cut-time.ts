@@ -1,0 +1,39 @@
+import type { PingColumns } from "@/core/types";
+import { emptyColumns } from "@/formats/pings/ping-columns";
+import type { PieceKind } from "../pieces/piece-kind";
+import { readSlots, writeSlots, type SlottedPings } from "./ping-slots";
+
+/** From a moment on, up to another, both included. */
+export interface Span {
+  firstMs: number;
+  lastMs: number;
+}
+
+export interface PingsToCut {
+  pings: SlottedPings;
+  spans: Span[];
+}
+
+/** The pings of each span as an object of their own; null where there are none. */
+export const cutTime: PieceKind<PingsToCut, (SlottedPings | null)[]> = {
+  name: "cut time",
+  async work({ store, name }, { pings: object, spans }) {
+    const { pings, hashes } = await readSlots(store, [{ name: object.name, from: 0, to: object.offsets[object.offsets.length - 1] }]);
+    const parts: (SlottedPings | null)[] = [];
+    for (const [i, span] of spans.entries()) {
+      const chosen = within(pings, span);
+      parts.push(chosen.length === 0 ? null : await writeSlots(store, `${name}.span-${i}`, chosen, hashes));
+    }
+    return parts;
+  },
+};
+
+function within(pings: PingColumns, { firstMs, lastMs }: Span): PingColumns {
+  const some = emptyColumns(pings.length);
+  for (let i = 0; i < pings.length; i++) {
+    if (pings.tMs[i] < firstMs || pings.tMs[i] > lastMs) continue;
+    for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) some[name][some.length] = pings[name][i];
+    some.length += 1;
+  }
+  return some;
+}
