@@ -5,6 +5,7 @@ import { noteDoubts, settleIds, settleNames } from "@/core/legs/finish";
 import { applyGivenLegs } from "@/core/legs/given-legs";
 import { joinArms } from "@/core/legs/join";
 import { LEARNING } from "@/core/legs/learning";
+import { learningSample } from "@/core/legs/learning-sample";
 import { mirrorArms } from "@/core/legs/mirror";
 import { listMovements } from "@/core/legs/movements";
 import { PASSAGES } from "@/core/legs/passage-seeds";
@@ -23,11 +24,12 @@ import type { JunctionPoint, Network } from "@/core/types";
 
 /**
  * Stage 4 on cleaned pings: derives legs and exits of every junction, lets drawn lines and earlier legs take their
- * places, and keeps what matched traffic uses. `prior` is not changed.
+ * places, and keeps what matched traffic uses. Of much traffic a sample is enough (see learningSample). `prior` is not changed.
  */
 export function learnFromTrips(
-  trips: Trips, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
+  given: Trips, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
 ): Network {
+  const trips = learningSample(given, junctions, index);
   const frame = createFrame(junctions, LEARNING.traceMostM + 200);
   const draft = proposeLegs(trips, frame, index, options, prior);
   const drafted = { junctions, legs: draft.legs, exits: draft.exits, driveSide: options.driveSide };
