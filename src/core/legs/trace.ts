@@ -1,5 +1,5 @@
 import { angleBetweenDeg } from "@/core/geometry/angles";
-import { eastM, latAt, lonAt, northM, type Plane } from "@/core/geometry/plane";
+import { latAt, lonAt, type Plane } from "@/core/geometry/plane";
 import { lengthOf, slice } from "@/core/geometry/polyline";
 import { findBend } from "@/core/legs/bend";
 import type { Frame } from "@/core/legs/frame";
