@@ -1,14 +1,11 @@
 import { cellToLatLng, getHexagonEdgeLengthAvg, gridDisk, latLngToCell, UNITS } from "h3-js";
 import { eastM, northM, planeAt } from "@/core/geometry/plane";
 import type { ClaimIndex, Claims, JunctionIndex } from "@/core/index/junction-index";
+import { createCellRaster, PIXEL_HALF_DIAGONAL_M, type CellRaster } from "./cell-raster";
 
 const RESOLUTION = 11;
-/** Side of a pixel of the raster that remembers cells, m: h3-js answers 1.2 million times a second, too slow for each ping. */
-const PIXEL_M = 12;
-const TILE_PIXELS = 64;
-const UNSEEN = -2;
 /** From a cell's centre to its far corner, with room for cells larger than the average and for half a pixel's diagonal. */
-const CELL_REACH_M = getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) * 1.25 + PIXEL_M;
+const CELL_REACH_M = getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) * 1.25 + PIXEL_HALF_DIAGONAL_M;
 
 /** Disks that are remembered at most, some 20 MB. */
 const MOST_DISKS = 50_000;
@@ -26,7 +23,8 @@ type Disks = (cell: string, rings: number) => readonly NearCell[];
 /** The index over H3 cells of resolution 11 (flat to flat about 50 m). What it learned of cells serves every claim. */
 export function createH3Index(): JunctionIndex {
   const disks = createDisks();
-  return { claim: (claims) => claimCells(claims, disks) };
+  const raster = createCellRaster((lat, lon) => latLngToCell(lat, lon, RESOLUTION));
+  return { claim: (claims) => claimCells(claims, disks, raster) };
 }
 
 /** Neighbouring discs begin from the same cells again and again, and h3-js is slow to answer. */
@@ -58,26 +56,29 @@ function createDisks(): Disks {
   };
 }
 
-function claimCells(claims: Claims, disks: Disks): ClaimIndex {
-  const slots = new Map<string, number>();
+function claimCells(claims: Claims, disks: Disks, raster: CellRaster): ClaimIndex {
+  const slots = new Map<number, number>();
   const owners: number[][] = [];
   for (let i = 0; i < claims.length; i++) {
     const plane = planeAt(claims.lat[i], claims.lon[i]);
     const reach = claims.radiusM[i] + CELL_REACH_M;
     const rings = Math.ceil((reach / getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) + 1) / 1.5);
     for (const { cell, lat, lon } of disks(latLngToCell(claims.lat[i], claims.lon[i], RESOLUTION), rings)) {
-      if (Math.hypot(eastM(plane, lon), northM(plane, lat)) > reach) continue;
-      let slot = slots.get(cell);
+      const x = eastM(plane, lon);
+      const y = northM(plane, lat);
+      if (x * x + y * y > reach * reach) continue;
+      const number = raster.numberOf(cell);
+      let slot = slots.get(number);
       if (slot === undefined) {
         slot = owners.length;
-        slots.set(cell, slot);
+        slots.set(number, slot);
         owners.push([]);
       }
       const list = owners[slot];
       if (list[list.length - 1] !== claims.owner[i]) list.push(claims.owner[i]);
     }
   }
-  return { ...pack(owners), find: createRaster(claims, slots) };
+  return { ...pack(owners), find: finder(claims, slots, raster) };
 }
 
 function pack(owners: number[][]): { offsets: Uint32Array; owners: Uint32Array } {
@@ -87,37 +88,19 @@ function pack(owners: number[][]): { offsets: Uint32Array; owners: Uint32Array }
   return { offsets, owners: Uint32Array.from(unique.flat()) };
 }
 
-/** Looks a position up through tiles of pixels, each pixel holding the slot of the cell at its centre. */
-function createRaster(claims: Claims, slots: Map<string, number>): (lat: number, lon: number) => number {
-  const box = boundsOf(claims);
-  const plane = planeAt((box.south + box.north) / 2, box.west);
-  const latStep = PIXEL_M / plane.metresPerLat;
-  const lonStep = PIXEL_M / plane.metresPerLon;
-  const south = box.south - box.marginM / plane.metresPerLat;
-  const west = box.west - box.marginM / plane.metresPerLon;
-  const rows = Math.ceil((box.north + box.marginM / plane.metresPerLat - south) / latStep / TILE_PIXELS) || 0;
-  const columns = Math.ceil((box.east + box.marginM / plane.metresPerLon - west) / lonStep / TILE_PIXELS) || 0;
-  const tiles = new Map<number, Int32Array>();
-
+/** Looks a position's slot up by the number of its cell; cells that were numbered later than the claims are nobody's. */
+function finder(claims: Claims, slots: Map<number, number>, raster: CellRaster): (lat: number, lon: number) => number {
+  const { south, north, west, east, marginM } = boundsOf(claims);
+  const plane = planeAt((south + north) / 2, west);
+  const [marginLat, marginLon] = [marginM / plane.metresPerLat, marginM / plane.metresPerLon];
+  const box = { south: south - marginLat, north: north + marginLat, west: west - marginLon, east: east + marginLon };
+  const slotOf = new Int32Array(raster.count()).fill(-1);
+  for (const [cell, slot] of slots) slotOf[cell] = slot;
   return (lat, lon) => {
-    const row = Math.floor((lat - south) / latStep);
-    const column = Math.floor((lon - west) / lonStep);
-    const tileRow = Math.floor(row / TILE_PIXELS);
-    const tileColumn = Math.floor(column / TILE_PIXELS);
-    const inside = tileRow >= 0 && tileRow < rows && tileColumn >= 0 && tileColumn < columns;
-    if (!inside) return -1;
-    const key = tileRow * columns + tileColumn;
-    let tile = tiles.get(key);
-    if (!tile) {
-      tile = new Int32Array(TILE_PIXELS * TILE_PIXELS).fill(UNSEEN);
-      tiles.set(key, tile);
-    }
-    const pixel = (row - tileRow * TILE_PIXELS) * TILE_PIXELS + (column - tileColumn * TILE_PIXELS);
-    if (tile[pixel] === UNSEEN) {
-      const cell = latLngToCell(south + (row + 0.5) * latStep, west + (column + 0.5) * lonStep, RESOLUTION);
-      tile[pixel] = slots.get(cell) ?? -1;
-    }
-    return tile[pixel];
+    const isInside = lat >= box.south && lat <= box.north && lon >= box.west && lon <= box.east;
+    if (!isInside) return -1;
+    const cell = raster.cellAt(lat, lon);
+    return cell < slotOf.length ? slotOf[cell] : -1;
   };
 }
 
