@@ -1,5 +1,4 @@
-import { asc, inArray, sql, type SQL } from "drizzle-orm";
-import type { AnyPgColumn } from "drizzle-orm/pg-core";
+import { asc, inArray, sql } from "drizzle-orm";
 import { lengthOf } from "@/core/geometry/polyline";
 import { METHOD_VERSION } from "@/core/method-version";
 import type { DriveSide, JunctionPoint, Network } from "@/core/types";
@@ -9,7 +8,7 @@ import { exits, junctions, legs, movements } from "@/db/schema";
 /** Two files at once would both learn the same new legs; they, and changes of legs, take turns. */
 export const INGEST_LOCK = 7_401_160;
 
-const ROWS_PER_STATEMENT = 400;
+const ROWS_PER_STATEMENT = 5000;
 
 /** Database keys by index into the network's lists. */
 export interface NetworkKeys {
@@ -105,98 +104,95 @@ async function keysOf(db: Db, table: typeof legs | typeof movements | typeof exi
 /** Writes what the pings taught; rows keep their keys by the identity that the core carries on. */
 export async function storeNetwork(db: Db, network: Network, junctionKeys: readonly number[], reserved?: NetworkKeys): Promise<NetworkKeys> {
   const keys = reserved ?? (await reserveKeys(db, network));
-  await inSteps(network.exits, async (some, from) =>
-    db
-      .insert(exits)
-      .values(
-        some.map((exit, i) => ({
-          id: keys.exits[from + i],
-          code: exit.id,
-          junctionId: junctionKeys[exit.junction],
-          bearingDeg: exit.bearingDeg,
-          line: Array.from(exit.line),
-          support: exit.support,
-          methodVersion: METHOD_VERSION,
-        })),
-      )
-      .onConflictDoUpdate({ target: exits.code, set: incoming(exits, ["bearingDeg", "line", "support", "methodVersion"]) }),
-  );
-  await inSteps(network.legs, async (some, from) =>
-    db
-      .insert(legs)
-      .values(
-        some.map((leg, i) => ({
-          id: keys.legs[from + i],
-          code: leg.id,
-          junctionId: junctionKeys[leg.junction],
-          name: leg.name,
-          bearingDeg: leg.bearingDeg,
-          line: Array.from(leg.line),
-          upstreamExitId: leg.upstreamExit < 0 ? null : keys.exits[leg.upstreamExit],
-          storageM: nullable(leg.storageM),
-          freeSpeedMs: nullable(leg.freeSpeedMs),
-          speedLimitMs: nullable(leg.speedLimitMs),
-          origin: leg.origin,
-          stopLineOrigin: leg.stopLineOrigin,
-          locked: leg.locked,
-          support: leg.support,
-          doubts: leg.doubts,
-          methodVersion: METHOD_VERSION,
-        })),
-      )
-      .onConflictDoUpdate({
-        target: legs.code,
-        set: incoming(legs, [
-          "name",
-          "bearingDeg",
-          "line",
-          "upstreamExitId",
-          "storageM",
-          "freeSpeedMs",
-          "speedLimitMs",
-          "origin",
-          "stopLineOrigin",
-          "support",
-          "doubts",
-          "methodVersion",
-        ]),
-      }),
-  );
-  await inSteps(network.movements, async (some, from) =>
-    db
-      .insert(movements)
-      .values(
-        some.map((movement, i) => ({
-          id: keys.movements[from + i],
-          code: movement.id,
-          legId: keys.legs[movement.leg],
-          exitId: keys.exits[movement.exit],
-          turnDeg: movement.turnDeg,
-          turn: movement.turn,
-          referenceS: nullable(movement.referenceS),
-          referenceSource: movement.referenceSource,
-          referenceN: movement.referenceN,
-          cordonUpM: movement.cordonUpM,
-          cordonDownM: movement.cordonDownM,
-          methodVersion: METHOD_VERSION,
-        })),
-      )
-      .onConflictDoUpdate({
-        target: movements.code,
-        set: incoming(movements, [
-          "turnDeg",
-          "turn",
-          "referenceS",
-          "referenceSource",
-          "referenceN",
-          "cordonUpM",
-          "cordonDownM",
-          "methodVersion",
-        ]),
-      }),
-  );
+  await upsert(db, EXITS, network.exits, (exit, i) => ({
+    id: keys.exits[i],
+    code: exit.id,
+    junction_id: junctionKeys[exit.junction],
+    bearing_deg: exit.bearingDeg,
+    line: Array.from(exit.line),
+    support: exit.support,
+    method_version: METHOD_VERSION,
+  }));
+  await upsert(db, LEGS, network.legs, (leg, i) => ({
+    id: keys.legs[i],
+    code: leg.id,
+    junction_id: junctionKeys[leg.junction],
+    name: leg.name,
+    bearing_deg: leg.bearingDeg,
+    line: Array.from(leg.line),
+    upstream_exit_id: leg.upstreamExit < 0 ? null : keys.exits[leg.upstreamExit],
+    storage_m: nullable(leg.storageM),
+    free_speed_ms: nullable(leg.freeSpeedMs),
+    speed_limit_ms: nullable(leg.speedLimitMs),
+    origin: leg.origin,
+    stop_line_origin: leg.stopLineOrigin,
+    locked: leg.locked,
+    support: leg.support,
+    doubts: leg.doubts,
+    method_version: METHOD_VERSION,
+  }));
+  await upsert(db, MOVEMENTS, network.movements, (movement, i) => ({
+    id: keys.movements[i],
+    code: movement.id,
+    leg_id: keys.legs[movement.leg],
+    exit_id: keys.exits[movement.exit],
+    turn_deg: movement.turnDeg,
+    turn: movement.turn,
+    reference_s: nullable(movement.referenceS),
+    reference_source: movement.referenceSource,
+    reference_n: movement.referenceN,
+    cordon_up_m: movement.cordonUpM,
+    cordon_down_m: movement.cordonDownM,
+    method_version: METHOD_VERSION,
+  }));
   await dropUnused(db, network);
   return keys;
+}
+
+/** A table with the type of each of its columns that is written; those that a known row keeps are named apart. */
+interface Target<C extends string> {
+  table: string;
+  columns: Record<C, string>;
+  kept: readonly C[];
+}
+
+function target<C extends string>(table: string, columns: Record<C, string>, kept: readonly NoInfer<C>[]): Target<C> {
+  return { table, columns, kept };
+}
+
+const EXITS = target(
+  "exits",
+  { id: "int", code: "text", junction_id: "int", bearing_deg: "real", line: "float8[]", support: "int", method_version: "int" },
+  ["id", "code", "junction_id"],
+);
+const LEGS = target(
+  "legs",
+  {
+    id: "int", code: "text", junction_id: "int", name: "text", bearing_deg: "real", line: "float8[]", upstream_exit_id: "int", storage_m: "real",
+    free_speed_ms: "real", speed_limit_ms: "real", origin: "text", stop_line_origin: "text", locked: "boolean", support: "int", doubts: "jsonb", method_version: "int",
+  },
+  ["id", "code", "junction_id", "locked"],
+);
+const MOVEMENTS = target(
+  "movements",
+  {
+    id: "int", code: "text", leg_id: "int", exit_id: "int", turn_deg: "real", turn: "text", reference_s: "real", reference_source: "text", reference_n: "int",
+    cordon_up_m: "real", cordon_down_m: "real", method_version: "int",
+  },
+  ["id", "code", "leg_id", "exit_id"],
+);
+
+/** One text for many rows: a parameter for each value takes the query builder longer than the database needs for all of it. */
+async function upsert<T, C extends string>(db: Db, { table, columns, kept }: Target<C>, list: readonly T[], rowOf: (item: T, index: number) => Record<C, unknown>): Promise<void> {
+  const names = Object.keys(columns) as C[];
+  const typed = names.map((name) => `${name} ${columns[name]}`).join(", ");
+  const set = names.filter((name) => !kept.includes(name)).map((name) => `${name} = excluded.${name}`).join(", ");
+  for (let from = 0; from < list.length; from += ROWS_PER_STATEMENT) {
+    const rows = list.slice(from, from + ROWS_PER_STATEMENT).map((item, i) => rowOf(item, from + i));
+    await db.execute(
+      sql`${sql.raw(`insert into ${table} (${names.join(", ")}) select ${names.join(", ")} from json_to_recordset(`)}${JSON.stringify(rows)}${sql.raw(`::json) as given(${typed}) on conflict (code) do update set ${set}`)}`,
+    );
+  }
 }
 
 /** Rows that the core no longer knows and that no traversal rests on would only haunt the plan of a junction. */
@@ -224,14 +220,4 @@ async function dropUnused(db: Db, network: Network): Promise<void> {
       sql`${inArray(exits.id, goneExits)} and not exists (select 1 from movements where movements.exit_id = ${exits.id}) and not exists (select 1 from legs where legs.upstream_exit_id = ${exits.id})`,
     );
   }
-}
-
-async function inSteps<T>(list: readonly T[], write: (some: T[], from: number) => Promise<unknown>): Promise<void> {
-  for (let from = 0; from < list.length; from += ROWS_PER_STATEMENT) await write(list.slice(from, from + ROWS_PER_STATEMENT), from);
-}
-
-/** `excluded.<column>` for each of the named columns. */
-function incoming<T extends object>(table: T, names: (keyof T & string)[]): Record<string, SQL> {
-  const columns = table as Record<string, AnyPgColumn>;
-  return Object.fromEntries(names.map((name) => [name, sql.raw(`excluded.${columns[name].name}`)]));
 }

@@ -29,11 +29,15 @@ export const cutTime: PieceKind<PingsToCut, (SlottedPings | null)[]> = {
 };
 
 function within(pings: PingColumns, { firstMs, lastMs }: Span): PingColumns {
-  const some = emptyColumns(pings.length);
-  for (let i = 0; i < pings.length; i++) {
-    if (pings.tMs[i] < firstMs || pings.tMs[i] > lastMs) continue;
-    for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) some[name][some.length] = pings[name][i];
-    some.length += 1;
+  const chosen = new Uint32Array(pings.length);
+  let length = 0;
+  for (let i = 0; i < pings.length; i++) if (pings.tMs[i] >= firstMs && pings.tMs[i] <= lastMs) chosen[length++] = i;
+  if (length === pings.length) return pings;
+  const some = emptyColumns(length);
+  some.length = length;
+  for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) {
+    const [from, to] = [pings[name], some[name]];
+    for (let k = 0; k < length; k++) to[k] = from[chosen[k]];
   }
   return some;
 }

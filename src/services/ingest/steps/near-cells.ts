@@ -25,7 +25,8 @@ function chosenRows(batch: PingColumns, isChosen: (i: number) => boolean): PingC
   const some = emptyColumns(chosen.length);
   some.length = chosen.length;
   for (const name of ["vehicle", "tMs", "lat", "lon", "speedMs", "headingDeg"] as const) {
-    chosen.forEach((from, to) => (some[name][to] = batch[name][from]));
+    const [from, to] = [batch[name], some[name]];
+    for (let k = 0; k < chosen.length; k++) to[k] = from[chosen[k]];
   }
   return some;
 }

@@ -4,7 +4,8 @@ import type { PieceStore } from "../pieces/piece-store";
 
 /** Vehicles are dealt out to so many slots by the first bits of their keyed hash: whole vehicles, whoever read them. */
 export const SLOTS = 1024;
-const SLOT_SHIFT = 54n;
+/** Of the upper half of a hash. */
+const SLOT_SHIFT = 22;
 
 /** An object of pings in the order of their vehicles' hashes, a section for each slot. */
 export interface SlottedPings {
@@ -22,20 +23,20 @@ export interface SlottedPings {
 const HEAD_BYTES = 8;
 const ROW_BYTES = 32;
 
-const slotOf = (hash: bigint): number => Number(BigInt.asUintN(64, hash) >> SLOT_SHIFT);
 const padded = (bytes: number): number => (bytes + 7) & ~7;
 
 /** Sorts pings by vehicle and writes them. `hashOf` gives the keyed hash by dense vehicle number. O(pings + vehicles × log). */
 export async function writeSlots(store: PieceStore, name: string, pings: PingColumns, hashOf: BigInt64Array): Promise<SlottedPings> {
   const counts = new Uint32Array(hashOf.length);
   for (let i = 0; i < pings.length; i++) counts[pings.vehicle[i]] += 1;
-  const seen = Array.from({ length: hashOf.length }, (_, v) => v).filter((v) => counts[v] > 0);
-  const unsigned = BigUint64Array.from(hashOf, (hash) => BigInt.asUintN(64, hash));
-  seen.sort((a, b) => (unsigned[a] < unsigned[b] ? -1 : unsigned[a] > unsigned[b] ? 1 : 0));
+  // Halves of the hashes, the lower one first: whole ones would be objects.
+  const halves = new Uint32Array(hashOf.buffer, hashOf.byteOffset, 2 * hashOf.length);
+  const seen = counts.map((_, v) => v).filter((v) => counts[v] > 0);
+  seen.sort((a, b) => halves[2 * a + 1] - halves[2 * b + 1] || halves[2 * a] - halves[2 * b]);
 
   const vehiclesIn = new Uint32Array(SLOTS);
   const pingsIn = new Uint32Array(SLOTS);
-  const slots = seen.map((v) => slotOf(hashOf[v]));
+  const slots = seen.map((v) => halves[2 * v + 1] >>> SLOT_SHIFT);
   seen.forEach((v, k) => {
     vehiclesIn[slots[k]] += 1;
     pingsIn[slots[k]] += counts[v];
