@@ -1,3 +1,4 @@
+import { projectPoint } from "@/core/geometry/polyline";
 import { draftExit, draftLeg, nearestBearing, seenFrom } from "@/core/legs/draft";
 import type { Frame } from "@/core/legs/frame";
 import { joinCorners } from "@/core/legs/join-corners";
@@ -9,6 +10,8 @@ import type { Exit, Leg } from "@/core/types";
 const SAME_STREET_DEG = 30;
 /** A trace that stopped short may be prolonged straight by this much to the next junction, m. */
 const PROLONG_M = 350;
+/** Two traces of one street lie this near to each other, m. */
+const ASIDE_M = 30;
 
 export interface Joined {
   legs: Leg[];
@@ -58,10 +61,16 @@ function feedLeg(joined: Joined, exit: number, downstream: number, frame: Frame)
   const candidates = joined.legs.map((leg) => (leg.junction === downstream ? leg.bearingDeg : NaN));
   const like = nearestBearing(candidates, made.bearingDeg, LEARNING.apartDeg);
   if (like < 0) joined.legs.push({ ...made, upstreamExit: exit });
-  else if (joined.legs[like].upstreamExit < 0) {
+  else if (joined.legs[like].upstreamExit < 0 && leadsAlong(made.line, joined.legs[like].line)) {
     const leg = joined.legs[like];
     joined.legs[like] = { ...made, support: Math.max(made.support, leg.support), upstreamExit: exit };
   }
+}
+
+/** Whether a leg's own trace ends beside the line of the exit that might feed it: else they part at a fork. */
+function leadsAlong(line: Float64Array, own: Float64Array): boolean {
+  const { offset } = projectPoint(line, own[own.length - 2], own[own.length - 1]);
+  return Math.abs(offset) <= ASIDE_M;
 }
 
 function exitLike(joined: Joined, junction: number, bearing: number): number {

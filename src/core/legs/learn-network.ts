@@ -1,5 +1,6 @@
 import type { JunctionIndex } from "@/core/index/junction-index";
 import { carryOver, type Carried } from "@/core/legs/carry-over";
+import { followTraffic } from "@/core/legs/follow-traffic";
 import { createFrame, type Frame } from "@/core/legs/frame";
 import { noteDoubts, settleIds, settleNames } from "@/core/legs/finish";
 import { applyGivenLegs } from "@/core/legs/given-legs";
@@ -53,7 +54,8 @@ function proposeLegs(
   const rings = claimRings(frame, index, LEARNING.ringOuterM);
   const grid = createPingGrid(trips, frame, LEARNING.traceMostM);
   const reach = isSparse(trips) ? claimRings(frame, index, PASSAGES.reachM) : null;
-  const arms = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse(trips)));
+  const traced = findSeeds(trips, frame, rings, reach).map((seed) => traceArm(seed, frame, grid, isSparse(trips)));
+  const arms = isSparse(trips) ? traced : traced.map((arm) => followTraffic(arm, frame, grid));
   const joined = dropTwins(joinArms(arms, frame));
   const derived = isSparse(trips) ? mirrorArms(joined, frame, options.driveSide) : joined;
   const drawn = options.givenLegs ? applyGivenLegs(derived, options.givenLegs, frame) : derived;

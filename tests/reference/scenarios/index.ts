@@ -9,7 +9,7 @@ import { townScenario } from "./town";
 import type { Scenario } from "./types";
 
 const RANDOM_STREETS = [
-  "--rand", "--rand.iterations", "62", "--rand.min-distance", "60", "--rand.max-distance", "240", "--rand.min-angle", "50",
+  "--rand", "--rand.iterations", "62", "--rand.min-distance", "60", "--rand.max-distance", "240", "--rand.min-angle", "60",
   "--rand.num-tries", "60", "--rand.connectivity", "0.96",
 ];
 
@@ -47,7 +47,7 @@ export const TUNING: Scenario[] = [
   drawnCityScenario({
     id: "drawn",
     title: "city drawn at random: bent streets of mixed widths and speeds, yards, buses, errands, people crossing, turns at red",
-    seed: 1207, driveSide: "right", cycleS: 88, perLane: 130, perYard: 35, mainStreets: 5, fringeShare: 0, oneWayShare: 0.15, yardShare: 0.35,
+    seed: 1207, driveSide: "right", cycleS: 88, perLane: 78, perYard: 35, mainStreets: 5, fringeShare: 0, oneWayShare: 0.15, yardShare: 0.35,
     busLines: 4, vehicles: "calm", recordedShare: 1, draw: RANDOM_STREETS, signalFromMs: 50, walkersPerHour: 90,
     turnOnRedShare: 0.4, errandShare: 0.06,
   }),
