@@ -90,17 +90,26 @@ function nearestAlong(from: Placed, lieDeg: number, junctions: readonly Placed[]
 
 export type Bounds = [west: number, south: number, east: number, north: number];
 
-/** Box round the junctions; null where there are none. */
+/** No city is as wide, degrees: what lies farther from its middle is a slip of the pen and must not hide the rest. */
+const FARTHEST_DEG = 1.5;
+
+/** Box round the junctions, those left out that lie in another part of the world; null where there are none. */
 export function boundsOf(junctions: readonly Pick<Placed, "lat" | "lon">[]): Bounds | null {
   if (junctions.length === 0) return null;
+  const [middleLat, middleLon] = [median(junctions.map(({ lat }) => lat)), median(junctions.map(({ lon }) => lon))];
+  const near = junctions.filter(({ lat, lon }) => Math.abs(lat - middleLat) <= FARTHEST_DEG && Math.abs(lon - middleLon) <= FARTHEST_DEG);
   const bounds: Bounds = [Infinity, Infinity, -Infinity, -Infinity];
-  for (const { lat, lon } of junctions) {
+  for (const { lat, lon } of near.length > 0 ? near : junctions) {
     bounds[0] = Math.min(bounds[0], lon);
     bounds[1] = Math.min(bounds[1], lat);
     bounds[2] = Math.max(bounds[2], lon);
     bounds[3] = Math.max(bounds[3], lat);
   }
   return bounds;
+}
+
+function median(values: number[]): number {
+  return values.sort((a, b) => a - b)[Math.floor(values.length / 2)];
 }
 
 export function overlap(a: Bounds, b: Bounds): boolean {

@@ -48,6 +48,10 @@ describe("bounds", () => {
   it("hold all junctions; an empty city has none", () => {
     expect(boundsOf([at(1, 45, 10), at(2, 44, 11)])).toEqual([10, 44, 11, 45]);
     expect(boundsOf([])).toBeNull();
+    // Latitude and longitude mixed up.
+    expect(boundsOf([at(1, 45, 10), at(2, 44.9, 10.1), at(3, 10, 45)])).toEqual([10, 44.9, 10.1, 45]);
+    // Of two there is no middle that tells.
+    expect(boundsOf([at(1, 45, 10), at(3, 10, 45)])).toEqual([10, 10, 45, 45]);
   });
 
   it("tell a base map of another place", () => {
