@@ -89,6 +89,10 @@ export interface ScreenResult {
     /** Start and end of the window in minutes after local midnight. */
     fromMin: number;
     toMin: number;
+    /** Files on these dates that an earlier method has read: left out until they are read in again. Absent where there are none. */
+    waitingFiles?: number;
+    /** Earlier days that are left out, since the server does not hold as many at a time. Absent where there are none. */
+    daysLeftOut?: number;
   };
 }
 

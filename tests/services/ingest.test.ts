@@ -182,7 +182,7 @@ describe("ingest", () => {
     await expect(rankJunctions(engineer, ScreenQuery.parse({ from: 600, to: 600 }))).rejects.toThrow("The hours must end after they begin.");
   });
 
-  it("goes on ranking where an older method has measured the same day", async () => {
+  it("never ranks what another method has measured, and says how many files wait for being read again", async () => {
     const query = ScreenQuery.parse({ period: "all", since: "2026-03-05", until: "2026-03-05" });
     const before = await rankJunctions(engineer, query);
     const [slice] = await job.db.select().from(screenDays).where(eq(screenDays.day, dayFromIso("2026-03-05")));
@@ -193,7 +193,7 @@ describe("ingest", () => {
       .values({ ...slice, id: undefined, uploadId: other.id, methodVersion: slice.methodVersion - 1, payload: older })
       .returning({ id: screenDays.id });
     await raiseDataVersion(job.db);
-    expect(await rankJunctions(engineer, query)).toEqual(before);
+    expect(await rankJunctions(engineer, query)).toEqual({ ...before, basis: { ...before.basis, waitingFiles: 1 } });
     await job.db.delete(screenDays).where(eq(screenDays.id, id));
   });
 

@@ -48,6 +48,7 @@ const NEEDS: Record<string, Permission> = {
   resendMail: "user.manage",
   revokeFeedToken: "feed.manage",
   saveSettings: "setting.manage",
+  screenTag: "screen.view",
   splitLeg: "leg.edit",
   startUpload: "upload.create",
 };

@@ -14,19 +14,33 @@ type Filter = Pick<ScreenQuery, "days" | "turn"> & { from: number; to: number };
 /** The ISO week days that a choice of days stands for. */
 const WEEKDAYS: Record<ScreenQuery["days"], string> = { weekdays: "1,2,3,4,5", saturday: "6", sunday: "7", every: "1,2,3,4,5,6,7" };
 
+/** Rows of the traversals that pass a filter, and the values that stand for $1 to $3 in it. */
+const FROM_TRAVERSALS = (days: ScreenQuery["days"]): string => `
+  from traversals t join movements m on m.id = t.movement_id join legs l on l.id = m.leg_id
+  where extract(isodow from t.local_day) in (${WEEKDAYS[days]})
+    and t.stop_line_at at time zone 'UTC' - t.local_day >= make_interval(mins => $1)
+    and t.stop_line_at at time zone 'UTC' - t.local_day < make_interval(mins => $2)
+    and ($3 = 'any' or m.turn = $3)
+  group by l.junction_id`;
+
 /** The same means by a plain GROUP BY over the traversals. */
-export async function groupedByPostgres(pool: Pool, { days, turn, from, to }: Filter): Promise<Means> {
-  const { rows } = await pool.query<{ junction_id: number; mean: number }>(
-    `select l.junction_id, avg(t.delay_s) as mean
-     from traversals t join movements m on m.id = t.movement_id join legs l on l.id = m.leg_id
-     where extract(isodow from t.local_day) in (${WEEKDAYS[days]})
-       and t.stop_line_at at time zone 'UTC' - t.local_day >= make_interval(mins => $1)
-       and t.stop_line_at at time zone 'UTC' - t.local_day < make_interval(mins => $2)
-       and ($3 = 'any' or m.turn = $3)
-     group by l.junction_id`,
+export async function meansByPostgres(pool: Pool, { days, turn, from, to }: Filter): Promise<Means> {
+  const { rows } = await pool.query<{ junction_id: number; mean: number }>(`select l.junction_id, avg(t.delay_s) as mean ${FROM_TRAVERSALS(days)}`, [from, to, turn]);
+  return new Map(rows.map((row) => [row.junction_id, row.mean]));
+}
+
+/**
+ * What a ranking says of the delays of junctions, by a plain GROUP BY: mean, spread, median, 95th percentile, stops,
+ * vehicles and days. It leaves out what the ranking also works out: intervals, evidence, shrinkage, ranks, worst
+ * movements, queues.
+ */
+export async function figuresByPostgres(pool: Pool, { days, turn, from, to }: Filter): Promise<void> {
+  await pool.query(
+    `select l.junction_id, count(*), avg(t.delay_s), stddev_samp(t.delay_s), percentile_cont(0.5) within group (order by t.delay_s),
+       percentile_cont(0.95) within group (order by t.delay_s), avg(t.stops), count(*) filter (where t.stops > 0), count(distinct t.vehicle), count(distinct t.local_day)
+     ${FROM_TRAVERSALS(days)}`,
     [from, to, turn],
   );
-  return new Map(rows.map((row) => [row.junction_id, row.mean]));
 }
 
 export interface ColumnEngine {

@@ -20,6 +20,10 @@ const OPEN_HOURS = 16;
 const QUARTER_MS = 900_000;
 const LEG_M = 350;
 const TRACK_POINTS = 20;
+/** Strips are drawn of the first legs only; vehicles of the others have a track from end to end and no more, lest a large city takes long to make. */
+const TRACKED_LEGS = 1200;
+/** Days that are stored side by side: one is worked out while the database takes in another. */
+const SIDE_BY_SIDE = 3;
 const UTC = [{ fromMs: 0, offsetMin: 0 }];
 const TURN_OF: Record<number, Turn> = { 0: "through", 1: "right", 2: "uturn", 3: "left" };
 
@@ -34,14 +38,18 @@ export async function fillScreenCity(db: Db, { junctions, days, traversals }: Sc
   const network = networkOf(junctions);
   const junctionKeys = await storeJunctions(db, network);
   const keys = await storeNetwork(db, network, junctionKeys);
-  const random = seededRandom(7);
   const perDay = Math.ceil(traversals / days);
-  for (let day = FIRST_DAY; day < FIRST_DAY + days; day++) await storeDay(db, network, keys, day, perDay, random);
+  const left = Array.from({ length: days }, (_, k) => FIRST_DAY + k);
+  const storeNext = async (): Promise<void> => {
+    for (let day = left.shift(); day !== undefined; day = left.shift()) await storeDay(db, network, keys, day, perDay);
+  };
+  await Promise.all(Array.from({ length: SIDE_BY_SIDE }, storeNext));
   await raiseDataVersion(db);
   await db.execute(sql`analyze`);
 }
 
-async function storeDay(db: Db, network: Network, keys: NetworkKeys, day: number, count: number, random: Random): Promise<void> {
+async function storeDay(db: Db, network: Network, keys: NetworkKeys, day: number, count: number): Promise<void> {
+  const random = seededRandom(day);
   const traversals = traversalsOf(network, day, count, random);
   const vehicleHash = BigInt64Array.from({ length: count }, (_, v) => BigInt(day) * 1_000_003n + BigInt(v));
   const vehicle = Uint32Array.from(vehicleHash, (hash) => Number(BigInt.asUintN(32, hash)));
@@ -134,20 +142,20 @@ function traversalsOf(network: Network, day: number, count: number, random: Rand
     all.stops[i] = isStopped ? 1 : 0;
     all.stoppedS[i] = isStopped ? waitS - 8 : 0;
     all.farthestStopM[i] = isStopped ? random() * 160 : NaN;
-    drawTrack(all, i, waitS);
+    drawTrack(all, i, waitS, network.movements[movement].leg < TRACKED_LEGS ? TRACK_POINTS : 2);
   }
   return all;
 }
 
 /** Along the leg with the wait three quarters of the way. */
-function drawTrack(all: Traversals, i: number, waitS: number): void {
-  const from = i * TRACK_POINTS;
-  for (let p = 0; p < TRACK_POINTS; p++) {
-    const share = p / (TRACK_POINTS - 1);
+function drawTrack(all: Traversals, i: number, waitS: number, points: number): void {
+  const from = all.trackOffset[i];
+  for (let p = 0; p < points; p++) {
+    const share = p / (points - 1);
     all.trackS[from + p] = LEG_M - share * (LEG_M + 15);
     all.trackT[from + p] = share * 28 - 8 + (share > 0.75 ? waitS : 0);
   }
-  all.trackOffset[i + 1] = from + TRACK_POINTS;
+  all.trackOffset[i + 1] = from + points;
 }
 
 /** Every leg in every quarter of the open hours. */

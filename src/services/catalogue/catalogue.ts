@@ -48,6 +48,12 @@ export async function dataVersion(db: Db): Promise<number> {
   return row ? Number(row.value) : 0;
 }
 
+/** Changes with the data, and from one database to the next. */
+export async function dataStamp(db: Db): Promise<string> {
+  const [row] = await db.select({ value: settings.value, at: settings.updatedAt }).from(settings).where(eq(settings.key, DATA_VERSION));
+  return row ? `${Number(row.value)}-${row.at.getTime().toString(36)}` : "0";
+}
+
 export async function cityCatalogue(db: Db): Promise<CityCatalogue> {
   const version = await dataVersion(db);
   const known = cache.get(db);

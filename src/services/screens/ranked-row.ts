@@ -1,11 +1,22 @@
 import { levelOfService } from "@/core/stats/level-of-service";
 import type { JunctionScore, LegScore } from "@/core/scores/types";
+import type { Estimate } from "@/core/types";
 import { estimateView, type EstimateView } from "@/domain/estimate";
 import type { NeedleView, RankedJunction } from "@/domain/screen";
 import type { CatalogueJunction } from "../catalogue/catalogue";
 import type { ScoredCity } from "./score-city";
 
 export const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
+
+/** A tenth of what is shown, so that order and comparisons stay; null for what the sample cannot say. */
+function rounded(value: number | null | undefined, digits: number): number | null {
+  return value === null || value === undefined || !Number.isFinite(value) ? null : Number(value.toFixed(digits));
+}
+
+function roundedEstimate(estimate: Estimate, digits: number): EstimateView | null {
+  const view = estimateView(estimate);
+  return view && { value: Number(view.value.toFixed(digits)), low: Number(view.low.toFixed(digits)), high: Number(view.high.toFixed(digits)) };
+}
 
 export function losView(delay: EstimateView | null): { at: string; low: string; high: string } | null {
   if (!delay) return null;
@@ -14,13 +25,12 @@ export function losView(delay: EstimateView | null): { at: string; low: string; 
 }
 
 export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJunction {
-  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: junction.lat, lon: junction.lon, corridorId: junction.corridorId, corridor: junction.corridor };
+  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: Number(junction.lat.toFixed(6)), lon: Number(junction.lon.toFixed(6)), corridorId: junction.corridorId, corridor: junction.corridor };
   const score = scored.junctionScores.get(junction.id);
   const needles = needlesOf(junction.id, scored);
   if (!score || score.vehicles === 0) return { ...base, ...UNSEEN, needles };
   // Too few to be ranked are too few for a figure, too: a published list must not tell of two vehicles.
   if (score.evidence === "none") return { ...base, ...UNSEEN, vehicles: score.vehicles, days: score.days, needles };
-  const delay = estimateView(score.delay);
   const worstLeg = supportedLeg(score.worstLeg, scored);
   return {
     ...base,
@@ -28,16 +38,16 @@ export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJu
     rankLow: finite(score.rankLow),
     rankHigh: finite(score.rankHigh),
     worst: worstOf(score, scored),
-    delay,
-    shrunkDelayS: finite(score.shrunk.value),
-    medianS: finite(score.medianS),
-    p95S: finite(score.p95S),
-    los: losView(delay),
-    hoursSeen: finite(score.hoursSeen),
-    stopsPerVehicle: finite(score.stopsPerVehicle),
-    reachM: worstLeg ? finite(worstLeg.reachP95M) : null,
-    storageM: scored.catalogue.legs.get(score.worstLeg)?.storageM ?? null,
-    spill: estimateView(score.spill),
+    delay: roundedEstimate(score.delay, 2),
+    shrunkDelayS: rounded(score.shrunk.value, 2),
+    medianS: rounded(score.medianS, 2),
+    p95S: rounded(score.p95S, 2),
+    los: losView(estimateView(score.delay)),
+    hoursSeen: rounded(score.hoursSeen, 3),
+    stopsPerVehicle: rounded(score.stopsPerVehicle, 3),
+    reachM: rounded(worstLeg?.reachP95M, 1),
+    storageM: rounded(scored.catalogue.legs.get(score.worstLeg)?.storageM, 1),
+    spill: roundedEstimate(score.spill, 4),
     vehicles: score.vehicles,
     days: score.days,
     evidence: score.evidence,
@@ -70,7 +80,7 @@ function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["wors
   const figures = scored.scores.movement(score.worstMovement);
   const leg = movement && scored.catalogue.legs.get(movement.legId);
   if (!movement || !figures || !leg) return null;
-  return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: figures.delay.value };
+  return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: Number(figures.delay.value.toFixed(2)) };
 }
 
 /** Figures of a leg for lists, map and exports: none without evidence. */
@@ -84,9 +94,9 @@ function needlesOf(junctionId: number, scored: ScoredCity): NeedleView[] {
     const score = supportedLeg(leg.id, scored);
     return {
       legId: leg.id,
-      lieDeg: (leg.bearingDeg + 180) % 360,
-      reachM: score ? finite(score.reachP95M) : null,
-      delayS: score ? finite(score.delay.value) : null,
+      lieDeg: Number(((leg.bearingDeg + 180) % 360).toFixed(1)),
+      reachM: rounded(score?.reachP95M, 0),
+      delayS: rounded(score?.delay.value, 1),
     };
   });
 }

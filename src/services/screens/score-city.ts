@@ -76,5 +76,7 @@ export function basisOf(scored: ScoredCity): ScreenResult["basis"] {
     methodVersion: METHOD_VERSION,
     fromMin: window.fromMin,
     toMin: window.toMin,
+    ...(data.waitingFiles > 0 && { waitingFiles: data.waitingFiles }),
+    ...(data.daysLeftOut > 0 && { daysLeftOut: data.daysLeftOut }),
   };
 }

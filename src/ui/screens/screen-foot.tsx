@@ -23,6 +23,8 @@ export function ScreenFoot({ result, query, onChange }: { result: ScreenResult; 
       <p>
         Rests on {counted(basis.traversals, "traversal", "traversals", locale)} on {counted(basis.days, "day", "days", locale)}
         {basis.medianIntervalS === null ? "" : `, a ping every ${formatNumber(basis.medianIntervalS, locale)} s`}; method version {basis.methodVersion}.
+        {basis.waitingFiles ? ` ${counted(basis.waitingFiles, "file waits for being read in again by the present method, and counts", "files wait for being read in again by the present method, and count", locale)} nowhere until then.` : ""}
+        {basis.daysLeftOut ? ` ${counted(basis.daysLeftOut, "earlier day is", "earlier days are", locale)} left out: choose dates to see them.` : ""}
       </p>
       <Caution />
     </div>
