@@ -45,6 +45,8 @@ export const LEARNING_SAMPLE = Object.freeze({
   /** Pings for each junction, and seconds of seen driving, whichever is more: legs, turns and delays stay as with all pings. */
   pingsPerJunction: 2000,
   secondsPerJunction: 10_000,
+  /** Fewer in all are not worth leaving any out. */
+  leastPings: 300_000,
   /** Only pings this near to a junction count, m. */
   nearM: 200,
 });
@@ -57,6 +59,7 @@ export const LEARNING_SAMPLE = Object.freeze({
  * memory (some 100 bytes a ping) by handing over about as many: these divided by the nearShare of the file.
  */
 export function learningPings(junctions: number, medianIntervalS: number): number {
-  const { pingsPerJunction, secondsPerJunction } = LEARNING_SAMPLE;
-  return Math.ceil(junctions * Math.max(pingsPerJunction, medianIntervalS > 0 ? secondsPerJunction / Math.max(1, medianIntervalS) : 0));
+  const { pingsPerJunction, secondsPerJunction, leastPings } = LEARNING_SAMPLE;
+  const each = Math.max(pingsPerJunction, medianIntervalS > 0 ? secondsPerJunction / Math.max(1, medianIntervalS) : 0);
+  return Math.max(leastPings, Math.ceil(junctions * each));
 }

@@ -1,8 +1,10 @@
 import { describe, expect, it } from "vitest";
+import { learnFromTrips } from "@/core/legs/learn-network";
 import { learningPings } from "@/core/legs/learning";
 import { learningSample, nearShare } from "@/core/legs/learning-sample";
 import { cleanPings } from "@/core/pings/clean";
-import { processCity } from "@/core/process";
+import { sampleTrips } from "@/core/pings/sample-trips";
+import type { Trips } from "@/core/pings/trips";
 import { createH3Index } from "@/geo/h3-index";
 import { columnsOf, makeTown, rowsOf } from "../two-crossings";
 
@@ -13,8 +15,12 @@ describe("what learning takes", () => {
     expect(learningPings(500, 5)).toBe(1_000_000);
     expect(learningPings(500, 30)).toBe(1_000_000);
     expect(learningPings(500, NaN)).toBe(1_000_000);
-    expect(learningPings(10, 2)).toBe(50_000);
-    expect(learningPings(10, 0.2)).toBe(100_000);
+    expect(learningPings(100, 2)).toBe(500_000);
+    expect(learningPings(100, 0.2)).toBe(1_000_000);
+  });
+
+  it("asks for all of a small file", () => {
+    expect(learningPings(10, 5)).toBe(300_000);
   });
 
   it("counts only pings near junctions", () => {
@@ -29,12 +35,9 @@ describe("what learning takes", () => {
   it("finds in a sample of much traffic the streets that all of it shows", () => {
     const { pings, junctions } = makeTown({ vehicles: 960 });
     const { trips } = cleanPings(pings);
-    const sample = learningSample(trips, junctions, index);
-    expect(trips.length).toBeGreaterThan(3 * sample.length);
-    const { network } = processCity(pings, junctions, index, { driveSide: "right" });
-    const few = processCity(makeTown().pings, junctions, index, { driveSide: "right" }).network;
-    const shape = (of: typeof network) => of.legs.map((leg) => [leg.junction, leg.name, leg.upstreamExit >= 0].join(" ")).sort();
-    expect(shape(network)).toEqual(shape(few));
+    const shape = (of: Trips) =>
+      learnFromTrips(of, junctions, index, { driveSide: "right" }).legs.map((leg) => [leg.junction, leg.name, leg.upstreamExit >= 0].join(" ")).sort();
+    expect(shape(sampleTrips(trips, trips.length / 4))).toEqual(shape(trips));
   });
 
   it("takes all of little traffic", () => {

@@ -14,14 +14,19 @@ describe("a sample of trips", () => {
   it("holds whole trips, as many as asked for, evenly over time", () => {
     const sample = sampleTrips(trips, 250);
     expect([sample.count, sample.length]).toEqual([25, 250]);
-    // Every fourth vehicle of a hundred.
-    expect([...sample.tripVehicle]).toEqual(Array.from({ length: 25 }, (_, k) => 4 * k + 3));
+    // One of every four vehicles.
+    expect([...sample.tripVehicle].map((vehicle) => Math.floor(vehicle / 4))).toEqual(Array.from({ length: 25 }, (_, k) => k));
     for (let k = 0; k < sample.count; k++) {
       const first = sample.tripOffset[k];
       expect(sample.tripOffset[k + 1] - first).toBe(10);
       expect(sample.tMs[first]).toBe(sample.tripVehicle[k] * 60_000);
       expect(sample.lat[first + 9]).toBe(45.6 + 9 * 0.0005);
     }
+  });
+
+  it("follows no pattern of the trips: not always the first, second, third or last of four", () => {
+    const places = [...sampleTrips(trips, 250).tripVehicle].map((vehicle) => vehicle % 4);
+    expect(new Set(places).size).toBe(4);
   });
 
   it("is all trips where they are no more", () => {
