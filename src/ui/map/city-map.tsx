@@ -1,9 +1,9 @@
 "use client";
 
 import { useQuery } from "@tanstack/react-query";
-import { setWorkerUrl } from "maplibre-gl";
+import { setWorkerUrl, type Map as LibraryMap } from "maplibre-gl";
 import "maplibre-gl/dist/maplibre-gl.css";
-import { useCallback, useEffect, useMemo, useRef, useState, useSyncExternalStore } from "react";
+import { useEffect, useLayoutEffect, useMemo, useRef, useState, useSyncExternalStore } from "react";
 import { Layer, Map, Source, type MapMouseEvent, type MapRef } from "react-map-gl/maplibre";
 import type { RankedJunction } from "@/domain/screen";
 import type { Units } from "@/ui/format";
@@ -13,10 +13,12 @@ import { baseMapFor, baseMapQuery } from "./base-map";
 import type { HoverStore } from "./hover-store";
 import { MapButtons } from "./map-buttons";
 import { MapLegend } from "./map-legend";
-import { DOT_LAYER, LINK_LAYER, NEEDLE_LAYER, PAPER_STYLE } from "./map-style";
-import { boundsOf, dotFeatures, linkFeatures, needleFeatures } from "./needles";
+import { EMPTY_STYLE, LINK_LAYER, PAPER_COLOR } from "./map-style";
+import { createMarkLayer, MARK_LAYER_ID } from "./mark-layer";
+import { flagsOf, marksOf, nearestMark } from "./marks";
+import { boundsOf, linkFeatures } from "./needles";
 import { HoveredMark, SelectedMark } from "./selected-mark";
-import { useFeatureFlag } from "./use-feature-flag";
+import { worldAt, worldPxAt } from "./world";
 
 setWorkerUrl("/maplibre-gl-worker.mjs");
 
@@ -35,36 +37,38 @@ export interface CityMapProps {
 
 const PICK_PX = 14;
 const WHOLE_CITY_PADDING = { top: 24, left: 24, right: 24, bottom: 48 };
-const NOBODY: ReadonlySet<number> = new Set();
 
 export default function CityMap({ rows, shownIds, selected, hover, units, locale, noteOf, onSelect }: CityMapProps) {
   const [map, setMap] = useState<MapRef | null>(null);
-  const [isLoaded, setLoaded] = useState(false);
   const [hasFailed, setFailed] = useState(false);
-  const [view, setView] = useState({ metresPerPx: 20, centreLon: 0 });
+  const [metresPerPx, setMetresPerPx] = useState(20);
+  const [centreLon, setCentreLon] = useState(0);
   const { data: anyBaseMap, isPending } = useQuery(baseMapQuery());
 
   const bounds = useMemo(() => boundsOf(rows), [rows]);
   const baseMap = baseMapFor(anyBaseMap, bounds);
-  const needles = useMemo(() => needleFeatures(rows), [rows]);
-  const dots = useMemo(() => dotFeatures(rows), [rows]);
+  const [markLayer] = useState(createMarkLayer);
+  const marks = useMemo(() => marksOf(rows), [rows]);
+  const flags = useMemo(() => flagsOf(marks, shownIds, selected), [marks, shownIds, selected]);
+  useLayoutEffect(() => markLayer.setMarks(marks), [markLayer, marks]);
+  useLayoutEffect(() => markLayer.setFlags(flags), [markLayer, flags]);
   const hasLinks = !isPending && !baseMap;
   const links = useMemo(() => (hasLinks ? linkFeatures(rows) : null), [hasLinks, rows]);
   const byId = useMemo(() => new globalThis.Map(rows.map((row) => [row.junctionId, row])), [rows]);
 
   const hovered = byId.get(useSyncExternalStore(hover.subscribe, hover.get, () => null) ?? -1);
   const chosen = byId.get(selected ?? -1);
-  const legsOf = useCallback((ids: ReadonlySet<number>) => new Set([...ids].flatMap((id) => byId.get(id)?.needles.map((needle) => needle.legId) ?? [])), [byId]);
-  const strong = useMemo(() => (chosen ? new Set([chosen.junctionId]) : NOBODY), [chosen]);
-  const loaded = isLoaded ? map : null;
-  useFeatureFlag(loaded, "dots", "shown", shownIds);
-  useFeatureFlag(loaded, "needles", "shown", useMemo(() => legsOf(shownIds), [legsOf, shownIds]));
-  useFeatureFlag(loaded, "needles", "strong", useMemo(() => legsOf(strong), [legsOf, strong]));
   useFollowSelection(map, chosen);
 
-  const junctionAt = (event: MapMouseEvent): number | null => (map ? nearestJunction(map, event, byId, shownIds) : null);
+  const junctionAt = ({ lngLat }: MapMouseEvent): number | null =>
+    map ? nearestMark(marks, flags.dots, worldAt(lngLat.lat, lngLat.lng), PICK_PX / worldPxAt(map.getZoom())) : null;
+  // While the map is panned neither changes, and nothing beside it is drawn anew.
   const onMove = () => {
-    if (map) setView({ metresPerPx: groundMetresPerPx(map), centreLon: map.getCenter().lng });
+    if (map) setMetresPerPx(Number(groundMetresPerPx(map).toPrecision(3)));
+  };
+  const onIdle = () => {
+    onMove();
+    if (map) setCentreLon(map.getCenter().lng);
   };
 
   if (!bounds) return null;
@@ -73,7 +77,8 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
     <div className="absolute inset-0" role="group" aria-label="Map of the junctions. The list holds the same figures.">
       <Map
         initialViewState={{ bounds, fitBoundsOptions: { padding: WHOLE_CITY_PADDING } }}
-        mapStyle={PAPER_STYLE}
+        mapStyle={EMPTY_STYLE}
+        style={{ background: PAPER_COLOR }}
         attributionControl={false}
         dragRotate={false}
         pitchWithRotate={false}
@@ -81,64 +86,44 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
         maxZoom={18}
         minZoom={8}
         fadeDuration={0}
-        onLoad={(event) => {
-          setLoaded(true);
-          event.target.touchZoomRotate.disableRotation();
-          event.target.keyboard.disableRotation();
-          event.target.getCanvas().setAttribute("aria-label", "Map; arrow keys move it, plus and minus zoom");
-        }}
+        onLoad={(event) => prepare(event.target)}
         onError={() => setFailed(map === null)}
         ref={setMap}
-        onIdle={onMove}
+        onIdle={onIdle}
         onMove={onMove}
         onClick={(event) => onSelect(junctionAt(event))}
         onMouseMove={(event) => hover.set(junctionAt(event))}
         onMouseOut={() => hover.set(null)}
         cursor={hovered ? "pointer" : "grab"}
       >
-        <Source id="needles" type="geojson" data={needles} promoteId="legId">
-          <Layer {...NEEDLE_LAYER} />
-        </Source>
-        <Source id="dots" type="geojson" data={dots} promoteId="junctionId">
-          <Layer {...DOT_LAYER} />
-        </Source>
+        <Layer {...markLayer.layer} />
         {baseMap ? <BaseMapLayers baseMap={baseMap} /> : null}
         {links ? (
           <Source id="links" type="geojson" data={links}>
-            <Layer {...LINK_LAYER} beforeId="needles" />
+            <Layer {...LINK_LAYER} beforeId={MARK_LAYER_ID} />
           </Source>
         ) : null}
-        {chosen ? <SelectedMark lat={chosen.lat} lon={chosen.lon} name={chosen.name} note={noteOf(chosen)} side={chosen.lon > view.centreLon ? "left" : "right"} /> : null}
+        {chosen ? <SelectedMark lat={chosen.lat} lon={chosen.lon} name={chosen.name} note={noteOf(chosen)} side={chosen.lon > centreLon ? "left" : "right"} /> : null}
         {hovered && hovered !== chosen ? <HoveredMark lat={hovered.lat} lon={hovered.lon} name={hovered.name} /> : null}
       </Map>
       <MapButtons onZoom={(by) => map?.zoomTo(map.getZoom() + by)} onWhole={() => map?.fitBounds(bounds, { padding: WHOLE_CITY_PADDING })} />
-      <MapLegend metresPerPx={view.metresPerPx} units={units} locale={locale} />
+      <MapLegend metresPerPx={metresPerPx} units={units} locale={locale} />
     </div>
   );
+}
+
+/** A flat map with north up, that says what its keys do. */
+function prepare(map: LibraryMap): void {
+  map.touchZoomRotate.disableRotation();
+  map.keyboard.disableRotation();
+  map.getCanvas().setAttribute("aria-label", "Map; arrow keys move it, plus and minus zoom");
+  // The library lays a sky over the whole window in every frame; without a graphics card that is half the work of a frame.
+  map.painter.drawFunctions = { ...map.painter.drawFunctions, sky: () => undefined };
 }
 
 /** Equator of WGS 84 over the 512-pixel world of zoom 0. */
 function groundMetresPerPx(map: MapRef): number {
   return (40_075_017 * Math.cos((map.getCenter().lat * Math.PI) / 180)) / (512 * 2 ** map.getZoom());
-}
-
-/** Of junctions within reach of the pointer the nearest, those that pass the filters first. */
-function nearestJunction(map: MapRef, { point }: MapMouseEvent, byId: globalThis.Map<number, RankedJunction>, shownIds: ReadonlySet<number>): number | null {
-  if (!map.getLayer("dots")) return null;
-  const box: [[number, number], [number, number]] = [
-    [point.x - PICK_PX, point.y - PICK_PX],
-    [point.x + PICK_PX, point.y + PICK_PX],
-  ];
-  let nearest: number | null = null;
-  let nearestPx = Infinity;
-  for (const feature of map.queryRenderedFeatures(box, { layers: ["dots"] })) {
-    const row = byId.get(Number(feature.properties.junctionId));
-    if (!row) continue;
-    const at = map.project([row.lon, row.lat]);
-    const distancePx = Math.hypot(at.x - point.x, at.y - point.y) + (shownIds.has(row.junctionId) ? 0 : PICK_PX);
-    if (distancePx < nearestPx) [nearest, nearestPx] = [row.junctionId, distancePx];
-  }
-  return nearest;
 }
 
 /** Moves the map only when the selected junction is off it or near its edge; never changes the zoom. */

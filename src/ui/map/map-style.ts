@@ -1,13 +1,12 @@
 import type { LayerProps } from "react-map-gl/maplibre";
-import type { StyleSpecification } from "maplibre-gl";
-import { COLORS, DELAY_SCALE, NO_DATA_COLOR } from "@/ui/scales";
+import type { FilterSpecification, StyleSpecification } from "maplibre-gl";
+import type { Sheet } from "./base-map";
 
-/** Bare paper: everything on it comes from the city's own files. No glyphs address: labels are set in the page's fonts. */
-export const PAPER_STYLE: StyleSpecification = {
-  version: 8,
-  sources: {},
-  layers: [{ id: "paper", type: "background", paint: { "background-color": "#FBF9F2" } }],
-};
+/** Laid under the map by the page: a layer of it would be painted again in every frame. */
+export const PAPER_COLOR = "#FBF9F2";
+
+/** Empty: everything on the map comes from the city's own files. No glyphs address: labels are set in the page's fonts. */
+export const EMPTY_STYLE: StyleSpecification = { version: 8, sources: {}, layers: [] };
 
 const WATER = "#D9E3E6";
 const SHORE = "#B4C6CC";
@@ -17,17 +16,21 @@ const STREET = "#E4DAC6";
 /** Metres on the ground to pixels would hide small streets: widths grow with the zoom by hand. */
 const width = (atCity: number, atStreet: number): unknown => ["interpolate", ["exponential", 1.6], ["zoom"], 11, atCity, 17, atStreet];
 
-export const PARK_LAYER = { id: "parks", type: "fill", paint: { "fill-color": PARK } } as LayerProps;
-const isKind = (kind: string) => ["==", ["get", "kind"], kind];
-export const RIVER_LAYER = { id: "river", type: "fill", filter: isKind("river"), paint: { "fill-color": WATER } } as LayerProps;
-export const BANK_LAYER = { id: "banks", type: "line", filter: isKind("river"), paint: { "line-color": SHORE, "line-width": 1 } } as LayerProps;
-/** Above the banks: where a river meets the sea its outline ends. */
-export const SEA_LAYER = { id: "sea", type: "fill", filter: isKind("sea"), paint: { "fill-color": WATER } } as LayerProps;
-export const COAST_LAYER = { id: "coast", type: "line", filter: isKind("coast"), paint: { "line-color": SHORE, "line-width": 1 } } as LayerProps;
+const isOn = (sheet: Sheet, ...more: unknown[]) => ["all", ["==", ["get", "sheet"], sheet], ...more] as FilterSpecification;
+const isKind = (kind: string) => isOn("water", ["==", ["get", "kind"], kind]);
 
-export const STREET_LAYER = {
+const PARK_LAYER = { id: "parks", type: "fill", filter: isOn("parks"), paint: { "fill-color": PARK, "fill-antialias": false } } as LayerProps;
+/** Its edges are drawn over by its banks, the sea's by the coast. */
+const RIVER_LAYER = { id: "river", type: "fill", filter: isKind("river"), paint: { "fill-color": WATER, "fill-antialias": false } } as LayerProps;
+const BANK_LAYER = { id: "banks", type: "line", filter: isKind("river"), paint: { "line-color": SHORE, "line-width": 1 } } as LayerProps;
+/** Above the banks: where a river meets the sea its outline ends. */
+const SEA_LAYER = { id: "sea", type: "fill", filter: isKind("sea"), paint: { "fill-color": WATER, "fill-antialias": false } } as LayerProps;
+const COAST_LAYER = { id: "coast", type: "line", filter: isKind("coast"), paint: { "line-color": SHORE, "line-width": 1 } } as LayerProps;
+
+const STREET_LAYER = {
   id: "streets",
   type: "line",
+  filter: isOn("streets"),
   layout: { "line-cap": "round", "line-join": "round", "line-sort-key": ["match", ["get", "class"], "local", 0, "street", 1, 2] },
   paint: {
     "line-color": ["match", ["get", "class"], "local", "#EDE6D8", STREET],
@@ -50,11 +53,12 @@ export const LINK_LAYER = {
   paint: { "line-color": STREET, "line-width": width(1.6, 14) },
 } as LayerProps;
 
-const HALO = { "text-halo-color": "#FBF9F2", "text-halo-width": 1.4 };
+const HALO = { "text-halo-color": PAPER_COLOR, "text-halo-width": 1.4 };
 
-export const STREET_NAME_LAYER = {
+const STREET_NAME_LAYER = {
   id: "street-names",
   type: "symbol",
+  filter: isOn("streets"),
   minzoom: 14,
   layout: {
     "symbol-placement": "line",
@@ -67,10 +71,10 @@ export const STREET_NAME_LAYER = {
   paint: { "text-color": "#6D6455", ...HALO },
 } as LayerProps;
 
-export const PLACE_NAME_LAYER = {
+const PLACE_NAME_LAYER = {
   id: "place-names",
   type: "symbol",
-  filter: ["in", ["get", "kind"], ["literal", ["district", "park"]]],
+  filter: isOn("labels", ["in", ["get", "kind"], ["literal", ["district", "park"]]]),
   layout: {
     "text-field": ["get", "name"],
     "text-font": ["Barlow Semi Condensed"],
@@ -82,46 +86,23 @@ export const PLACE_NAME_LAYER = {
   paint: { "text-color": ["match", ["get", "kind"], "park", "#5F6F4A", "#7A7060"], ...HALO, "text-opacity": ["interpolate", ["linear"], ["zoom"], 15.5, 1, 16.5, 0] },
 } as LayerProps;
 
-export const WATER_NAME_LAYER = {
+const WATER_NAME_LAYER = {
   id: "water-names",
   type: "symbol",
-  filter: ["==", ["get", "kind"], "water"],
+  filter: isOn("labels", ["==", ["get", "kind"], "water"]),
   layout: { "text-field": ["get", "name"], "text-font": ["Barlow Italic"], "text-size": 14 },
   paint: { "text-color": "#587782", "text-halo-color": WATER, "text-halo-width": 1.2 },
 } as LayerProps;
 
-const shown = (yes: unknown, no: unknown): unknown => ["case", ["boolean", ["feature-state", "shown"], false], yes, no];
-const strong = (yes: unknown, no: unknown): unknown => ["case", ["boolean", ["feature-state", "strong"], false], yes, no];
-
-/** Dark needles are broader as well: far out they are what the eye has to find. Pixels at the given scale. */
-const byDelay = (scale: number): unknown => {
-  const steps = DELAY_SCALE.slice(1).flatMap((step, at) => [step.from, (2.6 + at * 0.55) * scale]);
-  return strong(5.5 * scale, ["step", ["coalesce", ["get", "delayS"], 0], 2 * scale, ...steps]);
-};
-
-export const NEEDLE_LAYER = {
-  id: "needles",
-  type: "line",
-  layout: { "line-cap": "butt", "line-sort-key": ["coalesce", ["get", "delayS"], -1] },
-  paint: {
-    "line-color": [
-      "case",
-      ["has", "delayS"],
-      ["step", ["get", "delayS"], DELAY_SCALE[0].color, ...DELAY_SCALE.slice(1).flatMap((step) => [step.from, step.color])],
-      NO_DATA_COLOR,
-    ],
-    "line-width": ["interpolate", ["linear"], ["zoom"], 11, byDelay(1), 14, byDelay(1.7), 17, byDelay(2.6)],
-    "line-opacity": shown(1, 0),
-  },
-} as LayerProps;
-
-export const DOT_LAYER = {
-  id: "dots",
-  type: "circle",
-  paint: {
-    "circle-radius": ["interpolate", ["linear"], ["zoom"], 11, shown(1.1, 1), 13, shown(2.2, 1.6), 15, shown(3.6, 2.6), 17, shown(6, 4.5)],
-    "circle-color": ["case", ["has", "rank"], COLORS.sheet, NO_DATA_COLOR],
-    "circle-stroke-width": ["interpolate", ["linear"], ["zoom"], 11, 0.7, 14, 1.4],
-    "circle-stroke-color": shown(COLORS.ink, "#A9A393"),
-  },
-} as LayerProps;
+/** The ground, from below. */
+export const GROUND_LAYERS: readonly LayerProps[] = [
+  PARK_LAYER,
+  RIVER_LAYER,
+  BANK_LAYER,
+  SEA_LAYER,
+  COAST_LAYER,
+  STREET_LAYER,
+  STREET_NAME_LAYER,
+  PLACE_NAME_LAYER,
+  WATER_NAME_LAYER,
+];

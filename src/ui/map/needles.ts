@@ -1,54 +1,19 @@
-import type { Feature, FeatureCollection, LineString, Point } from "geojson";
+import type { Feature, FeatureCollection, LineString } from "geojson";
 import { eastM, latAt, lonAt, northM, planeAt } from "@/core/geometry/plane";
-import type { RankedJunction } from "@/domain/screen";
+import type { NeedleView, RankedJunction } from "@/domain/screen";
 
-type Placed = Pick<RankedJunction, "junctionId" | "lat" | "lon" | "needles" | "rank">;
-
-export interface NeedleProperties {
-  legId: number;
-  junctionId: number;
-  /** Absent where the sample cannot say. */
-  delayS?: number;
-}
-
-export interface DotProperties {
-  junctionId: number;
-  /** Ranked junctions only. */
-  rank?: number;
-}
+type Placed = Pick<RankedJunction, "junctionId" | "lat" | "lon" | "needles">;
 
 /** Shortest needle, so that a leg without a queue, or without a figure, still shows which way it lies. */
 export const SHORTEST_NEEDLE_M = 18;
 
 const RAD = Math.PI / 180;
 
-/** One stroke for each leg, from the junction the way the leg lies, as long as its reach is on the ground. */
-export function needleFeatures(junctions: readonly Placed[]): FeatureCollection<LineString, NeedleProperties> {
-  const features = junctions.flatMap((junction) =>
-    junction.needles.map((needle): Feature<LineString, NeedleProperties> => {
-      const lengthM = Math.max(SHORTEST_NEEDLE_M, needle.reachM ?? 0);
-      const properties = { legId: needle.legId, junctionId: junction.junctionId, ...(needle.delayS !== null && { delayS: needle.delayS }) };
-      return { type: "Feature", properties, geometry: ray(junction, needle.lieDeg, lengthM) };
-    }),
-  );
-  return { type: "FeatureCollection", features };
-}
-
-export function dotFeatures(junctions: readonly Placed[]): FeatureCollection<Point, DotProperties> {
-  return {
-    type: "FeatureCollection",
-    features: junctions.map(({ junctionId, lat, lon, rank }) => ({
-      type: "Feature",
-      properties: { junctionId, ...(rank !== null && { rank }) },
-      geometry: { type: "Point", coordinates: [lon, lat] },
-    })),
-  };
-}
-
-function ray({ lat, lon }: Placed, lieDeg: number, lengthM: number): LineString {
+/** Longitude and latitude of a needle's end: from the junction the way the leg lies, as far as its reach is on the ground. */
+export function needleEnd({ lat, lon }: Pick<Placed, "lat" | "lon">, { lieDeg, reachM }: Pick<NeedleView, "lieDeg" | "reachM">): [lon: number, lat: number] {
   const plane = planeAt(lat, lon);
-  const end = [lonAt(plane, Math.sin(lieDeg * RAD) * lengthM), latAt(plane, Math.cos(lieDeg * RAD) * lengthM)];
-  return { type: "LineString", coordinates: [[lon, lat], end] };
+  const lengthM = Math.max(SHORTEST_NEEDLE_M, reachM ?? 0);
+  return [lonAt(plane, Math.sin(lieDeg * RAD) * lengthM), latAt(plane, Math.cos(lieDeg * RAD) * lengthM)];
 }
 
 const LINK_LONGEST_M = 1200;

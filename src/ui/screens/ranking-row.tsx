@@ -20,6 +20,8 @@ const LOOKS = screenLooks("metric", "rank");
 
 export interface RankingRowProps {
   row: Row<typeof SCREEN_FEATURES, RankedJunction>;
+  /** Made anew when units, scale or order change. */
+  columns: unknown;
   index: number;
   isSelected: boolean;
   isTabStop: boolean;
@@ -27,7 +29,7 @@ export interface RankingRowProps {
   onHover: (junctionId: number | null) => void;
 }
 
-/** Drawn again only when its own figures or its own selection change. */
+/** Drawn again only when its own figures, its place or its own selection change: the library makes all its rows anew for every list. */
 export const RankingRow = memo(function RankingRow({ row, index, isSelected, isTabStop, onSelect, onHover }: RankingRowProps) {
   const { junctionId, name } = row.original;
   return (
@@ -80,4 +82,8 @@ export const RankingRow = memo(function RankingRow({ row, index, isSelected, isT
       })}
     </div>
   );
-});
+}, isSameRow);
+
+function isSameRow({ row, ...rest }: RankingRowProps, { row: nextRow, ...nextRest }: RankingRowProps): boolean {
+  return row.original === nextRow.original && (Object.keys(rest) as (keyof typeof rest)[]).every((key) => rest[key] === nextRest[key]);
+}

@@ -1,7 +1,7 @@
 "use client";
 
 import { useTable } from "@tanstack/react-table";
-import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { memo, useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { RankedJunction, ScreenQuery } from "@/domain/screen";
 import type { SortKey } from "@/domain/screen-choices";
 import { useCity } from "@/ui/shell/city";
@@ -26,7 +26,8 @@ export interface RankingTableProps {
 
 const KEY_STEPS: Record<string, number> = { ArrowDown: 1, ArrowUp: -1, PageDown: 10, PageUp: -10, Home: -Infinity, End: Infinity };
 
-export function RankingTable({ rows: data, query, maxDelayS, lastRank, selected, onSelect, onHover, onSort }: RankingTableProps) {
+/** Drawn again only when what it lists changes: not while the next rows are still being chosen. */
+export const RankingTable = memo(function RankingTable({ rows: data, query, maxDelayS, lastRank, selected, onSelect, onHover, onSort }: RankingTableProps) {
   const { settings, locale } = useCity();
   const list = useRef<HTMLDivElement>(null);
   const { units } = settings;
@@ -56,7 +57,7 @@ export function RankingTable({ rows: data, query, maxDelayS, lastRank, selected,
           const isSelected = index === selectedIndex;
           return (
             <div key={row.id} role="presentation">
-              <RankingRow row={row} index={index} isSelected={isSelected} isTabStop={index === tabStop} onSelect={toggle} onHover={onHover} />
+              <RankingRow row={row} columns={columns} index={index} isSelected={isSelected} isTabStop={index === tabStop} onSelect={toggle} onHover={onHover} />
               {isSelected ? <RankingDetail row={row.original} query={query} /> : null}
             </div>
           );
@@ -64,14 +65,13 @@ export function RankingTable({ rows: data, query, maxDelayS, lastRank, selected,
       </div>
     </div>
   );
-}
+});
 
 /** A second press on the same head turns the order round. */
 function sortAfter(query: Pick<ScreenQuery, "sort" | "dir">, sort: SortKey): Pick<ScreenQuery, "sort" | "dir"> {
   if (query.sort !== sort) return { sort, dir: undefined };
   return { sort, dir: oppositeOf(query) };
 }
-
 
 type ListRef = React.RefObject<HTMLDivElement | null>;
 

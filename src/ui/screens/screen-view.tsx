@@ -10,6 +10,7 @@ import { createHoverStore } from "@/ui/map/hover-store";
 import { MapBoundary } from "@/ui/map/map-boundary";
 import { RequestFailed } from "@/ui/primitives/request-failed";
 import { Loading } from "@/ui/primitives/states";
+import { useIsIdle } from "@/ui/primitives/use-is-idle";
 import { useMediaQuery } from "@/ui/primitives/use-media-query";
 import { useCity } from "@/ui/shell/city";
 import { movementName } from "./explain";
@@ -21,7 +22,7 @@ import { ScreenSentence } from "./screen-sentence";
 import { ScreenTools } from "./screen-tools";
 import { useScreenAddress } from "./use-screen-address";
 
-/** The map library is large: the list is there and usable before it. */
+/** The map library is large: it is asked for once the list is there and usable. */
 const CityMap = dynamic(() => import("@/ui/map/city-map"), { ssr: false, loading: () => <Loading title="Drawing the map" /> });
 
 export interface PublishInput {
@@ -39,6 +40,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
   const [hover] = useState(createHoverStore);
   const [isMapOpen, setMapOpen] = useState(false);
   const isWide = useMediaQuery("(min-width: 64rem)");
+  const isIdle = useIsIdle();
 
   const all = result?.rows ?? NO_ROWS;
   const filter = useDeferredValue(query);
@@ -58,7 +60,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
       {result && result.total > 0 ? (
         <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(24rem,1fr)_minmax(30rem,max(47rem,41%))] lg:grid-rows-[minmax(0,1fr)]">
           <div className={`${isMapOpen ? "relative h-[70dvh] border-b border-rule" : "hidden"} lg:relative lg:block lg:h-auto lg:border-b-0 lg:border-r`}>
-            {isWide || isMapOpen ? (
+            {isMapOpen || (isWide && isIdle) ? (
               <MapBoundary>
                 <CityMap rows={all} shownIds={shownIds} selected={at} hover={hover} units={settings.units} locale={locale} noteOf={noteOf} onSelect={select} />
               </MapBoundary>
@@ -68,7 +70,7 @@ export function ScreenView({ publish }: { publish: PublishAction }) {
             <ScreenTools query={query} onChange={change} publish={publish} isMapOpen={isMapOpen} onToggleMap={() => setMapOpen(!isMapOpen)} shown={rows.length} />
             <div data-scrolls className={`relative min-h-0 flex-1 lg:overflow-y-auto ${isPlaceholderData ? "opacity-60" : ""}`}>
               {rows.length > 0 ? (
-                <RankingTable {...scale} rows={rows} query={query} selected={at} onSelect={select} onHover={hover.set} onSort={change} />
+                <RankingTable {...scale} rows={rows} query={filter} selected={at} onSelect={select} onHover={hover.set} onSort={change} />
               ) : (
                 <ScreenEmpty kind={result.basis.traversals === 0 ? "no-traversals" : "filtered"} onChange={change} />
               )}

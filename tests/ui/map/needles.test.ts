@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { boundsOf, dotFeatures, linkFeatures, needleFeatures, overlap, SHORTEST_NEEDLE_M } from "@/ui/map/needles";
+import { boundsOf, linkFeatures, needleEnd, overlap, SHORTEST_NEEDLE_M } from "@/ui/map/needles";
 import { groundRule } from "@/ui/map/map-legend";
 import { createHoverStore } from "@/ui/map/hover-store";
 
@@ -12,21 +12,17 @@ const LON_M = 78_847;
 
 describe("leg needles", () => {
   it("point the way the leg lies and are as long as the reach on the ground", () => {
-    const [north, east] = needleFeatures([at(1, 45, 10, [needle(1, 0, 200), needle(2, 90, 200)])]).features.map((f) => f.geometry.coordinates[1]);
+    const north = needleEnd({ lat: 45, lon: 10 }, needle(1, 0, 200));
+    const east = needleEnd({ lat: 45, lon: 10 }, needle(2, 90, 200));
     expect((north[1] - 45) * LAT_M).toBeCloseTo(200, 0);
     expect(north[0]).toBeCloseTo(10, 9);
     expect((east[0] - 10) * LON_M).toBeCloseTo(200, 0);
     expect(east[1]).toBeCloseTo(45, 9);
   });
 
-  it("show a leg without a figure as a stub without a delay, never as a delay of zero", () => {
-    const [{ geometry, properties }] = needleFeatures([at(1, 45, 10, [needle(5, 180, null, null)])]).features;
-    expect(properties).toEqual({ legId: 5, junctionId: 1 });
-    expect((45 - geometry.coordinates[1][1]) * LAT_M).toBeCloseTo(SHORTEST_NEEDLE_M, 0);
-  });
-
-  it("leave the rank off an unranked junction's dot", () => {
-    expect(dotFeatures([{ ...at(1, 45, 10), rank: null }]).features[0].properties).toEqual({ junctionId: 1 });
+  it("are a stub where there is no figure", () => {
+    const [, lat] = needleEnd({ lat: 45, lon: 10 }, needle(5, 180, null, null));
+    expect((45 - lat) * LAT_M).toBeCloseTo(SHORTEST_NEEDLE_M, 0);
   });
 });
 
