@@ -41,15 +41,15 @@ const heldBy = new WeakMap<object, Held>();
 /**
  * The days, merged from their slices and ready to be scored, in their order, from memory as far as they are held, the others from the database; null
  * where some have been replaced meanwhile. A day of which slices came, went or changed is read anew, no other. All
- * days together must not exceed `MOST_HELD_BYTES`.
+ * days together must not exceed `most` bytes.
  */
-export async function holdDays(db: Db, wanted: readonly SlicesOfDay[], catalogue: CityCatalogue): Promise<DayByJunction[] | null> {
+export async function holdDays(db: Db, wanted: readonly SlicesOfDay[], catalogue: CityCatalogue, most = MOST_HELD_BYTES): Promise<DayByJunction[] | null> {
   const held = heldBy.get(db) ?? { days: new Map<number, HeldDay>(), reading: Promise.resolve() };
   heldBy.set(db, held);
   if (missingOf(held, wanted, catalogue).length === 0) return collect(held, wanted);
   const reading = held.reading.then(async () => {
     const missing = missingOf(held, wanted, catalogue);
-    makeRoom(held, wanted, missing);
+    makeRoom(held, wanted, missing, most);
     await readDays(db, held, missing, catalogue);
     return collect(held, wanted);
   });
@@ -83,13 +83,14 @@ function collect(held: Held, wanted: readonly SlicesOfDay[]): DayByJunction[] | 
   return days;
 }
 
-function makeRoom(held: Held, wanted: readonly SlicesOfDay[], missing: readonly SlicesOfDay[]): void {
+/** Forgets what is to be read anew, then the days that were asked for longest ago. */
+function makeRoom(held: Held, wanted: readonly SlicesOfDay[], missing: readonly SlicesOfDay[], most: number): void {
   for (const { day } of missing) held.days.delete(day);
   let bytes = 0;
   for (const day of [...missing, ...held.days.values()]) bytes += day.bytes;
   const kept = new Set(wanted.map(({ day }) => day));
   for (const [day, known] of held.days) {
-    if (bytes <= MOST_HELD_BYTES) return;
+    if (bytes <= most) return;
     if (kept.has(day)) continue;
     held.days.delete(day);
     bytes -= known.bytes;

@@ -52,13 +52,13 @@ export function isChosenDay(day: number, choice: DateChoice): boolean {
  * beside each other. An upload or a leg that is matched anew replaces slices between the list and the reading; then
  * the list is read afresh.
  */
-export async function loadScreenDays(db: Db, choice: DateChoice, catalogue: CityCatalogue): Promise<ScreenDays> {
+export async function loadScreenDays(db: Db, choice: DateChoice, catalogue: CityCatalogue, mostBytes = MOST_HELD_BYTES): Promise<ScreenDays> {
   for (let run = 1; run <= MOST_RUNS; run++) {
     const chosen = (await listSlices(db)).filter((slice) => isChosenDay(slice.day, choice));
     const present = chosen.filter((slice) => slice.methodVersion === METHOD_VERSION);
     const all = byDay(present);
-    const fitting = newestThatFit(all);
-    const days = await holdDays(db, fitting, catalogue);
+    const fitting = newestThatFit(all, mostBytes);
+    const days = await holdDays(db, fitting, catalogue, mostBytes);
     if (days === null) continue;
     const intervals = present.flatMap((slice) => (slice.medianIntervalS === null ? [] : [slice.medianIntervalS])).sort((a, b) => a - b);
     return {
@@ -100,11 +100,11 @@ function byDay(slices: readonly Slice[]): SlicesOfDay[] {
 }
 
 /** A question never takes more memory than may be held: the newest days count, and the answer says which. */
-function newestThatFit(days: readonly SlicesOfDay[]): SlicesOfDay[] {
+function newestThatFit(days: readonly SlicesOfDay[], mostBytes: number): SlicesOfDay[] {
   let first = days.length;
   for (let bytes = 0; first > 0; first--) {
     bytes += days[first - 1].bytes;
-    if (bytes > MOST_HELD_BYTES) break;
+    if (bytes > mostBytes) break;
   }
   return days.slice(first);
 }
