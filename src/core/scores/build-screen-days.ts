@@ -1,5 +1,6 @@
 import { METHOD_VERSION } from "@/core/method-version";
 import type { LegQuarters, Traversals } from "@/core/types";
+import { QUARTERS } from "./day-by-junction";
 import { localQuarter, type LocalOffset } from "./local-time";
 import { emptyScreenDay } from "./screen-day-columns";
 import { delayCode, reachCode, secondsCode } from "./stored-figures";
@@ -15,15 +16,19 @@ export interface ScreenKeys {
   vehicle: ArrayLike<number>;
 }
 
-/** What belongs to one day: indices of traversals and of leg quarters. */
-interface DayParts {
-  traversals: number[];
-  legQuarters: number[];
+/** One of the two lists that are split by day. */
+interface List {
+  /** Index of the movement or leg by member, and the key of each. */
+  of: Uint32Array;
+  keys: ArrayLike<number>;
+  quarter: Uint8Array;
+  /** Members of each day. */
+  byDay: Map<number, number[]>;
 }
 
 /**
  * Splits traversals (by the moment they pass the stop line) and leg quarters into slices by local calendar day,
- * in order of day. O(n log n).
+ * in order of day. O(n + days × movements).
  */
 export function buildScreenDays(
   traversals: Traversals,
@@ -31,104 +36,103 @@ export function buildScreenDays(
   keys: ScreenKeys,
   localTime: readonly LocalOffset[],
 ): ScreenDay[] {
-  const byDay = new Map<number, DayParts>();
-  const partsOf = (day: number): DayParts => {
-    const known = byDay.get(day) ?? { traversals: [], legQuarters: [] };
-    byDay.set(day, known);
-    return known;
-  };
-  const quarterOf = new Uint8Array(traversals.length);
-  for (let i = 0; i < traversals.length; i++) {
-    const local = localQuarter(traversals.stopLineMs[i], localTime);
-    quarterOf[i] = local.quarter;
-    partsOf(local.day).traversals.push(i);
-  }
-  const legQuarterOf = new Uint8Array(quarters.length);
-  for (let k = 0; k < quarters.length; k++) {
-    const local = localQuarter(quarters.startMs[k], localTime);
-    legQuarterOf[k] = local.quarter;
-    partsOf(local.day).legQuarters.push(k);
-  }
-  return [...byDay.entries()]
-    .sort(([a], [b]) => a - b)
-    .map(([day, parts]) => {
-      const passed = rowsBy(parts.traversals, (i) => keys.movement[traversals.movement[i]]);
-      const queued = rowsBy(parts.legQuarters, (k) => keys.leg[quarters.leg[k]]);
-      for (const row of queued) row.members.sort((a, b) => legQuarterOf[a] - legQuarterOf[b]);
-      const out = emptyScreenDay(day, METHOD_VERSION, {
-        movements: passed.length,
-        traversals: parts.traversals.length,
-        legs: queued.length,
-        legQuarters: queued.reduce((sum, { members }) => sum + distinctOf(members, legQuarterOf), 0),
-      });
-      fillTraversals(out, passed, { traversals, quarterOf, keys });
-      fillQueues(out, queued, quarters, legQuarterOf);
-      return out;
+  const passages = split(traversals.length, traversals.movement, keys.movement, traversals.stopLineMs, localTime);
+  const queues = split(quarters.length, quarters.leg, keys.leg, quarters.startMs, localTime);
+  const days = [...new Set([...passages.byDay.keys(), ...queues.byDay.keys()])].sort((a, b) => a - b);
+  return days.map((day) => {
+    const passed = arrange(passages, day);
+    const queued = arrange(queues, day);
+    const out = emptyScreenDay(day, METHOD_VERSION, {
+      movements: passed.keys.length,
+      traversals: passed.members.length,
+      legs: queued.keys.length,
+      legQuarters: queued.cellsInUse,
     });
+    fillTraversals(out, passed, traversals, keys);
+    fillQueues(out, queued, quarters);
+    return out;
+  });
 }
 
-/** One key and all that belongs to it. */
-interface Row {
-  key: number;
-  members: number[];
-}
-
-function rowsBy(members: readonly number[], keyOf: (member: number) => number): Row[] {
-  const rows = new Map<number, Row>();
-  for (const member of members) {
-    const key = keyOf(member);
-    const row = rows.get(key);
-    if (row) row.members.push(member);
-    else rows.set(key, { key, members: [member] });
+function split(length: number, of: Uint32Array, keys: ArrayLike<number>, moments: Float64Array, localTime: readonly LocalOffset[]): List {
+  const byDay = new Map<number, number[]>();
+  const quarter = new Uint8Array(length);
+  for (let i = 0; i < length; i++) {
+    const local = localQuarter(moments[i], localTime);
+    quarter[i] = local.quarter;
+    const members = byDay.get(local.day);
+    if (members) members.push(i);
+    else byDay.set(local.day, [i]);
   }
-  return [...rows.values()].sort((a, b) => a.key - b.key);
+  return { of, keys, quarter, byDay };
 }
 
-function distinctOf(sorted: readonly number[], quarterOf: Uint8Array): number {
-  return sorted.reduce((sum, member, k) => sum + Number(k === 0 || quarterOf[member] !== quarterOf[sorted[k - 1]]), 0);
+/** The members of one day in order of their row's key, then of quarter. */
+interface Arranged {
+  keys: number[];
+  members: Uint32Array;
+  /** Members of row r in quarter q: from start[96 r + q] to start[96 r + q + 1]. */
+  start: Uint32Array;
+  cellsInUse: number;
 }
 
-function fillTraversals(out: ScreenDay, rows: Row[], from: { traversals: Traversals; quarterOf: Uint8Array; keys: ScreenKeys }): void {
-  const { traversals, quarterOf, keys } = from;
+/** Counts, then places: cells are many and have few members. */
+function arrange({ of, keys, quarter, byDay }: List, day: number): Arranged {
+  const given = byDay.get(day) ?? [];
+  const rowKeys = [...new Set(given.map((i) => keys[of[i]]))].sort((a, b) => a - b);
+  const rowByKey = new Map(rowKeys.map((key, row) => [key, row]));
+  const cellOf = Uint32Array.from(given, (i) => (rowByKey.get(keys[of[i]]) as number) * QUARTERS + quarter[i]);
+  const start = new Uint32Array(rowKeys.length * QUARTERS + 1);
+  for (const cell of cellOf) start[cell + 1] += 1;
+  let cellsInUse = 0;
+  for (let cell = 0; cell + 1 < start.length; cell++) {
+    if (start[cell + 1] > 0) cellsInUse += 1;
+    start[cell + 1] += start[cell];
+  }
+  const members = new Uint32Array(given.length);
+  const next = start.slice();
+  given.forEach((i, k) => (members[next[cellOf[k]]++] = i));
+  return { keys: rowKeys, members, start, cellsInUse };
+}
+
+function fillTraversals(out: ScreenDay, { keys: rowKeys, members, start }: Arranged, traversals: Traversals, keys: ScreenKeys): void {
+  out.movement.set(rowKeys);
+  for (let row = 0; row < rowKeys.length; row++) out.movementStart[row + 1] = start[(row + 1) * QUARTERS];
   const vehicleOf = (i: number): number => keys.vehicle[traversals.vehicle[i]];
-  let at = 0;
-  rows.forEach(({ key, members }, row) => {
-    out.movement[row] = key;
-    const inOrder = (a: number, b: number): number =>
-      quarterOf[a] - quarterOf[b] ||
-      vehicleOf(a) - vehicleOf(b) ||
-      delayCode(traversals.delayS[a]) - delayCode(traversals.delayS[b]) ||
-      traversals.stops[a] - traversals.stops[b];
-    for (const i of members.sort(inOrder)) {
-      out.quarter[at] = quarterOf[i];
+  const inOrder = (a: number, b: number): number =>
+    vehicleOf(a) - vehicleOf(b) || delayCode(traversals.delayS[a]) - delayCode(traversals.delayS[b]) || traversals.stops[a] - traversals.stops[b];
+  for (let cell = 0; cell + 1 < start.length; cell++) {
+    const [from, to] = [start[cell], start[cell + 1]];
+    if (to - from > 1) members.subarray(from, to).sort(inOrder);
+    for (let at = from; at < to; at++) {
+      const i = members[at];
+      out.quarter[at] = cell % QUARTERS;
       out.vehicle[at] = vehicleOf(i);
       out.delay[at] = delayCode(traversals.delayS[i]);
       out.stops[at] = traversals.stops[i];
-      at += 1;
     }
-    out.movementStart[row + 1] = at;
-  });
+  }
 }
 
 /** The hour that the autumn change repeats: both passes of a quarter become one entry. */
-function fillQueues(out: ScreenDay, rows: Row[], quarters: LegQuarters, quarterOf: Uint8Array): void {
-  let at = -1;
-  rows.forEach(({ key, members }, row) => {
-    out.leg[row] = key;
-    let [spilledS, observedS] = [0, 0];
-    members.forEach((k, m) => {
-      if (m === 0 || quarterOf[k] !== quarterOf[members[m - 1]]) {
-        at += 1;
-        [spilledS, observedS] = [0, 0];
+function fillQueues(out: ScreenDay, { keys, members, start }: Arranged, quarters: LegQuarters): void {
+  out.leg.set(keys);
+  let at = 0;
+  for (let cell = 0; cell + 1 < start.length; cell++) {
+    if (start[cell] < start[cell + 1]) {
+      let [spilledS, observedS] = [0, 0];
+      for (let m = start[cell]; m < start[cell + 1]; m++) {
+        const k = members[m];
+        spilledS += quarters.spilledS[k];
+        observedS += quarters.observedS[k];
+        out.reach[at] = Math.max(out.reach[at], reachCode(quarters.reachM[k]));
+        out.reachEstimate[at] = Math.max(out.reachEstimate[at], reachCode(quarters.reachEstimateM[k]));
       }
-      spilledS += quarters.spilledS[k];
-      observedS += quarters.observedS[k];
-      out.legQuarter[at] = quarterOf[k];
-      out.reach[at] = Math.max(out.reach[at], reachCode(quarters.reachM[k]));
-      out.reachEstimate[at] = Math.max(out.reachEstimate[at], reachCode(quarters.reachEstimateM[k]));
+      out.legQuarter[at] = cell % QUARTERS;
       out.spilled[at] = secondsCode(spilledS);
       out.observed[at] = secondsCode(observedS);
-    });
-    out.legStart[row + 1] = at + 1;
-  });
+      at += 1;
+    }
+    if (cell % QUARTERS === QUARTERS - 1) out.legStart[(cell + 1) / QUARTERS] = at;
+  }
 }
