@@ -50,27 +50,14 @@ export function dayByJunction(day: ScreenDay, index: CatalogueIndex): DayByJunct
   const movements = rowsByJunction(day.movement, (key) => placeOfMovement(index, key));
   const legs = rowsByJunction(day.leg, (key) => placeOfLeg(index, key));
   const junctions = [...new Set([...movements.keys(), ...legs.keys()])].sort((a, b) => a - b);
-  const passed = arrange(junctions, movements, day.movementStart, day.quarter);
-  const queued = arrange(junctions, legs, day.legStart, day.legQuarter);
-  const pick = (column: Uint16Array): Uint16Array => {
-    const picked = new Uint16Array(queued.source.length);
-    for (let k = 0; k < picked.length; k++) picked[k] = column[queued.source[k]];
-    return picked;
-  };
   return {
     day: day.day,
     index,
     junction: Uint32Array.from(junctions, (j) => index.junctions[j]),
     rowOf: rowsOf(junctions, index),
-    passedStart: passed.start,
-    ...passages(day, passed),
-    queueStart: queued.start,
-    ofLeg: queued.number,
-    reach: pick(day.reach),
-    reachEstimate: pick(day.reachEstimate),
-    spilled: pick(day.spilled),
-    observed: pick(day.observed),
-    hasUnlisted: passed.rows < day.movement.length || queued.rows < day.leg.length,
+    ...arrangePassages(day, listsOf(junctions, movements)),
+    ...arrangeQueues(day, listsOf(junctions, legs)),
+    hasUnlisted: countOf(movements) < day.movement.length || countOf(legs) < day.leg.length,
   };
 }
 
@@ -159,45 +146,64 @@ function rowsByJunction(keys: Uint32Array, placeOf: (key: number) => Place | und
   return rows;
 }
 
-interface Arranged {
-  rows: number;
-  /** Where the entries of each junction and quarter begin. */
-  start: Uint32Array;
-  /** For each entry: the number of its movement or leg, and where it stood in the slice. */
-  number: Uint8Array;
-  source: Uint32Array;
+function listsOf(junctions: readonly number[], rows: ReadonlyMap<number, NumberedRow[]>): NumberedRow[][] {
+  return junctions.map((junction) => rows.get(junction) ?? []);
 }
 
-/** Counts, then places: entries keep their order within a row. */
-function arrange(junctions: readonly number[], rowsOfJunction: ReadonlyMap<number, NumberedRow[]>, rowStarts: Uint32Array, quarters: Uint8Array): Arranged {
-  const lists = junctions.map((junction) => rowsOfJunction.get(junction) ?? []);
-  const start = new Uint32Array(junctions.length * QUARTERS + 1);
+function countOf(rows: ReadonlyMap<number, NumberedRow[]>): number {
+  let count = 0;
+  for (const list of rows.values()) count += list.length;
+  return count;
+}
+
+/** Where the entries of each junction and quarter begin. */
+function startsOf(lists: readonly NumberedRow[][], rowStart: Uint32Array, quarters: Uint8Array): Uint32Array {
+  const start = new Uint32Array(lists.length * QUARTERS + 1);
   lists.forEach((list, j) => {
-    for (const { row } of list) for (let i = rowStarts[row]; i < rowStarts[row + 1]; i++) start[j * QUARTERS + quarters[i] + 1] += 1;
+    for (const { row } of list) for (let i = rowStart[row]; i < rowStart[row + 1]; i++) start[j * QUARTERS + quarters[i] + 1] += 1;
   });
   for (let k = 1; k < start.length; k++) start[k] += start[k - 1];
-  const entries = start[start.length - 1];
-  const [number, source] = [new Uint8Array(entries), new Uint32Array(entries)];
-  const next = start.slice();
+  return start;
+}
+
+function arrangePassages(day: ScreenDay, lists: readonly NumberedRow[][]): Pick<DayByJunction, "passedStart" | "passed" | "vehicle"> {
+  const { movementStart, quarter, stops, delay, vehicle: hash } = day;
+  const passedStart = startsOf(lists, movementStart, quarter);
+  const passed = new Uint32Array(passedStart[passedStart.length - 1]);
+  const vehicle = new Uint16Array(passed.length);
+  const next = passedStart.slice();
   lists.forEach((list, j) => {
-    for (const one of list) {
-      for (let i = rowStarts[one.row]; i < rowStarts[one.row + 1]; i++) {
-        const at = next[j * QUARTERS + quarters[i]]++;
-        number[at] = one.number;
-        source[at] = i;
+    for (const { row, number } of list) {
+      for (let i = movementStart[row]; i < movementStart[row + 1]; i++) {
+        const at = next[j * QUARTERS + quarter[i]]++;
+        passed[at] = (number << 24) | (stops[i] << 16) | delay[i];
+        vehicle[at] = hash[i] ^ (hash[i] >>> 16);
       }
     }
   });
-  return { rows: lists.reduce((sum, list) => sum + list.length, 0), start, number, source };
+  return { passedStart, passed, vehicle };
 }
 
-function passages(day: ScreenDay, { source, number }: Arranged): { passed: Uint32Array; vehicle: Uint16Array } {
-  const passed = new Uint32Array(source.length);
-  const vehicle = new Uint16Array(source.length);
-  for (let k = 0; k < source.length; k++) {
-    const i = source[k];
-    passed[k] = ((number[k] << 24) | (day.stops[i] << 16) | day.delay[i]) >>> 0;
-    vehicle[k] = day.vehicle[i] ^ (day.vehicle[i] >>> 16);
-  }
-  return { passed, vehicle };
+type Queues = Pick<DayByJunction, "queueStart" | "ofLeg" | "reach" | "reachEstimate" | "spilled" | "observed">;
+
+function arrangeQueues(day: ScreenDay, lists: readonly NumberedRow[][]): Queues {
+  const { legStart, legQuarter } = day;
+  const queueStart = startsOf(lists, legStart, legQuarter);
+  const length = queueStart[queueStart.length - 1];
+  const [reach, reachEstimate, spilled, observed] = Array.from({ length: 4 }, () => new Uint16Array(length));
+  const ofLeg = new Uint8Array(length);
+  const next = queueStart.slice();
+  lists.forEach((list, j) => {
+    for (const { row, number } of list) {
+      for (let k = legStart[row]; k < legStart[row + 1]; k++) {
+        const at = next[j * QUARTERS + legQuarter[k]]++;
+        ofLeg[at] = number;
+        reach[at] = day.reach[k];
+        reachEstimate[at] = day.reachEstimate[k];
+        spilled[at] = day.spilled[k];
+        observed[at] = day.observed[k];
+      }
+    }
+  });
+  return { queueStart, ofLeg, reach, reachEstimate, spilled, observed };
 }
