@@ -48,7 +48,7 @@ export function createMatcher(network: Network): (pings: PingColumns) => Matched
   const graph = createGraph(network);
   return (pings) => {
     const cleaned = cleanPings(pings);
-    return matchCleaned(cleaned.trips, cleaned.report, graph, pings);
+    return matchCleaned(cleaned.trips, cleaned.report, graph);
   };
 }
 
@@ -58,7 +58,7 @@ export function processCity(
 ): CityResult {
   const cleaned = cleanPings(pings);
   const network = learnFromTrips(cleaned.trips, junctions, index, options, prior);
-  const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network), pings);
+  const matched = matchCleaned(cleaned.trips, cleaned.report, createGraph(network));
   setReferences(network, matched.traversals);
   const facts = { ...matched.facts, penetration: penetrationFromQueues(network, matched.traversals) };
   return { network, traversals: matched.traversals, openTracks: matched.openTracks, clean: matched.report, facts };
@@ -66,7 +66,7 @@ export function processCity(
 
 function matchCleaned(
   trips: Trips, report: Pick<CleanReport, "pings" | "duplicates" | "jumps" | "trips">,
-  graph: ReturnType<typeof createGraph>, pings: PingColumns,
+  graph: ReturnType<typeof createGraph>,
 ): Matched {
   const builder = createTraversalBuilder();
   const open = createOpenTrackBuilder();
@@ -81,18 +81,17 @@ function matchCleaned(
     traversals: builder.finish(),
     openTracks: open.finish(),
     report: { ...report, farFromJunctions, incompleteTraversals },
-    facts: sampleFacts(trips, pings),
+    facts: sampleFacts(trips),
   };
 }
 
-function sampleFacts(trips: Trips, pings: PingColumns): SampleFacts {
-  const vehicles = new Set<number>();
-  for (let i = 0; i < pings.length; i++) vehicles.add(pings.vehicle[i]);
+function sampleFacts(trips: Trips): SampleFacts {
   return {
     medianIntervalS: trips.medianIntervalS,
     hasSpeed: trips.hasSpeed,
     hasHeading: trips.hasHeading,
-    vehicles: vehicles.size,
+    // Cleaning leaves every vehicle a ping.
+    vehicles: new Set(trips.tripVehicle).size,
     penetration: NaN,
   };
 }

@@ -1,5 +1,5 @@
 import { signedTurnDeg } from "@/core/geometry/angles";
-import { pointAt, reversed } from "@/core/geometry/polyline";
+import { lengthOf, pointAt, reversed } from "@/core/geometry/polyline";
 import type { Network } from "@/core/types";
 
 /** Arc from stop line to exit: the chord, bent by the turn (a circle's arc over its chord). */
@@ -30,4 +30,30 @@ export function boxLine(network: Network, leg: number, exit: number): Float64Arr
     );
   }
   return Float64Array.from(out);
+}
+
+/** The way through a junction from a leg to an exit. */
+export interface Box {
+  /** In the junction's plane. */
+  line: Float64Array;
+  lengthM: number;
+  /** Index into `Network.movements`; -1 where the network has none. */
+  movement: number;
+}
+
+/** Boxes by leg and exit, each worked out when it is first asked for. */
+export function createBoxes(network: Network): (leg: number, exit: number) => Box {
+  const keyOf = (leg: number, exit: number): number => leg * network.exits.length + exit;
+  const movements = new Map(network.movements.map((movement, i) => [keyOf(movement.leg, movement.exit), i]));
+  const known = new Map<number, Box>();
+  return (leg, exit) => {
+    const key = keyOf(leg, exit);
+    let box = known.get(key);
+    if (!box) {
+      const line = boxLine(network, leg, exit);
+      box = { line, lengthM: lengthOf(line), movement: movements.get(key) ?? -1 };
+      known.set(key, box);
+    }
+    return box;
+  };
 }

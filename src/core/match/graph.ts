@@ -1,5 +1,6 @@
 import { planeAt, type Plane } from "@/core/geometry/plane";
 import { reversed } from "@/core/geometry/polyline";
+import { createBoxes, type Box } from "@/core/match/box";
 import { createLinkGrid, type LinkGrid } from "@/core/match/link-grid";
 import { MATCHING } from "@/core/match/matching";
 import { createRouteTable, type RouteTable } from "@/core/match/routes";
@@ -28,6 +29,8 @@ export interface StreetGraph {
   grid: LinkGrid;
   /** Ways from link to link; found when they are first asked for. */
   routes: RouteTable;
+  /** The way through a junction. */
+  box(leg: number, exit: number): Box;
 }
 
 /** Builds the graph and the grid of its links. O(total length). */
@@ -62,5 +65,6 @@ export function createGraph(network: Network): StreetGraph {
   });
   const segments = cutSegments(lines);
   const grid = createLinkGrid(segments, home, planes);
-  return { network, planes, count, leg, exit, home, stopAt, freeSpeedMs, segments, grid, routes: createRouteTable({ network, leg, exit, stopAt }) };
+  const routes = createRouteTable({ network, leg, exit, stopAt });
+  return { network, planes, count, leg, exit, home, stopAt, freeSpeedMs, segments, grid, routes, box: createBoxes(network) };
 }

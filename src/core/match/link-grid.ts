@@ -4,15 +4,28 @@ import { SEGMENT, type Segments } from "@/core/match/segments";
 
 /**
  * Square cells of about MATCHING.cellM that lie near a link, in a hash table, so that memory goes with the length of the
- * streets and not with the size of the country. The cell whose record is at r holds the segments entries[records[r + CELL.first]]
- * to entries[records[r + CELL.end] - 1], ascending: all that come within MATCHING.sideLimitM of any place in it.
+ * streets and not with the size of the country. The cell whose record is at r holds the runs runs[records[r + CELL.first]]
+ * to runs[records[r + CELL.end] - 1], ascending: all segments that come within MATCHING.sideLimitM of any place in it.
+ * A run is a number of successive segments of one link, see firstOf and countOf.
  */
 export interface LinkGrid extends Frame {
   /** Records of CELL.width by open addressing; a free one has an end of 0. */
   records: Int32Array;
   /** Records less one: a power of two less one. */
   mask: number;
-  entries: Int32Array;
+  runs: Int32Array;
+}
+
+const COUNT_BITS = 8;
+const MOST_IN_RUN = (1 << COUNT_BITS) - 1;
+
+/** First segment of a run, below 8 million: links of some 100,000 junctions. */
+export function firstOf(run: number): number {
+  return run >> COUNT_BITS;
+}
+
+export function countOf(run: number): number {
+  return run & MOST_IN_RUN;
 }
 
 /** Fields of a cell's record. */
@@ -32,20 +45,30 @@ export function createLinkGrid(segments: Segments, home: Int32Array, planes: rea
   const frame = frameOf(planes);
   const list = createCellList();
   const cells: number[] = [];
-  const owners: number[] = [];
+  const found: number[] = [];
+  // Run of each cell that may yet grow.
+  const open: number[] = [];
   for (let n = 0; n < segments.count; n++) {
     visitCells(segments, n, planes[home[segments.link[n]]], frame, (row, column) => {
-      cells.push(list.numberOf(row, column));
-      owners.push(n);
+      const cell = list.numberOf(row, column);
+      const last = open[cell] ?? -1;
+      const run = last >= 0 ? found[last] : 0;
+      const goesOn = last >= 0 && firstOf(run) + countOf(run) === n && countOf(run) < MOST_IN_RUN && segments.link[n] === segments.link[n - 1];
+      if (goesOn) found[last] += 1;
+      else {
+        open[cell] = found.length;
+        cells.push(cell);
+        found.push((n << COUNT_BITS) + 1);
+      }
     });
   }
   const ends = new Int32Array(list.count());
   for (const cell of cells) ends[cell] += 1;
   for (let c = 1; c < ends.length; c++) ends[c] += ends[c - 1];
-  const entries = new Int32Array(cells.length);
+  const runs = new Int32Array(cells.length);
   const next = Int32Array.from(ends, (_, c) => (c > 0 ? ends[c - 1] : 0));
-  for (let k = 0; k < cells.length; k++) entries[next[cells[k]]++] = owners[k];
-  return { ...frame, ...list.pack(ends), entries };
+  for (let k = 0; k < cells.length; k++) runs[next[cells[k]]++] = found[k];
+  return { ...frame, ...list.pack(ends), runs };
 }
 
 /** Index of the record of a position's cell; -1 where no link is near, or the position is none. O(1). */

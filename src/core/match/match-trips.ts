@@ -111,7 +111,9 @@ function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): v
       const to = n * MATCHING.candidates + c;
       let best = Math.min(cost[before + OFF], left) + MATCHING.joinCost;
       let from = isOff ? OFF : likeliest;
-      for (let p = 0; p < places; p++) {
+      // The likeliest place first: after it most others are too dear to be looked at.
+      for (let k = 0; k < places; k++) {
+        const p = k === 0 ? likeliest : k <= likeliest ? k - 1 : k;
         const reached = cost[before + p];
         if (reached >= best) continue;
         const step = stepCost(graph, near, first + p, to, chord, seconds);

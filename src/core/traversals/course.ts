@@ -105,15 +105,27 @@ function timeWithin(course: Course, i: number, distanceM: number): number {
     v0 *= 3 / norm;
     v1 *= 3 / norm;
   }
-  const a = v0 / secant;
-  const b = v1 / secant;
+  return course.tMs[i] + whereCubic(v0 / secant, v1 / secant, wanted) * span * 1000;
+}
+
+/** Steps of u beyond this precision are less than a microsecond of time. */
+const FINE = 1e-8;
+
+/** Where in [0, 1] the monotone cubic from 0 to 1 with slopes a and b at its ends takes a value: Newton's method, kept within its bracket. */
+function whereCubic(a: number, b: number, wanted: number): number {
+  const square = 3 - 2 * a - b;
+  const cube = a + b - 2;
   let low = 0;
   let high = 1;
-  for (let n = 0; n < 24; n++) {
-    const u = (low + high) / 2;
-    const value = u * (a + u * (3 - 2 * a - b + u * (a + b - 2)));
+  let u = wanted;
+  for (let n = 0; n < 40; n++) {
+    const value = u * (a + u * (square + u * cube));
     if (value < wanted) low = u;
     else high = u;
+    let next = u - (value - wanted) / (a + u * (2 * square + 3 * u * cube));
+    if (!(next > low && next < high)) next = (low + high) / 2;
+    if (Math.abs(next - u) < FINE) return next;
+    u = next;
   }
-  return course.tMs[i] + ((low + high) / 2) * span * 1000;
+  return u;
 }

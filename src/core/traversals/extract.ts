@@ -1,6 +1,6 @@
 import { eastM, northM } from "@/core/geometry/plane";
-import { lengthOf, projectPoint } from "@/core/geometry/polyline";
-import { boxLine } from "@/core/match/box";
+import { projectPoint } from "@/core/geometry/polyline";
+import type { Box } from "@/core/match/box";
 import type { StreetGraph } from "@/core/match/graph";
 import type { Chain } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
@@ -32,28 +32,9 @@ export interface Extractor {
   addChain(chain: Chain): number;
 }
 
-/** The way through a junction from a leg to an exit, in the junction's plane. */
-interface Box {
-  line: Float64Array;
-  lengthM: number;
-}
-
 /** Turns matched stretches into traversals with crossing times, stops and tracks, and what breaks off on a leg into open tracks. */
 export function createExtractor(trips: Trips, graph: StreetGraph, builder: TraversalBuilder, open: OpenTrackBuilder): Extractor {
   const { network } = graph;
-  const movementOf = new Map<number, number>();
-  network.movements.forEach((m, i) => movementOf.set(m.leg * network.exits.length + m.exit, i));
-  const boxes = new Map<number, Box>();
-  const box = (leg: number, exit: number): Box => {
-    const key = leg * network.exits.length + exit;
-    let found = boxes.get(key);
-    if (!found) {
-      const line = boxLine(network, leg, exit);
-      found = { line, lengthM: lengthOf(line) };
-      boxes.set(key, found);
-    }
-    return found;
-  };
   let seen: Course = createCourse(256);
   let course: Course = createCourse(256 * KNOTS_A_STEP);
   let trackMs = new Float64Array(0);
@@ -66,7 +47,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       // Who drove on beside the streets may have stood only to turn off there.
       const isOpen = graph.leg[chain.links[last]] >= 0 && chain.pings[chain.pings.length - 1] === trips.tripOffset[chain.trip + 1] - 1;
       if (last === 0 && !isOpen) return cut;
-      const base = basesOf(chain, graph, box);
+      const base = basesOf(chain, graph);
       const size = chain.pings.length;
       if (size > seen.tMs.length) {
         seen = createCourse(size * 2);
@@ -76,17 +57,17 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
         trackMs = new Float64Array(course.tMs.length + 2);
         trackS = new Float64Array(course.tMs.length + 2);
       }
-      fillCourse(seen, chain, base, trips, graph, box);
+      fillCourse(seen, chain, base, trips, graph);
       fillGaps(seen, base.map((at, k) => at + graph.stopAt[chain.links[k]]), course);
       for (let k = 0; k + 1 < chain.links.length; k++) {
         const leg = graph.leg[chain.links[k]];
         const exit = graph.exit[chain.links[k + 1]];
-        const movement = movementOf.get(leg * network.exits.length + exit);
-        if (movement === undefined) continue;
+        const { movement } = graph.box(leg, exit);
+        if (movement < 0) continue;
         if (!addTraversal(k, movement, chain, base)) cut += 1;
       }
       if (isOpen) {
-        const points = fillTrack(base[last], Infinity, base[last] + graph.stopAt[chain.links[last]]);
+        const points = fillTrack(base[last], Infinity, NaN, base[last] + graph.stopAt[chain.links[last]]);
         open.add(graph.leg[chain.links[last]], trips.tripVehicle[chain.trip], trackMs, trackS, points);
       }
       return cut;
@@ -110,7 +91,8 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       enterMs = filledStartMs(course, begin - enterAt, free, intervalS, chain.pings[0] === trips.tripOffset[chain.trip]);
       flags |= TRAVERSAL_FLAGS.truncated;
     }
-    let exitMs = timeAt(course, exitAt);
+    const exitSeenMs = timeAt(course, exitAt);
+    let exitMs = exitSeenMs;
     if (end < exitAt) {
       const isTripEnd = chain.pings[chain.pings.length - 1] === trips.tripOffset[chain.trip + 1] - 1;
       exitMs = filledEndMs(course, exitAt - end, free, intervalS, isTripEnd);
@@ -122,7 +104,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     const stops = summariseStops(course, enterMs, exitMs, base[k], stopAt + 6);
     if (stops.inferred) flags |= TRAVERSAL_FLAGS.stopInferred;
     if (stops.hasLongSteps) flags |= TRAVERSAL_FLAGS.stopsLowerBound;
-    const points = fillTrack(base[k], exitAt, stopAt);
+    const points = fillTrack(base[k], exitAt, exitSeenMs, stopAt);
     builder.add(
       {
         movement, vehicle: trips.tripVehicle[chain.trip], enterMs, stopLineMs, exitMs,
@@ -134,8 +116,8 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
     return true;
   }
 
-  /** The pings between the leg's upstream end and the exit cordon, with one point on each end where it was passed. */
-  function fillTrack(from: number, to: number, stopAt: number): number {
+  /** The pings between the leg's upstream end and the exit cordon, with one point on each end where it was passed, at `toMs` the far one. */
+  function fillTrack(from: number, to: number, toMs: number, stopAt: number): number {
     let n = putPoint(0, timeAt(course, from), stopAt - from);
     let i = lastUpTo(course, from);
     // Several points may lie at the very beginning.
@@ -144,7 +126,7 @@ export function createExtractor(trips: Trips, graph: StreetGraph, builder: Trave
       const isPlace = course.distanceM[i] >= from && course.kind[i] !== KNOTS.unplaced;
       if (isPlace) n = putPoint(n, course.tMs[i], stopAt - course.distanceM[i]);
     }
-    return putPoint(n, timeAt(course, to), stopAt - to);
+    return putPoint(n, toMs, stopAt - to);
   }
 
   /** Adds point n of the track unless its time is unknown or not later; returns how many there are. */
@@ -164,20 +146,17 @@ function endsInWindow(chain: Chain, graph: StreetGraph): boolean {
 }
 
 /** Path distance at position 0 of each link of a chain. */
-function basesOf(chain: Chain, graph: StreetGraph, box: (leg: number, exit: number) => { lengthM: number }): Float64Array {
+function basesOf(chain: Chain, graph: StreetGraph): Float64Array {
   const base = new Float64Array(chain.links.length);
   for (let k = 1; k < base.length; k++) {
     const link = chain.links[k - 1];
-    base[k] = base[k - 1] + graph.stopAt[link] + box(graph.leg[link], graph.exit[chain.links[k]]).lengthM;
+    base[k] = base[k - 1] + graph.stopAt[link] + graph.box(graph.leg[link], graph.exit[chain.links[k]]).lengthM;
   }
   return base;
 }
 
 /** The pings of the stretch on the path: by the links' lines, inside boxes by the way through. */
-function fillCourse(
-  course: Course, chain: Chain, base: Float64Array, trips: Trips, graph: StreetGraph,
-  box: (leg: number, exit: number) => Box,
-): void {
+function fillCourse(course: Course, chain: Chain, base: Float64Array, trips: Trips, graph: StreetGraph): void {
   let n = 0;
   for (let c = 0; c < chain.pings.length; c++) {
     const i = chain.pings[c];
@@ -186,10 +165,11 @@ function fillCourse(
     const p = chain.position[c];
     let distance = base[k] + p;
     if (p > graph.stopAt[link] - 4 && k + 1 < chain.links.length) {
-      distance = base[k] + graph.stopAt[link] + inBox(graph, trips, i, box(graph.leg[link], graph.exit[chain.links[k + 1]]), graph.leg[link], p - graph.stopAt[link]);
+      const way = graph.box(graph.leg[link], graph.exit[chain.links[k + 1]]);
+      distance = base[k] + graph.stopAt[link] + inBox(graph, trips, i, way, graph.leg[link], p - graph.stopAt[link]);
     } else if (p < 4 && k > 0) {
       const before = chain.links[k - 1];
-      const way = box(graph.leg[before], graph.exit[link]);
+      const way = graph.box(graph.leg[before], graph.exit[link]);
       distance = base[k] - way.lengthM + inBox(graph, trips, i, way, graph.leg[before], p + way.lengthM);
     }
     course.tMs[n] = trips.tMs[i];
