@@ -21,6 +21,16 @@ export interface CatalogueIndex {
   movementByKey: ReadonlyMap<number, number>;
   legByKey: ReadonlyMap<number, number>;
   junctionByKey: ReadonlyMap<number, number>;
+  /** Movements and legs in order of their keys, for who meets keys in order. */
+  movementsInOrder: UnitsInOrder;
+  legsInOrder: UnitsInOrder;
+}
+
+export interface UnitsInOrder {
+  /** Ascending. */
+  keys: Uint32Array;
+  /** Dense number by place in `keys`. */
+  units: Uint32Array;
 }
 
 const known = new WeakMap<Catalogue, CatalogueIndex>();
@@ -61,7 +71,14 @@ function build(catalogue: Catalogue): CatalogueIndex {
     movementByKey: new Map(movements.map((m, k) => [m.key, k])),
     legByKey,
     junctionByKey,
+    movementsInOrder: inOrder(movements),
+    legsInOrder: inOrder(legs),
   };
+}
+
+function inOrder(all: readonly { key: number }[]): UnitsInOrder {
+  const units = Uint32Array.from(all, (_, unit) => unit).sort((a, b) => all[a].key - all[b].key);
+  return { keys: Uint32Array.from(units, (unit) => all[unit].key), units };
 }
 
 function offsetsOf(groups: Uint32Array, count: number): Uint32Array {

@@ -1,4 +1,4 @@
-import { indexCatalogue, type CatalogueIndex } from "./catalogue-index";
+import { indexCatalogue, type CatalogueIndex, type UnitsInOrder } from "./catalogue-index";
 import type { Catalogue, ScreenDay } from "./types";
 
 export const QUARTERS = 96;
@@ -47,17 +47,17 @@ export function daysByJunction(days: readonly ScreenDay[], catalogue: Catalogue)
 
 /** RangeError where more than 254 movements or legs belong to one junction. O(size of the slice). */
 export function dayByJunction(day: ScreenDay, index: CatalogueIndex): DayByJunction {
-  const movements = rowsByJunction(day.movement, (key) => placeOfMovement(index, key));
-  const legs = rowsByJunction(day.leg, (key) => placeOfLeg(index, key));
-  const junctions = [...new Set([...movements.keys(), ...legs.keys()])].sort((a, b) => a - b);
+  const movements = placeRows(day.movement, index.movementsInOrder, index.junctionOf, index.junctionOffset);
+  const legs = placeRows(day.leg, index.legsInOrder, index.junctionOfLeg, index.junctionLegOffset);
+  const junctions = index.junctions.flatMap((_, j) => (hasRows(movements, j) || hasRows(legs, j) ? [j] : []));
   return {
     day: day.day,
     index,
     junction: Uint32Array.from(junctions, (j) => index.junctions[j]),
     rowOf: rowsOf(junctions, index),
-    ...arrangePassages(day, listsOf(junctions, movements)),
-    ...arrangeQueues(day, listsOf(junctions, legs)),
-    hasUnlisted: countOf(movements) < day.movement.length || countOf(legs) < day.leg.length,
+    ...arrangePassages(day, junctions, movements),
+    ...arrangeQueues(day, junctions, legs),
+    hasUnlisted: movements.rows.length < day.movement.length || legs.rows.length < day.leg.length,
   };
 }
 
@@ -126,54 +126,65 @@ function rowsOf(junctions: readonly number[], index: CatalogueIndex): Int32Array
   return rowOf;
 }
 
-interface NumberedRow {
-  /** Row of the slice. */
-  row: number;
-  number: number;
+/** Rows of a slice in order of their junction. */
+interface PlacedRows {
+  /** Rows of dense junction j: from start[j] to start[j + 1]. */
+  start: Uint32Array;
+  rows: Uint32Array;
+  /** Number of each at its junction. */
+  numbers: Uint8Array;
 }
 
-/** Rows of the slice by dense junction. */
-function rowsByJunction(keys: Uint32Array, placeOf: (key: number) => Place | undefined): Map<number, NumberedRow[]> {
-  const rows = new Map<number, NumberedRow[]>();
-  keys.forEach((key, row) => {
-    const place = placeOf(key);
-    if (place === undefined) return;
-    if (place.number >= NO_NUMBER) throw new RangeError(`A junction has more than ${NO_NUMBER} movements or legs: they cannot be told apart.`);
-    const list = rows.get(place.junction);
-    if (list) list.push({ row, number: place.number });
-    else rows.set(place.junction, [{ row, number: place.number }]);
+function hasRows({ start }: PlacedRows, junction: number): boolean {
+  return start[junction + 1] > start[junction];
+}
+
+/** Keys of slice and catalogue both ascend: they meet in one walk. */
+function placeRows(keys: Uint32Array, { keys: listed, units }: UnitsInOrder, junctionOf: Uint32Array, offset: Uint32Array): PlacedRows {
+  const unitOf = new Int32Array(keys.length).fill(-1);
+  const start = new Uint32Array(offset.length);
+  let found = 0;
+  for (let row = 0, at = 0; row < keys.length; row++) {
+    while (at < listed.length && listed[at] < keys[row]) at += 1;
+    if (listed[at] !== keys[row]) continue;
+    unitOf[row] = units[at];
+    start[junctionOf[units[at]] + 1] += 1;
+    found += 1;
+  }
+  for (let j = 1; j < start.length; j++) start[j] += start[j - 1];
+  const [rows, numbers, next] = [new Uint32Array(found), new Uint8Array(found), start.slice()];
+  unitOf.forEach((unit, row) => {
+    if (unit < 0) return;
+    const number = unit - offset[junctionOf[unit]];
+    if (number >= NO_NUMBER) throw new RangeError(`A junction has more than ${NO_NUMBER} movements or legs: they cannot be told apart.`);
+    const at = next[junctionOf[unit]]++;
+    rows[at] = row;
+    numbers[at] = number;
   });
-  return rows;
-}
-
-function listsOf(junctions: readonly number[], rows: ReadonlyMap<number, NumberedRow[]>): NumberedRow[][] {
-  return junctions.map((junction) => rows.get(junction) ?? []);
-}
-
-function countOf(rows: ReadonlyMap<number, NumberedRow[]>): number {
-  let count = 0;
-  for (const list of rows.values()) count += list.length;
-  return count;
+  return { start, rows, numbers };
 }
 
 /** Where the entries of each junction and quarter begin. */
-function startsOf(lists: readonly NumberedRow[][], rowStart: Uint32Array, quarters: Uint8Array): Uint32Array {
-  const start = new Uint32Array(lists.length * QUARTERS + 1);
-  lists.forEach((list, j) => {
-    for (const { row } of list) for (let i = rowStart[row]; i < rowStart[row + 1]; i++) start[j * QUARTERS + quarters[i] + 1] += 1;
+function startsOf(junctions: readonly number[], { start: first, rows }: PlacedRows, rowStart: Uint32Array, quarters: Uint8Array): Uint32Array {
+  const start = new Uint32Array(junctions.length * QUARTERS + 1);
+  junctions.forEach((junction, j) => {
+    for (let r = first[junction]; r < first[junction + 1]; r++) {
+      for (let i = rowStart[rows[r]]; i < rowStart[rows[r] + 1]; i++) start[j * QUARTERS + quarters[i] + 1] += 1;
+    }
   });
   for (let k = 1; k < start.length; k++) start[k] += start[k - 1];
   return start;
 }
 
-function arrangePassages(day: ScreenDay, lists: readonly NumberedRow[][]): Pick<DayByJunction, "passedStart" | "passed" | "vehicle"> {
+function arrangePassages(day: ScreenDay, junctions: readonly number[], placed: PlacedRows): Pick<DayByJunction, "passedStart" | "passed" | "vehicle"> {
   const { movementStart, quarter, stops, delay, vehicle: hash } = day;
-  const passedStart = startsOf(lists, movementStart, quarter);
+  const passedStart = startsOf(junctions, placed, movementStart, quarter);
   const passed = new Uint32Array(passedStart[passedStart.length - 1]);
   const vehicle = new Uint16Array(passed.length);
   const next = passedStart.slice();
-  lists.forEach((list, j) => {
-    for (const { row, number } of list) {
+  junctions.forEach((junction, j) => {
+    for (let r = placed.start[junction]; r < placed.start[junction + 1]; r++) {
+      const [row, number] = [placed.rows[r], placed.numbers[r]];
       for (let i = movementStart[row]; i < movementStart[row + 1]; i++) {
         const at = next[j * QUARTERS + quarter[i]]++;
         passed[at] = (number << 24) | (stops[i] << 16) | delay[i];
@@ -186,15 +197,16 @@ function arrangePassages(day: ScreenDay, lists: readonly NumberedRow[][]): Pick<
 
 type Queues = Pick<DayByJunction, "queueStart" | "ofLeg" | "reach" | "reachEstimate" | "spilled" | "observed">;
 
-function arrangeQueues(day: ScreenDay, lists: readonly NumberedRow[][]): Queues {
+function arrangeQueues(day: ScreenDay, junctions: readonly number[], placed: PlacedRows): Queues {
   const { legStart, legQuarter } = day;
-  const queueStart = startsOf(lists, legStart, legQuarter);
+  const queueStart = startsOf(junctions, placed, legStart, legQuarter);
   const length = queueStart[queueStart.length - 1];
   const [reach, reachEstimate, spilled, observed] = Array.from({ length: 4 }, () => new Uint16Array(length));
   const ofLeg = new Uint8Array(length);
   const next = queueStart.slice();
-  lists.forEach((list, j) => {
-    for (const { row, number } of list) {
+  junctions.forEach((junction, j) => {
+    for (let r = placed.start[junction]; r < placed.start[junction + 1]; r++) {
+      const [row, number] = [placed.rows[r], placed.numbers[r]];
       for (let k = legStart[row]; k < legStart[row + 1]; k++) {
         const at = next[j * QUARTERS + legQuarter[k]]++;
         ofLeg[at] = number;

@@ -59,7 +59,9 @@ let lastNormals: { seed: number; values: Float64Array } | null = null;
 function normalsOf(seed: number, count: number): Float64Array {
   if (lastNormals?.seed !== seed || lastNormals.values.length < count) {
     const normal = normalRandom(seededRandom(seed));
-    lastNormals = { seed, values: Float64Array.from({ length: count }, normal) };
+    const values = new Float64Array(count);
+    for (let k = 0; k < count; k++) values[k] = normal();
+    lastNormals = { seed, values };
   }
   return lastNormals.values;
 }
