@@ -1,6 +1,5 @@
 import { angleBetweenDeg } from "@/core/geometry/angles";
 import { lengthOf, projectPoint, slice } from "@/core/geometry/polyline";
-import { exitBearingDeg } from "@/core/legs/draft";
 import type { Exit, Leg } from "@/core/types";
 
 /** A leg and an exit of one junction whose bearings are this near to opposite share an arm. */
@@ -18,7 +17,7 @@ export function placeBoxEdges(legs: Leg[], exits: Exit[]): { legs: Leg[]; exits:
   const movedExits = exits.map((exit, i) => {
     if (shifts[i] === 0 || exit.lengthM - shifts[i] < LEAST_LENGTH_M) return exit;
     const line = slice(exit.line, shifts[i], exit.lengthM);
-    return { ...exit, line, lengthM: lengthOf(line), bearingDeg: exitBearingDeg(line) };
+    return { ...exit, line, lengthM: lengthOf(line) };
   });
   const movedLegs = legs.map((leg) => {
     const shift = leg.upstreamExit >= 0 ? shifts[leg.upstreamExit] : 0;

@@ -1,4 +1,5 @@
 import type { JunctionIndex } from "@/core/index/junction-index";
+import { faceTraffic } from "@/core/legs/bearings";
 import { carryOver, type Carried } from "@/core/legs/carry-over";
 import { followTraffic } from "@/core/legs/follow-traffic";
 import { createFrame, type Frame } from "@/core/legs/frame";
@@ -13,6 +14,7 @@ import { PASSAGES } from "@/core/legs/passage-seeds";
 import { createPingGrid } from "@/core/legs/ping-grid";
 import { keepUsed } from "@/core/legs/prune";
 import { refineDraft } from "@/core/legs/refine-draft";
+import { relinkBroken } from "@/core/legs/relink";
 import { findSeeds } from "@/core/legs/seeds";
 import { dropTwins } from "@/core/legs/twins";
 import { traceArm } from "@/core/legs/trace";
@@ -34,9 +36,12 @@ export function learnFromTrips(
   const frame = createFrame(junctions, LEARNING.traceMostM + 200);
   const draft = proposeLegs(trips, frame, index, options, prior);
   const drafted = { junctions, legs: draft.legs, exits: draft.exits, driveSide: options.driveSide };
-  const network: Network = { ...drafted, movements: listMovements(drafted) };
-  const usage = measureUsage(trips, createGraph(network));
-  const kept = keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried);
+  const first: Network = { ...drafted, movements: listMovements(drafted) };
+  const firstUsage = measureUsage(trips, createGraph(first));
+  const relinked = relinkBroken(first, firstUsage, draft.carried, frame);
+  const network = relinked ?? first;
+  const usage = relinked ? measureUsage(trips, createGraph(relinked)) : firstUsage;
+  const kept = faceTraffic(keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried), usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
   const tripsBetween = (leg: number, exit: number): number =>

@@ -18,10 +18,15 @@ export interface Usage {
   seenOn: Uint32Array;
   /** Trips by leg and exit: key leg * exits + exit. */
   movement: Map<number, number>;
+  /** Trips whose path broke off behind an exit and began anew on a leg, over ground that no known way leads over: key exit * legs + leg. */
+  broken: Map<number, number>;
   /** Moving speeds on each leg away from junctions, m/s. */
   speeds: number[][];
   /** Distance to the stop line at which each passage of a leg last stood, without those that wait inside the box to turn across. */
   heads: number[][];
+  /** Headings of moving pings close before each leg's stop line, and close behind the beginning of each exit. */
+  legHeadings: Headings;
+  exitHeadings: Headings;
   /** Sideways distances of moving pings from the line of each leg, and of each exit, by stretch of OFFSET_BIN_M. */
   legOffsets: LineOffsets[];
   exitOffsets: LineOffsets[];
@@ -38,6 +43,13 @@ export interface LineOffsets extends Offsets {
   arcs: Float64Array;
 }
 
+/** Sums of unit vectors, and how many. */
+export interface Headings {
+  count: Uint32Array;
+  east: Float64Array;
+  north: Float64Array;
+}
+
 /** Nearest to a junction at which speeds count as free of it, and from the upstream end, m. */
 const CLEAR_M = 60;
 const CLEAR_OF_START_M = 30;
@@ -47,6 +59,13 @@ const MOVING_MS = 3;
 const ACROSS_DEG = 45;
 const HEAD_PAST_LINE_M = 12;
 const ALONG_DEG = 40;
+const FACING_DEG = 30;
+/** Stretch of a street, from the junction's box on, whose headings tell its bearing there, m. */
+const FACING_FROM_M = 4;
+const FACING_TO_M = 45;
+const RAD = Math.PI / 180;
+/** Pings from one stretch of a path to the next, at most, if they belong together. */
+const BREAK_PINGS = 3;
 /** The place on a line beside a ping lies this near to its matched place, m. */
 const OFFSET_REACH_M = 25;
 
@@ -63,16 +82,42 @@ export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
     fed: new Uint32Array(network.legs.length),
     seenOn: new Uint32Array(network.legs.length),
     movement: new Map(),
+    broken: new Map(),
     speeds: network.legs.map(() => []),
     heads: network.legs.map(() => []),
+    legHeadings: createHeadings(network.legs.length),
+    exitHeadings: createHeadings(network.exits.length),
     legOffsets: network.legs.map(offsets),
     exitOffsets: network.exits.map(offsets),
   };
+  let before: Chain | null = null;
   matchTrips(trips, graph, (chain) => {
+    if (before && before.trip === chain.trip) countBreak(before, chain, graph, usage);
+    before = chain;
     countPassages(chain.links, graph, usage);
     countPings(chain, trips, graph, usage);
   });
   return usage;
+}
+
+function createHeadings(length: number): Headings {
+  return { count: new Uint32Array(length), east: new Float64Array(length), north: new Float64Array(length) };
+}
+
+function addHeading(headings: Headings, i: number, headingDeg: number, alongDeg: number): void {
+  if (!(angleBetweenDeg(headingDeg, alongDeg) < FACING_DEG)) return;
+  headings.count[i] += 1;
+  headings.east[i] += Math.sin(headingDeg * RAD);
+  headings.north[i] += Math.cos(headingDeg * RAD);
+}
+
+function countBreak(before: Chain, after: Chain, graph: StreetGraph, usage: Usage): void {
+  const exit = graph.exit[before.links[before.links.length - 1]];
+  const leg = graph.leg[after.links[0]];
+  const isNext = after.pings[0] - before.pings[before.pings.length - 1] <= BREAK_PINGS;
+  if (exit < 0 || leg < 0 || !isNext) return;
+  const key = exit * graph.network.legs.length + leg;
+  usage.broken.set(key, (usage.broken.get(key) ?? 0) + 1);
 }
 
 function countPassages(links: number[], graph: StreetGraph, usage: Usage): void {
@@ -101,13 +146,20 @@ function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage
     const leg = graph.leg[link];
     const i = chain.pings[c];
     const speed = trips.speedMs[i];
-    if (speed >= MOVING_MS) addOffset(trips, i, chain, c, graph, usage);
+    const toLine = graph.stopAt[link] - chain.position[c];
+    if (speed >= MOVING_MS) {
+      addOffset(trips, i, chain, c, graph, usage);
+      const exit = graph.exit[link];
+      const isPastBox = chain.position[c] > FACING_FROM_M && chain.position[c] < FACING_TO_M;
+      if (exit >= 0 && isPastBox) addHeading(usage.exitHeadings, exit, trips.headingDeg[i], graph.network.exits[exit].bearingDeg);
+      const isBeforeBox = toLine > FACING_FROM_M && toLine < FACING_TO_M;
+      if (leg >= 0 && isBeforeBox) addHeading(usage.legHeadings, leg, trips.headingDeg[i], graph.network.legs[leg].bearingDeg);
+    }
     if (leg < 0) continue;
     if (seenStep !== k && speed >= MOVING_MS && angleBetweenDeg(trips.headingDeg[i], graph.network.legs[leg].bearingDeg) < ALONG_DEG) {
       seenStep = k;
       usage.seenOn[leg] += 1;
     }
-    const toLine = graph.stopAt[link] - chain.position[c];
     if (speed < STANDING_MS) head = toLine;
     const isClear = toLine > CLEAR_M && chain.position[c] > CLEAR_OF_START_M;
     if (isClear && speed > MOVING_MS && usage.speeds[leg].length < MOST_SPEEDS) usage.speeds[leg].push(speed);
