@@ -13,9 +13,12 @@ interface Slots {
   /** Reach by slot and code. */
   fine: Uint32Array;
   coarse: Uint32Array;
-  observed: Float64Array;
-  spilled: Float64Array;
+  /** Observed and spilled time of one day at most, in one number. */
+  seconds: Float64Array;
 }
+
+/** Place of observed above spilled time: both below 2^26 steps in a day, and both in a number below 2^53. */
+const OBSERVED = 2 ** 26;
 
 /** Fills spillback and the 95th percentile of reach of every leg. O(leg quarters of the windows). */
 export function gatherQueues(days: readonly DayByJunction[], index: CatalogueIndex, windows: readonly QuarterWindow[], out: GatheredScreen): void {
@@ -24,8 +27,7 @@ export function gatherQueues(days: readonly DayByJunction[], index: CatalogueInd
   const slots: Slots = {
     count: most,
     ...createHistogram(most),
-    observed: new Float64Array(most),
-    spilled: new Float64Array(most),
+    seconds: new Float64Array(most),
   };
   const whole = { from: windows[0].from, to: windows[windows.length - 1].to };
   for (let junction = 0; junction < index.junctions.length; junction++) {
@@ -48,12 +50,12 @@ function addDay(day: DayByJunction, junction: number, first: number, end: number
     const to = day.queueStart[row * QUARTERS + window.to];
     addEntries(day, from, to, slots);
     for (let leg = first; leg < end; leg++) {
-      if (slots.observed[leg - first] > 0) {
-        addToTally(spill, leg, slots.observed[leg - first] / STEPS_PER_S, slots.spilled[leg - first] / STEPS_PER_S);
-        closeQuarterOf(spill, leg);
-      }
-      slots.observed[leg - first] = 0;
-      slots.spilled[leg - first] = 0;
+      const both = slots.seconds[leg - first];
+      if (both === 0) continue;
+      slots.seconds[leg - first] = 0;
+      const observed = Math.floor(both / OBSERVED);
+      addToTally(spill, leg, observed / STEPS_PER_S, (both - observed * OBSERVED) / STEPS_PER_S);
+      closeQuarterOf(spill, leg);
     }
   }
   for (let leg = first; leg < end; leg++) closeDayOf(spill, leg);
@@ -61,17 +63,18 @@ function addDay(day: DayByJunction, junction: number, first: number, end: number
 
 /** What an entry does not know is left out. */
 function addEntries({ ofLeg, reach, spilled, observed }: DayByJunction, from: number, to: number, slots: Slots): void {
-  const { fine, coarse, count } = slots;
+  const { fine, coarse, count, seconds } = slots;
   for (let k = from; k < to; k++) {
     const slot = ofLeg[k];
     if (slot >= count) continue;
     const code = reach[k];
     if (code > 0) {
-      fine[slot * CODES + code] += 1;
-      coarse[(slot * CODES + code) >> COARSE_SHIFT] += 1;
+      const at = slot * CODES + code;
+      fine[at] += 1;
+      coarse[at >> COARSE_SHIFT] += 1;
     }
-    if (!isSpillKnown(observed[k], spilled[k])) continue;
-    slots.observed[slot] += observed[k] - 1;
-    slots.spilled[slot] += spilled[k] - 1;
+    const seen = observed[k];
+    const full = spilled[k];
+    if (isSpillKnown(seen, full)) seconds[slot] += (seen - 1) * OBSERVED + (full - 1);
   }
 }
