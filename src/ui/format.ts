@@ -12,9 +12,20 @@ function known(value: Maybe): value is number {
 
 export function formatNumber(value: Maybe, locale: string, digits = 0): string {
   if (!known(value)) return NO_FIGURE;
-  const options = { minimumFractionDigits: digits, maximumFractionDigits: digits };
   // Adding 0 turns -0 into 0, which is what a person expects to read.
-  return new Intl.NumberFormat(locale, options).format(Number(value.toFixed(digits)) + 0);
+  return formatOf(locale, digits).format(Number(value.toFixed(digits)) + 0);
+}
+
+const formats = new Map<string, Intl.NumberFormat>();
+
+/** Kept, since making one takes longer than drawing a row of the list. */
+function formatOf(locale: string, digits: number): Intl.NumberFormat {
+  const key = `${locale} ${digits}`;
+  const kept = formats.get(key);
+  if (kept) return kept;
+  const made = new Intl.NumberFormat(locale, { minimumFractionDigits: digits, maximumFractionDigits: digits });
+  formats.set(key, made);
+  return made;
 }
 
 export function formatSeconds(valueS: Maybe, locale: string, digits = 0): string {

@@ -8,7 +8,7 @@ import { FormProblem } from "@/ui/forms/form-problem";
 import { useAction } from "@/ui/forms/use-action";
 import { Button } from "@/ui/primitives/button";
 import { Select } from "@/ui/primitives/field";
-import { Td } from "@/ui/primitives/table";
+import { STAYS, Td } from "@/ui/primitives/table";
 import type { PeopleActions } from "./people-actions";
 
 const STATE_NAMES: Record<PersonState, string> = {
@@ -40,7 +40,7 @@ export function PersonRow({ person, actions }: { person: PersonView; actions: Pe
 
   return (
     <tr className={person.state === "disabled" ? "text-ink-soft" : undefined}>
-      <Td>
+      <Td className={STAYS}>
         <span className="font-semibold">{person.name}</span>
         {person.isSelf ? " (you)" : ""}
       </Td>

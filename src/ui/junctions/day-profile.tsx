@@ -2,11 +2,11 @@
 
 import { useRef } from "react";
 import type { ProfilePoint } from "@/domain/junction";
-import { formatClock, formatClockRange, formatNumber, formatShare } from "@/ui/format";
-import { RuledTable, Td, Th } from "@/ui/primitives/table";
+import { formatClock, formatShare } from "@/ui/format";
 import { COLORS } from "@/ui/scales";
 import { useCity } from "@/ui/shell/city";
 import { delayTicks, delayTop, losBands, spreadUpwards } from "@/ui/strips/draw-delay";
+import { FiguresByTime, type DelayStep } from "@/ui/strips/figures-by-time";
 import { timeTicks } from "@/ui/strips/strip-layout";
 import { useBoxWidth } from "@/ui/strips/use-box-width";
 import { profileRuns, type ProfileRun } from "./profile-runs";
@@ -17,6 +17,8 @@ const PLOT = 262;
 const BARS = 38;
 const LEFT = 46;
 const RIGHT = 40;
+const QUARTER_MIN = 15;
+const HEADS = [{ head: "spills back", numeric: true }];
 
 /** Delay by time of day with its band, the chosen hours marked, and below it how many vehicles it rests on. */
 export function DayProfile({ profile, fromMin, toMin }: { profile: ProfilePoint[]; fromMin: number; toMin: number }) {
@@ -121,36 +123,8 @@ function Run({ run, x, y }: { run: ProfileRun; x: (minutes: number) => number; y
 
 function ProfileTable({ profile }: { profile: ProfilePoint[] }) {
   const { locale } = useCity();
-  const seen = profile.filter((point) => point.vehicles > 0);
-  return (
-    <details className="pt-1">
-      <summary className="cursor-pointer font-table font-medium">The same in figures</summary>
-      <div className="max-h-96 max-w-2xl overflow-y-auto pt-2">
-        <RuledTable caption="Delay by time of day">
-          <thead>
-            <tr>
-              <Th>local time</Th>
-              <Th numeric>vehicles</Th>
-              <Th numeric>mean delay, s</Th>
-              <Th numeric>95 % interval, s</Th>
-              <Th numeric>spills back</Th>
-            </tr>
-          </thead>
-          <tbody>
-            {seen.map((point) => (
-              <tr key={point.fromMin}>
-                <Td className="whitespace-nowrap">{formatClockRange(point.fromMin, point.fromMin + 15)}</Td>
-                <Td numeric>{formatNumber(point.vehicles, locale)}</Td>
-                <Td numeric>{formatNumber(point.delay?.value, locale)}</Td>
-                <Td numeric className="whitespace-nowrap">
-                  {point.delay ? `${formatNumber(point.delay.low, locale)} to ${formatNumber(point.delay.high, locale)}` : "–"}
-                </Td>
-                <Td numeric>{formatShare(point.spill, locale)}</Td>
-              </tr>
-            ))}
-          </tbody>
-        </RuledTable>
-      </div>
-    </details>
-  );
+  const steps = profile
+    .filter(({ vehicles }) => vehicles > 0)
+    .map(({ fromMin, vehicles, delay, spill }): DelayStep => ({ fromMin, toMin: fromMin + QUARTER_MIN, vehicles, delay, more: [formatShare(spill, locale)] }));
+  return <FiguresByTime caption="Delay by time of day" moreHeads={HEADS} steps={steps} className="pt-1" />;
 }

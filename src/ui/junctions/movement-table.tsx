@@ -4,11 +4,12 @@ import Link from "next/link";
 import type { ExitView, JunctionView, LegView, MovementView, WhenQuery } from "@/domain/junction";
 import { whenQueryToParams } from "@/domain/query-address";
 import { formatLength, formatNumber, formatSeconds, formatShare, shareNumber } from "@/ui/format";
+import { classNames } from "@/ui/primitives/class-names";
 import { EvidenceBar } from "@/ui/primitives/evidence-bar";
 import { IntervalMark } from "@/ui/primitives/interval-mark";
 import { LosSquare } from "@/ui/primitives/los-square";
 import { StorageBar } from "@/ui/primitives/storage-bar";
-import { RuledTable, Td, Th } from "@/ui/primitives/table";
+import { RuledTable, STAYS, Td, Th } from "@/ui/primitives/table";
 import { TurnArrow } from "@/ui/screens/turn-arrow";
 import { useCity } from "@/ui/shell/city";
 import { REFERENCE_SHORT, REFERENCE_WORDS } from "@/ui/strips/reference-words";
@@ -84,7 +85,8 @@ function LegRow({ leg, href }: { leg: LegView; href: string }) {
   return (
     <tr>
       <th scope="rowgroup" colSpan={COLUMNS} className="border-b border-rule bg-paper px-2 py-1.5 text-left font-normal">
-        <span className="flex flex-wrap items-center gap-x-4 gap-y-1">
+        {/* As wide as the window where the table is wider. */}
+        <span className="sticky left-2 flex max-w-[calc(100vw-3rem)] flex-wrap items-center gap-x-4 gap-y-1">
           <Link href={href} className="text-link font-semibold">
             Leg {leg.name}
           </Link>
@@ -129,7 +131,7 @@ function MovementRow({ movement, words, leg, maxS }: { movement: MovementView; w
   const { delay } = movement;
   return (
     <tr>
-      <th scope="row" className="whitespace-nowrap border-b border-rule px-2 py-2 text-left align-top font-medium">
+      <th scope="row" className={classNames(STAYS, "min-w-28 border-b border-rule px-2 py-2 text-left align-top font-medium sm:whitespace-nowrap")}>
         <TurnArrow turn={movement.turn} /> {words}
         <span className="sr-only"> {leg.name}</span>
       </th>

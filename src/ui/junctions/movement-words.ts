@@ -2,8 +2,10 @@ import type { ExitView, LegView, MovementView } from "@/domain/junction";
 import { compassPoint } from "@/ui/format";
 import { TURN_WORDS } from "@/ui/screens/phrases";
 
+type NamedMovement = Pick<MovementView, "id" | "turn" | "exitId">;
+
 /** "right", or "right, leaving south-westbound" where a leg has two movements of that turn. */
-export function movementWords(movement: MovementView, ofLeg: MovementView[], exits: ExitView[]): string {
+export function movementWords(movement: NamedMovement, ofLeg: readonly NamedMovement[], exits: readonly ExitView[]): string {
   const isAlone = ofLeg.every((other) => other.id === movement.id || other.turn !== movement.turn);
   const exit = exits.find((candidate) => candidate.id === movement.exitId);
   if (isAlone || !exit) return TURN_WORDS[movement.turn];

@@ -3,13 +3,13 @@
 import Link from "next/link";
 import type { LegCheckView, LegOfCheck } from "@/domain/leg-check";
 import { formatLength, formatNumber, formatSpeed } from "@/ui/format";
+import { movementWords } from "@/ui/junctions/movement-words";
 import { TurnArrow } from "@/ui/screens/turn-arrow";
-import { TURN_WORDS } from "@/ui/screens/phrases";
 import { useCity } from "@/ui/shell/city";
 import { originWords, stopLineWords } from "./leg-words";
 
 /** What is known of a leg, and what is doubtful about it. */
-export function LegFacts({ leg, movements }: { leg: LegOfCheck; movements: LegCheckView["movements"] }) {
+export function LegFacts({ leg, movements, exits }: { leg: LegOfCheck } & Pick<LegCheckView, "movements" | "exits">) {
   const { settings, locale } = useCity();
   const turns = movements.filter((movement) => movement.legId === leg.id);
   const facts: [string, React.ReactNode][] = [
@@ -22,7 +22,7 @@ export function LegFacts({ leg, movements }: { leg: LegOfCheck; movements: LegCh
     ["speed limit", formatSpeed(leg.speedLimitMs, settings.units, locale)],
     ["lanes", formatNumber(leg.lanes, locale)],
     ["comes from", leg.upstream ? <Link className="text-link" href={`/data/legs/${leg.upstream.junctionId}`}>{leg.upstream.name}</Link> : "no known junction"],
-    ["turns", <Turns key="turns" turns={turns} />],
+    ["turns", <Turns key="turns" turns={turns} exits={exits} />],
   ];
   return (
     <>
@@ -45,14 +45,14 @@ export function LegFacts({ leg, movements }: { leg: LegOfCheck; movements: LegCh
   );
 }
 
-function Turns({ turns }: { turns: LegCheckView["movements"] }) {
+function Turns({ turns, exits }: { turns: LegCheckView["movements"]; exits: LegCheckView["exits"] }) {
   const { locale } = useCity();
   if (turns.length === 0) return <>none seen</>;
   return (
     <span className="flex flex-wrap gap-x-4">
       {turns.map((turn) => (
-        <span key={turn.id} className="whitespace-nowrap">
-          <TurnArrow turn={turn.turn} /> {TURN_WORDS[turn.turn]} {formatNumber(Math.abs(turn.turnDeg), locale)}°
+        <span key={turn.id}>
+          <TurnArrow turn={turn.turn} /> {movementWords(turn, turns, exits)} ({formatNumber(Math.abs(turn.turnDeg), locale)}°)
         </span>
       ))}
     </span>

@@ -26,7 +26,7 @@ export function LegPanel({ view, leg, actions, mayEdit, shiftM, isTooShort, onSh
   return (
     <section aria-label={`Leg ${leg.name}`} className="flex flex-col gap-4 border-t border-ink pt-4">
       <h2 className="text-lg">Leg {leg.name}</h2>
-      <LegFacts leg={leg} movements={view.movements} />
+      <LegFacts leg={leg} movements={view.movements} exits={view.exits} />
       {mayEdit ? (
         <>
           <EditForm leg={leg} edit={actions.edit} shiftM={shiftM} isTooShort={isTooShort} onShift={onShift} onSaved={onSaved} />

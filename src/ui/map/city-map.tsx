@@ -74,7 +74,7 @@ export default function CityMap({ rows, shownIds, selected, hover, units, locale
   if (!bounds) return null;
   if (hasFailed) return <Failed title="The map could not be drawn." message="It needs WebGL, which this browser does not offer or has switched off. The list holds the same figures." />;
   return (
-    <div className="absolute inset-0" role="group" aria-label="Map of the junctions. The list holds the same figures.">
+    <div className="@container absolute inset-0" role="group" aria-label="Map of the junctions. The list holds the same figures.">
       <Map
         initialViewState={{ bounds, fitBoundsOptions: { padding: WHOLE_CITY_PADDING } }}
         mapStyle={EMPTY_STYLE}

@@ -1,6 +1,6 @@
 import type { RankedJunction } from "@/domain/screen";
 import { DELAY_SCALE, delayColor } from "@/ui/scales";
-import { needleEnd } from "./needles";
+import { boundsOf, needleEnd } from "./needles";
 import { worldAt, type WorldPoint } from "./world";
 
 export type MarkedJunction = Pick<RankedJunction, "junctionId" | "lat" | "lon" | "needles" | "rank">;
@@ -29,7 +29,8 @@ const NO_DELAY_PX = 2;
 
 /** Where and how every junction and leg is drawn. Cost: the legs, sorted. */
 export function marksOf(junctions: readonly MarkedJunction[]): Marks {
-  const origin = junctions.length > 0 ? worldAt(junctions[0].lat, junctions[0].lon) : { x: 0, y: 0 };
+  const [west, south] = boundsOf(junctions) ?? [0, 0];
+  const origin = worldAt(south, west);
   const dots = new Float32Array(junctions.length * 2);
   const drawn: { owner: number; delayS: number | null; end: WorldPoint }[] = [];
   junctions.forEach((junction, owner) => {

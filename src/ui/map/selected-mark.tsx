@@ -16,7 +16,7 @@ export function SelectedMark(props: { lat: number; lon: number; name: string; no
           <polygon points={HEXAGON} fill="none" stroke="#FFFDF8" strokeWidth="5" />
           <polygon points={HEXAGON} fill="none" stroke="#0B6E69" strokeWidth="2" />
         </svg>
-        <p className={`absolute top-1/2 w-max max-w-52 -translate-y-1/2 bg-sheet/90 px-1.5 py-0.5 font-table leading-tight text-ink ${props.side === "right" ? "left-full ml-1" : "right-full mr-1"}`}>
+        <p className={`absolute top-1/2 w-max max-w-[min(13rem,calc(50cqw-3.2rem))] -translate-y-1/2 bg-sheet/90 px-1.5 py-0.5 font-table leading-tight text-ink ${props.side === "right" ? "left-full ml-1" : "right-full mr-1"}`}>
           <span className="block text-[0.95rem] font-semibold">{props.name}</span>
           {props.note ? <span className="block text-sm text-ink-soft">{props.note}</span> : null}
         </p>

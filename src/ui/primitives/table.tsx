@@ -1,17 +1,21 @@
 import type { ReactNode, TdHTMLAttributes, ThHTMLAttributes } from "react";
 import { classNames } from "./class-names";
+import { Sideways } from "./sideways";
 
 /** A ruled table that scrolls sideways inside itself where the window is narrow. `caption` is read out, and shown on request. */
 export function RuledTable({ caption, showCaption = false, children, className }: { caption: string; showCaption?: boolean; children: ReactNode; className?: string }) {
   return (
-    <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label={caption}>
+    <Sideways label={caption}>
       <table className={classNames("w-full border-collapse text-[0.97rem] leading-snug", className)}>
         <caption className={showCaption ? "pb-2 text-left font-semibold" : "sr-only"}>{caption}</caption>
         {children}
       </table>
-    </div>
+    </Sideways>
   );
 }
+
+/** Of a cell that stays in sight while the others scroll away under it. */
+export const STAYS = "sticky left-0 bg-sheet";
 
 export function Th({ numeric, className, scope = "col", ...rest }: ThHTMLAttributes<HTMLTableCellElement> & { numeric?: boolean }) {
   return <th scope={scope} className={classNames("border-b border-ink px-2 pb-1.5 align-bottom text-sm font-normal leading-tight text-ink-soft", numeric ? "text-right" : "text-left", className)} {...rest} />;

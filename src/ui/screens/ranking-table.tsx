@@ -83,7 +83,8 @@ function useScrollToSelected(list: ListRef, selected: number | null, index: numb
   });
   useEffect(() => {
     if (selected !== null && place.current.index >= 0) bringIntoView(list.current, place.current.index, place.current.rowPx);
-  }, [list, selected]);
+    // Once more when the rows have been measured.
+  }, [list, selected, rowPx]);
 }
 
 /** One tab stop for the list; arrow keys go from row to row, also to rows that are not drawn yet. */
