@@ -28,6 +28,9 @@ export interface CsvRow {
   broken: boolean;
 }
 
+/** Takes the row that begins at `from` by itself and says where the next one begins; -1 leaves the row to the scanner. */
+export type PlainReader = (bytes: Uint8Array, from: number) => number;
+
 /**
  * Cuts bytes into rows and fields (RFC 4180; LF or CRLF; byte order mark skipped; empty lines skipped).
  * Where the input is cut does not change the result. A quoted field may span lines only if the row then
@@ -37,6 +40,7 @@ export class CsvScanner {
   private carry: Uint8Array = new Uint8Array(0);
   private line = 1;
   private atStart = true;
+  private readPlain: PlainReader | null = null;
   private columns = 0;
   /** Line breaks inside the quoted fields of the row at hand. */
   private quotedLines = 0;
@@ -55,6 +59,8 @@ export class CsvScanner {
   constructor(
     private readonly delimiter: number,
     private readonly onRow: (row: CsvRow) => void,
+    /** Asked first for each row, once the first one told the number of columns. It must take one whole line, or none. */
+    private readonly plain: ((columns: number) => PlainReader | null) | null = null,
   ) {}
 
   push(chunk: Uint8Array): void {
@@ -85,6 +91,8 @@ export class CsvScanner {
     }
     this.row.bytes = bytes;
     while (at < bytes.length) {
+      if (this.readPlain !== null) at = this.scanPlain(this.readPlain, bytes, at);
+      if (at >= bytes.length) break;
       const next = this.scanRow(at, last);
       if (next < 0) break;
       at = next;
@@ -92,6 +100,17 @@ export class CsvScanner {
     if (bytes.length - at > MAX_ROW_BYTES) this.refuseLongRow();
     // A copy: the caller may use its buffer again.
     this.carry = new Uint8Array(bytes.subarray(at));
+  }
+
+  /** Goes on while rows are plain; where the first other one begins, which may be the end. */
+  private scanPlain(read: PlainReader, bytes: Uint8Array, from: number): number {
+    let at = from;
+    for (;;) {
+      const next = read(bytes, at);
+      if (next < 0) return at;
+      this.line += 1;
+      at = next;
+    }
   }
 
   /** Where the next row begins, or -1 if this one may go on in the next chunk. */
@@ -141,7 +160,10 @@ export class CsvScanner {
     if (lines > 0 && this.columns > 0 && count !== this.columns) return this.brokenLine(from, true);
     const isEmpty = count === 1 && row.ends[0] <= row.starts[0];
     if (!isEmpty) {
-      if (this.columns === 0) this.columns = count;
+      if (this.columns === 0) {
+        this.columns = count;
+        this.readPlain = this.plain?.(count) ?? null;
+      }
       row.count = count;
       row.line = this.line;
       row.rowStart = from;

@@ -1,4 +1,5 @@
-const POWERS = Float64Array.from({ length: 23 }, (_, i) => Number(`1e${i}`));
+/** Powers of ten that are exact, 1 to 1e22. */
+export const POWERS = Float64Array.from({ length: 23 }, (_, i) => Number(`1e${i}`));
 const decoder = new TextDecoder("latin1");
 const MINUS = 45;
 const PLUS = 43;

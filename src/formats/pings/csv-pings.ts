@@ -1,11 +1,12 @@
 import type { FileMapping } from "@/domain/upload";
-import { CsvScanner, type CsvRow } from "../csv/csv-scanner";
+import { CsvScanner, type CsvRow, type PlainReader } from "../csv/csv-scanner";
 import { fieldText, rowText } from "../csv/field";
 import { byteOf, columnOf, trimmedEnd, trimmedStart } from "../fields";
 import type { RowTally } from "../row-tally";
 import type { VehicleNames } from "../vehicle-names";
 import type { PingBatcher } from "./ping-batcher";
 import { PingJudge } from "./ping-judge";
+import { PlainRows } from "./plain-rows";
 
 const FIELDS = ["vehicle_id", "timestamp", "lat", "lon", "speed", "heading"] as const;
 
@@ -15,8 +16,18 @@ export function csvPings(mapping: FileMapping, names: VehicleNames, batcher: Pin
   const judge = new PingJudge(mapping);
   let expected = 0;
   let isHeader = mapping.hasHeader;
-
-  return new CsvScanner(byteOf(mapping.delimiter), (row) => {
+  const plainReader = (count: number): PlainReader | null => {
+    if (!PlainRows.suits(mapping, count)) return null;
+    const plain = new PlainRows(mapping, count, judge);
+    return (bytes, from) => {
+      const next = plain.read(bytes, from);
+      if (next < 0) return -1;
+      tally.accept();
+      batcher.add(names.intern(bytes, plain.nameStart, plain.nameEnd), judge.tMs, judge.lat, judge.lon, judge.speedMs, judge.headingDeg);
+      return next;
+    };
+  };
+  const readRowByRow = (row: CsvRow): void => {
     if (expected === 0) expected = row.count;
     if (isHeader) {
       isHeader = false;
@@ -33,7 +44,8 @@ export function csvPings(mapping: FileMapping, names: VehicleNames, batcher: Pin
         ? names.internText(fieldText(row, columns[0]))
         : names.intern(row.bytes, judge.spans[0], judge.spans[1]);
     batcher.add(vehicle, judge.tMs, judge.lat, judge.lon, judge.speedMs, judge.headingDeg);
-  });
+  };
+  return new CsvScanner(byteOf(mapping.delimiter), readRowByRow, plainReader);
 }
 
 function readRow(row: CsvRow, columns: Int32Array, judge: PingJudge) {

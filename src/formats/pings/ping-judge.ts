@@ -1,7 +1,7 @@
 import type { FileMapping, RejectReason, SpeedUnit } from "@/domain/upload";
 import { byteOf, isPosition, optionalNumber } from "../fields";
 import { parseNumber } from "../csv/parse-number";
-import { timeParser, type TimeParser } from "../time/parse-time";
+import { isPlausibleTime, timeParser, type TimeParser } from "../time/parse-time";
 
 /** Metres per second in one unit; the mile has 1,609.344 m, the nautical mile 1,852 m. */
 const MS_PER_UNIT: Record<SpeedUnit, number> = { kmh: 1 / 3.6, mph: 0.44704, ms: 1, kn: 1852 / 3600 };
@@ -33,16 +33,32 @@ export class PingJudge {
     const { spans, decimal } = this;
     const nameBytes = spans[1] - spans[0];
     if (nameBytes <= 0 || nameBytes > MAX_NAME_BYTES) return "vehicle";
-    this.tMs = this.parseTime(bytes, spans[2], spans[3]);
-    if (this.tMs !== this.tMs) return "time";
-    this.lat = parseNumber(bytes, spans[4], spans[5], decimal);
-    this.lon = parseNumber(bytes, spans[6], spans[7], decimal);
-    if (!isPosition(this.lat, this.lon)) return "position";
+    const tMs = this.parseTime(bytes, spans[2], spans[3]);
+    if (tMs !== tMs) return "time";
+    const lat = parseNumber(bytes, spans[4], spans[5], decimal);
+    const lon = parseNumber(bytes, spans[6], spans[7], decimal);
+    if (!isPosition(lat, lon)) return "position";
     const speed = optionalNumber(bytes, spans[8], spans[9], decimal);
     if (speed < 0 || speed === Infinity) return "speed";
-    this.speedMs = speed * this.msPerUnit;
-    const heading = optionalNumber(bytes, spans[10], spans[11], decimal);
+    return this.take(nameBytes, tMs, lat, lon, speed, optionalNumber(bytes, spans[10], spans[11], decimal));
+  }
+
+  /** A time of the mapping's format in ms UTC; NaN for anything else. */
+  timeOf(bytes: Uint8Array, start: number, end: number): number {
+    return this.parseTime(bytes, start, end);
+  }
+
+  /** Judges values that are read: `tMs` in ms UTC, speed in the mapping's unit. */
+  take(nameBytes: number, tMs: number, lat: number, lon: number, speed: number, heading: number): RejectReason | null {
+    if (nameBytes <= 0 || nameBytes > MAX_NAME_BYTES) return "vehicle";
+    if (!isPlausibleTime(tMs)) return "time";
+    if (!isPosition(lat, lon)) return "position";
+    if (speed < 0 || speed === Infinity) return "speed";
     if (heading < -180 || heading > 360) return "heading";
+    this.tMs = tMs;
+    this.lat = lat;
+    this.lon = lon;
+    this.speedMs = speed * this.msPerUnit;
     this.headingDeg = heading < 0 ? heading + 360 : heading === 360 ? 0 : heading;
     return null;
   }

@@ -33,8 +33,13 @@ export function timeParser(format: TimeFormat, timeZone: string, decimal: number
   }
 }
 
+/** Whether an instant in ms UTC is one at which a vehicle may have been seen; false for NaN. */
+export function isPlausibleTime(tMs: number): boolean {
+  return tMs >= EARLIEST_MS && tMs < LATEST_MS;
+}
+
 function plausible(tMs: number): number {
-  return tMs >= EARLIEST_MS && tMs < LATEST_MS ? tMs : NaN;
+  return isPlausibleTime(tMs) ? tMs : NaN;
 }
 
 /**
