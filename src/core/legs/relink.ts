@@ -7,9 +7,10 @@ import type { Exit, Leg, Network } from "@/core/types";
 
 /** Settings of legs that hang on the wrong exit, or on none. */
 export const RELINKING = Object.freeze({
-  /** Fewest trips that drove from the exit to the leg, and how many times as many as came by the exit that it hangs on. */
+  /** Fewest trips that drove from the exit to the leg, how many times as many as came by the exit that it hangs on, and share of all who passed its stop line. */
   leastTrips: 2,
   timesFed: 2,
+  share: 0.5,
   /** Gap between the two lines that is still one street, m. */
   gapM: 60,
   stepM: 10,
@@ -30,7 +31,8 @@ export function relinkBroken(draft: Network, usage: Usage, carried: Set<string>,
   for (const { exit: e, leg: l, trips } of pairs) {
     const leg = draft.legs[l];
     const isFixed = leg.origin !== "derived" || leg.locked || carried.has(leg.id);
-    if (trips < RELINKING.leastTrips || trips < RELINKING.timesFed * usage.fed[l] || done.has(l) || isFixed) continue;
+    const least = Math.max(RELINKING.leastTrips, RELINKING.timesFed * usage.fed[l], RELINKING.share * usage.leg[l]);
+    if (trips < least || done.has(l) || isFixed) continue;
     const line = joinedLine(leg, draft.exits[e], frame);
     if (!line) continue;
     done.add(l);

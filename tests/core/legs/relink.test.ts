@@ -18,7 +18,8 @@ function draft(): Network {
   return { junctions, legs: [leg], exits: [exit], movements: [], driveSide: "right" };
 }
 
-const usageOf = (trips: number, fed: number) => ({ broken: new Map([[0, trips]]), fed: Uint32Array.of(fed) }) as unknown as Usage;
+const usageOf = (trips: number, fed: number, passed = trips + fed) =>
+  ({ broken: new Map([[0, trips]]), fed: Uint32Array.of(fed), leg: Uint32Array.of(passed) }) as unknown as Usage;
 
 describe("paths that break off behind an exit", () => {
   it("hang the leg on which they begin anew on that exit, with its line", () => {
@@ -33,6 +34,7 @@ describe("paths that break off behind an exit", () => {
   it("leave it where one trip did so, where others come another way, and where it is known", () => {
     expect(relinkBroken(draft(), usageOf(1, 0), new Set(), frame)).toBeNull();
     expect(relinkBroken(draft(), usageOf(5, 3), new Set(), frame)).toBeNull();
+    expect(relinkBroken(draft(), usageOf(5, 0, 40), new Set(), frame)).toBeNull();
     expect(relinkBroken(draft(), usageOf(9, 0), new Set([draft().legs[0].id]), frame)).toBeNull();
   });
 });
