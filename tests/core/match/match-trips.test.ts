@@ -1,31 +1,11 @@
 import { describe, expect, it } from "vitest";
-import { latAt, lonAt, planeAt } from "@/core/geometry/plane";
-import { draftExit, draftLeg } from "@/core/legs/draft";
-import { createFrame } from "@/core/legs/frame";
-import { listMovements } from "@/core/legs/movements";
 import { createGraph } from "@/core/match/graph";
 import { matchTrips, type Chain } from "@/core/match/match-trips";
 import { cleanPings } from "@/core/pings/clean";
-import type { Network } from "@/core/types";
 import { columnsOf } from "../two-crossings";
+import { at, street } from "./small-street";
 
-const plane = planeAt(45.6, -38.3);
-const at = (x: number, y: number): { lat: number; lon: number } => ({ lat: latAt(plane, y), lon: lonAt(plane, x) });
-const line = (...xy: number[]): Float64Array => Float64Array.from(xy);
-
-/** Three crossings 200 m apart in a row from west to east, one eastbound street through them, a frontage road 45 m south of it. */
-function street(): Network {
-  const junctions = [{ id: "A", ...at(0, 0) }, { id: "B", ...at(200, 0) }, { id: "C", ...at(400, 0) }];
-  const frame = createFrame(junctions, 1000);
-  const legs = junctions.map((_, j) => draftLeg(frame, j, line(-14, 0, -186, 0), 50));
-  const exits = junctions.map((_, j) => draftExit(frame, j, line(14, 0, 186, 0), 50));
-  legs[1] = { ...legs[1], upstreamExit: 0 };
-  legs[2] = { ...legs[2], upstreamExit: 1 };
-  const base = { junctions, legs, exits, driveSide: "right" as const };
-  return { ...base, movements: listMovements(base) };
-}
-
-/** Chains of one vehicle's pings: seconds, east and north metres; speed and heading as given or eastbound at 12 m/s. */
+/** A street through A, B and C; a frontage road lies 45 m south of it. Chains of one vehicle's pings: seconds, east and north metres; speed and heading as given or eastbound at 12 m/s. */
 function chainsOf(pings: [number, number, number, number?, number?][]): { chains: Chain[]; legs: string[] } {
   const network = street();
   const graph = createGraph(network);

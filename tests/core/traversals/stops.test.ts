@@ -23,6 +23,14 @@ describe("stops", () => {
     expect(summariseStops(course, 10_000, 20_000, 90, 200)).toMatchObject({ stops: 1, firstStopAtM: 100 });
   });
 
+  it("knows a vehicle that creeps into the window for one that stood before it", () => {
+    const before: [number, number, number][] = Array.from({ length: 30 }, (_, i) => [5 * i, 50 * i, 36]);
+    const course = courseOf([...before, [150, 1500, 0], [155, 1502, 8], [160, 1505, 3], [165, 1540, 36], [170, 1590, 36]]);
+    // The stop began before 152 s: it is none of this window, whose standing seconds run until the last slow ping.
+    expect(summariseStops(course, 152_000, 170_000, 1501, 1600)).toMatchObject({ stops: 0, stoppedS: 5, firstStopAtM: 1505 });
+    expect(summariseStops(course, 140_000, 170_000, 1400, 1600)).toMatchObject({ stops: 1, firstStopAtM: 1500 });
+  });
+
   it("says that a stop was inferred, and that steps were long enough to hide one", () => {
     const filled = createCourse(16);
     fillGaps(courseOf([[0, 0, 36], [40, 200, 36]], 10), [150], filled);
