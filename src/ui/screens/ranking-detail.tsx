@@ -11,7 +11,7 @@ export function RankingDetail({ row, query }: { row: RankedJunction; query: Scre
   const { settings, locale } = useCity();
   const when = whenSuffix(query);
   return (
-    <div role="row" className="border-b border-l-4 border-b-rule border-l-pick bg-[#E7EFEB]" data-testid="explanation">
+    <div role="row" className="border-b border-l-4 border-b-rule border-l-pick bg-[#EDF3F0]" data-testid="explanation">
       <div role="cell" className="px-4 pb-3 pt-1 font-text text-[0.95rem] leading-normal @xl:pl-12">
         <p className="max-w-[44rem]">{explainJunction(row, { units: settings.units, locale })}</p>
         <p className="mt-1.5 flex flex-wrap gap-x-5 gap-y-1 font-medium">

@@ -46,7 +46,7 @@ export const RankingRow = memo(function RankingRow({ row, index, isSelected, isT
       className={classNames(
         GRID,
         "min-h-[4.75rem] cursor-pointer border-b border-l-4 border-b-rule pr-1 @xl:min-h-12",
-        isSelected ? "border-l-pick bg-[#E7EFEB] py-1" : "h-[4.75rem] border-l-transparent hover:bg-paper @xl:h-12",
+        isSelected ? "border-l-pick bg-[#EDF3F0] py-1" : "h-[4.75rem] border-l-transparent hover:bg-paper @xl:h-12",
       )}
     >
       {row.getAllCells().map((cell) => {
