@@ -20,8 +20,9 @@ export interface NearSample extends NearPings {
 }
 
 export interface NearSampler {
-  add(pings: PingColumns): void;
-  /** By index of the junction; the sampler begins afresh. */
+  /** Looks at the pings of vehicles with smaller numbers than `vehicles`. */
+  add(pings: PingColumns, vehicles?: number): void;
+  /** By index of the junction, in no order; the sampler begins afresh. */
   finish(): NearSample[];
 }
 
@@ -29,8 +30,6 @@ export interface NearSampleOptions {
   radiusM: number;
   /** Pings kept for each junction. */
   most: number;
-  /** By junction: share of its pings beyond which none can be among those kept. */
-  share: Float64Array;
 }
 
 export const NEAR_SAMPLE = Object.freeze({ radiusM: 180, most: 1500 });
@@ -41,7 +40,7 @@ export const NEAR_SAMPLE = Object.freeze({ radiusM: 180, most: 1500 });
  * neither on the order of the pings nor on how they were dealt out to several samplers. O(pings).
  */
 export function createNearSampler(junctions: readonly JunctionPoint[], index: JunctionIndex, options: Partial<NearSampleOptions> = {}): NearSampler {
-  const { radiusM, most, share } = { ...NEAR_SAMPLE, share: new Float64Array(junctions.length).fill(1), ...options };
+  const { radiusM, most } = { ...NEAR_SAMPLE, ...options };
   const planes = junctions.map((junction) => planeAt(junction.lat, junction.lon));
   const length = junctions.length;
   const claims = index.claim({
@@ -53,7 +52,7 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
   });
   const draw = createDraw();
   let kept = junctions.map(() => emptySample(FIRST_ROOM));
-  let limit = Float64Array.from(share);
+  const limit = new Float64Array(length).fill(1);
 
   function keep(j: number, priority: number, pings: PingColumns, i: number): void {
     const x = eastM(planes[j], pings.lon[i]);
@@ -72,8 +71,9 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
   }
 
   return {
-    add(pings) {
+    add(pings, vehicles = Infinity) {
       for (let i = 0; i < pings.length; i++) {
+        if (pings.vehicle[i] >= vehicles) continue;
         const slot = claims.find(pings.lat[i], pings.lon[i]);
         if (slot < 0) continue;
         // Of most pings a first look says that they are not among the smallest.
@@ -85,9 +85,9 @@ export function createNearSampler(junctions: readonly JunctionPoint[], index: Ju
       }
     },
     finish() {
-      const samples = kept.map((sample) => joinNearSamples([sample], most));
+      const samples = kept.map(trimmed);
       kept = junctions.map(() => emptySample(FIRST_ROOM));
-      limit = Float64Array.from(share);
+      limit.fill(1);
       return samples;
     },
   };
@@ -97,16 +97,51 @@ const FIRST_ROOM = 16;
 
 /** The sample of one junction from those of several samplers, in order of priority. O(pings × log). */
 export function joinNearSamples(parts: readonly NearSample[], most: number = NEAR_SAMPLE.most): NearSample {
-  const all = emptySample(parts.reduce((sum, part) => sum + part.length, 0));
+  const sorted = new Float64Array(parts.reduce((sum, part) => sum + part.length, 0));
+  let length = 0;
   for (const part of parts) {
-    for (const name of SAMPLE_COLUMNS) all[name].set(part[name].subarray(0, part.length), all.length);
-    all.length += part.length;
+    sorted.set(part.priority.subarray(0, part.length), length);
+    length += part.length;
   }
-  const order = Uint32Array.from({ length: all.length }, (_, i) => i).sort((a, b) => all.priority[a] - all.priority[b]);
-  const out = emptySample(Math.min(most, all.length));
+  sorted.sort();
+  const out = emptySample(Math.min(most, length));
   out.length = out.priority.length;
-  for (const name of SAMPLE_COLUMNS) for (let k = 0; k < out.length; k++) out[name][k] = all[name][order[k]];
+  const isTaken = new Uint8Array(out.length);
+  for (const part of parts) {
+    for (let i = 0; i < part.length; i++) {
+      // A number sort and a search take less than a sort by a function.
+      let place = placeIn(sorted, part.priority[i]);
+      while (isTaken[place] === 1) place += 1;
+      if (place >= out.length) continue;
+      isTaken[place] = 1;
+      for (const name of SAMPLE_COLUMNS) out[name][place] = part[name][i];
+    }
+  }
   return out;
+}
+
+/** Index of the first entry that is not smaller. */
+function placeIn(sorted: Float64Array, value: number): number {
+  let low = 0;
+  let high = sorted.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (sorted[middle] < value) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
+function trimmed(sample: NearSample): NearSample {
+  const { length } = sample;
+  return {
+    length,
+    eastM: sample.eastM.slice(0, length),
+    northM: sample.northM.slice(0, length),
+    headingDeg: sample.headingDeg.slice(0, length),
+    speedMs: sample.speedMs.slice(0, length),
+    priority: sample.priority.slice(0, length),
+  };
 }
 
 /** Keeps the `most` pings of least priority, in the order in which they are; answers with the first priority that is too large. */

@@ -94,7 +94,7 @@ async function matchAndStore(reading: Reading): Promise<void> {
     return { network: learnNetwork(pings, points, index, { driveSide: settings.driveSide }, prior), sample };
   });
   const matched = await matchFile(ctx, run, network, [...read.pings, ...along.pings], `network-${turn}`, {
-    cloudShare: sample.cloudShare,
+    cloudSlots: sample.slots,
     span: along.span,
     tell: (share) => progress.tell("match", share, rows),
   });

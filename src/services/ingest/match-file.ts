@@ -18,7 +18,7 @@ export interface FileMatched {
   lastMs: number;
   /** Seconds of unhindered traversals by movement. */
   unhindered: number[][];
-  /** By junction; empty where no sample was asked for. */
+  /** By junction. */
   clouds: NearSample[];
 }
 
@@ -27,8 +27,8 @@ export interface MatchSteps {
   wanted?: Uint8Array;
   /** What ended before or began after is left out; nothing where absent. */
   span?: Span;
-  /** By junction: share of its pings that may be among its sample; no sample where absent. */
-  cloudShare?: Float64Array;
+  /** Samples of the pings near junctions are drawn from the vehicles of so many slots; none where absent. */
+  cloudSlots?: number;
   tell: Tell;
 }
 
@@ -37,7 +37,7 @@ export async function matchFile(ctx: Context, run: Run, network: Network, pings:
   const sizes = pieceSizes(ctx);
   await run.store.put(name, [encodeRecord(network)]);
   const cuts = cutSlots(pings, sizes.pings, run.isShared ? sizes.least : 1);
-  const inputs = cuts.map((vehicles) => ({ network: name, vehicles, wanted: steps.wanted ?? null, span: steps.span ?? null, cloudShare: steps.cloudShare ?? null }));
+  const inputs = cuts.map((vehicles) => ({ network: name, vehicles, wanted: steps.wanted ?? null, span: steps.span ?? null, cloudSlots: steps.cloudSlots ?? 0 }));
   const parts = await run.perform(matchVehicles, inputs, steps.tell);
   const totals: Totals = { pings: 0, duplicates: 0, jumps: 0, trips: 0, incompleteTraversals: 0 };
   for (const part of parts) for (const key of Object.keys(totals) as (keyof Totals)[]) totals[key] += part.totals[key];
@@ -48,7 +48,7 @@ export async function matchFile(ctx: Context, run: Run, network: Network, pings:
     firstMs: parts.reduce((least, part) => Math.min(least, part.firstMs), Infinity),
     lastMs: parts.reduce((most, part) => Math.max(most, part.lastMs), -Infinity),
     unhindered: joinSeconds(network, parts),
-    clouds: steps.cloudShare ? joinClouds(network, parts) : [],
+    clouds: joinClouds(network, parts),
   };
 }
 
@@ -83,5 +83,5 @@ function joinSeconds(network: Network, parts: readonly VehiclesMatched[]): numbe
 }
 
 function joinClouds(network: Network, parts: readonly VehiclesMatched[]): NearSample[] {
-  return network.junctions.map((_, j) => joinNearSamples(parts.flatMap((part) => part.clouds?.[j] ?? []), NEAR_SAMPLE.most));
+  return network.junctions.map((_, j) => joinNearSamples(parts.flatMap((part) => part.clouds[j] ?? []), NEAR_SAMPLE.most));
 }

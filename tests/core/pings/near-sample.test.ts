@@ -34,7 +34,7 @@ describe("sample of pings near a junction", () => {
   it("keeps no more than it may, from all parts of the stream", () => {
     const sampler = createNearSampler([JUNCTION], createH3Index(), { most: 100 });
     for (let part = 0; part < 10; part++) sampler.add(pingsAt(Array(1000).fill(JUNCTION.lat), NaN, part, part * 1000));
-    const [near] = sampler.finish();
+    const near = joinNearSamples([sampler.finish()[0]], 100);
     expect(near.length).toBe(100);
     const fromEachPart = Array.from({ length: 10 }, (_, part) => near.speedMs.filter((speed) => speed === part).length);
     // Ten of a hundred are expected from each part; beyond 10 ± 9 lies less than one in a hundred seeds.
@@ -52,11 +52,16 @@ describe("sample of pings near a junction", () => {
       (part % 2 === 0 ? second : first).add(batch);
     }
     const joined = joinNearSamples([second.finish()[0], first.finish()[0]], 100);
-    expect(joined).toEqual(whole.finish()[0]);
-    // A share that is large enough costs nothing: of 3,000 pings 100 are kept, hardly ever one beyond the first tenth.
-    const bounded = createNearSampler([JUNCTION], index, { most: 100, share: Float64Array.of(0.1) });
-    for (let part = 0; part < 10; part++) bounded.add(pingsAt(Array(300).fill(JUNCTION.lat), part, part, part * 300));
-    expect(bounded.finish()[0]).toEqual(joined);
+    expect(joined).toEqual(joinNearSamples(whole.finish(), 100));
+    expect([...joined.priority]).toEqual([...joined.priority].sort((a, b) => a - b));
+  });
+
+  it("may leave out vehicles by their numbers", () => {
+    const sampler = createNearSampler([JUNCTION], createH3Index());
+    const pings = pingsAt([JUNCTION.lat, JUNCTION.lat, JUNCTION.lat], NaN, NaN);
+    pings.vehicle.set([0, 1, 2]);
+    sampler.add(pings, 2);
+    expect(sampler.finish()[0].length).toBe(2);
   });
 
   it("comes back from its bytes to a decimetre, a degree and a half and a quarter of a metre a second", () => {

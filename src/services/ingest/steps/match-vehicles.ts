@@ -8,7 +8,7 @@ import type { PieceKind } from "../pieces/piece-kind";
 import { lengthAndRecord, offsetsOf } from "../pieces/records";
 import { remembered } from "../pieces/remembered";
 import type { Span } from "./cut-time";
-import { readSlots, type SlotRange } from "./ping-slots";
+import { readSlots, vehiclesBefore, type SlotRange } from "./ping-slots";
 
 export interface VehiclesToMatch {
   /** Object that holds the network. */
@@ -18,8 +18,8 @@ export interface VehiclesToMatch {
   wanted: Uint8Array | null;
   /** What ended before or began after is left out; nothing where null. */
   span: Span | null;
-  /** By junction: share of its pings that may be among its sample; no sample where null. */
-  cloudShare: Float64Array | null;
+  /** Samples of the pings near junctions are drawn from the vehicles of so many slots. */
+  cloudSlots: number;
 }
 
 export interface Totals {
@@ -41,7 +41,7 @@ export interface VehiclesMatched {
   lastMs: number;
   /** Seconds of unhindered traversals, one movement after the other. */
   unhindered: { counts: Uint32Array; seconds: Float64Array };
-  clouds: NearSample[] | null;
+  clouds: NearSample[];
 }
 
 /** A section: traversals whose vehicle is their own index, with the keyed hash of each. */
@@ -82,7 +82,7 @@ export const matchVehicles: PieceKind<VehiclesToMatch, VehiclesMatched> = {
       firstMs,
       lastMs,
       unhindered: flat(gatherUnhindered(network, traversals)),
-      clouds: input.cloudShare && sampled(sampler(input.cloudShare), pings),
+      clouds: sampled(sampler, pings, vehiclesBefore(hashes, input.cloudSlots)),
     };
   },
 };
@@ -90,17 +90,13 @@ export const matchVehicles: PieceKind<VehiclesToMatch, VehiclesMatched> = {
 function toMatch(network: Network) {
   const index = createH3Index();
   let sampler: NearSampler | undefined;
-  return {
-    network,
-    match: createMatcher(network),
-    // All pieces of a run have the same share.
-    sampler: (share: Float64Array) => (sampler ??= createNearSampler(network.junctions, index, { share })),
-  };
+  return { network, match: createMatcher(network), sampler: () => (sampler ??= createNearSampler(network.junctions, index)) };
 }
 
-function sampled(sampler: NearSampler, pings: PingColumns): NearSample[] {
-  sampler.add(pings);
-  return sampler.finish();
+function sampled(sampler: () => NearSampler, pings: PingColumns, vehicles: number): NearSample[] {
+  if (vehicles === 0) return [];
+  sampler().add(pings, vehicles);
+  return sampler().finish();
 }
 
 function totalsOf({ pings, duplicates, jumps, trips, incompleteTraversals }: Matched["report"]): Totals {

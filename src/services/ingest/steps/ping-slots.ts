@@ -169,6 +169,14 @@ function aligned(bytes: Uint8Array): Uint8Array {
   return bytes.byteOffset % 8 === 0 ? bytes : new Uint8Array(bytes);
 }
 
+/** How many of the vehicles, which are in the order of their hashes, are in the first `slots` slots. */
+export function vehiclesBefore(hashes: BigInt64Array, slots: number): number {
+  const halves = new Uint32Array(hashes.buffer, hashes.byteOffset, 2 * hashes.length);
+  let vehicles = 0;
+  while (vehicles < hashes.length && halves[2 * vehicles + 1] >>> SLOT_SHIFT < slots) vehicles += 1;
+  return vehicles;
+}
+
 /** Cuts the slots into runs of at most about `most` pings, and into no fewer than `least` where there are enough. */
 export function cutSlots(objects: readonly SlottedPings[], most: number, least: number): SlotRange[][] {
   const pings = new Float64Array(SLOTS);
@@ -185,15 +193,15 @@ export function cutSlots(objects: readonly SlottedPings[], most: number, least: 
   return cuts;
 }
 
-/** The first slots that hold at least so many pings, and how many those are. */
-export function firstSlots(objects: readonly SlottedPings[], wanted: number): { ranges: SlotRange[]; pings: number } {
+/** The first slots that hold at least so many pings, and how many slots those are. */
+export function firstSlots(objects: readonly SlottedPings[], wanted: number): { ranges: SlotRange[]; slots: number } {
   let held = 0;
   let to = 0;
   while (to < SLOTS && held < wanted) {
     for (const object of objects) held += object.pings[to];
     to += 1;
   }
-  return { ranges: rangesOf(objects, 0, to), pings: held };
+  return { ranges: rangesOf(objects, 0, to), slots: to };
 }
 
 function rangesOf(objects: readonly SlottedPings[], from: number, to: number): SlotRange[] {
