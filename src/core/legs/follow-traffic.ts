@@ -1,6 +1,6 @@
 import { angleBetweenDeg, bearingDeg } from "@/core/geometry/angles";
 import { eastM, latAt, lonAt, northM } from "@/core/geometry/plane";
-import { lengthOf, pointAt, projectPoint, slice } from "@/core/geometry/polyline";
+import { lengthOf, pointAt, projectPoint, simplify, slice } from "@/core/geometry/polyline";
 import type { Frame } from "@/core/legs/frame";
 import { LEARNING } from "@/core/legs/learning";
 import { pingsAround, type PingGrid } from "@/core/legs/ping-grid";
@@ -26,6 +26,8 @@ export const FOLLOWING = Object.freeze({
   /** Movements below this are noise of standing. */
   leastStepM: 8,
   mostPings: 600,
+  /** Pings are held against a line without vertices this near to the rest of it, far below the distances above. */
+  simplifyM: 1,
 });
 
 /** One trip's way outwards from its anchor: distance driven along the arm, and where. */
@@ -47,7 +49,7 @@ export function followTraffic(arm: Arm, frame: Frame, grid: PingGrid): Arm {
   const line = Float64Array.from(arm.line);
   const lengthM = lengthOf(line);
   if (lengthM < FOLLOWING.anchorM) return arm;
-  const ways = waysOf(arm, line, frame, grid);
+  const ways = waysOf(arm, simplify(line, FOLLOWING.simplifyM), frame, grid);
   const left = ways.filter((way) => way.leftM >= 0);
   const forkM = busiestFork(left);
   const fork = left.filter((way) => Math.abs(way.leftM - forkM) <= FOLLOWING.forkM);
@@ -84,6 +86,7 @@ function waysOf(arm: Arm, line: Float64Array, frame: Frame, grid: PingGrid): Way
     const i = scratch[n];
     const x = eastM(plane, trips.lon[i]);
     const y = northM(plane, trips.lat[i]);
+    if (Math.abs(x - ax) + Math.abs(y - ay) > 2 * (FOLLOWING.anchorReachM + FOLLOWING.besideM)) continue;
     const foot = projectPoint(line, x, y);
     const isNear = Math.abs(foot.at - FOLLOWING.anchorM) < FOLLOWING.anchorReachM && Math.abs(foot.offset) < FOLLOWING.besideM;
     if (!isNear || !(trips.headingDeg[i] >= 0)) continue;
