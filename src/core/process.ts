@@ -35,7 +35,8 @@ export interface CityResult {
 
 /**
  * Stage 4: legs, exits, links and movements from a sample of the pings or all of them. Whole vehicles must be in
- * the batch. `prior` is an earlier network whose legs keep their ids. O(pings).
+ * the batch; about as many pings as learningPings asks for are enough, and no more are taken. `prior` is an earlier
+ * network whose legs keep their ids. O(pings).
  */
 export function learnNetwork(
   pings: PingColumns, junctions: JunctionPoint[], index: JunctionIndex, options: CoreOptions, prior?: Network,
