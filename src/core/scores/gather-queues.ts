@@ -3,9 +3,10 @@ import { CODES, countOf, createHistogram, emptyHistogram, histogramOf, histogram
 import { QUARTERS, type DayByJunction } from "./day-by-junction";
 import { fetchQueues } from "./fetch-ahead";
 import type { GatheredScreen, QuarterWindow } from "./gathered";
-import { isSpillKnown } from "./leg-level";
+import { isMostOf, totalsOf } from "./day-totals";
+import { addSeconds, observedS, spilledS } from "./queue-seconds";
 import { addToTally, closeDayOf, closeQuarterOf, type RatioTally } from "./ratio-tally";
-import { reachOfCode, STEPS_PER_S } from "./stored-figures";
+import { reachOfCode } from "./stored-figures";
 
 /** What is added up for the legs of one junction; a slot for each. */
 interface Slots {
@@ -17,8 +18,6 @@ interface Slots {
   seconds: Float64Array;
 }
 
-/** Place of observed above spilled time: both below 2^26 steps in a day, and both in a number below 2^53. */
-const OBSERVED = 2 ** 26;
 
 /** Fills spillback and the 95th percentile of reach of every leg. O(leg quarters of the windows). */
 export function gatherQueues(days: readonly DayByJunction[], index: CatalogueIndex, windows: readonly QuarterWindow[], out: GatheredScreen): void {
@@ -27,7 +26,8 @@ export function gatherQueues(days: readonly DayByJunction[], index: CatalogueInd
   const slots: Slots = {
     count: most,
     ...createHistogram(most),
-    seconds: new Float64Array(most),
+    // Legs that the catalogue does not list any more come last.
+    seconds: new Float64Array(256),
   };
   const whole = { from: windows[0].from, to: windows[windows.length - 1].to };
   for (let junction = 0; junction < index.junctions.length; junction++) {
@@ -48,33 +48,43 @@ function addDay(day: DayByJunction, junction: number, first: number, end: number
   for (const window of windows) {
     const from = day.queueStart[row * QUARTERS + window.from];
     const to = day.queueStart[row * QUARTERS + window.to];
-    addEntries(day, from, to, slots);
+    addEntries(day, { row, from, to, first, end, isWholeWindow: windows.length === 1 }, slots);
     for (let leg = first; leg < end; leg++) {
       const both = slots.seconds[leg - first];
       if (both === 0) continue;
       slots.seconds[leg - first] = 0;
-      const observed = Math.floor(both / OBSERVED);
-      addToTally(spill, leg, observed / STEPS_PER_S, (both - observed * OBSERVED) / STEPS_PER_S);
+      addToTally(spill, leg, observedS(both), spilledS(both));
       closeQuarterOf(spill, leg);
     }
   }
   for (let leg = first; leg < end; leg++) closeDayOf(spill, leg);
 }
 
-/** What an entry does not know is left out. */
-function addEntries({ ofLeg, reach, spilled, observed }: DayByJunction, from: number, to: number, slots: Slots): void {
-  const { fine, coarse, count, seconds } = slots;
+/** A stretch of a junction's entries, and its legs. */
+interface Stretch {
+  row: number;
+  from: number;
+  to: number;
+  first: number;
+  end: number;
+  isWholeWindow: boolean;
+}
+
+/** Reach, and observed and spilled time, by number of the leg; what an entry does not know is left out. */
+function addEntries(day: DayByJunction, { row, from, to, first, end, isWholeWindow }: Stretch, slots: Slots): void {
+  const [rowFrom, rowTo] = [day.queueStart[row * QUARTERS], day.queueStart[(row + 1) * QUARTERS]];
+  if (isWholeWindow && isMostOf(from, to, rowFrom, rowTo)) {
+    slots.seconds.set(totalsOf(day).seconds.subarray(first, end));
+    addSeconds(day, rowFrom, from, slots.seconds, -1);
+    addSeconds(day, to, rowTo, slots.seconds, -1);
+  } else addSeconds(day, from, to, slots.seconds, 1);
+  const { ofLeg, reach } = day;
+  const { fine, coarse, count } = slots;
   for (let k = from; k < to; k++) {
-    const slot = ofLeg[k];
-    if (slot >= count) continue;
     const code = reach[k];
-    if (code > 0) {
-      const at = slot * CODES + code;
-      fine[at] += 1;
-      coarse[at >> COARSE_SHIFT] += 1;
-    }
-    const seen = observed[k];
-    const full = spilled[k];
-    if (isSpillKnown(seen, full)) seconds[slot] += (seen - 1) * OBSERVED + (full - 1);
+    if (code === 0 || ofLeg[k] >= count) continue;
+    const at = ofLeg[k] * CODES + code;
+    fine[at] += 1;
+    coarse[at >> COARSE_SHIFT] += 1;
   }
 }

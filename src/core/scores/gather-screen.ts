@@ -2,6 +2,7 @@ import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
 import { createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
 import { QUARTERS, renumberDay, type DayByJunction } from "./day-by-junction";
+import { isMostOf, totalsOf } from "./day-totals";
 import { LEAST_FOR_MEDIAN, LEAST_FOR_P95, rollUp } from "./delay-level";
 import { createDistinctSets, type DistinctSets } from "./distinct-sets";
 import { ENOUGH_VEHICLES } from "./evidence";
@@ -10,7 +11,7 @@ import { gatherQueues } from "./gather-queues";
 import { emptyScreen, type GatheredScreen, type QuarterWindow } from "./gathered";
 import { addDayOf, addToTally, closeDayOf, closeQuarterOf, clustersFor, finishDays, type Clusters, type RatioTally } from "./ratio-tally";
 import { delayOfCode } from "./stored-figures";
-import { createSums, delaySqOf, emptySums, stopsIn, sumEntries, takeDelays, type EntrySums, type Taken } from "./sum-entries";
+import { countDelays, createSums, delaySqOf, emptySums, stopsIn, subtractEntries, sumEntries, takeDelays, type EntrySums, type Taken } from "./sum-entries";
 import type { ScoreFilter } from "./types";
 
 interface Gathering {
@@ -44,7 +45,7 @@ export function gatherScreen(days: readonly DayByJunction[], index: CatalogueInd
     isChosen: chosenTurns(index, filter),
     out: emptyScreen(index, clusters),
     isWanted: new Uint8Array(256),
-    sums: createSums(most),
+    sums: createSums(),
     taken: { vehicles: 0, delayS: 0 },
     codes: createHistogram(),
     vehicles: createDistinctSets(most, ENOUGH_VEHICLES),
@@ -102,11 +103,29 @@ function addDay(gathering: Gathering, day: DayByJunction, junction: number): voi
     const from = day.passedStart[row * QUARTERS + window.from];
     const to = day.passedStart[row * QUARTERS + window.to];
     if (from === to) continue;
-    sumEntries(day.passed, from, to, isWanted, sums, codes);
+    if (gathering.clusters === "days" && isMostOf(from, to, day.passedStart[row * QUARTERS], day.passedStart[(row + 1) * QUARTERS])) {
+      addMostOfDay(gathering, day, junction, from, to);
+    } else sumEntries(day.passed, from, to, isWanted, sums, codes);
     gathering.vehicles.addEntries(day.passed, day.vehicle, from, to);
     closeCluster(gathering, junction);
   }
   if (gathering.clusters === "quarters") closeUnits(gathering, junction);
+}
+
+/** The whole day without what lies outside from..to. */
+function addMostOfDay({ index, isWanted, sums, codes }: Gathering, day: DayByJunction, junction: number, from: number, to: number): void {
+  const totals = totalsOf(day);
+  const first = index.junctionOffset[junction];
+  for (let u = first; u < index.junctionOffset[junction + 1]; u++) {
+    if (isWanted[u - first] === 0) continue;
+    sums.delays[u - first] = totals.delays[u];
+    sums.stops[u - first] += totals.stops[u];
+    sums.squares[u - first] += totals.squares[u];
+  }
+  const row = day.rowOf[junction];
+  subtractEntries(day.passed, day.passedStart[row * QUARTERS], from, isWanted, sums);
+  subtractEntries(day.passed, to, day.passedStart[(row + 1) * QUARTERS], isWanted, sums);
+  countDelays(day.passed, from, to, isWanted, codes);
 }
 
 /** Adds the sums to the movements of a junction, to its legs and to itself, as one cluster of each. */

@@ -61,7 +61,7 @@ function wantedByRow(day: DayByJunction, keys: readonly number[], placeOf: typeo
 }
 
 function addMovements(level: DelayLevel, day: DayByJunction, row: number, isWanted: Uint8Array, codes: CodeHistogram): void {
-  const sums = createSums(isWanted.length);
+  const sums = createSums();
   const taken = { vehicles: 0, delayS: 0 };
   for (let quarter = 0; quarter < QUARTERS; quarter++) {
     const [from, to] = [day.passedStart[row * QUARTERS + quarter], day.passedStart[row * QUARTERS + quarter + 1]];

@@ -9,6 +9,9 @@ const STOP = 2 ** 26;
 /** One addition instead of two: by number of stops. */
 const STOPS = Float64Array.from({ length: 256 }, (_, stops) => (stops > 0 ? 1 : 0) + stops * STOP);
 
+/** As many as a byte can name. */
+export const NUMBERS = 256;
+
 /** Sums over passages by number of their movement, whole numbers throughout: exact in any order. */
 export interface EntrySums {
   /** Vehicles and ticks of one day at most. */
@@ -21,8 +24,8 @@ export interface EntrySums {
   ticks: Float64Array;
 }
 
-export function createSums(numbers: number): EntrySums {
-  const zeros = (): Float64Array => new Float64Array(numbers);
+export function createSums(): EntrySums {
+  const zeros = (): Float64Array => new Float64Array(NUMBERS);
   return { delays: zeros(), stops: zeros(), squares: zeros(), vehicles: zeros(), ticks: zeros() };
 }
 
@@ -30,20 +33,49 @@ export function emptySums(sums: EntrySums): void {
   for (const column of [sums.delays, sums.stops, sums.squares, sums.vehicles, sums.ticks]) column.fill(0);
 }
 
-/** Adds the passages from..to of wanted movements (1 by their number) to the sums, and their delays to the histogram. O(to - from). */
+/**
+ * Adds the passages from..to of wanted movements to the sums, and their delays to the histogram. Those that are not
+ * wanted (0 by number of the movement, else 1) are added nought times: a branch would be guessed wrong too often.
+ * O(to - from).
+ */
 export function sumEntries(passed: Uint32Array, from: number, to: number, isWanted: Uint8Array, sums: EntrySums, { fine, coarse }: CodeHistogram): void {
   const { delays, stops, squares } = sums;
   for (let i = from; i < to; i++) {
     const word = passed[i];
     const number = numberOf(word);
-    if (isWanted[number] === 0) continue;
+    const times = isWanted[number];
     let code = delayCodeOf(word);
-    fine[code] += 1;
-    coarse[code >> COARSE_SHIFT] += 1;
+    fine[code] += times;
+    coarse[code >> COARSE_SHIFT] += times;
     if (code >= COARSE_FROM) code = delayTicks(code);
-    delays[number] += VEHICLE + code;
-    stops[number] += STOPS[stopsOf(word)];
-    squares[number] += code * code;
+    delays[number] += times * (VEHICLE + code);
+    stops[number] += times * STOPS[stopsOf(word)];
+    squares[number] += times * code * code;
+  }
+}
+
+/** Takes the passages from..to of wanted movements out of the sums again. O(to - from). */
+export function subtractEntries(passed: Uint32Array, from: number, to: number, isWanted: Uint8Array, sums: EntrySums): void {
+  const { delays, stops, squares } = sums;
+  for (let i = from; i < to; i++) {
+    const word = passed[i];
+    const number = numberOf(word);
+    const times = isWanted[number];
+    const ticks = delayTicks(delayCodeOf(word));
+    delays[number] -= times * (VEHICLE + ticks);
+    stops[number] -= times * STOPS[stopsOf(word)];
+    squares[number] -= times * ticks * ticks;
+  }
+}
+
+/** Adds the delays of the passages from..to of wanted movements to the histogram, and nothing to any sum. O(to - from). */
+export function countDelays(passed: Uint32Array, from: number, to: number, isWanted: Uint8Array, { fine, coarse }: CodeHistogram): void {
+  for (let i = from; i < to; i++) {
+    const word = passed[i];
+    const times = isWanted[numberOf(word)];
+    const code = delayCodeOf(word);
+    fine[code] += times;
+    coarse[code >> COARSE_SHIFT] += times;
   }
 }
 

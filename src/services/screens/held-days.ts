@@ -1,5 +1,6 @@
 import { indexCatalogue } from "@/core/scores/catalogue-index";
 import { bytesOfDay, dayByJunction, type DayByJunction } from "@/core/scores/day-by-junction";
+import { bytesOfTotals } from "@/core/scores/day-totals";
 import { mergeScreenDays } from "@/core/scores/merge-screen-days";
 import { decodeScreenDay } from "@/core/scores/screen-day-codec";
 import type { ScreenDay } from "@/core/scores/types";
@@ -17,7 +18,7 @@ export interface SlicesOfDay {
 
 /**
  * What a process holds of the slices between questions, at most: 20 million traversals of 1,000 junctions take some
- * 290 MiB. Days beyond it that were asked for longest ago are read again when somebody asks for them.
+ * 300 MiB. Days beyond it that were asked for longest ago are read again when somebody asks for them.
  */
 export const MOST_HELD_BYTES = 512 * 2 ** 20;
 
@@ -109,6 +110,6 @@ async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[], cat
     if (slices.length < ids.length) continue;
     waiting.delete(day);
     const ready = dayByJunction(mergeScreenDays(slices), indexCatalogue(catalogue.keys));
-    held.days.set(day, { ids: keyOf(ids), day: ready, bytes: bytesOfDay(ready), version: catalogue.version });
+    held.days.set(day, { ids: keyOf(ids), day: ready, bytes: bytesOfDay(ready) + bytesOfTotals(ready.index), version: catalogue.version });
   }
 }
