@@ -74,15 +74,15 @@ async function behave(product: Product, city: City, user: number, endMs: number,
 
 const readingMs = (random: Random) => READING_MS * (1 + 2 * random());
 
+/** As browsers do, a read whose kept connection has just been closed is sent once more. */
 async function ask(baseUrl: string, path: string, headers: Record<string, string>): Promise<Answer> {
   const startMs = performance.now();
-  const status = await fetch(`${baseUrl}${path}`, { headers }).then(
-    async (response) => {
-      await response.arrayBuffer();
-      return response.status;
-    },
-    () => 0,
-  );
+  const read = async () => {
+    const response = await fetch(`${baseUrl}${path}`, { headers });
+    await response.arrayBuffer();
+    return response.status;
+  };
+  const status = await read().catch(read).catch(() => 0);
   return { path, status, ms: performance.now() - startMs };
 }
 

@@ -1,19 +1,21 @@
 import type { Random } from "@/core/stats/random";
 import type { Role } from "@/domain/actor";
 import { DAY_TYPES } from "@/domain/screen-choices";
-import { PERIOD_KEYS } from "@/domain/periods";
+import type { PeriodKey } from "@/domain/periods";
 
 export interface City {
   junctionIds: readonly number[];
   legIds: readonly number[];
 }
 
-const TURNS = ["any", "through", "left", "right"] as const;
+/** Each list from what most people look at most of the time. */
+const PERIODS = ["pm", "am", "all", "midday", "evening"] as const satisfies readonly PeriodKey[];
+const TURNS = ["any", "left", "through", "right"] as const;
 
 /** What a person of the role asks for next: addresses that a browser fetches at once. */
 export function nextAct(role: Role, city: City, random: Random): string[] {
   const pick = <T>(values: readonly T[]): T => values[Math.floor(random() * values.length)];
-  const when = `period=${pick(PERIOD_KEYS)}&days=${pick(DAY_TYPES)}`;
+  const when = `period=${pickUsual(PERIODS, random)}&days=${pickUsual(DAY_TYPES, random)}`;
   const junction = pick(city.junctionIds);
   const leg = pick(city.legIds);
   const chance = random();
@@ -24,7 +26,12 @@ export function nextAct(role: Role, city: City, random: Random): string[] {
     return [`/legs/${leg}?${when}`, `/api/legs/${leg}?${when}`, `/api/legs/${leg}/tracks?${when}`];
   }
   if (chance < 0.15) return [`/screen?${when}`];
-  if (chance < 0.65) return [`/api/screen?${when}&turn=${pick(TURNS)}`];
+  if (chance < 0.65) return [`/api/screen?${when}&turn=${pickUsual(TURNS, random)}`];
   if (chance < 0.8) return [`/junctions/${junction}?${when}`, `/api/junctions/${junction}?${when}`];
   return [`/api/legs/${leg}?${when}`, `/api/legs/${leg}/tracks?${when}`];
+}
+
+/** The first of n with a chance of about the root of 1 / n, the others ever less often. */
+function pickUsual<T>(values: readonly T[], random: Random): T {
+  return values[Math.floor(random() ** 2 * values.length)];
 }

@@ -9,6 +9,8 @@ import { startProcess, waitForAnswer } from "../setup/processes.mjs";
 
 const ROOT = fileURLToPath(new URL("../../..", import.meta.url)).replace(/\/$/, "");
 const SECRET = "a-secret-for-the-bench-and-nothing-else";
+/** Where the bench itself runs under a profiler, its servers do. */
+const PROFILER = process.execArgv.filter((option) => option.startsWith("--cpu-prof"));
 /** As the server names it over plain HTTP. */
 export const SESSION_COOKIE = "tailmark-session";
 
@@ -38,7 +40,7 @@ export async function startProduct(databaseUrl: string, folder: string): Promise
     NODE_ENV: "production",
   };
   const next = join(ROOT, "node_modules/next/dist/bin/next");
-  const web = startProcess(process.execPath, [next, "start", "-H", "127.0.0.1", "-p", String(port)], { cwd: ROOT, env, print });
+  const web = startProcess(process.execPath, [...PROFILER, next, "start", "-H", "127.0.0.1", "-p", String(port)], { cwd: ROOT, env, print });
   const running = [web];
   const sessions: Partial<Record<Role, Promise<string>>> = {};
   await waitForAnswer(`${baseUrl}/sign-in`, web);
@@ -47,7 +49,7 @@ export async function startProduct(databaseUrl: string, folder: string): Promise
     sessionOf: (role) => (sessions[role] ??= signIn(baseUrl, role)),
     async startWorker() {
       const { worker } = await bundlePrograms(ROOT);
-      running.push(startProcess(process.execPath, ["--enable-source-maps", worker], { cwd: ROOT, env, print }));
+      running.push(startProcess(process.execPath, [...PROFILER, "--enable-source-maps", worker], { cwd: ROOT, env, print }));
     },
     async stop() {
       for (const child of running.reverse()) await child.stop();

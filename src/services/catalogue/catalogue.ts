@@ -3,6 +3,7 @@ import type { Catalogue } from "@/core/scores/types";
 import type { Db } from "@/db/client";
 import { corridors, junctions, legs, movements, settings } from "@/db/schema";
 import type { Turn } from "@/core/types";
+import { processMemory } from "../process-memory";
 
 export interface CatalogueJunction {
   id: number;
@@ -33,7 +34,7 @@ export interface CityCatalogue {
 }
 
 const DATA_VERSION = "data_version";
-const cache = new WeakMap<object, CityCatalogue>();
+const cache = processMemory<object, CityCatalogue>("catalogue");
 
 /** Raised in the transaction of every change to junctions, legs or traversals: caches compare it. */
 export async function raiseDataVersion(db: Db): Promise<void> {

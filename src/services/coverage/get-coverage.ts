@@ -6,12 +6,13 @@ import { isoFromDay } from "@/domain/local-time";
 import type { CoverageView } from "@/domain/upload";
 import { cityCatalogue, type CityCatalogue } from "../catalogue/catalogue";
 import { requirePermission, type Context } from "../context";
+import { processMemory } from "../process-memory";
 import { loadScreenDays } from "../screens/screen-data";
 
 const MOST_UNCOVERED = 500;
 
 /** Every movement of every day is looked at for it, and the page asks again and again: once for each state of the data. */
-const remembered = new WeakMap<object, { version: number; view: Promise<CoverageView> }>();
+const remembered = processMemory<object, { version: number; view: Promise<CoverageView> }>("coverage");
 
 export async function getCoverage(ctx: Context): Promise<CoverageView> {
   requirePermission(ctx, "coverage.view");

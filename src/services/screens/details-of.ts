@@ -2,6 +2,7 @@ import { legDetail, movementDetail } from "@/core/scores/score-detail";
 import { scoreProfile, type ProfileQuarter } from "@/core/scores/score-profile";
 import type { LegDetail, MovementDetail } from "@/core/scores/types";
 import type { Context } from "../context";
+import { processMemory } from "../process-memory";
 import type { ScoredCity, WhenAndTurn } from "./score-city";
 import { loadScreenDays } from "./screen-data";
 
@@ -14,7 +15,7 @@ export interface Details {
 
 const MAX_REMEMBERED = 200;
 /** By scored city, so that details of former data go with it. */
-const remembered = new WeakMap<ScoredCity, Map<string, Details>>();
+const remembered = processMemory<ScoredCity, Map<string, Details>>("details");
 
 /** Movements that the turn leaves out of the scores have no details. Rows of a few movements and legs are walked for it. */
 export async function detailsOf(ctx: Context, when: WhenAndTurn, scored: ScoredCity, movements: readonly { id: number }[], legs: readonly number[]): Promise<Details> {

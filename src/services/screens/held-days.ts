@@ -8,6 +8,7 @@ import { poolOf } from "@/db/bulk-transaction";
 import type { Db } from "@/db/client";
 import { readBlobs } from "@/db/read-blobs";
 import type { CityCatalogue } from "../catalogue/catalogue";
+import { processMemory } from "../process-memory";
 
 /** The slices of one local day, by their keys in order. */
 export interface SlicesOfDay {
@@ -37,7 +38,7 @@ interface Held {
   reading: Promise<unknown>;
 }
 
-const heldBy = new WeakMap<object, Held>();
+const heldBy = processMemory<object, Held>("held days");
 
 /**
  * The days, merged from their slices and ready to be scored, in their order, from memory as far as they are held, the others from the database; null

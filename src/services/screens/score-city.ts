@@ -8,6 +8,7 @@ import { periodWindow, type TimeWindow } from "@/domain/periods";
 import type { CitySettings } from "@/domain/settings";
 import { cityCatalogue, type CityCatalogue } from "../catalogue/catalogue";
 import type { Context } from "../context";
+import { processMemory } from "../process-memory";
 import { getSettings } from "../settings/get-settings";
 import { loadScreenDays, type ScreenDays } from "./screen-data";
 
@@ -21,8 +22,8 @@ export interface ScoredCity {
   junctionScores: Map<number, JunctionScore>;
 }
 
-const MAX_REMEMBERED = 24;
-const remembered = new WeakMap<object, Map<string, ScoredCity>>();
+const MAX_REMEMBERED = 40;
+const remembered = processMemory<object, Map<string, { version: number; scored: Promise<ScoredCity> }>>("scored cities");
 
 export type WhenAndTurn = Pick<ScreenQuery, "period" | "from" | "to" | "days" | "since" | "until" | "turn">;
 
@@ -34,17 +35,30 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
   let known = remembered.get(ctx.db);
   if (!known) remembered.set(ctx.db, (known = new Map()));
   const hit = known.get(key);
-  if (hit) return hit;
+  if (hit) {
+    // The one that was asked for longest ago goes first.
+    known.delete(key);
+    known.set(key, hit);
+    return hit.scored;
+  }
   // Nobody asks for scores of former data again.
-  for (const [former, { catalogue: of }] of known) if (of.version < catalogue.version) known.delete(former);
+  for (const [former, { version }] of known) if (version < catalogue.version) known.delete(former);
+  if (known.size >= MAX_REMEMBERED) known.delete(known.keys().next().value as string);
+  // Before it is there: who asks meanwhile waits for the same.
+  const scored = score(ctx, query, { settings, catalogue, window });
+  known.set(key, { version: catalogue.version, scored });
+  scored.catch(() => known.delete(key));
+  return scored;
+}
 
+async function score(ctx: Context, query: WhenAndTurn, { settings, catalogue, window }: Pick<ScoredCity, "settings" | "catalogue" | "window">): Promise<ScoredCity> {
   const { days, ...data } = await loadScreenDays(ctx.db, query, catalogue);
   const scores = scoreScreen(days, catalogue.keys, {
     fromQuarter: window.fromMin / 15,
     toQuarter: window.toMin / 15,
     turn: query.turn === "any" ? null : query.turn,
   });
-  const scored: ScoredCity = {
+  return {
     catalogue,
     scores,
     data: { ...data, dayCount: days.length },
@@ -52,9 +66,6 @@ export async function scoreCity(ctx: Context, query: WhenAndTurn): Promise<Score
     settings,
     junctionScores: new Map(scores.junctions.map((score) => [score.junction, score])),
   };
-  if (known.size >= MAX_REMEMBERED) known.delete(known.keys().next().value as string);
-  known.set(key, scored);
-  return scored;
 }
 
 export function windowOf(settings: CitySettings, query: WhenAndTurn): TimeWindow {
