@@ -24,7 +24,7 @@ export function ScreenSentence(props: {
       On <DaysControl {...part} basis={result?.basis} locale={locale} />, {windowPreposition(query)}
       <WindowControl {...part} settings={settings} />, <CorridorControl {...part} />, <MovementControl {...part} /> delayed <MinDelayControl {...part} />, spilling back{" "}
       <MinSpillControl {...part} />, with <EvidenceControl {...part} />
-      {query.q.trim() ? <>, named like “{query.q.trim()}”</> : null}:{" "}
+      {query.q.trim() ? `, named like “${query.q.trim()}”: ` : ": "}
       <span aria-live="polite" aria-atomic="true" className="whitespace-nowrap text-ink" data-testid="result-count">
         {count}
       </span>

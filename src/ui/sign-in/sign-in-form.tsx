@@ -29,7 +29,8 @@ export function SignInForm({ next }: { next: string }) {
         window.location.assign(next);
         return;
       }
-      setProblem({ code: "unauthenticated", message: REFUSED });
+      // Not "unauthenticated": what helps is on this page.
+      setProblem({ code: "invalid", message: REFUSED });
     } catch {
       setProblem({ code: "internal", message: UNREACHED });
     }
