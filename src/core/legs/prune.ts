@@ -19,6 +19,12 @@ const SAME_ARM_DEG = 30;
 /** Between junctions this near matched paths may run over streets that do not exist: pings must have been seen on them. */
 const SHORT_LINK_M = 45;
 const SHORT_LINK_SEEN = 2;
+/** Speed at which vehicles drive along a street, m/s; of so many pings that should lie on it, at least this share must. */
+const DRIVE_MS = 10;
+const EXPECTED_LEAST = 2;
+/** Where traffic uses the same street the other way it is there; then more is asked before a leg is taken for none. */
+const EXPECTED_TWO_WAY = 8;
+const SEEN_SHARE = 0.3;
 /** Speeds from which on a leg's own free speed replaces one learned earlier. */
 const PLENTY_SPEEDS = 60;
 
@@ -30,11 +36,11 @@ export interface Kept extends Joined {
 
 /**
  * Drops legs and exits that matched traffic does not use, except drawn and carried ones, and sets stop line, support,
- * free speed and storage of the rest. O(legs and exits).
+ * free speed and storage of the rest. `intervalS`: usual time between two pings. O(legs and exits).
  */
-export function keepUsed(draft: Network, usage: Usage, carried: Set<string>): Kept {
+export function keepUsed(draft: Network, usage: Usage, carried: Set<string>, intervalS: number): Kept {
   const isUsed = usedTest(draft, usage, carried);
-  const legFrom = legsThatStay(draft, usage, carried, isUsed);
+  const legFrom = legsThatStay(draft, usage, carried, isUsed, intervalS);
   const exitFrom = exitsThatStay(draft, usage, carried, isUsed, legFrom);
   const exitNow = new Int32Array(draft.exits.length).fill(-1);
   exitFrom.forEach((from, n) => (exitNow[from] = n));
@@ -65,13 +71,24 @@ function usedTest(draft: Network, usage: Usage, carried: Set<string>): (trips: n
 }
 
 function legsThatStay(
-  draft: Network, usage: Usage, carried: Set<string>, isUsed: (trips: number, junction: number) => boolean,
+  draft: Network, usage: Usage, carried: Set<string>, isUsed: (trips: number, junction: number) => boolean, intervalS: number,
 ): number[] {
   const shortcuts = findShortcuts(draft, usage);
   const isOneOfTwo = (leg: Leg, i: number): boolean => usage.leg[i] > 0 && usage.seenOn[i] > 0 && isTwoWay(leg, draft, usage);
   const isReal = (leg: Leg, i: number): boolean =>
+    isSeen(leg, draft, usage, i, intervalS) &&
     (isUsed(usage.leg[i], leg.junction) || (carried.size === 0 && isOneOfTwo(leg, i))) && !shortcuts.has(i) && (leg.lengthM > SHORT_LINK_M || usage.seenOn[i] >= SHORT_LINK_SEEN);
   return draft.legs.flatMap((leg, i) => (leg.origin !== "derived" || carried.has(leg.id) || isReal(leg, i) ? [i] : []));
+}
+
+/**
+ * Whether about as many vehicles were seen on a leg as must have been, if they drove it: sparse pings of those who take
+ * streets that are not known are matched over any that lead the same way.
+ */
+function isSeen(leg: Leg, draft: Network, usage: Usage, i: number, intervalS: number): boolean {
+  const expected = usage.leg[i] * Math.min(1, leg.lengthM / (DRIVE_MS * intervalS));
+  if (!(expected >= EXPECTED_LEAST) || usage.seenOn[i] >= SEEN_SHARE * expected) return true;
+  return expected < EXPECTED_TWO_WAY && isTwoWay(leg, draft, usage);
 }
 
 /** Whether traffic leaves along a leg's street: then one trip is enough to believe that it also comes. */
