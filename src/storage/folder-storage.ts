@@ -11,6 +11,8 @@ const RANGE_CHUNK_BYTES = 2 ** 20;
 const PARTIAL = ".part";
 /** An object that arrives for longer than this does not arrive any more. */
 const PARTIAL_MAX_MS = 24 * 3_600_000;
+/** No reading of a file takes so long without a new piece. */
+const PIECES_MAX_MS = 24 * 3_600_000;
 
 /** Keeps each object as a file below `root`. */
 export function openFolderStorage(root: string): Storage {
@@ -72,6 +74,20 @@ export async function removeOldPartials(root: string, now: Date): Promise<void> 
     if (!name.endsWith(PARTIAL)) continue;
     const found = await stat(join(root, name)).catch(() => null);
     if (found && now.getTime() - found.mtimeMs > PARTIAL_MAX_MS) await rm(join(root, name), { force: true });
+  }
+}
+
+/** Pieces of work that were given up while somebody was still at them. */
+export async function removeOldPieces(root: string, now: Date): Promise<void> {
+  const folder = join(root, "pieces");
+  const runs = await readdir(folder).catch((error: unknown) => {
+    if (isMissing(error)) return [];
+    throw error;
+  });
+  for (const run of runs) {
+    // A folder's time is that of the last object that was put into it.
+    const found = await stat(join(folder, run)).catch(() => null);
+    if (found && now.getTime() - found.mtimeMs > PIECES_MAX_MS) await rm(join(folder, run), { recursive: true, force: true });
   }
 }
 

@@ -1,6 +1,6 @@
 import { join } from "node:path";
 import type { Env } from "@/env";
-import { openFolderStorage, removeOldPartials } from "./folder-storage";
+import { openFolderStorage, removeOldPartials, removeOldPieces } from "./folder-storage";
 import { openS3Storage } from "./s3-storage";
 import type { Storage } from "./storage";
 
@@ -18,7 +18,9 @@ export function openStorage(settings: Env): Storage {
   });
 }
 
-/** Sweeps the folder; a bucket forgets unfinished transfers by a rule of its own. */
+/** Sweeps the folder; a bucket forgets unfinished transfers and what lies under `pieces/` for days by rules of its own. */
 export async function sweepStorage(settings: Env, now: Date): Promise<void> {
-  if (settings.S3_BUCKET === undefined) await removeOldPartials(folderOf(settings), now);
+  if (settings.S3_BUCKET !== undefined) return;
+  await removeOldPartials(folderOf(settings), now);
+  await removeOldPieces(folderOf(settings), now);
 }

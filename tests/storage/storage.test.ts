@@ -32,6 +32,12 @@ describe("halves of files in a folder", () => {
       expect((await list()).sort()).toEqual(["cut.1f.part", "whole"]);
       await sweepStorage(settings, new Date(Date.now() + 25 * 3_600_000));
       expect(await list()).toEqual(["whole"]);
+      await openStorage(settings).put("pieces/run/0", Readable.from([Buffer.from("given up")]));
+      const runs = () => readdir(join(dataDir, "storage/pieces"));
+      await sweepStorage(settings, new Date(Date.now() + 23 * 3_600_000));
+      expect(await runs()).toEqual(["run"]);
+      await sweepStorage(settings, new Date(Date.now() + 25 * 3_600_000));
+      expect(await runs()).toEqual([]);
     } finally {
       await rm(dataDir, { recursive: true, force: true });
     }

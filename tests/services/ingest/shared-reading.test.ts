@@ -5,13 +5,16 @@ import { text } from "node:stream/consumers";
 import { gzipSync } from "node:zlib";
 import { count } from "drizzle-orm";
 import { beforeAll, describe, expect, it } from "vitest";
-import { ingestPieces } from "@/db/schema";
+import { ingestPieces, legs } from "@/db/schema";
 import { prepareQueues } from "@/jobs/queue";
 import { JOBS } from "@/jobs/definitions";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
+import { reprocessLegs } from "@/services/ingest/reprocess-legs";
+import { editLeg } from "@/services/legs/edit-leg";
 import { getUpload, openRejects } from "@/services/uploads/get-upload";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
+import type { Storage } from "@/storage/storage";
 import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
 import { testContext, testPlace, type TestContext } from "@tests/support/database";
 import { forgetResults, resultChecksums, type Checksums } from "@tests/support/result-checksums";
@@ -63,6 +66,25 @@ async function nothingLeft(): Promise<void> {
   expect(await readdir(join(folder, "pieces")).catch(() => [])).toEqual([]);
 }
 
+describe("legs that are matched anew in pieces", () => {
+  it("come out as when they are matched at once", async () => {
+    const start = await received("rematch.csv", pings().join("\n"));
+    const rematched = async (pieceRows: number): Promise<Checksums> => {
+      await ingestUpload(job, { uploadId: await start() });
+      const [leg] = await job.db.select().from(legs).orderBy(legs.id);
+      await editLeg(engineer, { legId: leg.id, stopLineShiftM: 2 });
+      await reprocessLegs({ ...job, pieceRows }, { junctionIds: [leg.junctionId] });
+      const sums = await resultChecksums(job.db);
+      await forgetResults(job.db);
+      return sums;
+    };
+    const whole = await rematched(ALONE);
+    expect(whole.traversals.rows).toBe(800);
+    expect(await rematched(SMALL)).toEqual(whole);
+    await nothingLeft();
+  });
+});
+
 describe("a file that is read in pieces", () => {
   it("comes out as one that is read at once, to the last byte, and leaves no piece behind", async () => {
     const start = await received("plain.csv", `${pings().join("\n")}\n`);
@@ -79,12 +101,32 @@ describe("a file that is read in pieces", () => {
     ["no header", () => pings().slice(1).join("\n")],
     ["empty lines, at the beginning too", () => `\n\n${pings().join("\n\n")}\n`],
     ["quotation marks on one line in the middle", () => pings().map((line, i) => (i === 7000 ? line.replace(/^(\w+)/, '"$1"') : line)).join("\n")],
+    ["quotation marks everywhere", () => pings().map((line) => line.split(",").map((field) => `"${field}"`).join(",")).join("\n")],
+    ["a field in every row that goes on over a line end", () => pings().map((line, i) => (i === 0 ? `${line},note` : line.startsWith("v1,not") ? `${line},` : `${line},"one\ntwo, three"`)).join("\n")],
     ["gzip", () => gzipSync(pings().join("\n"))],
   ])("with %s", async (_, content) => {
     const start = await received("odd.csv", content());
     const whole = await readWith(ALONE, start);
     expect(whole.sums.traversals.rows).toBe(800);
     expect(await readWith(SMALL, start)).toEqual(whole);
+    await nothingLeft();
+  });
+});
+
+describe("pieces for which there is no room", () => {
+  it("fail the file by a sentence, and leave none behind", async () => {
+    const uploadId = await (await received("full.csv", pings().join("\n")))();
+    let puts = 0;
+    const full: Storage = {
+      ...job.storage,
+      async put(key, content) {
+        if (key.startsWith("pieces/") && ++puts > 5) throw Object.assign(new Error("ENOSPC: no space left on device, write"), { code: "ENOSPC" });
+        return job.storage.put(key, content);
+      },
+    };
+    await ingestUpload({ ...job, pieceRows: SMALL, storage: full }, { uploadId });
+    expect(await getUpload(engineer, { uploadId })).toMatchObject({ state: "failed", hasRejects: false });
+    expect((await getUpload(engineer, { uploadId })).failure).toContain("There is no room left for files on the server");
     await nothingLeft();
   });
 });

@@ -18,14 +18,13 @@ export interface FileRanges {
 
 /**
  * Cuts a file of delimited rows into ranges that may be read apart; null where it must be read from its beginning to its
- * end: packed, short, or with quotation marks, inside of which rows may go on over line ends.
+ * end: packed, short, or with a first row that is not whole at its line end.
  */
 export async function rangesOf(storage: Storage, key: string, bytes: number, rangeBytes: number): Promise<FileRanges | null> {
   if (bytes < 2 * rangeBytes) return null;
   const start = await bytesOf(storage, key, { from: 0, to: Math.min(bytes, MAX_ROW_BYTES) });
   const head = firstRow(start);
-  const isPlain = !startsWith(start, GZIP) && !start.includes(QUOTE);
-  if (!isPlain || head === null) return null;
+  if (startsWith(start, GZIP) || head === null || head.filter((byte) => byte === QUOTE).length % 2 === 1) return null;
   const count = Math.floor(bytes / rangeBytes);
   const edge = (i: number) => Math.round((i * bytes) / count);
   return { head, ranges: Array.from({ length: count }, (_, i) => ({ from: edge(i), to: edge(i + 1) })) };
@@ -45,16 +44,21 @@ function startsWith(bytes: Uint8Array, mark: readonly number[]): boolean {
   return mark.every((byte, i) => bytes[i] === byte);
 }
 
-/** A range holds quotation marks: the file must be read as a whole after all. */
-export class QuotedRange extends Error {}
+export interface RangeOfFile {
+  storageKey: string;
+  /** Of the file. */
+  bytes: number;
+  range: ByteRange;
+  head: Uint8Array;
+}
 
-/** The rows that begin in a range, behind the file's first row where they are not the file's beginning. */
-export async function* rowsOfRange(storage: Storage, key: string, { from, to }: ByteRange, bytes: number, head: Uint8Array): AsyncGenerator<Uint8Array> {
+/** The rows that begin in a range, behind the file's first row where they are not the file's beginning. `onQuote` is called where there is a quotation mark in them. */
+export async function* rowsOfRange(storage: Storage, { storageKey: key, bytes, range: { from, to }, head }: RangeOfFile, onQuote: () => void): AsyncGenerator<Uint8Array> {
   let isInside = from === 0;
   let last = LF;
   if (!isInside) yield head;
   for await (const chunk of (await storage.open(key, { from: Math.max(0, from - 1), to })) as AsyncIterable<Uint8Array>) {
-    if (chunk.includes(QUOTE)) throw new QuotedRange();
+    if (chunk.includes(QUOTE)) onQuote();
     const begin = isInside ? 0 : chunk.indexOf(LF) + 1;
     if (!isInside && begin === 0) continue;
     isInside = true;
@@ -64,7 +68,7 @@ export async function* rowsOfRange(storage: Storage, key: string, { from, to }: 
   if (!isInside || last === LF) return;
   for (let at = to; at < bytes; at += TAIL_BYTES) {
     const tail = await bytesOf(storage, key, { from: at, to: Math.min(bytes, at + TAIL_BYTES) });
-    if (tail.includes(QUOTE)) throw new QuotedRange();
+    if (tail.includes(QUOTE)) onQuote();
     const end = tail.indexOf(LF) + 1;
     yield end > 0 ? tail.subarray(0, end) : tail;
     if (end > 0) return;
