@@ -50,6 +50,16 @@ describe("with the files in a bucket", () => {
     expect(await bucket.listed()).not.toContain(`uploads/${wrong.uploadId}`);
   });
 
+  it("a large file is read in pieces, of which none is left", async () => {
+    const { uploadId, detected } = await receiveUpload(engineer, { kind: "pings", name: "large.csv" }, Readable.from([Buffer.from(crossingPings({ vehicles: 200, startMs: Date.parse("2026-03-07T08:00:00Z") }))]));
+    await startUpload(engineer, { uploadId, mapping: detected.mapping, supplier: "Harbour Fleet" });
+    await ingestUpload({ ...job, pieceRows: 400 }, { uploadId });
+    expect(await getUpload(engineer, { uploadId })).toMatchObject({ state: "done", report: { traversals: 200 } });
+    const kept = await bucket.listed();
+    expect(kept).toContain(`edges/${uploadId}/last-0`);
+    expect(kept.filter((key) => key.startsWith("pieces/"))).toEqual([]);
+  });
+
   it("the batches of a feed are joined", async () => {
     const { token } = await makeFeedToken(engineer, { supplier: "Harbour Taxis" });
     const machine = await testContext("nobody", { storage: bucket.storage, now: new Date("2026-03-09T08:40:00Z") });
