@@ -7,49 +7,47 @@ const RESOLUTION = 11;
 /** From a cell's centre to its far corner, with room for cells larger than the average and for half a pixel's diagonal. */
 const CELL_REACH_M = getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) * 1.25 + PIXEL_HALF_DIAGONAL_M;
 
-/** Disks that are remembered at most, some 20 MB. */
-const MOST_DISKS = 50_000;
+/** Disks that are remembered at most, some 60 MB. */
+const MOST_DISKS = 20_000;
+/** Disks are made in steps of so many rings, so that claims of about the same radius share them. */
+const RING_STEP = 4;
 
-/** A cell around a disc's centre, with the middle of it. */
-interface NearCell {
-  cell: string;
-  lat: number;
-  lon: number;
+/** Cells around a cell, with the middle of each; `number` as the raster counts them. */
+interface Disk {
+  number: Int32Array;
+  lat: Float64Array;
+  lon: Float64Array;
 }
 
-/** The cells within some rings of a cell. */
-type Disks = (cell: string, rings: number) => readonly NearCell[];
+/** The cells within at least some rings of a cell. */
+type Disks = (cell: string, rings: number) => Disk;
 
 /** The index over H3 cells of resolution 11 (flat to flat about 50 m). What it learned of cells serves every claim. */
 export function createH3Index(): JunctionIndex {
-  const disks = createDisks();
   const raster = createCellRaster((lat, lon) => latLngToCell(lat, lon, RESOLUTION));
+  const disks = createDisks(raster);
   return { claim: (claims) => claimCells(claims, disks, raster) };
 }
 
-/** Neighbouring discs begin from the same cells again and again, and h3-js is slow to answer. */
-function createDisks(): Disks {
-  const known = new Map<string, readonly NearCell[]>();
-  const places = new Map<string, NearCell>();
-  const forget = (): void => {
-    known.clear();
-    places.clear();
-  };
-  const placeOf = (cell: string): NearCell => {
-    let place = places.get(cell);
-    if (!place) {
-      const [lat, lon] = cellToLatLng(cell);
-      place = { cell, lat, lon };
-      places.set(cell, place);
-    }
-    return place;
+/** Claim after claim begins from the same cells, and h3-js is slow to answer. */
+function createDisks(raster: CellRaster): Disks {
+  const known = new Map<string, Disk>();
+  const middles = new Map<number, [number, number]>();
+  const middleOf = (cell: string, number: number): [number, number] => {
+    let middle = middles.get(number);
+    if (!middle) middles.set(number, (middle = cellToLatLng(cell) as [number, number]));
+    return middle;
   };
   return (cell, rings) => {
-    const key = `${cell} ${rings}`;
+    const steps = Math.ceil(rings / RING_STEP);
+    const key = `${cell} ${steps}`;
     let disk = known.get(key);
     if (!disk) {
-      if (known.size >= MOST_DISKS) forget();
-      disk = gridDisk(cell, rings).map(placeOf);
+      if (known.size >= MOST_DISKS) known.clear();
+      const cells = gridDisk(cell, steps * RING_STEP);
+      const number = Int32Array.from(cells, raster.numberOf);
+      const places = cells.map((near, n) => middleOf(near, number[n]));
+      disk = { number, lat: Float64Array.from(places, ([lat]) => lat), lon: Float64Array.from(places, ([, lon]) => lon) };
       known.set(key, disk);
     }
     return disk;
@@ -63,15 +61,15 @@ function claimCells(claims: Claims, disks: Disks, raster: CellRaster): ClaimInde
     const plane = planeAt(claims.lat[i], claims.lon[i]);
     const reach = claims.radiusM[i] + CELL_REACH_M;
     const rings = Math.ceil((reach / getHexagonEdgeLengthAvg(RESOLUTION, UNITS.m) + 1) / 1.5);
-    for (const { cell, lat, lon } of disks(latLngToCell(claims.lat[i], claims.lon[i], RESOLUTION), rings)) {
-      const x = eastM(plane, lon);
-      const y = northM(plane, lat);
+    const disk = disks(latLngToCell(claims.lat[i], claims.lon[i], RESOLUTION), rings);
+    for (let n = 0; n < disk.number.length; n++) {
+      const x = eastM(plane, disk.lon[n]);
+      const y = northM(plane, disk.lat[n]);
       if (x * x + y * y > reach * reach) continue;
-      const number = raster.numberOf(cell);
-      let slot = slots.get(number);
+      let slot = slots.get(disk.number[n]);
       if (slot === undefined) {
         slot = owners.length;
-        slots.set(number, slot);
+        slots.set(disk.number[n], slot);
         owners.push([]);
       }
       const list = owners[slot];
