@@ -23,8 +23,13 @@ export function ScreenSentence(props: {
     <Sentence label="What is shown">
       On <DaysControl {...part} basis={result?.basis} locale={locale} />, {windowPreposition(query)}
       <WindowControl {...part} settings={settings} />, <CorridorControl {...part} />, <MovementControl {...part} /> delayed <MinDelayControl {...part} />, spilling back{" "}
-      <MinSpillControl {...part} />, with <EvidenceControl {...part} />
-      {query.q.trim() ? `, named like “${query.q.trim()}”: ` : ": "}
+      <MinSpillControl {...part} />, with{" "}
+      {/* Lines may break before what follows a control: the colon stays with it. */}
+      <span className="inline-block">
+        <EvidenceControl {...part} />
+        {query.q.trim() ? "," : ":"}
+      </span>{" "}
+      {query.q.trim() ? `named like “${query.q.trim()}”: ` : null}
       <span aria-live="polite" aria-atomic="true" className="whitespace-nowrap text-ink" data-testid="result-count">
         {count}
       </span>
