@@ -9,7 +9,7 @@ import { bundlePrograms, ensureWebBuild, placeMapWorker } from "./setup/build.mj
 import { ensurePackages } from "./setup/packages.mjs";
 import { anyFreePort, freePortFrom } from "./setup/ports.mjs";
 import { startPostgres } from "./setup/postgres-server.mjs";
-import { startProcess, waitForAnswer } from "./setup/processes.mjs";
+import { startProcess, waitForAnswer, WORKER_OPTIONS } from "./setup/processes.mjs";
 import { step } from "./setup/progress.mjs";
 import { endRunning, run, SetupError } from "./setup/run.mjs";
 import { takeRun } from "./setup/run-record.mjs";
@@ -74,7 +74,7 @@ function startWorker(name, record, programs, env) {
   let restarts = 0;
   let child;
   const start = () => {
-    const args = isDev ? ["--import", "tsx", "--watch-path=src", "--watch-preserve-output", "src/worker/main.ts"] : ["--enable-source-maps", programs.worker];
+    const args = isDev ? ["--import", "tsx", "--watch-path=src", "--watch-preserve-output", "src/worker/main.ts"] : ["--enable-source-maps", ...WORKER_OPTIONS, programs.worker];
     child = startProcess(process.execPath, args, { cwd: root, env, print: printFrom(name) });
     record.noteChild(name, child.pid);
     void child.ended.then((how) => {

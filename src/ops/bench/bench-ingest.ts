@@ -16,6 +16,7 @@ import { ingestUpload } from "@/services/ingest/ingest-upload";
 import { rankJunctions } from "@/services/screens/rank-junctions";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
+import { WORKER_OPTIONS } from "../setup/processes.mjs";
 import { PING_START_MS } from "./bench-parse";
 import { openContext, type BenchPlace, type OpenContext } from "./bench-place";
 import { figure, secondsSince, type Figure } from "./figures";
@@ -140,7 +141,7 @@ interface Worker {
 async function startWorker(url: string, folder: string): Promise<Worker> {
   const program = fileURLToPath(new URL("./ingest-process.ts", import.meta.url));
   // With the options of this process: the loader of TypeScript, and a profiler where one is on.
-  const child = spawn(process.execPath, [...process.execArgv, program, url, folder], { stdio: ["ignore", "pipe", "inherit"] });
+  const child = spawn(process.execPath, [...process.execArgv, ...WORKER_OPTIONS, program, url, folder], { stdio: ["ignore", "pipe", "inherit"] });
   let out = "";
   const ready = new Promise<void>((resolve, reject) => {
     child.on("error", reject);

@@ -13,13 +13,14 @@ const runner = await runJobs({
   concurrency: 1,
   contextFor: () => ({ ...ctx, now: new Date() }),
 });
+const begun = process.cpuUsage();
 process.once("SIGTERM", () => void stop());
 console.log("ready");
 
 async function stop(): Promise<void> {
   await runner.stop();
   await close();
-  const { maxRSS, userCPUTime, systemCPUTime } = process.resourceUsage();
-  console.log(JSON.stringify({ peakMiB: maxRSS / 1024, cpuS: (userCPUTime + systemCPUTime) / 1e6 }));
+  const { user, system } = process.cpuUsage(begun);
+  console.log(JSON.stringify({ peakMiB: process.resourceUsage().maxRSS / 1024, cpuS: (user + system) / 1e6 }));
   process.exit(0);
 }
