@@ -43,8 +43,8 @@ export const LEARNING = Object.freeze({
 /** How much of the traffic learning takes. */
 export const LEARNING_SAMPLE = Object.freeze({
   /** Pings for each junction, and seconds of seen driving, whichever is more: legs, turns and delays stay as with all pings. */
-  pingsPerJunction: 2000,
-  secondsPerJunction: 10_000,
+  pingsPerJunction: 1500,
+  secondsPerJunction: 7500,
   /** Fewer in all are not worth leaving any out. */
   leastPings: 300_000,
   /** Only pings this near to a junction count, m. */

@@ -11,12 +11,12 @@ import { columnsOf, makeTown, rowsOf } from "../two-crossings";
 const index = createH3Index();
 
 describe("what learning takes", () => {
-  it("asks for 2,000 pings a junction, more where they are frequent", () => {
-    expect(learningPings(500, 5)).toBe(1_000_000);
-    expect(learningPings(500, 30)).toBe(1_000_000);
-    expect(learningPings(500, NaN)).toBe(1_000_000);
-    expect(learningPings(100, 2)).toBe(500_000);
-    expect(learningPings(100, 0.2)).toBe(1_000_000);
+  it("asks for 1,500 pings a junction, more where they are frequent", () => {
+    expect(learningPings(500, 5)).toBe(750_000);
+    expect(learningPings(500, 30)).toBe(750_000);
+    expect(learningPings(500, NaN)).toBe(750_000);
+    expect(learningPings(100, 2)).toBe(375_000);
+    expect(learningPings(100, 0.2)).toBe(750_000);
   });
 
   it("asks for all of a small file", () => {
