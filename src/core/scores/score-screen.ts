@@ -1,6 +1,6 @@
 import { competitionRanks } from "@/core/stats/competition-ranks";
 import { rankIntervals } from "@/core/stats/rank-draws";
-import { TURNS, type Estimate } from "@/core/types";
+import { TURNS, type Estimate, type Evidence } from "@/core/types";
 import { indexCatalogue, type CatalogueIndex } from "./catalogue-index";
 import { figuresOf } from "./delay-level";
 import { evidenceOf } from "./evidence";
@@ -33,33 +33,42 @@ export function scoreScreen(days: readonly DayByJunction[], catalogue: Catalogue
   const chosen: ScoreOptions = { ...DEFAULT_SCORE_OPTIONS, ...options };
   const index = indexCatalogue(catalogue);
   const gathered = gatherScreen(days, index, filter);
-  const movement = movementScores(index, gathered);
+  const movements = movementFigures(index, gathered);
   const leg = legScores(index, gathered);
-  const junctions = scoreJunctions(index, gathered, movement, leg);
+  const junctions = scoreJunctions(index, gathered, movements);
   rankJunctions(junctions.scores, junctions.shrunk, chosen);
   const scored = <T>(of: (unit: number) => T, unit: number | undefined): T | undefined => (unit === undefined ? undefined : of(unit));
   return {
     junctions: junctions.scores,
-    movement: (key) => scored(movement, index.movementByKey.get(key)),
+    movement: (key) => scored(movements.score, index.movementByKey.get(key)),
     leg: (key) => scored(leg, index.legByKey.get(key)),
     traversals: gathered.traversals,
   };
 }
 
-/** Scores by dense number, put together where they are asked for: a city has some ten thousand movements. */
-function movementScores(index: CatalogueIndex, gathered: GatheredScreen): (unit: number) => MovementScore {
+/** By dense number; scores are put together where they are asked for: a city has some ten thousand movements. */
+interface MovementFigures {
+  shrunk: ShrunkUnits;
+  evidence(unit: number): Evidence;
+  score(unit: number): MovementScore;
+}
+
+function movementFigures(index: CatalogueIndex, gathered: GatheredScreen): MovementFigures {
   const figures = figuresOf(gathered.movements, index.turnOf);
   const shrunk = shrinkByGroup(figures.intervals, gathered.movements.delay.base, index.turnOf, TURNS.length);
-  return (u) => {
-    const sample = { vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct.movements[u], days: figures.days(u), delay: figures.delay(u) };
-    return {
+  const sampleOf = (u: number) => ({ vehicles: figures.vehicles(u), distinctVehicles: gathered.distinct.movements[u], days: figures.days(u), delay: figures.delay(u) });
+  const evidence = (u: number): Evidence => evidenceOf(sampleOf(u));
+  return {
+    shrunk,
+    evidence,
+    score: (u) => ({
       movement: index.movements[u].key,
-      ...sample,
+      ...sampleOf(u),
       shrunk: shrunk.estimate(u),
       stopShare: figures.stopShare(u),
       stopsPerVehicle: figures.stopsPerVehicle(u),
-      evidence: evidenceOf(sample),
-    };
+      evidence: evidence(u),
+    }),
   };
 }
 
@@ -78,14 +87,7 @@ function legScores(index: CatalogueIndex, gathered: GatheredScreen): (unit: numb
   };
 }
 
-type ScoreOf<T> = (unit: number) => T;
-
-function scoreJunctions(
-  index: CatalogueIndex,
-  gathered: GatheredScreen,
-  movementOf: ScoreOf<MovementScore>,
-  legOf: ScoreOf<LegScore>,
-): { scores: JunctionScore[]; shrunk: ShrunkUnits } {
+function scoreJunctions(index: CatalogueIndex, gathered: GatheredScreen, movements: MovementFigures): { scores: JunctionScore[]; shrunk: ShrunkUnits } {
   const group = new Uint8Array(index.junctions.length);
   const figures = figuresOf(gathered.junctions, group);
   const shrunk = shrinkByGroup(figures.intervals, gathered.junctions.delay.base, group, 1);
@@ -102,11 +104,11 @@ function scoreJunctions(
       rank: NaN,
       rankLow: NaN,
       rankHigh: NaN,
-      worstMovement: worstMovement(range(index.junctionOffset[u], index.junctionOffset[u + 1]).map(movementOf)),
+      worstMovement: worstMovement(index.junctionOffset[u], index.junctionOffset[u + 1], movements, index),
       stopShare: figures.stopShare(u),
       stopsPerVehicle: figures.stopsPerVehicle(u),
       worstLeg: worstLeg(legs, index, gathered),
-      spill: greatestSpill(legs, legOf, gathered),
+      spill: greatestSpill(legs, gathered),
       hoursSeen: (sample.vehicles * (sample.vehicles > 0 ? delay.value : 0)) / 3600,
       evidence: evidenceOf(sample),
     };
@@ -118,13 +120,14 @@ function range(from: number, to: number): number[] {
   return Array.from({ length: to - from }, (_, k) => from + k);
 }
 
-function worstMovement(movements: MovementScore[]): number {
-  let worst: MovementScore | null = null;
-  for (const m of movements) {
-    if (m.evidence === "none") continue;
-    if (worst === null || m.shrunk.value > worst.shrunk.value) worst = m;
+function worstMovement(from: number, to: number, figures: MovementFigures, index: CatalogueIndex): number {
+  let worst = -1;
+  let most = -Infinity;
+  for (let u = from; u < to; u++) {
+    // The order on the scale of the shrinkage is that of seconds.
+    if (figures.shrunk.log[u] > most && figures.evidence(u) !== "none") [worst, most] = [index.movements[u].key, figures.shrunk.log[u]];
   }
-  return worst ? worst.movement : -1;
+  return worst;
 }
 
 /** By share of the storage; among legs without a known storage by metres, and only when no leg has one. */
@@ -140,11 +143,11 @@ function worstLeg(candidates: number[], index: CatalogueIndex, { reachP95M }: Ga
   return worst;
 }
 
-function greatestSpill(candidates: number[], legOf: ScoreOf<LegScore>, gathered: GatheredScreen): Estimate {
+function greatestSpill(candidates: number[], gathered: GatheredScreen): Estimate {
   let greatest: Estimate = { value: NaN, low: NaN, high: NaN };
   for (const u of candidates) {
     if (gathered.spill.base[u] < LEAST_OBSERVED_S) continue;
-    const { spill } = legOf(u);
+    const spill = spillEstimate(gathered.spill, u);
     if (Number.isNaN(greatest.value) || spill.value > greatest.value) greatest = spill;
   }
   return greatest;

@@ -59,9 +59,20 @@ export async function cityCatalogue(db: Db): Promise<CityCatalogue> {
   const version = await dataVersion(db);
   const known = cache.get(db);
   if (known?.version === version) return known;
-  const fresh = await readCatalogue(db, version);
+  const read = await readCatalogue(db, version);
+  // The same object as long as no movement or leg has come or gone: what scores know by it stays.
+  const fresh = known && isSame(known.keys, read.keys) ? { ...read, keys: known.keys } : read;
   cache.set(db, fresh);
   return fresh;
+}
+
+function isSame(a: Catalogue, b: Catalogue): boolean {
+  return (
+    a.movements.length === b.movements.length &&
+    a.legs.length === b.legs.length &&
+    a.movements.every((one, k) => one.key === b.movements[k].key && one.leg === b.movements[k].leg && one.junction === b.movements[k].junction && one.turn === b.movements[k].turn) &&
+    a.legs.every((one, k) => one.key === b.legs[k].key && one.junction === b.legs[k].junction && Object.is(one.storageM, b.legs[k].storageM))
+  );
 }
 
 async function readCatalogue(db: Db, version: number): Promise<CityCatalogue> {

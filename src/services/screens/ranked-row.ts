@@ -8,14 +8,20 @@ import type { ScoredCity } from "./score-city";
 
 export const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
 
-/** A tenth of what is shown, so that order and comparisons stay; null for what the sample cannot say. */
+/** To so many digits: a tenth of what is shown, so that order and comparisons stay. */
+function round(value: number, digits: number): number {
+  const scale = 10 ** digits;
+  return Math.round(value * scale) / scale;
+}
+
+/** Null for what the sample cannot say. */
 function rounded(value: number | null | undefined, digits: number): number | null {
-  return value === null || value === undefined || !Number.isFinite(value) ? null : Number(value.toFixed(digits));
+  return value === null || value === undefined || !Number.isFinite(value) ? null : round(value, digits);
 }
 
 function roundedEstimate(estimate: Estimate, digits: number): EstimateView | null {
   const view = estimateView(estimate);
-  return view && { value: Number(view.value.toFixed(digits)), low: Number(view.low.toFixed(digits)), high: Number(view.high.toFixed(digits)) };
+  return view && { value: round(view.value, digits), low: round(view.low, digits), high: round(view.high, digits) };
 }
 
 export function losView(delay: EstimateView | null): { at: string; low: string; high: string } | null {
@@ -25,7 +31,7 @@ export function losView(delay: EstimateView | null): { at: string; low: string; 
 }
 
 export function rowOf(junction: CatalogueJunction, scored: ScoredCity): RankedJunction {
-  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: Number(junction.lat.toFixed(6)), lon: Number(junction.lon.toFixed(6)), corridorId: junction.corridorId, corridor: junction.corridor };
+  const base = { junctionId: junction.id, code: junction.code, name: junction.name, lat: round(junction.lat, 6), lon: round(junction.lon, 6), corridorId: junction.corridorId, corridor: junction.corridor };
   const score = scored.junctionScores.get(junction.id);
   const needles = needlesOf(junction.id, scored);
   if (!score || score.vehicles === 0) return { ...base, ...UNSEEN, needles };
@@ -80,7 +86,7 @@ function worstOf(score: JunctionScore, scored: ScoredCity): RankedJunction["wors
   const figures = scored.scores.movement(score.worstMovement);
   const leg = movement && scored.catalogue.legs.get(movement.legId);
   if (!movement || !figures || !leg) return null;
-  return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: Number(figures.delay.value.toFixed(2)) };
+  return { turn: movement.turn, from: leg.name, legId: leg.id, delayS: round(figures.delay.value, 2) };
 }
 
 /** Figures of a leg for lists, map and exports: none without evidence. */
@@ -94,7 +100,7 @@ function needlesOf(junctionId: number, scored: ScoredCity): NeedleView[] {
     const score = supportedLeg(leg.id, scored);
     return {
       legId: leg.id,
-      lieDeg: Number(((leg.bearingDeg + 180) % 360).toFixed(1)),
+      lieDeg: round((leg.bearingDeg + 180) % 360, 1),
       reachM: rounded(score?.reachP95M, 0),
       delayS: rounded(score?.delay.value, 1),
     };
