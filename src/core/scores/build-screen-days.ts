@@ -1,8 +1,8 @@
 import { METHOD_VERSION } from "@/core/method-version";
 import type { LegQuarters, Traversals } from "@/core/types";
-import { QUARTERS } from "./day-by-junction";
 import { localQuarter, type LocalOffset } from "./local-time";
 import { emptyScreenDay } from "./screen-day-columns";
+import { QUARTERS } from "./starts";
 import { delayCode, reachCode, secondsCode } from "./stored-figures";
 import type { ScreenDay } from "./types";
 

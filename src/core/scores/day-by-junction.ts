@@ -1,7 +1,7 @@
 import { indexCatalogue, type CatalogueIndex, type UnitsInOrder } from "./catalogue-index";
+import { packStarts, QUARTERS, startAt, type Starts } from "./starts";
 import type { Catalogue, ScreenDay } from "./types";
 
-export const QUARTERS = 96;
 /** Number of movements and legs that the catalogue does not list any more. */
 const NO_NUMBER = 255;
 
@@ -19,14 +19,14 @@ export interface DayByJunction {
   junction: Uint32Array;
   /** Row by dense junction; -1 for those without. */
   rowOf: Int32Array;
-  /** Traversals of row r in quarter q: from passedStart[96 r + q] to passedStart[96 r + q + 1]. */
-  passedStart: Uint32Array;
+  /** Where the traversals of each row and quarter begin. */
+  passedStart: Starts;
   /** Number of the movement, stops and code of the delay, 8, 8 and 16 bits of one word: one line of cache instead of three. */
   passed: Uint32Array;
   /** Hash of the vehicle, folded to two bytes: of 50 vehicles two look alike once in 54 samples. */
   vehicle: Uint16Array;
   /** Leg quarters, as traversals. */
-  queueStart: Uint32Array;
+  queueStart: Starts;
   ofLeg: Uint8Array;
   reach: Uint16Array;
   reachEstimate: Uint16Array;
@@ -63,7 +63,8 @@ export function dayByJunction(day: ScreenDay, index: CatalogueIndex): DayByJunct
 
 /** Bytes of all columns. */
 export function bytesOfDay(day: DayByJunction): number {
-  return Object.values(day).reduce((sum: number, column) => sum + (ArrayBuffer.isView(column) ? column.byteLength : 0), 0);
+  const columns = [...Object.values(day), ...Object.values(day.passedStart), ...Object.values(day.queueStart)];
+  return columns.reduce((sum: number, column) => sum + (ArrayBuffer.isView(column) ? column.byteLength : 0), 0);
 }
 
 interface Place {
@@ -95,12 +96,12 @@ export function renumberDay(day: DayByJunction, index: CatalogueIndex): void {
     dense.push(to ?? -1);
     const movements = numbersIn(former.movements, former.junctionOffset, from, (moved) => (to === undefined ? undefined : placeOfMovement(index, moved)));
     if (movements) {
-      for (let i = day.passedStart[row * QUARTERS]; i < day.passedStart[(row + 1) * QUARTERS]; i++) {
+      for (let i = startAt(day.passedStart, row, 0); i < startAt(day.passedStart, row, QUARTERS); i++) {
         day.passed[i] = ((movements[numberOf(day.passed[i])] << 24) | (day.passed[i] & 0xffffff)) >>> 0;
       }
     }
     const legs = numbersIn(former.legs, former.junctionLegOffset, from, (moved) => (to === undefined ? undefined : placeOfLeg(index, moved)));
-    if (legs) for (let k = day.queueStart[row * QUARTERS]; k < day.queueStart[(row + 1) * QUARTERS]; k++) day.ofLeg[k] = legs[day.ofLeg[k]];
+    if (legs) for (let k = startAt(day.queueStart, row, 0); k < startAt(day.queueStart, row, QUARTERS); k++) day.ofLeg[k] = legs[day.ofLeg[k]];
   });
   day.rowOf = rowsOf(dense, index);
   day.index = index;
@@ -178,10 +179,10 @@ function startsOf(junctions: readonly number[], { start: first, rows }: PlacedRo
 
 function arrangePassages(day: ScreenDay, junctions: readonly number[], placed: PlacedRows): Pick<DayByJunction, "passedStart" | "passed" | "vehicle"> {
   const { movementStart, quarter, stops, delay, vehicle: hash } = day;
-  const passedStart = startsOf(junctions, placed, movementStart, quarter);
-  const passed = new Uint32Array(passedStart[passedStart.length - 1]);
+  const start = startsOf(junctions, placed, movementStart, quarter);
+  const passed = new Uint32Array(start[start.length - 1]);
   const vehicle = new Uint16Array(passed.length);
-  const next = passedStart.slice();
+  const next = start.slice();
   junctions.forEach((junction, j) => {
     for (let r = placed.start[junction]; r < placed.start[junction + 1]; r++) {
       const [row, number] = [placed.rows[r], placed.numbers[r]];
@@ -192,18 +193,18 @@ function arrangePassages(day: ScreenDay, junctions: readonly number[], placed: P
       }
     }
   });
-  return { passedStart, passed, vehicle };
+  return { passedStart: packStarts(start), passed, vehicle };
 }
 
 type Queues = Pick<DayByJunction, "queueStart" | "ofLeg" | "reach" | "reachEstimate" | "spilled" | "observed">;
 
 function arrangeQueues(day: ScreenDay, junctions: readonly number[], placed: PlacedRows): Queues {
   const { legStart, legQuarter } = day;
-  const queueStart = startsOf(junctions, placed, legStart, legQuarter);
-  const length = queueStart[queueStart.length - 1];
+  const start = startsOf(junctions, placed, legStart, legQuarter);
+  const length = start[start.length - 1];
   const [reach, reachEstimate, spilled, observed] = Array.from({ length: 4 }, () => new Uint16Array(length));
   const ofLeg = new Uint8Array(length);
-  const next = queueStart.slice();
+  const next = start.slice();
   junctions.forEach((junction, j) => {
     for (let r = placed.start[junction]; r < placed.start[junction + 1]; r++) {
       const [row, number] = [placed.rows[r], placed.numbers[r]];
@@ -217,5 +218,5 @@ function arrangeQueues(day: ScreenDay, junctions: readonly number[], placed: Pla
       }
     }
   });
-  return { queueStart, ofLeg, reach, reachEstimate, spilled, observed };
+  return { queueStart: packStarts(start), ofLeg, reach, reachEstimate, spilled, observed };
 }

@@ -1,7 +1,8 @@
 import { createHistogram, emptyHistogram } from "./code-histogram";
 import type { CatalogueIndex } from "./catalogue-index";
-import { QUARTERS, type DayByJunction } from "./day-by-junction";
+import type { DayByJunction } from "./day-by-junction";
 import { addSeconds } from "./queue-seconds";
+import { QUARTERS, startAt } from "./starts";
 import { createSums, emptySums, sumEntries } from "./sum-entries";
 
 /**
@@ -54,11 +55,11 @@ function addUp(day: DayByJunction): DayTotals {
   day.rowOf.forEach((row, junction) => {
     if (row < 0) return;
     emptySums(sums);
-    sumEntries(day.passed, day.passedStart[row * QUARTERS], day.passedStart[(row + 1) * QUARTERS], all, sums, codes);
+    sumEntries(day.passed, startAt(day.passedStart, row, 0), startAt(day.passedStart, row, QUARTERS), all, sums, codes);
     const [first, end] = [index.junctionOffset[junction], index.junctionOffset[junction + 1]];
     for (const name of ["delays", "stops", "squares"] as const) totals[name].set(sums[name].subarray(0, end - first), first);
     slots.fill(0);
-    addSeconds(day, day.queueStart[row * QUARTERS], day.queueStart[(row + 1) * QUARTERS], slots, 1);
+    addSeconds(day, startAt(day.queueStart, row, 0), startAt(day.queueStart, row, QUARTERS), slots, 1);
     const [firstLeg, endLeg] = [index.junctionLegOffset[junction], index.junctionLegOffset[junction + 1]];
     totals.seconds.set(slots.subarray(0, endLeg - firstLeg), firstLeg);
     emptyHistogram(codes);

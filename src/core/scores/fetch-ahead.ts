@@ -1,5 +1,6 @@
-import { QUARTERS, type DayByJunction } from "./day-by-junction";
+import type { DayByJunction } from "./day-by-junction";
 import type { QuarterWindow } from "./gathered";
+import { startAt, type Starts } from "./starts";
 
 /** Entries of four bytes in a line of cache. */
 const LINE = 16;
@@ -50,8 +51,8 @@ function makeRoom(days: number): void {
   if (stretches.length < 2 * days) stretches = new Uint32Array(2 * days);
 }
 
-function noteStretch(k: number, row: number, start: Uint32Array, first: number, last: number): void {
-  const from = row < 0 ? 0 : start[row * QUARTERS + first];
+function noteStretch(k: number, row: number, start: Starts, first: number, last: number): void {
+  const from = row < 0 ? 0 : startAt(start, row, first);
   stretches[2 * k] = from;
-  stretches[2 * k + 1] = row < 0 ? 0 : Math.min(start[row * QUARTERS + last], from + MOST);
+  stretches[2 * k + 1] = row < 0 ? 0 : Math.min(startAt(start, row, last), from + MOST);
 }

@@ -1,11 +1,12 @@
 import type { CatalogueIndex } from "./catalogue-index";
 import { CODES, countOf, createHistogram, emptyHistogram, histogramOf, histogramQuantile, COARSE_SHIFT } from "./code-histogram";
-import { QUARTERS, type DayByJunction } from "./day-by-junction";
+import type { DayByJunction } from "./day-by-junction";
 import { fetchQueues } from "./fetch-ahead";
 import type { GatheredScreen, QuarterWindow } from "./gathered";
 import { isMostOf, totalsOf } from "./day-totals";
 import { addSeconds, observedS, spilledS } from "./queue-seconds";
 import { addToTally, closeDayOf, closeQuarterOf, type RatioTally } from "./ratio-tally";
+import { QUARTERS, startAt } from "./starts";
 import { reachOfCode } from "./stored-figures";
 
 /** What is added up for the legs of one junction; a slot for each. */
@@ -46,8 +47,8 @@ function addDay(day: DayByJunction, junction: number, first: number, end: number
   const row = day.rowOf[junction];
   if (row < 0) return;
   for (const window of windows) {
-    const from = day.queueStart[row * QUARTERS + window.from];
-    const to = day.queueStart[row * QUARTERS + window.to];
+    const from = startAt(day.queueStart, row, window.from);
+    const to = startAt(day.queueStart, row, window.to);
     addEntries(day, { row, from, to, first, end, isWholeWindow: windows.length === 1 }, slots);
     for (let leg = first; leg < end; leg++) {
       const both = slots.seconds[leg - first];
@@ -72,7 +73,7 @@ interface Stretch {
 
 /** Reach, and observed and spilled time, by number of the leg; what an entry does not know is left out. */
 function addEntries(day: DayByJunction, { row, from, to, first, end, isWholeWindow }: Stretch, slots: Slots): void {
-  const [rowFrom, rowTo] = [day.queueStart[row * QUARTERS], day.queueStart[(row + 1) * QUARTERS]];
+  const [rowFrom, rowTo] = [startAt(day.queueStart, row, 0), startAt(day.queueStart, row, QUARTERS)];
   if (isWholeWindow && isMostOf(from, to, rowFrom, rowTo)) {
     slots.seconds.set(totalsOf(day).seconds.subarray(first, end));
     addSeconds(day, rowFrom, from, slots.seconds, -1);

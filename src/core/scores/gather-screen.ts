@@ -1,7 +1,7 @@
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
 import { createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
-import { QUARTERS, renumberDay, type DayByJunction } from "./day-by-junction";
+import { renumberDay, type DayByJunction } from "./day-by-junction";
 import { isMostOf, totalsOf } from "./day-totals";
 import { LEAST_FOR_MEDIAN, LEAST_FOR_P95, rollUp } from "./delay-level";
 import { createDistinctSets, type DistinctSets } from "./distinct-sets";
@@ -10,6 +10,7 @@ import { fetchPassages } from "./fetch-ahead";
 import { gatherQueues } from "./gather-queues";
 import { emptyScreen, type GatheredScreen, type QuarterWindow } from "./gathered";
 import { addDayOf, addToTally, closeDayOf, closeQuarterOf, clustersFor, finishDays, type Clusters, type RatioTally } from "./ratio-tally";
+import { QUARTERS, startAt } from "./starts";
 import { delayOfCode } from "./stored-figures";
 import { countDelays, createSums, delaySqOf, emptySums, stopsIn, subtractEntries, sumEntries, takeDelays, type EntrySums, type Taken } from "./sum-entries";
 import type { ScoreFilter } from "./types";
@@ -100,10 +101,10 @@ function addDay(gathering: Gathering, day: DayByJunction, junction: number): voi
   if (row < 0) return;
   const { windows, isWanted, sums, codes } = gathering;
   for (const window of windows) {
-    const from = day.passedStart[row * QUARTERS + window.from];
-    const to = day.passedStart[row * QUARTERS + window.to];
+    const from = startAt(day.passedStart, row, window.from);
+    const to = startAt(day.passedStart, row, window.to);
     if (from === to) continue;
-    if (gathering.clusters === "days" && isMostOf(from, to, day.passedStart[row * QUARTERS], day.passedStart[(row + 1) * QUARTERS])) {
+    if (gathering.clusters === "days" && isMostOf(from, to, startAt(day.passedStart, row, 0), startAt(day.passedStart, row, QUARTERS))) {
       addMostOfDay(gathering, day, junction, from, to);
     } else sumEntries(day.passed, from, to, isWanted, sums, codes);
     gathering.vehicles.addEntries(day.passed, day.vehicle, from, to);
@@ -123,8 +124,8 @@ function addMostOfDay({ index, isWanted, sums, codes }: Gathering, day: DayByJun
     sums.squares[u - first] += totals.squares[u];
   }
   const row = day.rowOf[junction];
-  subtractEntries(day.passed, day.passedStart[row * QUARTERS], from, isWanted, sums);
-  subtractEntries(day.passed, to, day.passedStart[(row + 1) * QUARTERS], isWanted, sums);
+  subtractEntries(day.passed, startAt(day.passedStart, row, 0), from, isWanted, sums);
+  subtractEntries(day.passed, to, startAt(day.passedStart, row, QUARTERS), isWanted, sums);
   countDelays(day.passed, from, to, isWanted, codes);
 }
 

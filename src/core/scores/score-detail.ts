@@ -1,7 +1,8 @@
 import { addCode, createHistogram, histogramQuantile } from "./code-histogram";
-import { delayCodeOf, numberOf, placeOfLeg, placeOfMovement, QUARTERS, type DayByJunction } from "./day-by-junction";
+import { delayCodeOf, numberOf, placeOfLeg, placeOfMovement, type DayByJunction } from "./day-by-junction";
 import { LEAST_FOR_MEDIAN, LEAST_FOR_P95 } from "./delay-level";
 import { reachEstimateOf } from "./leg-level";
+import { startAt } from "./starts";
 import { delayOfCode, reachOfCode } from "./stored-figures";
 import type { LegDetail, MovementDetail, ScoreFilter } from "./types";
 
@@ -15,8 +16,7 @@ export function movementDetail(days: readonly DayByJunction[], key: number, { fr
     const place = placeOfMovement(day.index, key);
     const row = place ? day.rowOf[place.junction] : -1;
     if (place === undefined || row < 0) continue;
-    const first = row * QUARTERS;
-    for (let i = day.passedStart[first + fromQuarter]; i < day.passedStart[first + toQuarter]; i++) {
+    for (let i = startAt(day.passedStart, row, fromQuarter); i < startAt(day.passedStart, row, toQuarter); i++) {
       if (numberOf(day.passed[i]) !== place.number) continue;
       addCode(codes, delayCodeOf(day.passed[i]));
       count += 1;
@@ -36,8 +36,7 @@ export function legDetail(days: readonly DayByJunction[], key: number, { fromQua
     const place = placeOfLeg(day.index, key);
     const row = place ? day.rowOf[place.junction] : -1;
     if (place === undefined || row < 0) continue;
-    const first = row * QUARTERS;
-    for (let k = day.queueStart[first + fromQuarter]; k < day.queueStart[first + toQuarter]; k++) {
+    for (let k = startAt(day.queueStart, row, fromQuarter); k < startAt(day.queueStart, row, toQuarter); k++) {
       if (day.ofLeg[k] !== place.number) continue;
       if (day.reach[k] > 0) ofSeen += addCode(seen, day.reach[k]);
       if (day.reachEstimate[k] > 0) ofEstimated += addCode(estimated, day.reachEstimate[k]);

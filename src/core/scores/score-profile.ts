@@ -1,9 +1,10 @@
 import type { Estimate } from "@/core/types";
 import { addCode, createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
-import { placeOfLeg, placeOfMovement, QUARTERS, type DayByJunction } from "./day-by-junction";
+import { placeOfLeg, placeOfMovement, type DayByJunction } from "./day-by-junction";
 import { createLevel, figuresOf, type DelayLevel } from "./delay-level";
 import { addSpill, spillEstimate } from "./leg-level";
 import { addToTally, clustersFor, closeDay, createTally, type RatioTally } from "./ratio-tally";
+import { QUARTERS, startAt } from "./starts";
 import { reachOfCode } from "./stored-figures";
 import { createSums, delaySqOf, emptySums, stopsIn, sumEntries, takeDelays } from "./sum-entries";
 
@@ -64,7 +65,7 @@ function addMovements(level: DelayLevel, day: DayByJunction, row: number, isWant
   const sums = createSums();
   const taken = { vehicles: 0, delayS: 0 };
   for (let quarter = 0; quarter < QUARTERS; quarter++) {
-    const [from, to] = [day.passedStart[row * QUARTERS + quarter], day.passedStart[row * QUARTERS + quarter + 1]];
+    const [from, to] = [startAt(day.passedStart, row, quarter), startAt(day.passedStart, row, quarter + 1)];
     if (from === to) continue;
     emptySums(sums);
     sumEntries(day.passed, from, to, isWanted, sums, codes);
@@ -82,7 +83,7 @@ function addMovements(level: DelayLevel, day: DayByJunction, row: number, isWant
 
 function addLegs(spill: RatioTally, day: DayByJunction, row: number, isWanted: Uint8Array): void {
   for (let quarter = 0; quarter < QUARTERS; quarter++) {
-    for (let k = day.queueStart[row * QUARTERS + quarter]; k < day.queueStart[row * QUARTERS + quarter + 1]; k++) {
+    for (let k = startAt(day.queueStart, row, quarter); k < startAt(day.queueStart, row, quarter + 1); k++) {
       if (isWanted[day.ofLeg[k]] === 1) addSpill(spill, quarter, day.observed[k], day.spilled[k]);
     }
   }
@@ -93,8 +94,7 @@ function reachP95Of(days: readonly DayByJunction[], legs: readonly number[], qua
   let known = 0;
   for (const day of days) {
     for (const [row, isWanted] of wantedByRow(day, legs, placeOfLeg)) {
-      const first = row * QUARTERS + quarter;
-      for (let k = day.queueStart[first]; k < day.queueStart[first + 1]; k++) {
+      for (let k = startAt(day.queueStart, row, quarter); k < startAt(day.queueStart, row, quarter + 1); k++) {
         if (isWanted[day.ofLeg[k]] === 1 && day.reach[k] > 0) known += addCode(codes, day.reach[k]);
       }
     }

@@ -1,5 +1,6 @@
 import { sql } from "drizzle-orm";
-import { QUARTERS, type DayByJunction } from "@/core/scores/day-by-junction";
+import type { DayByJunction } from "@/core/scores/day-by-junction";
+import { QUARTERS, startAt } from "@/core/scores/starts";
 import type { Db } from "@/db/client";
 import { screenDays } from "@/db/schema";
 import { isoFromDay } from "@/domain/local-time";
@@ -69,5 +70,5 @@ async function seenJunctions(db: Db, catalogue: CityCatalogue): Promise<{ everSe
 
 /** Junctions that somebody passed. */
 function passedJunctions({ junction, passedStart }: DayByJunction): number[] {
-  return [...junction].filter((_, row) => passedStart[row * QUARTERS] < passedStart[(row + 1) * QUARTERS]);
+  return [...junction].filter((_, row) => startAt(passedStart, row, 0) < startAt(passedStart, row, QUARTERS));
 }
