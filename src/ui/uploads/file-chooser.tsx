@@ -1,6 +1,6 @@
 "use client";
 
-import { useId, useState, type DragEvent } from "react";
+import { useEffect, useId, useRef, useState, type DragEvent } from "react";
 import { formatBytes } from "@/ui/format";
 import { classNames } from "@/ui/primitives/class-names";
 import { useCity } from "@/ui/shell/city";
@@ -12,6 +12,13 @@ export function FileChooser({ file, onChoose, describedBy }: { file: File | null
   const id = useId();
   const { locale } = useCity();
   const [isOver, setOver] = useState(false);
+  const input = useRef<HTMLInputElement>(null);
+
+  // One may be chosen before the page listens.
+  useEffect(() => {
+    const [early] = input.current?.files ?? [];
+    if (early) onChoose(early);
+  }, [onChoose]);
 
   function drop(event: DragEvent) {
     event.preventDefault();
@@ -34,6 +41,7 @@ export function FileChooser({ file, onChoose, describedBy }: { file: File | null
         File
       </label>
       <input
+        ref={input}
         id={id}
         type="file"
         accept={ACCEPTED}
