@@ -45,6 +45,8 @@ interface Work {
   near: Candidates;
   cost: Float64Array;
   back: Int8Array;
+  /** 1 where the step to a state is a way over the network, 0 where it led over unknown streets. */
+  isWay: Uint8Array;
   chosen: Int8Array;
 }
 
@@ -59,6 +61,7 @@ function createWork(trips: Trips): Work {
     near: createCandidates(longest),
     cost: new Float64Array(longest * WIDTH),
     back: new Int8Array(longest * WIDTH),
+    isWay: new Uint8Array(longest * WIDTH),
     chosen: new Int8Array(longest),
   };
 }
@@ -111,6 +114,7 @@ function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): v
       const to = n * MATCHING.candidates + c;
       let best = Math.min(cost[before + OFF], left) + MATCHING.joinCost;
       let from = isOff ? OFF : likeliest;
+      let isWay = 0;
       // The likeliest place first: after it most others are too dear to be looked at.
       for (let k = 0; k < places; k++) {
         const p = k === 0 ? likeliest : k <= likeliest ? k - 1 : k;
@@ -120,8 +124,10 @@ function decode(trips: Trips, graph: StreetGraph, work: Work, states: number): v
         if (reached + step < best) {
           best = reached + step;
           from = p;
+          isWay = 1;
         }
       }
+      work.isWay[row + c] = isWay;
       cost[row + c] = best + near.cost[to];
       back[row + c] = from;
     }
@@ -187,21 +193,16 @@ function collectChains(
   trips: Trips, graph: StreetGraph, work: Work, states: number, trip: number, visit: (chain: Chain) => void,
 ): void {
   let chain: Chain | null = null;
-  let strays = 0;
   let last = -1;
   for (let n = 0; n < states; n++) {
     const c = work.chosen[n];
-    if (c === OFF) {
-      strays += 1;
-      continue;
-    }
+    if (c === OFF) continue;
     const at = n * MATCHING.candidates + c;
-    const joined: boolean = chain !== null && (strays <= MATCHING.bridgePings || isWaiting(trips, work, last, n)) && append(chain, graph, trips, work, last, n, at);
+    const joined: boolean = chain !== null && isJoined(trips, graph, work, last, n) && append(chain, graph, work, last, n, at);
     if (!joined) {
       if (chain && chain.pings.length > 1) visit(chain);
       chain = { trip, links: [work.near.link[at]], pings: [work.ping[n]], step: [0], position: [work.near.position[at]] };
     }
-    strays = 0;
     last = n;
   }
   if (chain && chain.pings.length > 1) visit(chain);
@@ -212,16 +213,20 @@ function isWaiting(trips: Trips, work: Work, before: number, n: number): boolean
   return chordBetween(work, before, n) < MATCHING.waitingM && secondsBetween(trips, work, before, n) < MATCHING.waitingMostS;
 }
 
-/** Adds a place to a chain where the way fits the time and the chord; else the step led over unknown streets. */
-function append(
-  chain: Chain, graph: StreetGraph, trips: Trips, work: Work, before: number, n: number, at: number,
-): boolean {
+/** Whether the way between two placed states fits the time and the chord; else the step led over unknown streets. */
+function isJoined(trips: Trips, graph: StreetGraph, work: Work, before: number, n: number): boolean {
+  if (n === before + 1) return work.isWay[n * WIDTH + work.chosen[n]] === 1;
+  if (n - before - 1 > MATCHING.bridgePings && !isWaiting(trips, work, before, n)) return false;
+  const [from, to] = [before * MATCHING.candidates + work.chosen[before], n * MATCHING.candidates + work.chosen[n]];
+  return stepCost(graph, work.near, from, to, chordBetween(work, before, n), secondsBetween(trips, work, before, n)) <= DEAREST_STEP;
+}
+
+/** Adds a place to a chain, with the links on the way to it; false where there is no way. */
+function append(chain: Chain, graph: StreetGraph, work: Work, before: number, n: number, at: number): boolean {
   const from = chain.links[chain.links.length - 1];
   const link = work.near.link[at];
   const position = work.near.position[at];
   const previous = before * MATCHING.candidates + work.chosen[before];
-  const cost = stepCost(graph, work.near, previous, at, chordBetween(work, before, n), secondsBetween(trips, work, before, n));
-  if (cost > DEAREST_STEP) return false;
   if (link !== from || position - work.near.position[previous] < -MATCHING.loopM) {
     const row = graph.routes.find(from, link, 0);
     if (row < 0) return false;

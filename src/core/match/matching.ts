@@ -15,7 +15,7 @@ export const MATCHING = Object.freeze({
   /** Links are matched without vertices that lie this near to the rest of their line: far below the pings' spread, m. */
   simplifyM: 0.4,
   /** Side of the cells in which a ping looks for links, m. */
-  cellM: 24,
+  cellM: 32,
   candidates: 6,
   /** Cost of a ping off the network, of leaving it and of joining it. */
   offCost: 5,
