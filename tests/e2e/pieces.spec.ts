@@ -49,3 +49,22 @@ test("a file whose line is cut is paused, goes on after a reload where it stoppe
     await rm(folder, { recursive: true, force: true });
   }
 });
+
+test("a file that is chosen before the page listens is sent", async ({ page, signIn }) => {
+  await signIn("engineer");
+  let release = () => {};
+  const listens = new Promise<void>((resolve) => (release = resolve));
+  await page.route("**/_next/static/**/*.js", async (route) => {
+    await listens;
+    await route.continue();
+  });
+  await page.goto("/data", { waitUntil: "commit" });
+  await page.getByLabel("File", { exact: true }).setInputFiles({ name: "early.csv", mimeType: "text/csv", buffer: Buffer.from("vehicle_id,timestamp,lat,lon\nv1,2026-03-02T08:00:00Z,41.2,-31.5\n") });
+  release();
+  await expect(page.getByText("early.csv, 64 B")).toBeVisible();
+  await page.getByRole("button", { name: "Send the file" }).click();
+  await expect(page).toHaveURL(/\/data\/[0-9a-f-]{36}/);
+  await page.getByRole("button", { name: "Discard the file" }).click();
+  await page.getByRole("button", { name: "Yes, discard" }).click();
+  await expect(page).toHaveURL(/\/data$/);
+});
