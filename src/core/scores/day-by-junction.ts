@@ -1,6 +1,6 @@
-import { indexCatalogue, type CatalogueIndex, type UnitsInOrder } from "./catalogue-index";
+import type { CatalogueIndex, UnitsInOrder } from "./catalogue-index";
 import { packStarts, QUARTERS, startAt, type Starts } from "./starts";
-import type { Catalogue, ScreenDay } from "./types";
+import type { ScreenDay } from "./types";
 
 /** Number of movements and legs that the catalogue does not list any more. */
 const NO_NUMBER = 255;
@@ -39,11 +39,6 @@ export interface DayByJunction {
 export const numberOf = (word: number): number => word >>> 24;
 export const stopsOf = (word: number): number => (word >>> 16) & 0xff;
 export const delayCodeOf = (word: number): number => word & 0xffff;
-
-/** Slices ready to be scored. */
-export function daysByJunction(days: readonly ScreenDay[], catalogue: Catalogue): DayByJunction[] {
-  return days.map((day) => dayByJunction(day, indexCatalogue(catalogue)));
-}
 
 /** RangeError where more than 254 movements or legs belong to one junction. O(size of the slice). */
 export function dayByJunction(day: ScreenDay, index: CatalogueIndex): DayByJunction {

@@ -4,14 +4,14 @@ import type { Estimate } from "@/core/types";
 import { clusterVariance } from "./cluster-variance";
 import { histogramQuantile, type CodeHistogram } from "./code-histogram";
 import { addToTally, type RatioTally } from "./ratio-tally";
-import { reachOfCode, STEPS_PER_S } from "./stored-figures";
+import { reachOfCode, secondsOfCode } from "./stored-figures";
 
 const QUARTER_S = 900;
 const NOTHING: Estimate = Object.freeze({ value: NaN, low: NaN, high: NaN });
 
 /** Adds the observed and spilled time of one leg quarter, given by their codes, unless one of them is not known. */
 export function addSpill(tally: RatioTally, unit: number, observed: number, spilled: number): void {
-  if (isSpillKnown(observed, spilled)) addToTally(tally, unit, (observed - 1) / STEPS_PER_S, (spilled - 1) / STEPS_PER_S);
+  if (isSpillKnown(observed, spilled)) addToTally(tally, unit, secondsOfCode(observed), secondsOfCode(spilled));
 }
 
 /** Code 0 is unknown and code 1 is none. */

@@ -11,7 +11,7 @@ export function clustersFor(days: number): Clusters {
 /**
  * Sums for ratios total / base of many units (seconds of delay by vehicles, seconds spilled by seconds seen), together
  * with what their variance under clustering needs. Fed in order of day, then quarter: `addToTally` any number of times,
- * `closeQuarter` after each quarter, `closeDay` after each day.
+ * `closeQuarterOf` each unit after each quarter, `closeDay` after each day.
  */
 export interface RatioTally {
   clusters: Clusters;
@@ -74,17 +74,12 @@ export function finishDays(tally: RatioTally): void {
   tally.baseSq.set(tally.bb);
 }
 
-/** O(units); nothing to do where days are the clusters. */
-export function closeQuarter(tally: RatioTally): void {
-  for (let u = 0; u < tally.base.length; u++) closeQuarterOf(tally, u);
-}
-
 /** Also closes the quarter that is open. O(units). */
 export function closeDay(tally: RatioTally): void {
   for (let u = 0; u < tally.base.length; u++) closeDayOf(tally, u);
 }
 
-/** The same for one unit. */
+/** Nothing to do where days are the clusters. */
 export function closeQuarterOf(tally: RatioTally, unit: number): void {
   if (tally.clusters === "quarters") closeCluster(tally, unit);
 }

@@ -10,7 +10,7 @@ const STOP = 2 ** 26;
 const STOPS = Float64Array.from({ length: 256 }, (_, stops) => (stops > 0 ? 1 : 0) + stops * STOP);
 
 /** As many as a byte can name. */
-export const NUMBERS = 256;
+const NUMBERS = 256;
 
 /** Sums over passages by number of their movement, whole numbers throughout: exact in any order. */
 export interface EntrySums {

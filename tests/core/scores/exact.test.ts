@@ -1,10 +1,10 @@
 import { describe, expect, it } from "vitest";
-import { dayByJunction, daysByJunction, renumberDay } from "@/core/scores/day-by-junction";
+import { dayByJunction, renumberDay } from "@/core/scores/day-by-junction";
 import { indexCatalogue } from "@/core/scores/catalogue-index";
 import { legDetail, movementDetail } from "@/core/scores/score-detail";
 import { quantile } from "@/core/stats/quantile";
 import { seededRandom } from "@/core/stats/random";
-import { catalogueOf, passagesOf, scoreDays, screenDay, through, type Passage, type Queue } from "./small-city";
+import { catalogueOf, daysByJunction, passagesOf, scoreDays, screenDay, through, type Passage, type Queue } from "./small-city";
 
 const JUNCTIONS = 7;
 const WINDOW = { fromQuarter: 28, toQuarter: 52, turn: null };

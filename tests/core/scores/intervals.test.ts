@@ -2,8 +2,12 @@ import { describe, expect, it } from "vitest";
 import { clusterVariance } from "@/core/scores/cluster-variance";
 import { evidenceOf } from "@/core/scores/evidence";
 import { meanIntervals } from "@/core/scores/mean-intervals";
-import { addToTally, closeDay, closeQuarter, clustersFor, createTally, type RatioTally } from "@/core/scores/ratio-tally";
+import { addToTally, closeDay, closeQuarterOf, clustersFor, createTally, type RatioTally } from "@/core/scores/ratio-tally";
 import { normalRandom, seededRandom } from "@/core/stats/random";
+
+function closeQuarter(tally: RatioTally): void {
+  for (let unit = 0; unit < tally.base.length; unit++) closeQuarterOf(tally, unit);
+}
 
 /** One unit; each day a list of quarters, each quarter [base, total] or null where nothing was seen. */
 function tallyOf(days: ([number, number] | null)[][]): RatioTally {

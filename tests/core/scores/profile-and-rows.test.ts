@@ -4,8 +4,7 @@ import { QUARTER_MS } from "@/core/queues/options";
 import { scoreProfile } from "@/core/scores/score-profile";
 import { screenRows } from "@/core/scores/screen-rows";
 import { oneLeg, passing, stopping, traversalsOf } from "../queues/one-leg";
-import { daysByJunction } from "@/core/scores/day-by-junction";
-import { screenDay } from "./small-city";
+import { daysByJunction, screenDay } from "./small-city";
 
 describe("scoreProfile", () => {
   const days = [

@@ -1,5 +1,6 @@
 import { METHOD_VERSION } from "@/core/method-version";
-import { daysByJunction } from "@/core/scores/day-by-junction";
+import { indexCatalogue } from "@/core/scores/catalogue-index";
+import { dayByJunction, type DayByJunction } from "@/core/scores/day-by-junction";
 import { scoreScreen, type ScoreOptions } from "@/core/scores/score-screen";
 import { emptyScreenDay } from "@/core/scores/screen-day-columns";
 import { delayCode, delayOfCode, reachCode, secondsCode } from "@/core/scores/stored-figures";
@@ -77,6 +78,11 @@ export function through(j: number): number {
 }
 
 export const ALL_DAY = { fromQuarter: 0, toQuarter: 96, turn: null };
+
+/** Slices ready to be scored. */
+export function daysByJunction(days: readonly ScreenDay[], catalogue: Catalogue): DayByJunction[] {
+  return days.map((day) => dayByJunction(day, indexCatalogue(catalogue)));
+}
 
 /** Scores of slices as they are stored. */
 export function scoreDays(days: readonly ScreenDay[], catalogue: Catalogue, filter: ScoreFilter, options?: Partial<ScoreOptions>): ScreenScores {

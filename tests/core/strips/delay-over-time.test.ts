@@ -1,9 +1,8 @@
 import { describe, expect, it } from "vitest";
-import { daysByJunction } from "@/core/scores/day-by-junction";
 import { scoreProfile } from "@/core/scores/score-profile";
 import { delayOverTime } from "@/core/strips/delay-over-time";
 import { crossingTimes } from "@/core/strips/track-crossings";
-import { screenDay } from "../scores/small-city";
+import { daysByJunction, screenDay } from "../scores/small-city";
 import { setOf, type ToyTrack } from "./support";
 
 const passing = (day: number, crossS: number, delayS: number): ToyTrack => ({

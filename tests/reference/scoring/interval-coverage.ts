@@ -1,5 +1,6 @@
 import { buildScreenDays } from "@/core/scores/build-screen-days";
-import { daysByJunction } from "@/core/scores/day-by-junction";
+import { indexCatalogue } from "@/core/scores/catalogue-index";
+import { dayByJunction } from "@/core/scores/day-by-junction";
 import { scoreScreen } from "@/core/scores/score-screen";
 import { legQuarters } from "@/core/queues/leg-quarters";
 
@@ -30,7 +31,8 @@ export function coverIntervals({ network, traversals, vehicles, input }: CoreRun
     movements: network.movements.map(({ leg, turn }, key) => ({ key, leg, junction: network.legs[leg].junction, turn })),
     legs: network.legs.map(({ junction, storageM }, key) => ({ key, junction, storageM })),
   };
-  const scores = scoreScreen(daysByJunction(days, catalogue), catalogue, { fromQuarter: 0, toQuarter: 96, turn: null }, { rankDraws: 10 });
+  const ready = days.map((day) => dayByJunction(day, indexCatalogue(catalogue)));
+  const scores = scoreScreen(ready, catalogue, { fromQuarter: 0, toQuarter: 96, turn: null }, { rankDraws: 10 });
   const matched = matchLegs(groupRows(input.rows.filter((row) => row.intervalStart === "all")), input.truth);
   const coverage = { inside: 0, intervals: 0 };
   for (const [leg, found] of matched) {
