@@ -1,7 +1,7 @@
 import type { PingColumns } from "@/core/types";
 import { emptyColumns } from "@/formats/pings/ping-columns";
 import type { PieceKind } from "../pieces/piece-kind";
-import { readSlots, writeSlots, type SlottedPings } from "./ping-slots";
+import { firstSlots, readSlots, writeSlots, type SlottedPings } from "./ping-slots";
 
 /** From a moment on, up to another, both included. */
 export interface Span {
@@ -18,7 +18,7 @@ export interface PingsToCut {
 export const cutTime: PieceKind<PingsToCut, (SlottedPings | null)[]> = {
   name: "cut time",
   async work({ store, name }, { pings: object, spans }) {
-    const { pings, hashes } = await readSlots(store, [{ name: object.name, from: 0, to: object.offsets[object.offsets.length - 1] }]);
+    const { pings, hashes } = await readSlots(store, firstSlots([object], Infinity).ranges);
     const parts: (SlottedPings | null)[] = [];
     for (const [i, span] of spans.entries()) {
       const chosen = within(pings, span);

@@ -87,6 +87,7 @@ export interface SlotRange {
   name: string;
   from: number;
   to: number;
+  pings: number;
 }
 
 export interface VehiclePings {
@@ -95,40 +96,55 @@ export interface VehiclePings {
   hashes: BigInt64Array;
 }
 
-/** All pings of the vehicles of some slots, from every object that has any. O(pings + vehicles × log). */
+/** All pings of the vehicles of some slots, from every object that has any, one after the other. O(pings + vehicles × log). */
 export async function readSlots(store: PieceStore, ranges: readonly SlotRange[]): Promise<VehiclePings> {
-  const parts: Section[] = [];
-  for (const { name, from, to } of ranges) {
-    if (to > from) parts.push(...sectionsIn(aligned(await store.read(name, { from, to }))));
-  }
-  const hashes = unionOf(parts);
-  const total = parts.reduce((sum, part) => sum + part.rows, 0);
+  const total = ranges.reduce((sum, range) => sum + range.pings, 0);
   const pings = emptyColumns(total);
-  pings.length = total;
-  let at = 0;
-  for (const part of parts) {
-    let vehicle = 0;
-    let row = 0;
-    part.hashes.forEach((hash, n) => {
-      while (hashes[vehicle] !== hash) vehicle += 1;
-      const end = at + part.counts[n];
-      pings.vehicle.fill(vehicle, at, end);
-      for (; at < end; at++, row += 4) {
-        pings.tMs[at] = part.wide[row];
-        pings.lat[at] = part.wide[row + 1];
-        pings.lon[at] = part.wide[row + 2];
-        pings.speedMs[at] = part.narrow[2 * row + 6];
-        pings.headingDeg[at] = part.narrow[2 * row + 7];
-      }
-    });
+  // Vehicles are numbered as they come up, once for each section, until all hashes are known.
+  const lists: BigInt64Array[] = [];
+  let numbers = 0;
+  for (const { name, from, to } of ranges) {
+    for (const section of sectionsIn(aligned(await store.read(name, { from, to })))) {
+      copySection(section, numbers, pings);
+      // A copy: a view would hold all bytes of the object.
+      lists.push(section.hashes.slice());
+      numbers += section.hashes.length;
+    }
   }
+  const hashes = unionOf(lists);
+  const dense = new Uint32Array(numbers);
+  let number = 0;
+  for (const list of lists) {
+    let vehicle = 0;
+    for (let n = 0; n < list.length; n++) {
+      while (hashes[vehicle] !== list[n]) vehicle += 1;
+      dense[number++] = vehicle;
+    }
+  }
+  for (let i = 0; i < total; i++) pings.vehicle[i] = dense[pings.vehicle[i]];
   return { pings, hashes };
+}
+
+function copySection({ counts, wide, narrow }: Section, firstNumber: number, to: PingColumns): void {
+  let at = to.length;
+  let row = 0;
+  for (let n = 0; n < counts.length; n++) {
+    const end = at + counts[n];
+    to.vehicle.fill(firstNumber + n, at, end);
+    for (; at < end; at++, row += 4) {
+      to.tMs[at] = wide[row];
+      to.lat[at] = wide[row + 1];
+      to.lon[at] = wide[row + 2];
+      to.speedMs[at] = narrow[2 * row + 6];
+      to.headingDeg[at] = narrow[2 * row + 7];
+    }
+  }
+  to.length = at;
 }
 
 interface Section {
   hashes: BigInt64Array;
   counts: Uint32Array;
-  rows: number;
   wide: Float64Array;
   narrow: Float32Array;
 }
@@ -143,7 +159,6 @@ function sectionsIn(bytes: Uint8Array): Section[] {
     sections.push({
       hashes: new BigInt64Array(buffer, at + HEAD_BYTES, vehicles),
       counts: new Uint32Array(buffer, counts, vehicles),
-      rows,
       wide: new Float64Array(buffer, first, rows * 4),
       narrow: new Float32Array(buffer, first, rows * 8),
     });
@@ -152,13 +167,13 @@ function sectionsIn(bytes: Uint8Array): Section[] {
   return sections;
 }
 
-/** Every hash once, ascending as unsigned numbers: the order in which each section has its own. */
-function unionOf(parts: readonly Section[]): BigInt64Array {
-  const all = new BigUint64Array(parts.reduce((sum, part) => sum + part.hashes.length, 0));
+/** Every hash once, ascending as unsigned numbers: the order in which each list has its own. */
+function unionOf(lists: readonly BigInt64Array[]): BigInt64Array {
+  const all = new BigUint64Array(lists.reduce((sum, list) => sum + list.length, 0));
   let at = 0;
-  for (const { hashes } of parts) {
-    all.set(new BigUint64Array(hashes.buffer, hashes.byteOffset, hashes.length), at);
-    at += hashes.length;
+  for (const list of lists) {
+    all.set(new BigUint64Array(list.buffer, list.byteOffset, list.length), at);
+    at += list.length;
   }
   all.sort();
   const unique = all.filter((hash, i) => i === 0 || hash !== all[i - 1]);
@@ -205,5 +220,7 @@ export function firstSlots(objects: readonly SlottedPings[], wanted: number): { 
 }
 
 function rangesOf(objects: readonly SlottedPings[], from: number, to: number): SlotRange[] {
-  return objects.map(({ name, offsets }) => ({ name, from: offsets[from], to: offsets[to] })).filter((range) => range.to > range.from);
+  return objects
+    .map(({ name, offsets, pings }) => ({ name, from: offsets[from], to: offsets[to], pings: pings.subarray(from, to).reduce((sum, n) => sum + n, 0) }))
+    .filter((range) => range.pings > 0);
 }
