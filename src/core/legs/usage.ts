@@ -3,7 +3,8 @@ import { eastM, northM } from "@/core/geometry/plane";
 import { arcLengths, projectNear } from "@/core/geometry/polyline";
 import { OFFSET_BIN_M } from "@/core/legs/refine";
 import type { StreetGraph } from "@/core/match/graph";
-import { matchTrips, type Chain } from "@/core/match/match-trips";
+import type { Chain } from "@/core/match/chains";
+import { matchTrips } from "@/core/match/match-trips";
 import type { Trips } from "@/core/pings/trips";
 
 /** What matched traffic makes of a draft network. */

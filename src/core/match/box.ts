@@ -12,7 +12,7 @@ export function boxWay(network: Network, leg: number, exit: number): number {
 }
 
 /** The way through a box as a line in the junction's plane: leg's end, a bend, exit's beginning. */
-export function boxLine(network: Network, leg: number, exit: number): Float64Array {
+function boxLine(network: Network, leg: number, exit: number): Float64Array {
   const from = reversed(network.legs[leg].line);
   const to = network.exits[exit].line;
   const n = from.length;

@@ -2,7 +2,7 @@ import { eastM, northM } from "@/core/geometry/plane";
 import { projectPoint } from "@/core/geometry/polyline";
 import type { Box } from "@/core/match/box";
 import type { StreetGraph } from "@/core/match/graph";
-import type { Chain } from "@/core/match/match-trips";
+import type { Chain } from "@/core/match/chains";
 import type { Trips } from "@/core/pings/trips";
 import type { TraversalBuilder } from "@/core/traversals/columns";
 import { createCourse, estimateSpeeds, KNOTS, lastUpTo, smoothForward, timeAt, type Course } from "@/core/traversals/course";

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { createGraph } from "@/core/match/graph";
-import { matchTrips, type Chain } from "@/core/match/match-trips";
+import type { Chain } from "@/core/match/chains";
+import { matchTrips } from "@/core/match/match-trips";
 import { cleanPings } from "@/core/pings/clean";
 import { columnsOf } from "../two-crossings";
 import { at, street } from "./small-street";
