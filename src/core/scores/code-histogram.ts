@@ -40,6 +40,15 @@ export function emptyHistogram({ fine, coarse }: CodeHistogram): void {
   }
 }
 
+/** Makes the coarse bins up to that of the code anew, where a loop has filled the fine ones alone. O(code). */
+export function coarsen({ fine, coarse }: CodeHistogram, mostCode: number): void {
+  for (let bin = 0; bin <= mostCode >> BIN_SHIFT; bin++) {
+    let sum = 0;
+    for (let code = bin * BIN; code < (bin + 1) * BIN; code++) sum += fine[code];
+    coarse[bin] = sum;
+  }
+}
+
 /** Returns 1: what it adds to a count. */
 export function addCode({ fine, coarse }: CodeHistogram, code: number): number {
   fine[code] += 1;

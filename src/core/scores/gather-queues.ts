@@ -1,5 +1,5 @@
 import type { CatalogueIndex } from "./catalogue-index";
-import { CODES, countOf, createHistogram, emptyHistogram, histogramOf, histogramQuantile, COARSE_SHIFT } from "./code-histogram";
+import { CODES, coarsen, countOf, createHistogram, emptyHistogram, histogramOf, histogramQuantile, COARSE_SHIFT } from "./code-histogram";
 import type { DayByJunction } from "./day-by-junction";
 import { fetchQueues } from "./fetch-ahead";
 import type { GatheredScreen, QuarterWindow } from "./gathered";
@@ -15,6 +15,8 @@ interface Slots {
   /** Reach by slot and code. */
   fine: Uint32Array;
   coarse: Uint32Array;
+  /** Greatest code that was counted in fine bins alone; -1 where none was. */
+  mostCode: number;
   /** Observed and spilled time of one day at most, in one number. */
   seconds: Float64Array;
 }
@@ -27,6 +29,7 @@ export function gatherQueues(days: readonly DayByJunction[], index: CatalogueInd
   const slots: Slots = {
     count: most,
     ...createHistogram(most),
+    mostCode: -1,
     // Legs that the catalogue does not list any more come last.
     seconds: new Float64Array(256),
   };
@@ -37,9 +40,11 @@ export function gatherQueues(days: readonly DayByJunction[], index: CatalogueInd
     for (const day of days) addDay(day, junction, first, end, windows, slots, out.spill);
     for (let leg = first; leg < end; leg++) {
       const histogram = histogramOf(slots, leg - first);
+      if (slots.mostCode >= 0) coarsen(histogram, slots.mostCode);
       out.reachP95M[leg] = histogramQuantile(histogram, countOf(histogram), 0.95, reachOfCode);
       emptyHistogram(histogram);
     }
+    slots.mostCode = -1;
   }
 }
 
@@ -78,9 +83,14 @@ function addEntries(day: DayByJunction, { row, from, to, first, end, isWholeWind
     slots.seconds.set(totalsOf(day).seconds.subarray(first, end));
     addSeconds(day, rowFrom, from, slots.seconds, -1);
     addSeconds(day, to, rowTo, slots.seconds, -1);
-  } else addSeconds(day, from, to, slots.seconds, 1);
-  const { ofLeg, reach } = day;
-  const { fine, coarse, count } = slots;
+    countFine(day, from, to, slots);
+  } else {
+    addSeconds(day, from, to, slots.seconds, 1);
+    countReaches(day, from, to, slots);
+  }
+}
+
+function countReaches({ ofLeg, reach }: DayByJunction, from: number, to: number, { fine, coarse, count }: Slots): void {
   for (let k = from; k < to; k++) {
     const code = reach[k];
     if (code === 0 || ofLeg[k] >= count) continue;
@@ -88,4 +98,17 @@ function addEntries(day: DayByJunction, { row, from, to, first, end, isWholeWind
     fine[at] += 1;
     coarse[at >> COARSE_SHIFT] += 1;
   }
+}
+
+/** Fine bins alone: where there are many entries, the coarse ones are made sooner afterwards. */
+function countFine({ ofLeg, reach }: DayByJunction, from: number, to: number, slots: Slots): void {
+  const { fine, count } = slots;
+  let most = slots.mostCode;
+  for (let k = from; k < to; k++) {
+    const code = reach[k];
+    if (code === 0 || ofLeg[k] >= count) continue;
+    fine[ofLeg[k] * CODES + code] += 1;
+    if (code > most) most = code;
+  }
+  slots.mostCode = most;
 }

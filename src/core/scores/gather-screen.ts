@@ -1,6 +1,6 @@
 import { TURNS } from "@/core/types";
 import type { CatalogueIndex } from "./catalogue-index";
-import { createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
+import { coarsen, createHistogram, emptyHistogram, histogramQuantile, type CodeHistogram } from "./code-histogram";
 import { renumberDay, type DayByJunction } from "./day-by-junction";
 import { isMostOf, totalsOf } from "./day-totals";
 import { LEAST_FOR_MEDIAN, LEAST_FOR_P95, rollUp } from "./delay-level";
@@ -28,6 +28,8 @@ interface Gathering {
   sums: EntrySums;
   taken: Taken;
   codes: CodeHistogram;
+  /** Greatest code that was counted in fine bins alone; -1 where none was. */
+  mostCode: number;
   vehicles: DistinctSets;
 }
 
@@ -49,6 +51,7 @@ export function gatherScreen(days: readonly DayByJunction[], index: CatalogueInd
     sums: createSums(),
     taken: { vehicles: 0, delayS: 0 },
     codes: createHistogram(),
+    mostCode: -1,
     vehicles: createDistinctSets(most, ENOUGH_VEHICLES),
   };
   const ordered = [...days].sort((a, b) => a.day - b.day);
@@ -114,7 +117,8 @@ function addDay(gathering: Gathering, day: DayByJunction, junction: number): voi
 }
 
 /** The whole day without what lies outside from..to. */
-function addMostOfDay({ index, isWanted, sums, codes }: Gathering, day: DayByJunction, junction: number, from: number, to: number): void {
+function addMostOfDay(gathering: Gathering, day: DayByJunction, junction: number, from: number, to: number): void {
+  const { index, isWanted, sums, codes } = gathering;
   const totals = totalsOf(day);
   const first = index.junctionOffset[junction];
   for (let u = first; u < index.junctionOffset[junction + 1]; u++) {
@@ -126,7 +130,7 @@ function addMostOfDay({ index, isWanted, sums, codes }: Gathering, day: DayByJun
   const row = day.rowOf[junction];
   subtractEntries(day.passed, startAt(day.passedStart, row, 0), from, isWanted, sums);
   subtractEntries(day.passed, to, startAt(day.passedStart, row, QUARTERS), isWanted, sums);
-  countDelays(day.passed, from, to, isWanted, codes);
+  gathering.mostCode = countDelays(day.passed, from, to, isWanted, codes.fine, gathering.mostCode);
 }
 
 /** Adds the sums to the movements of a junction, to its legs and to itself, as one cluster of each. */
@@ -168,7 +172,10 @@ function closeUnits({ index, out }: Gathering, junction: number): void {
   closeDayOf(out.junctions.delay, junction);
 }
 
-function finishJunction({ index, out, codes, vehicles, sums }: Gathering, junction: number): void {
+function finishJunction(gathering: Gathering, junction: number): void {
+  const { index, out, codes, vehicles, sums } = gathering;
+  if (gathering.mostCode >= 0) coarsen(codes, gathering.mostCode);
+  gathering.mostCode = -1;
   const first = index.junctionOffset[junction];
   const count = out.junctions.delay.base[junction];
   if (count >= LEAST_FOR_MEDIAN) out.medianS[junction] = histogramQuantile(codes, count, 0.5, delayOfCode);

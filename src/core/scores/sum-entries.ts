@@ -68,15 +68,19 @@ export function subtractEntries(passed: Uint32Array, from: number, to: number, i
   }
 }
 
-/** Adds the delays of the passages from..to of wanted movements to the histogram, and nothing to any sum. O(to - from). */
-export function countDelays(passed: Uint32Array, from: number, to: number, isWanted: Uint8Array, { fine, coarse }: CodeHistogram): void {
+/**
+ * Adds the delays of the passages from..to of wanted movements to the fine bins of a histogram, and nothing to any sum.
+ * Returns the greatest code met, or `mostCode` where that is greater: up to it the coarse bins must be made. O(to - from).
+ */
+export function countDelays(passed: Uint32Array, from: number, to: number, isWanted: Uint8Array, fine: Uint32Array, mostCode: number): number {
+  let most = mostCode;
   for (let i = from; i < to; i++) {
     const word = passed[i];
-    const times = isWanted[numberOf(word)];
     const code = delayCodeOf(word);
-    fine[code] += times;
-    coarse[code >> COARSE_SHIFT] += times;
+    fine[code] += isWanted[numberOf(word)];
+    if (code > most) most = code;
   }
+  return most;
 }
 
 /** What one movement has had since the last time: vehicles and their seconds of delay, of one day at most. */
