@@ -87,9 +87,19 @@ export function formatDay(isoDate: string, locale: string): string {
   return new Intl.DateTimeFormat(locale, { dateStyle: "long", timeZone: "UTC" }).format(new Date(`${isoDate}T00:00:00Z`));
 }
 
+const rangeFormats = new Map<string, Intl.DateTimeFormat>();
+
+function rangeFormatOf(locale: string): Intl.DateTimeFormat {
+  const kept = rangeFormats.get(locale);
+  if (kept) return kept;
+  const made = new Intl.DateTimeFormat(locale, { day: "numeric", month: "long", year: "numeric", timeZone: "UTC" });
+  rangeFormats.set(locale, made);
+  return made;
+}
+
 export function formatDayRange(first: string, last: string, locale: string): string {
   if (first === last) return formatDay(first, locale);
-  const format = new Intl.DateTimeFormat(locale, { day: "numeric", month: "long", year: "numeric", timeZone: "UTC" });
+  const format = rangeFormatOf(locale);
   // Intl sets a thin space round its dash in some versions; words are plainer and the same everywhere.
   const [from, to] = [first, last].map((date) => new Date(`${date}T00:00:00Z`));
   const parts = format.formatRangeToParts(from, to);
