@@ -15,20 +15,23 @@ const MOST_SHIFT_M = 15;
 export function placeBoxEdges(legs: Leg[], exits: Exit[]): { legs: Leg[]; exits: Exit[] } {
   const shifts = exits.map((exit) => edgeShift(exit, legs.filter((leg) => leg.junction === exit.junction)));
   const movedExits = exits.map((exit, i) => {
-    if (shifts[i] === 0 || exit.lengthM - shifts[i] < LEAST_LENGTH_M) return exit;
+    if (shifts[i] === 0 || isTooShort(exit.lengthM, shifts[i])) return exit;
     const line = slice(exit.line, shifts[i], exit.lengthM);
     return { ...exit, line, lengthM: lengthOf(line) };
   });
   const movedLegs = legs.map((leg) => {
     const shift = leg.upstreamExit >= 0 ? shifts[leg.upstreamExit] : 0;
     const isFixed = leg.locked || leg.origin !== "derived";
-    if (shift === 0 || isFixed || leg.lengthM - shift < LEAST_LENGTH_M) return leg;
+    if (shift === 0 || isFixed || isTooShort(leg.lengthM, shift)) return leg;
     const line = slice(leg.line, 0, leg.lengthM - shift);
     const lengthM = lengthOf(line);
     return { ...leg, line, lengthM, storageM: leg.storageM === leg.lengthM ? lengthM : leg.storageM };
   });
   return { legs: movedLegs, exits: movedExits };
 }
+
+/** What is short already may grow, but not shrink. */
+const isTooShort = (lengthM: number, shift: number): boolean => shift > 0 && lengthM - shift < LEAST_LENGTH_M;
 
 /** How far an exit's beginning has to move outwards along its line, m. */
 function edgeShift(exit: Exit, legs: Leg[]): number {

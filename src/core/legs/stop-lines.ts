@@ -21,6 +21,8 @@ const TO_M = 18;
 const STEP_M = 0.5;
 /** Half a car and the gap that drivers leave to the line, m. */
 const STANDS_BEFORE_M = 3;
+/** No leg is made shorter than this, m. */
+const LEAST_LENGTH_M = 20;
 
 /** Log density of a standing place at a distance behind the first vehicle's, by fade: index (distance - TABLE_FROM_M) / STEP_M. */
 const TABLES = FADES.map(logDensity);
@@ -85,7 +87,7 @@ function outM(leg: Leg): number {
 }
 
 function moved(leg: Leg, shift: number, stopLineOrigin: Leg["stopLineOrigin"]): Leg {
-  if (leg.lengthM - shift < 20) return leg;
+  if (shift > 0 && leg.lengthM - shift < LEAST_LENGTH_M) return leg;
   const line = slice(leg.line, shift, leg.lengthM);
   return { ...leg, line, lengthM: lengthOf(line), bearingDeg: legBearingDeg(line), stopLineOrigin };
 }

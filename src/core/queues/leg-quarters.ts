@@ -6,7 +6,7 @@ import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS, type QueueOptions } from "./options"
 import { presenceByLeg, quartersSeen, type Presence } from "./presence";
 import { quarterFigures, type QuarterFigures } from "./quarter-figures";
 import { findStandings, standingsByLeg, type Standings } from "./standings";
-import { seenPerMetre } from "./unseen-tail";
+import { columnOptions, seenPerMetre } from "./unseen-tail";
 
 /**
  * Queue of each leg in each quarter of an hour (UTC; every city clock is off by whole quarters) in which the sample
@@ -46,7 +46,7 @@ export function quartersOfLegs(network: Network, { standings, presence, perMetre
       standings,
       standingFrom: offset[leg],
       standingTo: offset[leg + 1],
-      tails: joinedTails(standings, offset[leg], offset[leg + 1], chosen),
+      tails: joinedTails(standings, offset[leg], offset[leg + 1], columnOptions(chosen, perMetre[leg])),
       tailFrom: 0,
       presence,
       presenceAll: presence.offset[leg],

@@ -3,7 +3,7 @@ import { tailAt, type TailSpan } from "./joined-tails";
 import { QUARTER_MS, type QueueOptions } from "./options";
 import type { Presence } from "./presence";
 import type { Standings } from "./standings";
-import { expectedBehindM, longestBehindM, tailGrowthMs } from "./unseen-tail";
+import { columnOptions, expectedBehindM, longestBehindM, tailGrowthMs } from "./unseen-tail";
 
 /** From fewer vehicles than this the flow is known too badly to tell by how much it may exceed its mean. */
 const LEAST_OTHERS = 5;
@@ -55,7 +55,8 @@ export type MomentVisitor = (tMs: number, reachM: number, tail: Readonly<Tail>) 
  * Visits the quarter that begins at `startMs` every `stepS`, in the middle of each step, while a vehicle can speak and
  * any stands or is remembered; returns the seconds for which one can speak. O(moments × standing²).
  */
-export function eachMoment(leg: LegView, startMs: number, options: QueueOptions, scratch: Scratch, visit: MomentVisitor): number {
+export function eachMoment(leg: LegView, startMs: number, given: QueueOptions, scratch: Scratch, visit: MomentVisitor): number {
+  const options = columnOptions(given, leg.perMetre);
   const endMs = startMs + QUARTER_MS;
   const others = othersAround(leg, startMs);
   const growthMs = tailGrowthMs(others.perSecond, leg.perMetre, options);

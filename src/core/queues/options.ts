@@ -9,6 +9,9 @@ export interface QueueOptions {
   headM: number;
   /** each next one at most this far behind, */
   gapM: number;
+  /** both where all vehicles are seen: cars, lorries and the gaps that they leave; */
+  headAllM: number;
+  gapAllM: number;
   /** and all were standing within this time. */
   memoryS: number;
   /** Who stood this long and moved up meanwhile is in a queue, whoever else was seen: nobody gives way for so long. */
@@ -39,6 +42,8 @@ export const DEFAULT_QUEUE_OPTIONS: Readonly<QueueOptions> = Object.freeze({
   minStopS: 2,
   headM: 100,
   gapM: 120,
+  headAllM: 60,
+  gapAllM: 40,
   memoryS: 40,
   queuingS: 60,
   pastLineM: 8,

@@ -3,7 +3,7 @@ import type { LegView } from "./moments";
 import type { QueueOptions } from "./options";
 import { quartersSeen, speaksUntil, type Presence } from "./presence";
 import { addStandings, standingsOf, stopsOfTrack, type Standing, type TrackColumns } from "./standings";
-import { seenPerMetre } from "./unseen-tail";
+import { columnOptions, seenPerMetre } from "./unseen-tail";
 
 /** A vehicle has left the leg where it is this far past the stop line: nobody stands there. */
 const LEFT_M = -15;
@@ -37,7 +37,7 @@ export function viewOfTracks(tracks: TrackColumns, from: number, to: number, sto
   const [perMetre] = seenPerMetre(standings, Uint32Array.of(0, standings.length), options);
   return {
     storageM, perMetre, standings, standingFrom: 0, standingTo: standings.length,
-    tails: joinedTails(standings, 0, standings.length, options), tailFrom: 0,
+    tails: joinedTails(standings, 0, standings.length, columnOptions(options, perMetre)), tailFrom: 0,
     presence, presenceAll: 0, presenceFrom: 0, presenceTo: spans.length, seenQuarters: quartersSeen(presence),
   };
 }

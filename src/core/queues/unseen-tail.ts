@@ -72,3 +72,18 @@ export function expectedBehindM(standings: Standings, k: number, tMs: number, gr
 export function longestBehindM(behindM: number, mostM: number, options: QueueOptions): number {
   return Math.min(mostM, behindM + Math.sqrt((behindM * options.jamSpacingM) / ASSUMED_LANES));
 }
+
+/**
+ * Options of one leg's column. Between seen vehicles of a column that hangs together, gaps are spread exponentially with
+ * mean 1 / `perMetre`; the widest that counts is the one that a gap stays below 99 times in 100, within the limits for
+ * a few vehicles (`gapM`, `headM`) and for all of them.
+ */
+export function columnOptions(options: QueueOptions, perMetre: number): QueueOptions {
+  if (!(perMetre > 0)) return options;
+  const widestM = Math.log(100) / perMetre;
+  return {
+    ...options,
+    gapM: Math.min(options.gapM, Math.max(options.gapAllM, widestM)),
+    headM: Math.min(options.headM, Math.max(options.headAllM, widestM)),
+  };
+}

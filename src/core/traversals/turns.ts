@@ -9,7 +9,7 @@ export const AS_STRAIGHT_SPARSE_DEG = 8;
 const MORE_TRAFFIC = 4;
 
 /**
- * Signed turns and their names from one leg to each exit of its junction: the straightest exit within 45 degrees is
+ * Signed turns and their names from one leg to each exit of its junction: the straightest exit within 50 degrees is
  * through. `traffic` are trips from the leg to each exit, where known.
  */
 export function nameTurns(

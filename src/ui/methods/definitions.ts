@@ -28,7 +28,7 @@ export const DEFINITIONS: readonly Definition[] = [
     term: "Traversal",
     meaning: [
       `One vehicle passing one junction: from the cordon ${CROSSING.cordonUpM} m before the stop line, or the upstream junction where that is nearer, to ${CROSSING.cordonDownM} m past the junction, never beyond half-way to the next.`,
-      `Pings of a vehicle are put in order; steps that imply more than ${kmh(CLEANING.maxSpeedMs)} km/h are dropped; a silence of more than ${CLEANING.maxGapS} s ends a trip. Each trip is matched as a whole to the most likely path over legs and links that were learned from all pings, without an outside street map. A trip that begins or ends at the junction, or leaves the street before it, is counted but not scored.`,
+      `Pings of a vehicle are put in order; steps that imply more than ${kmh(CLEANING.maxSpeedMs)} km/h are dropped; a silence of more than ${CLEANING.maxGapS} s ends a trip. Each trip is matched as a whole to the most likely path over legs and links that were learned from all pings, without an outside street map; a step that led over streets which are not known breaks the path. A trip that begins or ends at the junction, or leaves the street before it, is counted but not scored.`,
       `Times at cordon, stop line and exit are interpolated along the path; the stop line is judged ${CROSSING.virtualLineM} m past it, where nobody stands.`,
     ],
     source: "Hidden Markov map matching: Newson and Krumm, ACM SIGSPATIAL GIS 2009. Monotone interpolation: Fritsch and Carlson, SIAM Journal on Numerical Analysis 17, 1980.",
@@ -36,7 +36,7 @@ export const DEFINITIONS: readonly Definition[] = [
   {
     id: "turn",
     term: "Turning movement",
-    meaning: ["A leg and an exit of the same junction. The exit that lies straightest ahead, within 45 degrees, is through; 155 degrees and more is a U-turn; the others are left or right by the sign of the angle."],
+    meaning: ["A leg and an exit of the same junction. The exit that lies straightest ahead, within 50 degrees, is through; 155 degrees and more is a U-turn; the others are left or right by the sign of the angle. The directions of leg and exit are the mean headings of the vehicles there, within 45 m of the junction."],
   },
   {
     id: "delay",
@@ -65,7 +65,7 @@ export const DEFINITIONS: readonly Definition[] = [
     id: "reach",
     term: "Reach, observed",
     meaning: [
-      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last, and they stood within ${QUEUE.memoryS} s of each other. Who stood for ${QUEUE.queuingS} s and moved up meanwhile belongs to it, whoever else was seen. Vehicles whose pings end in the queue count with the stops after which they drove on. Vehicles that wait inside the junction behind are not this leg’s queue.`,
+      `How far back from the stop line the tail of the queue stood. Vehicles that stand form one column as long as the first is within ${QUEUE.headM} m of the stop line, each next one within ${QUEUE.gapM} m of the last (within less, down to ${QUEUE.headAllM} and ${QUEUE.gapAllM} m, where much of the traffic is seen), and they stood within ${QUEUE.memoryS} s of each other. Who stood for ${QUEUE.queuingS} s and moved up meanwhile belongs to it, whoever else was seen. Vehicles whose pings end in the queue count with the stops after which they drove on. Vehicles that wait inside the junction behind are not this leg’s queue.`,
       "The figure is the 95th percentile of the farthest reach in each quarter of an hour. With a few per cent of the vehicles seen, the last one seen is seldom the last one: the true tail stands farther back.",
     ],
   },

@@ -46,6 +46,14 @@ describe("stop lines of a junction", () => {
     expect(east.lengthM).toBeCloseTo(100 + 14 - east.line[0], 6);
   });
 
+  it("lengthen a leg of 10 m to where its vehicles stand, but shorten none to less than 20 m", () => {
+    const short = { ...legs[0], line: Float64Array.of(0, -14, 0, -24), lengthM: 10 };
+    // At 7 m from the junction instead of 14 m, see above.
+    expect(placeStopLines([short], { heads: [headsOf(-4)] }, new Set())[0].lengthM).toBeCloseTo(17, 0);
+    const medium = { ...legs[0], line: Float64Array.of(0, -14, 0, -38), lengthM: 24 };
+    expect(placeStopLines([medium], { heads: [headsOf(11)] }, new Set())[0].lengthM).toBe(24);
+  });
+
   it("stay where nobody stood at the junction, or the leg is locked", () => {
     expect(placeStopLines(legs, { heads: [[], []] }, new Set())).toEqual(legs);
     const locked = { ...legs[1], locked: true };

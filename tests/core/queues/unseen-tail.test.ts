@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { legQuarters } from "@/core/queues/leg-quarters";
 import { DEFAULT_QUEUE_OPTIONS, QUARTER_MS } from "@/core/queues/options";
 import { findStandings } from "@/core/queues/standings";
-import { expectedBehindM, longestBehindM, tailGrowthMs } from "@/core/queues/unseen-tail";
+import { columnOptions, expectedBehindM, longestBehindM, tailGrowthMs } from "@/core/queues/unseen-tail";
 import { oneLeg, passing, stopping, traversalsOf } from "./one-leg";
 
 const START = 1000 * QUARTER_MS;
@@ -29,6 +29,16 @@ describe("the unseen end of a queue", () => {
     expect(longestBehindM(30.48, 200, DEFAULT_QUEUE_OPTIONS)).toBeCloseTo(30.48 + (Math.sqrt(8) * 7.62) / 2, 9);
     expect(longestBehindM(30.48, 32, DEFAULT_QUEUE_OPTIONS)).toBe(32);
     expect(longestBehindM(0, 200, DEFAULT_QUEUE_OPTIONS)).toBe(0);
+  });
+
+  it("may be as far off as chance leaves between seen vehicles, 99 times in 100", () => {
+    const widest = (perMetre: number) => columnOptions(DEFAULT_QUEUE_OPTIONS, perMetre);
+    // One seen vehicle in 14 m: 4.605 x 14 = 64.5 m. In 100 m: more than the limits. All vehicles of one lane, one in 7.62 m: the least gap.
+    expect(widest(1 / 14).gapM).toBeCloseTo(64.5, 1);
+    expect(widest(1 / 14).headM).toBeCloseTo(64.5, 1);
+    expect(widest(1 / 100)).toMatchObject({ gapM: 120, headM: 100 });
+    expect(widest(1 / 7.62)).toMatchObject({ gapM: 40, headM: 60 });
+    expect(columnOptions(DEFAULT_QUEUE_OPTIONS, NaN)).toBe(DEFAULT_QUEUE_OPTIONS);
   });
 
   it("is no more than expected where hardly anybody else was seen", () => {
