@@ -179,7 +179,7 @@ function createDraw() {
     for (let w = 0; w < 8; w++) {
       const k = Math.imul(words[w], 0xcc9e2d51);
       h ^= Math.imul((k << 15) | (k >>> 17), 0x1b873593);
-      h = Math.imul((h << 13) | (h >>> 19), 5) + 0xe6546b64;
+      h = (Math.imul((h << 13) | (h >>> 19), 5) + 0xe6546b64) | 0;
     }
     h = Math.imul(h ^ (h >>> 16), 0x85ebca6b);
     h = Math.imul(h ^ (h >>> 13), 0xc2b2ae35);
