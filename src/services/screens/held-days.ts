@@ -106,7 +106,8 @@ async function readDays(db: Db, held: Held, missing: readonly SlicesOfDay[], cat
   const query = `select id, payload from screen_days where id in (${[...dayOf.keys()].join(",")}) order by day`;
   for await (const { key, bytes } of readBlobs(poolOf(db), query)) {
     const { day, ids } = dayOf.get(key) as SlicesOfDay;
-    const slices = [...(waiting.get(day) ?? []), decodeScreenDay(bytes)];
+    // Who waits for others of its day needs bytes of its own.
+    const slices = [...(waiting.get(day) ?? []), decodeScreenDay(ids.length > 1 ? bytes.slice() : bytes)];
     waiting.set(day, slices);
     if (slices.length < ids.length) continue;
     waiting.delete(day);
