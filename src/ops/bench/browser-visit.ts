@@ -1,6 +1,7 @@
 import { readFileSync } from "node:fs";
 import { chromium, type Browser, type BrowserContext, type CDPSession, type Page } from "@playwright/test";
 import type { Role } from "@/domain/actor";
+import { ensureChromium } from "../setup/chromium.mjs";
 import { SESSION_COOKIE, type Product } from "./product";
 
 /** Debian's; WebGL by software, as in the browser tests, and nothing that phones home. */
@@ -43,6 +44,7 @@ export interface Visit {
 }
 
 export async function openBrowser(): Promise<Browser> {
+  await ensureChromium();
   return chromium.launch({ executablePath: CHROMIUM, args: FLAGS });
 }
 
