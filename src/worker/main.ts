@@ -1,3 +1,4 @@
+import { constants, setPriority } from "node:os";
 import { openDatabase } from "@/db/client";
 import { env, keepsMail, smtpUrl } from "@/env";
 import { openQueue } from "@/jobs/queue";
@@ -13,6 +14,8 @@ import { runJobs } from "./run-jobs";
 const CONNECTIONS_PER_JOB = 4;
 
 const settings = env();
+// On a machine that also serves pages, people go first.
+setPriority(constants.priority.PRIORITY_BELOW_NORMAL);
 const database = openDatabase(settings.DATABASE_URL, { max: handlers.length * settings.WORKER_CONCURRENCY * CONNECTIONS_PER_JOB });
 const queue = openQueue(database.db);
 const keptFolder = keepsMail(settings) ? keptMailFolder(settings.DATA_DIR) : null;
