@@ -111,7 +111,7 @@ describe("ingest", () => {
     // A day has 1,440 minutes, and no more columns are drawn.
     expect(lines[0].split(",")[7]).toBe("cell_width_s");
     expect(new Set(lines.slice(1, -1).map((line) => line.split(",")[7]))).toEqual(new Set(["60"]));
-    // All of it is one day: a cell with one vehicle would be a piece of that vehicle's path.
+    // A cell with one vehicle would be a piece of that vehicle's path.
     expect(lines[0].split(",")[5]).toBe("vehicles_seen");
     expect(lines.length).toBeGreaterThan(2);
     for (const line of lines.slice(1, -1)) {

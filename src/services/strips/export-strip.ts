@@ -31,10 +31,10 @@ const HEADER = [
   "least_vehicles_in_a_cell",
 ];
 
-/** On a single day a cell of one vehicle is a piece of that vehicle's path: exports hold aggregates. */
-const LEAST_VEHICLES_OF_A_DAY = 2;
+/** A cell of one vehicle is a piece of that vehicle's path: exports hold aggregates. */
+const LEAST_VEHICLES = 2;
 
-/** The cells of a strip as the page draws them, one row each; cells in which nobody, or on one day one vehicle, was seen are left out. */
+/** The cells of a strip as the page draws them, one row each; cells in which fewer than two vehicles were seen are left out. */
 export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>): Promise<AsyncGenerator<string>> {
   requirePermission(ctx, "strip.export");
   const { query } = GetTracks.parse(input);
@@ -47,10 +47,9 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
   const strip = createStrip(specOfWindow(window, cellS, query.cellM, waveKmh === null ? Infinity : waveKmh / 3.6));
   addTracks(strip, set);
   const speeds = speedsOf(strip);
-  const leastVehicles = query.day !== undefined || view.days.length <= 1 ? LEAST_VEHICLES_OF_A_DAY : 1;
   function* rows(): Generator<Cell[]> {
     for (let cell = 0; cell < speeds.length; cell++) {
-      if (strip.vehicles[cell] < leastVehicles) continue;
+      if (strip.vehicles[cell] < LEAST_VEHICLES) continue;
       const { tS, sM } = cellCentre(strip.spec, cell);
       yield [
         Math.round(tS * 10) / 10,
@@ -69,7 +68,7 @@ export async function exportStrip(ctx: Context, input: z.input<typeof GetTracks>
         query.day ?? view.basis.firstDate,
         query.day ?? view.basis.lastDate,
         view.basis.methodVersion,
-        leastVehicles,
+        LEAST_VEHICLES,
       ];
     }
   }

@@ -89,8 +89,8 @@ function TakeAlong({ drawn, words, caption }: { drawn: DrawnStrip; words: StripW
           Save cells as CSV
         </ButtonLink>
       ) : null}
-      {mayExport && (query.day !== undefined || view.days.length <= 1) ? (
-        <p className="max-w-56 self-center text-sm leading-tight text-ink-soft">Of a single day, cells with fewer than two vehicles are left out of the CSV.</p>
+      {mayExport ? (
+        <p className="max-w-56 self-center text-sm leading-tight text-ink-soft">Cells with fewer than two vehicles are left out of the CSV.</p>
       ) : null}
       {failure ? (
         <p role="alert" className="w-full text-sm text-tail">
