@@ -20,6 +20,9 @@ export const EVIDENCE_RULES: readonly EvidenceRule[] = [
 /** No grade asks for more distinct vehicles. */
 export const ENOUGH_VEHICLES = Math.max(...EVIDENCE_RULES.map((rule) => rule.distinctVehicles));
 
+/** Fewer vehicles have no grade: they say nothing about a mean. */
+export const LEAST_VEHICLES = Math.min(...EVIDENCE_RULES.map((rule) => rule.vehicles));
+
 /** How far the sample supports a mean delay. */
 export function evidenceOf(sample: { vehicles: number; distinctVehicles: number; days: number; delay: Estimate }): Evidence {
   const half = (sample.delay.high - sample.delay.low) / 2;

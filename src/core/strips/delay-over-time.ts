@@ -2,7 +2,7 @@ import { meanIntervals } from "@/core/scores/mean-intervals";
 import { addToTally, clustersFor, closeDay, createTally } from "@/core/scores/ratio-tally";
 import type { TrackSet } from "./track-set";
 
-/** Mean control delay in even steps of local time; NaN where nobody passed or one vehicle says nothing about a mean. */
+/** Mean control delay in even steps of local time; NaN where nobody passed. */
 export interface DelayOverTime {
   fromS: number;
   stepS: number;

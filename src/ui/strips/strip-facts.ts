@@ -4,7 +4,7 @@ import { wilsonInterval } from "@/core/stats/wilson-interval";
 import type { Evidence } from "@/core/types";
 import type { LegStripView, MovementView } from "@/domain/junction";
 import { estimateView, type EstimateView } from "@/domain/estimate";
-import { withoutSingles, type StripPicture } from "./strip-picture";
+import { withoutFew, type StripPicture } from "./strip-picture";
 
 /** What stands under a strip. Null where the sample cannot say. */
 export interface StripFacts {
@@ -58,7 +58,7 @@ export function daysSeen({ set, include, window }: Pick<StripPicture, "set" | "i
 /** Of a single day: read off its own tracks by the same methods. */
 export function dayFacts(view: LegStripView, picture: StripPicture, reaches: DayReaches, crossingS: Float32Array): StripFacts {
   const { window, set, include } = picture;
-  const whole = withoutSingles(delayOverTime(set, crossingS, window.fromS, window.toS, window.toS - window.fromS, include));
+  const whole = withoutFew(delayOverTime(set, crossingS, window.fromS, window.toS, window.toS - window.fromS, include));
   const reached = Array.from(reaches.reachM).filter((reach) => reach >= 0);
   const spill = view.leg.storageM === null ? NaN : spillShare(reaches, view.leg.storageM);
   // A queue lasts: a quarter of an hour of sight counts as one observation, as in the scores.

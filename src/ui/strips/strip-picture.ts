@@ -1,5 +1,6 @@
 import { fullFromM } from "@/core/queues/full-from";
 import { DEFAULT_QUEUE_OPTIONS } from "@/core/queues/options";
+import { LEAST_VEHICLES } from "@/core/scores/evidence";
 import { drawableCellS } from "@/core/strips/cell-width";
 import { addTracks } from "@/core/strips/add-tracks";
 import { delayOverTime, type DelayOverTime } from "@/core/strips/delay-over-time";
@@ -105,7 +106,7 @@ export function buildPicture({ view, query, set, include, crossingS, reaches }: 
     freeMs,
     tail: tailLine(reaches, columnS),
     full: fullColumns(reaches, columnS, view.leg.storageM),
-    delay: withoutSingles(delayOverTime(set, crossingS, window.fromS, window.toS, delayStepS(vehicles, window), include)),
+    delay: withoutFew(delayOverTime(set, crossingS, window.fromS, window.toS, delayStepS(vehicles, window), include)),
     delayByRowS: delayByRow(strip, referencePace(set, include, view.movements, freeMs)),
     storageM: view.leg.storageM,
     hasPaths: query.paths === "shown",
@@ -118,8 +119,8 @@ function fullColumns(reaches: DayReaches, columnS: number, storageM: number | nu
   return Uint8Array.from(reachM, (tailM) => (tailM >= fromM ? 1 : 0));
 }
 
-/** One vehicle says nothing about a mean: its step has a number of vehicles and no figure. */
-export function withoutSingles(delay: DelayOverTime): DelayOverTime {
-  const [meanS, lowS, highS] = [delay.meanS, delay.lowS, delay.highS].map((values) => values.map((value, k) => (delay.vehicles[k] > 1 ? value : NaN)));
+/** Vehicles too few for any grade of evidence say nothing about a mean: their step has a number of vehicles and no figure. */
+export function withoutFew(delay: DelayOverTime): DelayOverTime {
+  const [meanS, lowS, highS] = [delay.meanS, delay.lowS, delay.highS].map((values) => values.map((value, k) => (delay.vehicles[k] >= LEAST_VEHICLES ? value : NaN)));
   return { ...delay, meanS, lowS, highS };
 }

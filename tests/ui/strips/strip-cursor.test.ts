@@ -21,16 +21,16 @@ const set = setOf([
   { day: 2, movement: 2, delayS: 10, points: [[57_900, 200], [57_918, -40]] },
 ]);
 
-function pictureOf(params: Record<string, string>) {
+function pictureOf(params: Record<string, string>, tracks = set) {
   const query = stripQueryFromParams(params);
   const { fromS, toS } = windowOfView(view);
   return buildPicture({
     view,
     query,
-    set,
-    include: includeTurn(set, view.movements, query.turn),
-    crossingS: crossingTimes(set),
-    reaches: reachOfDays(set, fromS, toS, 180),
+    set: tracks,
+    include: includeTurn(tracks, view.movements, query.turn),
+    crossingS: crossingTimes(tracks),
+    reaches: reachOfDays(tracks, fromS, toS, 180),
   });
 }
 
@@ -41,12 +41,18 @@ describe("read-out", () => {
   // Column of 16:02, lowest row.
   const cell = 2;
 
-  it("says time, distance, speed, vehicles, days, tail and delay", () => {
+  it("says time, distance, speed, vehicles, days and tail, and no mean delay of three vehicles", () => {
     const text = readOut(picture, cell, words);
     expect(text.where).toBe("16:03, 25 m");
     expect(text.cell).toMatch(/^\d+ km\/h, 2 vehicles, 2 days$/);
     expect(text.tail).toMatch(/^tail at 25 m/);
-    expect(text.delay).toMatch(/^delay \d+ s/);
+    expect(text.delay).toBeNull();
+  });
+
+  it("says the mean delay of ten vehicles", () => {
+    const ten = setOf([1, 2].flatMap((day) => Array.from({ length: 5 }, () => ({ day, movement: 1, delayS: 58 + 2 * day, points: [[57_705, 200], [57_785, -40]] as [number, number][] }))));
+    // Five of 60 s and five of 62 s.
+    expect(readOut(pictureOf({ shape: "rectangles", cellM: "50", cellS: "60" }, ten), cell, words).delay).toMatch(/^delay 61 s \(/);
   });
 
   it("says when nobody was seen, in one line for those who listen", () => {

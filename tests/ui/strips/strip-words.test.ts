@@ -6,7 +6,7 @@ import { delayTicks, delayTop, losBands, runsOf, spreadUpwards } from "@/ui/stri
 import { wrapWords } from "@/ui/strips/draw-lines";
 import { factsText } from "@/ui/strips/facts-text";
 import { daysSeen, pooledStopShare, typicalFacts } from "@/ui/strips/strip-facts";
-import { withoutSingles } from "@/ui/strips/strip-picture";
+import { withoutFew } from "@/ui/strips/strip-picture";
 import { captionOf, cellsPhrase, legTitle, shapePhrase, weekdayPhrase } from "@/ui/strips/strip-phrases";
 import { referenceSentence } from "@/ui/strips/reference-words";
 import { figuresParams, tracksParams } from "@/ui/strips/queries";
@@ -102,11 +102,11 @@ describe("axis of the delay", () => {
   });
 });
 
-describe("one vehicle", () => {
-  it("says nothing about a mean", () => {
+describe("vehicles too few for any grade of evidence", () => {
+  it("say nothing about a mean", () => {
     const values = Float64Array.of(5, 6, 7);
-    const { vehicles, meanS, highS } = withoutSingles({ fromS: 0, stepS: 900, vehicles: Uint32Array.of(2, 1, 0), meanS: values, lowS: values, highS: values });
-    expect([[...vehicles], [...meanS], [...highS]]).toEqual([[2, 1, 0], [5, NaN, NaN], [5, NaN, NaN]]);
+    const { vehicles, meanS, highS } = withoutFew({ fromS: 0, stepS: 900, vehicles: Uint32Array.of(10, 9, 2), meanS: values, lowS: values, highS: values });
+    expect([[...vehicles], [...meanS], [...highS]]).toEqual([[10, 9, 2], [5, NaN, NaN], [5, NaN, NaN]]);
   });
 });
 
