@@ -5,7 +5,7 @@ import type { Exit, Leg } from "@/core/types";
 /** A leg and an exit of one junction whose bearings are this near to opposite share an arm. */
 const SAME_ARM_DEG = 35;
 const LEAST_LENGTH_M = 25;
-const MOST_SHIFT_M = 15;
+const MOST_SHIFT_M = 45;
 
 /**
  * Lets every exit begin abreast of the stop line of the leg on the same arm, where the junction's box ends, else at

@@ -1,3 +1,4 @@
+import { angleBetweenDeg } from "@/core/geometry/angles";
 import { projectPoint } from "@/core/geometry/polyline";
 import { draftExit, draftLeg, nearestBearing, seenFrom } from "@/core/legs/draft";
 import type { Frame } from "@/core/legs/frame";
@@ -8,6 +9,8 @@ import type { Exit, Leg } from "@/core/types";
 
 /** How far the bearings of a leg's upstream end and of an exit may differ to be one street. */
 const SAME_STREET_DEG = 30;
+/** Streets to two junctions that leave this far apart are two. */
+const APART_DEG = 18;
 /** A trace that stopped short may be prolonged straight by this much to the next junction, m. */
 const PROLONG_M = 350;
 /** Two traces of one street lie this near to each other, m. */
@@ -42,7 +45,8 @@ export function joinArms(arms: Arm[], frame: Frame): Joined {
 function hangLeg(joined: Joined, leg: Leg, upstream: number, frame: Frame): void {
   const line = seenFrom(frame, leg.line, leg.junction, upstream);
   const made = draftExit(frame, upstream, line, leg.support);
-  const exit = exitLike(joined, upstream, made.bearingDeg);
+  const like = exitLike(joined, upstream, made.bearingDeg);
+  const exit = like >= 0 && leadsElsewhere(joined, like, leg.junction, made) ? -1 : like;
   if (exit < 0) {
     joined.exits.push(made);
     leg.upstreamExit = joined.exits.length - 1;
@@ -71,6 +75,12 @@ function feedLeg(joined: Joined, exit: number, downstream: number, frame: Frame)
 function leadsAlong(line: Float64Array, own: Float64Array): boolean {
   const { offset } = projectPoint(line, own[own.length - 2], own[own.length - 1]);
   return Math.abs(offset) <= ASIDE_M;
+}
+
+/** Whether an exit already feeds a leg of another junction, and its street leaves in a direction of its own. */
+function leadsElsewhere(joined: Joined, exit: number, downstream: number, made: Exit): boolean {
+  const isOther = joined.legs.some((leg) => leg.upstreamExit === exit && leg.junction !== downstream);
+  return isOther && angleBetweenDeg(joined.exits[exit].bearingDeg, made.bearingDeg) > APART_DEG;
 }
 
 function exitLike(joined: Joined, junction: number, bearing: number): number {

@@ -41,7 +41,7 @@ export function learnFromTrips(
   const relinked = relinkBroken(first, firstUsage, draft.carried, frame);
   const network = relinked ?? first;
   const usage = relinked ? measureUsage(trips, createGraph(relinked)) : firstUsage;
-  const kept = faceTraffic(keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried, trips.medianIntervalS), usage, draft.carried);
+  const kept = faceTraffic(keepUsed(refineDraft(network, usage, draft.carried, frame), usage, draft.carried, trips.medianIntervalS), network, usage, draft.carried);
   const exits = settleIds(kept.exits, draft.carried);
   const legs = noteDoubts(settleNames(settleIds(kept.legs, draft.carried)));
   const tripsBetween = (leg: number, exit: number): number =>

@@ -45,7 +45,7 @@ export function keepUsed(draft: Network, usage: Usage, carried: Set<string>, int
   const exitNow = new Int32Array(draft.exits.length).fill(-1);
   exitFrom.forEach((from, n) => (exitNow[from] = n));
   const free = estimateFreeSpeeds(draft, usage.speeds);
-  const placed = placeStopLines(draft.legs, usage, carried);
+  const placed = placeStopLines(draft.legs, draft.exits, usage, carried);
   const legs = legFrom.map((i) => {
     const leg = placed[i];
     const isCarried = carried.has(leg.id);

@@ -1,7 +1,8 @@
+import { angleBetweenDeg } from "@/core/geometry/angles";
 import { lengthOf, slice } from "@/core/geometry/polyline";
 import { legBearingDeg } from "@/core/legs/draft";
 import type { Usage } from "@/core/legs/usage";
-import type { Leg } from "@/core/types";
+import type { Exit, Leg } from "@/core/types";
 
 /** Passages with a stand that a leg needs for a stop line of its own. */
 const LEAST_HEADS = 8;
@@ -18,6 +19,10 @@ const RANGE_M = 200;
 const TABLE_FROM_M = -40;
 const FROM_M = -15;
 const TO_M = 18;
+/** Another arm this near, and no nearer, to a leg's own meets it at a sharp angle: then the box is wide and stop lines lie far out. */
+const SHARP_FROM_DEG = 12;
+const SHARP_TO_DEG = 30;
+const SHARP_TO_M = 45;
 const STEP_M = 0.5;
 /** Half a car and the gap that drivers leave to the line, m. */
 const STANDS_BEFORE_M = 3;
@@ -43,14 +48,14 @@ function logDensity(fade: number): Float64Array {
 
 /**
  * Where the stop line lies on a leg's present line, metres upstream of its start: maximum likelihood of a queue whose
- * first vehicle stands there, each next one 7.5 m behind with a fading share. NaN where too few stood. O(heads).
+ * first vehicle stands there, each next one 7.5 m behind with a fading share. NaN where too few stood. `toM`: farthest place that is looked at. O(heads).
  */
-export function findStopLine(heads: number[]): number {
+export function findStopLine(heads: number[], toM = TO_M): number {
   if (heads.length < LEAST_HEADS) return NaN;
   const step = Math.max(1, Math.floor(heads.length / MOST_HEADS));
   let best = -Infinity;
   let first = NaN;
-  for (let place = FROM_M; place <= TO_M; place += STEP_M) {
+  for (let place = FROM_M; place <= toM; place += STEP_M) {
     for (const table of TABLES) {
       let sum = 0;
       for (let i = 0; i < heads.length; i += step) {
@@ -67,11 +72,11 @@ export function findStopLine(heads: number[]): number {
 }
 
 /** Moves the stop lines of derived legs to where queues begin; where too few stood, as far out as the junction's others. */
-export function placeStopLines(legs: Leg[], usage: Pick<Usage, "heads">, carried: Set<string>): Leg[] {
+export function placeStopLines(legs: Leg[], exits: Exit[], usage: Pick<Usage, "heads">, carried: Set<string>): Leg[] {
   const isFree = (leg: Leg): boolean =>
     leg.origin === "derived" && !leg.locked && (!carried.has(leg.id) || leg.stopLineOrigin === "default");
   const placed = legs.map((leg, i) => {
-    const shift = isFree(leg) ? findStopLine(usage.heads[i]) : NaN;
+    const shift = isFree(leg) ? findStopLine(usage.heads[i], meetsSharply(leg, legs, exits) ? SHARP_TO_M : TO_M) : NaN;
     return Number.isNaN(shift) ? leg : moved(leg, shift, "derived");
   });
   return placed.map((leg) => {
@@ -79,6 +84,14 @@ export function placeStopLines(legs: Leg[], usage: Pick<Usage, "heads">, carried
     const others = placed.filter((other) => other.junction === leg.junction && other.stopLineOrigin !== "default").map(outM);
     return others.length === 0 ? leg : moved(leg, others.reduce((sum, m) => sum + m, 0) / others.length - outM(leg), "default");
   });
+}
+
+function meetsSharply(leg: Leg, legs: Leg[], exits: Exit[]): boolean {
+  const isSharp = (junction: number, outwardDeg: number): boolean => {
+    const angle = angleBetweenDeg(leg.bearingDeg + 180, outwardDeg);
+    return junction === leg.junction && angle >= SHARP_FROM_DEG && angle <= SHARP_TO_DEG;
+  };
+  return legs.some((other) => isSharp(other.junction, other.bearingDeg + 180)) || exits.some((exit) => isSharp(exit.junction, exit.bearingDeg));
 }
 
 /** Distance of the stop line from the junction's point, m. */

@@ -62,8 +62,7 @@ const HEAD_PAST_LINE_M = 12;
 const ALONG_DEG = 40;
 const FACING_DEG = 30;
 /** Stretch of a street, from the junction's box on, whose headings tell its bearing there, m. */
-const FACING_FROM_M = 4;
-const FACING_TO_M = 45;
+export const FACING = Object.freeze({ fromM: 4, binM: 4, bins: 24 });
 const RAD = Math.PI / 180;
 /** Pings from one stretch of a path to the next, at most, if they belong together. */
 const BREAK_PINGS = 3;
@@ -102,11 +101,14 @@ export function measureUsage(trips: Trips, graph: StreetGraph): Usage {
 }
 
 function createHeadings(length: number): Headings {
-  return { count: new Uint32Array(length), east: new Float64Array(length), north: new Float64Array(length) };
+  const size = length * FACING.bins;
+  return { count: new Uint32Array(size), east: new Float64Array(size), north: new Float64Array(size) };
 }
 
-function addHeading(headings: Headings, i: number, headingDeg: number, alongDeg: number): void {
-  if (!(angleBetweenDeg(headingDeg, alongDeg) < FACING_DEG)) return;
+function addHeading(headings: Headings, item: number, outM: number, headingDeg: number, alongDeg: number): void {
+  const bin = Math.floor((outM - FACING.fromM) / FACING.binM);
+  if (!(bin >= 0 && bin < FACING.bins && angleBetweenDeg(headingDeg, alongDeg) < FACING_DEG)) return;
+  const i = item * FACING.bins + bin;
   headings.count[i] += 1;
   headings.east[i] += Math.sin(headingDeg * RAD);
   headings.north[i] += Math.cos(headingDeg * RAD);
@@ -151,10 +153,8 @@ function countPings(chain: Chain, trips: Trips, graph: StreetGraph, usage: Usage
     if (speed >= MOVING_MS) {
       addOffset(trips, i, chain, c, graph, usage);
       const exit = graph.exit[link];
-      const isPastBox = chain.position[c] > FACING_FROM_M && chain.position[c] < FACING_TO_M;
-      if (exit >= 0 && isPastBox) addHeading(usage.exitHeadings, exit, trips.headingDeg[i], graph.network.exits[exit].bearingDeg);
-      const isBeforeBox = toLine > FACING_FROM_M && toLine < FACING_TO_M;
-      if (leg >= 0 && isBeforeBox) addHeading(usage.legHeadings, leg, trips.headingDeg[i], graph.network.legs[leg].bearingDeg);
+      if (exit >= 0) addHeading(usage.exitHeadings, exit, chain.position[c], trips.headingDeg[i], graph.network.exits[exit].bearingDeg);
+      if (leg >= 0) addHeading(usage.legHeadings, leg, toLine, trips.headingDeg[i], graph.network.legs[leg].bearingDeg);
     }
     if (leg < 0) continue;
     if (seenStep !== k && speed >= MOVING_MS && angleBetweenDeg(trips.headingDeg[i], graph.network.legs[leg].bearingDeg) < ALONG_DEG) {

@@ -2,9 +2,9 @@ import { signedTurnDeg } from "@/core/geometry/angles";
 import type { Exit, Leg, Turn } from "@/core/types";
 
 const THROUGH_MOST_DEG = 50;
-const UTURN_LEAST_DEG = 155;
-/** Two exits whose turns differ by less, with well and with sparsely seen streets, are about as straight: then much more traffic decides. */
-export const AS_STRAIGHT_DEG = 4;
+const UTURN_LEAST_DEG = 150;
+/** Two exits whose turns differ by no more, with well and with sparsely seen streets, are about as straight: then much more traffic decides. */
+export const AS_STRAIGHT_DEG = 2;
 export const AS_STRAIGHT_SPARSE_DEG = 8;
 const MORE_TRAFFIC = 4;
 

@@ -36,7 +36,7 @@ export const DEFINITIONS: readonly Definition[] = [
   {
     id: "turn",
     term: "Turning movement",
-    meaning: ["A leg and an exit of the same junction. The exit that lies straightest ahead, within 50 degrees, is through; 155 degrees and more is a U-turn; the others are left or right by the sign of the angle. The directions of leg and exit are the mean headings of the vehicles there, within 45 m of the junction."],
+    meaning: ["A leg and an exit of the same junction. The exit that lies straightest ahead, within 50 degrees, is through; 150 degrees and more is a U-turn; the others are left or right by the sign of the angle. The directions of leg and exit are the mean headings of the vehicles there, on the first 40 m beyond the stop line."],
   },
   {
     id: "delay",

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { findStopLine, placeStopLines } from "@/core/legs/stop-lines";
-import type { Leg } from "@/core/types";
+import type { Exit, Leg } from "@/core/types";
 
 /** Half a car and a gap lie between the first vehicle's place and the line. */
 const STANDS_BEFORE_M = 3;
@@ -37,7 +37,7 @@ describe("stop lines of a junction", () => {
   const legs = [legOf("S", 0, -1), legOf("E", 1, 0)];
 
   it("go as far out as the others of the junction where too few stood", () => {
-    const [south, east] = placeStopLines(legs, { heads: [headsOf(-4), [3, 5]] }, new Set());
+    const [south, east] = placeStopLines(legs, [], { heads: [headsOf(-4), [3, 5]] }, new Set());
     expect(south.stopLineOrigin).toBe("derived");
     // Stood 4 m nearer and half a car before the line: at 7 m instead of 14 m.
     expect(Math.abs(-south.line[1] - 7)).toBeLessThanOrEqual(1);
@@ -49,14 +49,22 @@ describe("stop lines of a junction", () => {
   it("lengthen a leg of 10 m to where its vehicles stand, but shorten none to less than 20 m", () => {
     const short = { ...legs[0], line: Float64Array.of(0, -14, 0, -24), lengthM: 10 };
     // At 7 m from the junction instead of 14 m, see above.
-    expect(placeStopLines([short], { heads: [headsOf(-4)] }, new Set())[0].lengthM).toBeCloseTo(17, 0);
+    expect(placeStopLines([short], [], { heads: [headsOf(-4)] }, new Set())[0].lengthM).toBeCloseTo(17, 0);
     const medium = { ...legs[0], line: Float64Array.of(0, -14, 0, -38), lengthM: 24 };
-    expect(placeStopLines([medium], { heads: [headsOf(11)] }, new Set())[0].lengthM).toBe(24);
+    expect(placeStopLines([medium], [], { heads: [headsOf(11)] }, new Set())[0].lengthM).toBe(24);
   });
 
   it("stay where nobody stood at the junction, or the leg is locked", () => {
-    expect(placeStopLines(legs, { heads: [[], []] }, new Set())).toEqual(legs);
+    expect(placeStopLines(legs, [], { heads: [[], []] }, new Set())).toEqual(legs);
     const locked = { ...legs[1], locked: true };
-    expect(placeStopLines([legs[0], locked], { heads: [headsOf(-4), []] }, new Set())[1]).toEqual(locked);
+    expect(placeStopLines([legs[0], locked], [], { heads: [headsOf(-4), []] }, new Set())[1]).toEqual(locked);
+  });
+
+  it("lie far out where another street meets at a sharp angle, and only there", () => {
+    // First vehicles stand 38 m behind the drafted line at 14 m: the line is at 14 + 38 - 3 = 49 m.
+    const exitTo = (bearingDeg: number) => [{ junction: 0, bearingDeg } as Exit];
+    const far = { heads: [headsOf(38)] };
+    expect(Math.abs(-placeStopLines([legs[0]], exitTo(205), far, new Set())[0].line[1] - 49)).toBeLessThanOrEqual(1);
+    expect(-placeStopLines([legs[0]], exitTo(270), far, new Set())[0].line[1]).toBeLessThanOrEqual(14 + 18);
   });
 });

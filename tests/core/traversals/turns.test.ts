@@ -25,8 +25,18 @@ describe("turn names of an eastbound leg", () => {
   });
 
   it("lets traffic decide between two exits that are about as straight", () => {
-    expect(turnsTo([55, 122], [11, 138])).toEqual(["left", "through"]);
-    expect(turnsTo([55, 122], [138, 11])).toEqual(["through", "right"]);
+    // 34 degrees to the left, 33 to the right.
+    expect(turnsTo([56, 123], [11, 138])).toEqual(["left", "through"]);
+    expect(turnsTo([57, 124], [11, 138])).toEqual(["left", "through"]);
     expect(turnsTo([80, 122], [11, 138])).toEqual(["through", "right"]);
+  });
+
+  it("keeps the straighter one where three degrees lie between them, however busy the other is", () => {
+    expect(turnsTo([74, 103], [223, 10])).toEqual(["left", "through"]);
+  });
+
+  it("calls a turn of 150 degrees and more a U-turn, a sharp turn below it left or right", () => {
+    expect(turnsTo([241, 299])).toEqual(["uturn", "uturn"]);
+    expect(turnsTo([239, 301])).toEqual(["right", "left"]);
   });
 });

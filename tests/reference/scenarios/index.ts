@@ -18,6 +18,11 @@ const RING_STREETS = [
   "--perturb-x", "normc(0,28,-55,55)", "--perturb-y", "normc(0,28,-55,55)",
 ];
 
+const SPOKE_STREETS = [
+  "--spider", "--spider.arm-number", "5", "--spider.circle-number", "4", "--spider.space-radius", "175",
+  "--perturb-x", "normc(0,22,-45,45)", "--perturb-y", "normc(0,22,-45,45)",
+];
+
 /** Scenarios to tune on. */
 export const TUNING: Scenario[] = [
   gridScenario(),
@@ -50,6 +55,13 @@ export const TUNING: Scenario[] = [
     seed: 1207, driveSide: "right", cycleS: 88, perLane: 78, perYard: 35, mainStreets: 5, fringeShare: 0, oneWayShare: 0.15, yardShare: 0.35,
     busLines: 4, vehicles: "calm", recordedShare: 1, draw: RANDOM_STREETS, signalFromMs: 50, walkersPerHour: 90,
     turnOnRedShare: 0.4, errandShare: 0.06,
+  }),
+  drawnCityScenario({
+    id: "spokes",
+    title: "city of five spokes and four rings drawn askew, with street ends all round, yards, buses, errands, people crossing, turns at red",
+    seed: 2203, driveSide: "right", cycleS: 84, perLane: 140, perYard: 35, mainStreets: 4, fringeShare: 0.7, oneWayShare: 0.12, yardShare: 0.3,
+    busLines: 3, vehicles: "default", recordedShare: 0.2, draw: SPOKE_STREETS, signalFromMs: 50, walkersPerHour: 80,
+    turnOnRedShare: 0.35, errandShare: 0.06,
   }),
 ];
 
