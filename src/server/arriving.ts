@@ -1,4 +1,5 @@
 import { createHash } from "node:crypto";
+import { mkdirSync } from "node:fs";
 import { join } from "node:path";
 import type { Readable } from "node:stream";
 import { FileStore } from "@tus/file-store";
@@ -23,12 +24,16 @@ const UNWRITTEN =
 
 const shared = globalThis as typeof globalThis & { tailmarkArriving?: { store: FileStore; locker: MemoryLocker } };
 
+/** The library makes the folder in its own time: the first request would come too early. */
+function openStore(): FileStore {
+  const directory = join(env().DATA_DIR, "arriving");
+  mkdirSync(directory, { recursive: true });
+  return new FileStore({ directory, expirationPeriodInMilliseconds: KEEP_MS });
+}
+
 /** One for the process: its locks keep two requests from writing to one file. */
 function arriving() {
-  shared.tailmarkArriving ??= {
-    store: new FileStore({ directory: join(env().DATA_DIR, "arriving"), expirationPeriodInMilliseconds: KEEP_MS }),
-    locker: new MemoryLocker(),
-  };
+  shared.tailmarkArriving ??= { store: openStore(), locker: new MemoryLocker() };
   return shared.tailmarkArriving;
 }
 
