@@ -1,17 +1,5 @@
 import { defineConfig, devices } from "@playwright/test";
-
-// WebGL by software, and nothing that phones home.
-const FLAGS = [
-  "--no-sandbox",
-  "--enable-unsafe-swiftshader",
-  "--disable-gpu",
-  "--disable-quic",
-  "--no-first-run",
-  "--disable-background-networking",
-  "--disable-component-update",
-  "--disable-sync",
-  "--disable-dev-shm-usage",
-];
+import { CHROMIUM, CHROMIUM_FLAGS } from "../src/ops/setup/chromium.mjs";
 
 export default defineConfig({
   testDir: "e2e",
@@ -29,7 +17,7 @@ export default defineConfig({
     timezoneId: "Pacific/Auckland",
     trace: "retain-on-failure",
     screenshot: "only-on-failure",
-    launchOptions: { executablePath: "/usr/bin/chromium", args: FLAGS },
+    launchOptions: { executablePath: CHROMIUM, args: CHROMIUM_FLAGS },
   },
   projects: [
     { name: "desk", testIgnore: /\.phone\.spec\.ts$/, use: { viewport: { width: 1440, height: 900 } } },

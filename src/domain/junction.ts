@@ -79,13 +79,7 @@ export interface ProfilePoint {
   spill: number | null;
 }
 
-export interface JunctionView {
-  id: number;
-  code: string;
-  name: string;
-  lat: number;
-  lon: number;
-  corridor: string | null;
+export interface JunctionView extends ListedJunction {
   district: string | null;
   cycleS: number | null;
   lastRetimed: string | null;

@@ -13,7 +13,8 @@ import { receiveBatch } from "@/services/feed/receive-batch";
 import { ingestUpload } from "@/services/ingest/ingest-upload";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
-import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
+import { crossingPings } from "@tests/support/crossing";
+import { readCrossing } from "@tests/support/crossing-city";
 import { forgetResults, resultChecksums } from "@tests/support/result-checksums";
 import { testContext, testPlace, type TestContext } from "@tests/support/database";
 
@@ -27,9 +28,7 @@ beforeAll(async () => {
   await prepareQueues((await testPlace()).url, JOBS);
   engineer = await testContext("engineer");
   job = await testContext("job");
-  const { uploadId, detected } = await receiveUpload(engineer, { kind: "junctions", name: "junctions.csv" }, Readable.from([Buffer.from(JUNCTIONS_CSV)]));
-  await startUpload(engineer, { uploadId, mapping: detected.mapping, supplier: null });
-  await ingestUpload(job, { uploadId });
+  await readCrossing(engineer, job);
 });
 
 beforeEach(async () => {

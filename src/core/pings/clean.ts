@@ -2,7 +2,7 @@ import { planeAt } from "@/core/geometry/plane";
 import { CLEANING } from "@/core/options";
 import { groupByVehicle } from "@/core/pings/group-by-vehicle";
 import { fillMotion } from "@/core/pings/motion";
-import type { Trips } from "@/core/pings/trips";
+import { tripColumns, type Trips } from "@/core/pings/trips";
 import type { CleanReport, PingColumns } from "@/core/types";
 
 /** Of a degree of longitude, at most: the largest radius of curvature of WGS 84, 6,399.6 km, times a degree. */
@@ -95,12 +95,7 @@ function gather(pings: PingColumns, kept: Uint32Array, length: number, starts: n
     return pings.tMs[i] - pings.tMs[j] || pings.lat[i] - pings.lat[j] || pings.lon[i] - pings.lon[j] || a - b;
   });
   const trips: Trips = {
-    length,
-    tMs: new Float64Array(length),
-    lat: new Float64Array(length),
-    lon: new Float64Array(length),
-    speedMs: new Float32Array(length),
-    headingDeg: new Float32Array(length),
+    ...tripColumns(length),
     count,
     tripOffset: new Uint32Array(count + 1),
     tripVehicle: new Uint32Array(count),

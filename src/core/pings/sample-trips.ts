@@ -1,4 +1,4 @@
-import type { Trips } from "@/core/pings/trips";
+import { tripColumns, type Trips } from "@/core/pings/trips";
 
 /**
  * A stratified sample of whole trips with about `most` pings (Cochran, Sampling Techniques, 1977): one of each stretch of
@@ -19,12 +19,7 @@ export function sampleTrips(trips: Trips, most: number): Trips {
   }
   const out: Trips = {
     ...trips,
-    length,
-    tMs: new Float64Array(length),
-    lat: new Float64Array(length),
-    lon: new Float64Array(length),
-    speedMs: new Float32Array(length),
-    headingDeg: new Float32Array(length),
+    ...tripColumns(length),
     count: chosen.length,
     tripOffset: new Uint32Array(chosen.length + 1),
     tripVehicle: Uint32Array.from(chosen, (k) => trips.tripVehicle[k]),

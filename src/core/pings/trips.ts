@@ -24,3 +24,15 @@ export interface Trips {
   /** Median seconds between successive pings of a trip; NaN without any pair. */
   medianIntervalS: number;
 }
+
+/** Columns for so many pings, to be filled. O(length). */
+export function tripColumns(length: number): Pick<Trips, "length" | "tMs" | "lat" | "lon" | "speedMs" | "headingDeg"> {
+  return {
+    length,
+    tMs: new Float64Array(length),
+    lat: new Float64Array(length),
+    lon: new Float64Array(length),
+    speedMs: new Float32Array(length),
+    headingDeg: new Float32Array(length),
+  };
+}

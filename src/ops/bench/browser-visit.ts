@@ -1,22 +1,9 @@
 import { readFileSync } from "node:fs";
 import { chromium, type Browser, type BrowserContext, type CDPSession, type Page } from "@playwright/test";
 import type { Role } from "@/domain/actor";
-import { ensureChromium } from "../setup/chromium.mjs";
+import { CHROMIUM, CHROMIUM_FLAGS, ensureChromium } from "../setup/chromium.mjs";
 import { SESSION_COOKIE, type Product } from "./product";
 
-/** Debian's; WebGL by software, as in the browser tests, and nothing that phones home. */
-const CHROMIUM = "/usr/bin/chromium";
-const FLAGS = [
-  "--no-sandbox",
-  "--enable-unsafe-swiftshader",
-  "--disable-gpu",
-  "--disable-quic",
-  "--no-first-run",
-  "--disable-background-networking",
-  "--disable-component-update",
-  "--disable-sync",
-  "--disable-dev-shm-usage",
-];
 const PROBE = readFileSync(new URL("./browser-probe.js", import.meta.url), "utf8");
 const QUIET_MS = 500;
 /** A page that does not change or rest within it is broken. */
@@ -45,7 +32,7 @@ export interface Visit {
 
 export async function openBrowser(): Promise<Browser> {
   await ensureChromium();
-  return chromium.launch({ executablePath: CHROMIUM, args: FLAGS });
+  return chromium.launch({ executablePath: CHROMIUM, args: CHROMIUM_FLAGS });
 }
 
 /** A page of somebody who comes with an empty cache. */

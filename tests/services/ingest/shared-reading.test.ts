@@ -15,7 +15,8 @@ import { getUpload, openRejects } from "@/services/uploads/get-upload";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
 import type { Storage } from "@/storage/storage";
-import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
+import { crossingPings } from "@tests/support/crossing";
+import { readCrossing } from "@tests/support/crossing-city";
 import { testContext, testPlace, type TestContext } from "@tests/support/database";
 import { forgetResults, resultChecksums, type Checksums } from "@tests/support/result-checksums";
 
@@ -55,9 +56,7 @@ beforeAll(async () => {
   await prepareQueues((await testPlace()).url, JOBS);
   engineer = await testContext("engineer");
   job = await testContext("job");
-  const { uploadId, detected } = await receiveUpload(engineer, { kind: "junctions", name: "junctions.csv" }, Readable.from([Buffer.from(JUNCTIONS_CSV)]));
-  await startUpload(engineer, { uploadId, mapping: detected.mapping, supplier: null });
-  await ingestUpload(job, { uploadId });
+  await readCrossing(engineer, job);
 });
 
 async function nothingLeft(): Promise<void> {

@@ -10,7 +10,8 @@ import { editLeg } from "@/services/legs/edit-leg";
 import { getUpload } from "@/services/uploads/get-upload";
 import { receiveUpload } from "@/services/uploads/receive-upload";
 import { startUpload } from "@/services/uploads/start-upload";
-import { crossingPings, JUNCTIONS_CSV } from "@tests/support/crossing";
+import { crossingPings } from "@tests/support/crossing";
+import { readCrossing } from "@tests/support/crossing-city";
 import { testContext, testPlace, type TestContext } from "@tests/support/database";
 import { forgetResults } from "@tests/support/result-checksums";
 
@@ -49,9 +50,7 @@ const vehiclesOf = (seen: string[]) => new Set(seen.map((passage) => passage.spl
 beforeAll(async () => {
   engineer = await testContext("engineer");
   job = await testContext("job");
-  const { uploadId, detected } = await receiveUpload(engineer, { kind: "junctions", name: "junctions.csv" }, Readable.from([Buffer.from(JUNCTIONS_CSV)]));
-  await startUpload(engineer, { uploadId, mapping: detected.mapping, supplier: null });
-  await ingestUpload(job, { uploadId });
+  await readCrossing(engineer, job);
 });
 
 beforeEach(() => forgetResults(job.db));
